@@ -1,0 +1,318 @@
+"""Comparisons: what holds, and how much room there is to the limit."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, replace
+
+from rulecheck.binding.bound import BROKEN, Bound, Broken, Choices, Date, Item, Number, Period, Truth, Words, kind_of
+from rulecheck.binding.arithmetic import mismatch
+from rulecheck.binding.scope import Scope
+from rulecheck.diagnostics import Span
+from rulecheck.formula.printing import show
+from rulecheck.formula.syntax import Comparison, Listing, Name, Syntax
+from rulecheck.graph.terms import Term
+from rulecheck.operations.arithmetic import absolute, subtract
+from rulecheck.operations.calendar import ordinal
+from rulecheck.operations.comparison import at_most, below, equal, same_text
+from rulecheck.operations.logic import both, either, negation
+from rulecheck.quantity.dimension import CALENDAR
+from rulecheck.quantity.dimension_names import name_of
+from rulecheck.quantity.units import find_unit
+from rulecheck.reading.nearest import nearest
+
+FLIPPED = {"<=": ">", "<": ">=", ">=": "<", ">": "<="}
+
+
+@dataclass(frozen=True, slots=True)
+class Side:
+    """One side of a comparison: its syntax, what it is, and whether a design's input stands in it."""
+
+    syntax: Syntax
+    bound: Bound
+    rests_on_inputs: bool
+
+
+@dataclass(frozen=True, slots=True)
+class Compared:
+    """One comparison: the flag, and where it has a number its margin with value and limit."""
+
+    text: str
+    span: Span
+    holds: Term
+    margin: Term | None = None
+    strict: bool = False
+    value: Number | None = None
+    limit: Number | None = None
+    sense: str = ""
+    width: Term | None = None
+
+
+def compare(scope: Scope, syntax: Comparison, *, negated: bool = False) -> list[Compared] | Broken:
+    """Every pair of a chain; `negated` turns each round (the caller turns `and` into `or`)."""
+    sides = _sides(scope, syntax)
+    made: list[Compared] = []
+    for index, operator in enumerate(syntax.operators):
+        compared = _pair(scope, syntax, sides[index], operator, sides[index + 1], negated)
+        if isinstance(compared, Broken):
+            return BROKEN
+        made.append(compared)
+    return made
+
+
+def truth(scope: Scope, syntax: Comparison) -> Bound:
+    """A comparison as a flag."""
+    made = compare(scope, syntax)
+    if isinstance(made, Broken):
+        return BROKEN
+    return Truth(all_of(scope, [item.holds for item in made]))
+
+
+def all_of(scope: Scope, flags: list[Term]) -> Term:
+    """Kleene's `and` with what is certain settled."""
+    return _joined(scope, flags, decides=False)
+
+
+def any_of(scope: Scope, flags: list[Term]) -> Term:
+    """Kleene's `or` with what is certain settled."""
+    return _joined(scope, flags, decides=True)
+
+
+def _joined(scope: Scope, flags: list[Term], *, decides: bool) -> Term:
+    open_flags = []
+    for flag in flags:
+        if flag.kind != "constant":
+            open_flags.append(flag)
+        elif flag.value is decides:
+            return flag
+    if not open_flags:
+        return scope.bank.flag(not decides)
+    if len(open_flags) == 1:
+        return open_flags[0]
+    made = scope.apply(either if decides else both, open_flags, None)
+    assert made is not None
+    return made
+
+
+def opposite(scope: Scope, flag: Term) -> Term:
+    """`not`."""
+    if flag.kind == "constant":
+        return scope.bank.flag(not flag.value)
+    made = scope.apply(negation, [flag], None)
+    assert made is not None
+    return made
+
+
+def _sides(scope: Scope, syntax: Comparison) -> list[Side]:
+    """The operands; a bare word is a choice only opposite an input that declares choices."""
+    operands = syntax.operands
+    first = operands[0]
+    if len(operands) == 2 and isinstance(first, Name) and len(first.path) == 1 and not isinstance(operands[1], (Name, Listing)):
+        second = _side(scope, operands[1], None)
+        return [_side(scope, first, second.bound), second]
+    if len(operands) == 2 and isinstance(first, Name) and len(first.path) == 1 and first.path[0] not in scope.variables:
+        other = _quiet(scope, operands[1])
+        if isinstance(other, Words) and first.path[0] in other.choices:
+            second = _side(scope, operands[1], None)
+            return [_side(scope, first, second.bound), second]
+    made: list[Side] = []
+    for operand in operands:
+        made.append(_side(scope, operand, made[-1].bound if made else None))
+    return made
+
+
+def _quiet(scope: Scope, syntax: Syntax) -> Bound | None:
+    """What a name is, where binding it raises no fault."""
+    if not isinstance(syntax, Name) or len(syntax.path) < 2:
+        return None
+    before = list(scope.shared.faults.found)
+    bound = scope.express(syntax)
+    scope.shared.faults.found[:] = before
+    return bound
+
+
+def _side(scope: Scope, syntax: Syntax, other: Bound | None) -> Side:
+    apart = replace(scope, touched=set())
+    bound = _expressed(apart, syntax, other)
+    scope.touched.update(apart.touched)
+    return Side(syntax, bound, bool(apart.touched))
+
+
+def _expressed(scope: Scope, syntax: Syntax, other: Bound | None) -> Bound:
+    if isinstance(other, Words) and other.choices:
+        if isinstance(syntax, Name) and len(syntax.path) == 1 and syntax.path[0] not in scope.variables:
+            return _choice(scope, syntax, other)
+        if isinstance(syntax, Listing):
+            return Choices(tuple(_expressed(scope, item, other) for item in syntax.items))
+    return scope.express(syntax)
+
+
+def _choice(scope: Scope, syntax: Name, other: Words) -> Bound:
+    word = syntax.path[0]
+    if word in other.choices:
+        return Words(scope.bank.text(word), other.choices)
+    before = len(scope.shared.faults.found)
+    bound = scope.express(syntax)
+    if isinstance(bound, Broken):
+        del scope.shared.faults.found[before:]
+        return scope.fault(
+            "unknown-choice", f"'{word}' is not one of the choices here", syntax.span,
+            expected=" or ".join(other.choices), advice=nearest(word, other.choices),
+        )
+    return bound
+
+
+def _pair(scope: Scope, syntax: Comparison, left: Side, operator: str, right: Side, negated: bool) -> Compared | Broken:
+    a, b = left.bound, right.bound
+    if isinstance(a, Broken) or isinstance(b, Broken):
+        return BROKEN
+    shown = operator
+    text = f"{show(left.syntax)} {shown} {show(right.syntax)}"
+    if syntax.within is not None:
+        text += f" within {show(syntax.within)}"
+    if negated:
+        text = f"not {text}"
+    if operator == "in":
+        return _membership(scope, left, right, text, negated)
+    left, right = _as_numbers(scope, left, right)
+    if isinstance(left.bound, Number) and isinstance(right.bound, Number):
+        return _numbers(scope, syntax, left, operator, right, text, negated)
+    return _others(scope, syntax, left, operator, right, text, negated)
+
+
+def _as_numbers(scope: Scope, left: Side, right: Side) -> tuple[Side, Side]:
+    """Dates are compared by their days; a period of days is a number of them."""
+    if isinstance(left.bound, Date) and isinstance(right.bound, Date):
+        return _ordinal(scope, left), _ordinal(scope, right)
+    for one, other in ((left, right), (right, left)):
+        if isinstance(one.bound, Period) and not one.bound.months and isinstance(other.bound, Number):
+            number = Number(scope.bank.number(one.bound.days, CALENDAR), find_unit("days"), counted=True)
+            made = replace(one, bound=number)
+            return (made, right) if one is left else (left, made)
+    return left, right
+
+
+def _ordinal(scope: Scope, side: Side) -> Side:
+    assert isinstance(side.bound, Date)
+    term = scope.apply(ordinal, [side.bound.term], side.syntax.span)
+    assert term is not None
+    return replace(side, bound=Number(term, find_unit("days"), counted=True))
+
+
+def _numbers(
+    scope: Scope, syntax: Comparison, left: Side, operator: str, right: Side, text: str, negated: bool
+) -> Compared | Broken:
+    a, b = left.bound, right.bound
+    assert isinstance(a, Number) and isinstance(b, Number)
+    if a.dimension != b.dimension:
+        return mismatch(scope, "compare", left.syntax, a, right.syntax, b, syntax.span)
+    if operator in ("==", "!="):
+        return _equality(scope, syntax, left, operator, right, text, negated)
+    if syntax.within is not None:
+        return scope.fault("formula-syntax", "'within' belongs to '=='", syntax.within.span, expected="a == b within width")
+    turned = FLIPPED[operator] if negated else operator
+    limit_right = not right.rests_on_inputs or left.rests_on_inputs
+    value, limit = (a, b) if limit_right else (b, a)
+    upper = (turned in ("<", "<=")) == limit_right
+    small, large = (a.term, b.term) if turned in ("<", "<=") else (b.term, a.term)
+    strict = turned in ("<", ">")
+    holds = scope.apply(below if strict else at_most, [small, large], syntax.span)
+    margin = scope.apply(subtract, [large, small], syntax.span)
+    if holds is None or margin is None:
+        return BROKEN
+    return Compared(text, syntax.span, holds, margin, strict, value, limit, "at most" if upper else "at least")
+
+
+def _equality(
+    scope: Scope, syntax: Comparison, left: Side, operator: str, right: Side, text: str, negated: bool
+) -> Compared | Broken:
+    a, b = left.bound, right.bound
+    assert isinstance(a, Number) and isinstance(b, Number)
+    unequal = (operator == "!=") != negated
+    limit_right = not right.rests_on_inputs or left.rests_on_inputs
+    value, limit = (a, b) if limit_right else (b, a)
+    if syntax.within is None:
+        if not (a.counted and b.counted):
+            return scope.fault(
+                "formula-syntax", f"'{text}' compares measured numbers for equality and does not say how close", syntax.span,
+                expected="a == b within 1 mm",
+            )
+        flag = scope.apply(equal, [a.term, b.term], syntax.span)
+        if flag is None:
+            return BROKEN
+        return Compared(text, syntax.span, opposite(scope, flag) if unequal else flag, value=value, limit=limit)
+    width = scope.express(syntax.within)
+    if isinstance(width, Broken):
+        return BROKEN
+    if not isinstance(width, Number) or width.dimension != a.dimension:
+        found = name_of(width.dimension) if isinstance(width, Number) else kind_of(width)
+        return scope.fault("dimension-mismatch", f"the width is {found}, the sides are {name_of(a.dimension)}", syntax.within.span)
+    apart = scope.apply(subtract, [a.term, b.term], syntax.span)
+    gap = scope.apply(absolute, [apart], syntax.span) if apart else None
+    if gap is None:
+        return BROKEN
+    near, far = (width.term, gap) if unequal else (gap, width.term)
+    holds = scope.apply(below if unequal else at_most, [near, far], syntax.span)
+    margin = scope.apply(subtract, [far, near], syntax.span)
+    assert holds is not None and margin is not None
+    spoken = replace(limit, unit=width.unit or limit.unit)
+    return Compared(text, syntax.span, holds, margin, unequal, value, spoken, "within", width.term)
+
+
+def _others(
+    scope: Scope, syntax: Comparison, left: Side, operator: str, right: Side, text: str, negated: bool
+) -> Compared | Broken:
+    a, b = left.bound, right.bound
+    if operator not in ("==", "!="):
+        return scope.fault(
+            "kind-mismatch", f"'{show(left.syntax)}' is {kind_of(a)} and '{show(right.syntax)}' is {kind_of(b)}: these have no order",
+            syntax.span, expected="numbers of one dimension, or dates",
+        )
+    flag = _same(scope, a, b)
+    if flag is None:
+        advice = "quote the text" if isinstance(a, Words) != isinstance(b, Words) else ""
+        return scope.fault(
+            "kind-mismatch", f"'{show(left.syntax)}' is {kind_of(a)} and '{show(right.syntax)}' is {kind_of(b)}", syntax.span,
+            expected="two values of one kind", advice=advice,
+        )
+    if (operator == "!=") != negated:
+        flag = opposite(scope, flag)
+    return Compared(text, syntax.span, flag)
+
+
+def _same(scope: Scope, a: Bound, b: Bound) -> Term | None:
+    if isinstance(a, Words) and isinstance(b, Words):
+        if a.term.kind == "constant" and b.term.kind == "constant":
+            return scope.bank.flag(a.term.value == b.term.value)
+        return scope.apply(same_text, [a.term, b.term], None)
+    if isinstance(a, Truth) and isinstance(b, Truth):
+        if b.term.kind == "constant":
+            return a.term if b.term.value else opposite(scope, a.term)
+        together = all_of(scope, [a.term, b.term])
+        neither = all_of(scope, [opposite(scope, a.term), opposite(scope, b.term)])
+        return any_of(scope, [together, neither])
+    if isinstance(a, Item) and isinstance(b, Item):
+        return scope.bank.flag(a.path == b.path)
+    return None
+
+
+def _membership(scope: Scope, left: Side, right: Side, text: str, negated: bool) -> Compared | Broken:
+    if not isinstance(right.bound, Choices):
+        return scope.fault(
+            "kind-mismatch", f"'{show(right.syntax)}' is {kind_of(right.bound)}, and 'in' asks for a list", right.syntax.span,
+            expected="a list of the ruleset, or [a, b, c]",
+        )
+    flags = []
+    for member in right.bound.members:
+        if isinstance(member, Broken):
+            return BROKEN
+        flag = _same(scope, left.bound, member)
+        if flag is None and isinstance(left.bound, Number) and isinstance(member, Number) and left.bound.dimension == member.dimension:
+            flag = scope.apply(equal, [left.bound.term, member.term], left.syntax.span)
+        if flag is None:
+            return scope.fault(
+                "kind-mismatch", f"'{show(left.syntax)}' is {kind_of(left.bound)}, and the list holds {kind_of(member)}",
+                left.syntax.span, expected="values of the kind that the list holds",
+            )
+        flags.append(flag)
+    found = any_of(scope, flags)
+    return Compared(text, left.syntax.span, opposite(scope, found) if negated else found, sense="one of")

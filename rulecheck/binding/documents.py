@@ -1,0 +1,146 @@
+"""Evidence and judgements: what a rule asks of papers and of people."""
+
+from __future__ import annotations
+
+from rulecheck.binding.bound import Broken, Date, Item, Words
+from rulecheck.binding.conditions import open_part
+from rulecheck.binding.figures import parsed
+from rulecheck.binding.inputs import bind_input
+from rulecheck.binding.scope import Scope
+from rulecheck.diagnostics import Span
+from rulecheck.graph.conditions import AllOf, Condition, Part
+from rulecheck.graph.terms import Term
+from rulecheck.model.ruleset import EvidenceWanted
+from rulecheck.operations.arithmetic import subtract
+from rulecheck.operations.calendar import ordinal
+from rulecheck.operations.comparison import at_most, below
+from rulecheck.operations.values import Monomial, Reason
+from rulecheck.quantity.dimension import PURE
+from rulecheck.quantity.units import find_unit
+from rulecheck.reading.nodes import Located
+
+
+def evidence(scope: Scope, wanted: EvidenceWanted) -> Condition | Broken:
+    """A document of the kind asked for, in force on the evaluation date."""
+    name = _name(scope, wanted.name)
+    text = f"{wanted.kind.text} '{name}'" if name else f"{wanted.kind.text} named by {wanted.name.text}"
+    due = _due(scope, wanted)
+    if isinstance(due, Broken):
+        return due
+    if name is None:
+        return _absent(scope, text, due, wanted)
+    base = f"evidence.{name}"
+    design = scope.view.design
+    scope.touched.add(base)
+    if design.names(base) is None or design.states_none(base):
+        return _absent(scope, text, due, wanted)
+    kind = _words(scope, f"{base}.kind", wanted.kind.span)
+    if kind != wanted.kind.text:
+        found = f"'{name}' is a {kind}" if kind else f"the kind of '{name}'"
+        return open_part(scope, f"{text} ({found})", design.keys.get(base), text)
+    return _in_force(scope, wanted, base, text)
+
+
+def _name(scope: Scope, where: Located) -> str | None:
+    """The name of the document; under `each` a field of the element that names it."""
+    first, _, rest = where.text.partition(".")
+    variable = scope.variables.get(first)
+    if not isinstance(variable, Item):
+        return where.text
+    if not rest:
+        return variable.name
+    return _words(scope, f"{variable.path}.{rest}", where.span)
+
+
+def _words(scope: Scope, path: str, span: Span) -> str | None:
+    """A stated text or choice, or None."""
+    entry = scope.shared.vocabulary.entry(path)
+    if entry is None:
+        scope.fault("unknown-name", f"nothing can be stated under '{path}'", span)
+        return None
+    bound = bind_input(scope, path, entry, span)
+    if isinstance(bound, Words) and isinstance(bound.term.value, str) and bound.term.kind == "constant":
+        return bound.term.value
+    return None
+
+
+def _due(scope: Scope, wanted: EvidenceWanted) -> Term | None | Broken:
+    if wanted.due is None:
+        return None
+    syntax = parsed(scope, wanted.due)
+    bound = scope.express(syntax) if syntax is not None else Broken()
+    if isinstance(bound, (Date, Broken)):
+        return bound.term if isinstance(bound, Date) else bound
+    return scope.fault("bad-date", "'due' is a date", wanted.due.span, expected="a date such as 2027-03-01")
+
+
+def _absent(scope: Scope, text: str, due: Term | None, wanted: EvidenceWanted) -> Part:
+    """Absent evidence is open; after its day it is a breach."""
+    gone = scope.missing(text, "flag", PURE, wanted.name.span)
+    if due is None:
+        return Part("evidence", text, gone, span=wanted.kind.span)
+    today = scope.bank.day(scope.shared.day)
+    late = scope.apply(below, _ordinals(scope, due, today), None)
+    assert late is not None
+    holds = scope.bank.branch(late, scope.bank.flag(False), gone)
+    return Part("evidence", f"{text} by its day", holds, span=wanted.kind.span)
+
+
+def _ordinals(scope: Scope, *days: Term) -> list[Term]:
+    made = [scope.apply(ordinal, [day], None) for day in days]
+    return [term for term in made if term is not None]
+
+
+def _in_force(scope: Scope, wanted: EvidenceWanted, base: str, text: str) -> Condition:
+    place = scope.view.design.keys.get(base)
+    parts: list[Condition] = []
+    issued = _date(scope, f"{base}.issued", wanted.name.span)
+    if issued is not None and _after(scope, issued):
+        return open_part(scope, f"{text} (issued after the evaluation date)", place, text)
+    until = _date(scope, f"{base}.until", wanted.name.span)
+    if until is None:
+        if wanted.expires:
+            return open_part(scope, f"the last day ('until') of {text}", place, text)
+        return Part("evidence", text, scope.bank.flag(True), span=wanted.kind.span, place=place)
+    today, last = _ordinals(scope, scope.bank.day(scope.shared.day), until)
+    holds = scope.apply(at_most, [today, last], None)
+    margin = scope.apply(subtract, [last, today], None)
+    assert holds is not None
+    parts.append(
+        Part("evidence", text, holds, margin, unit=find_unit("days"), value=today, limit=last, sense="until",
+             span=wanted.kind.span, place=place)
+    )  # fmt: skip
+    return parts[0] if len(parts) == 1 else AllOf(tuple(parts))
+
+
+def _date(scope: Scope, path: str, span: Span) -> Term | None:
+    entry = scope.shared.vocabulary.entry(path)
+    assert entry is not None
+    bound = bind_input(scope, path, entry, span)
+    return bound.term if isinstance(bound, Date) and bound.term.kind == "constant" else None
+
+
+def _after(scope: Scope, day: Term) -> bool:
+    """True where a stated day lies after the evaluation date."""
+    return isinstance(day.value, Monomial) and day.value.rational > scope.shared.day.toordinal()
+
+
+def judgement(scope: Scope, rule: str, element: str, question: Located) -> Part:
+    """A slot for a person: verdict, role, date and reason; what is not filled in is open."""
+    design = scope.view.design
+    key = element.replace(", ", "_")
+    base = next((path for path in (f"judgements.{rule}.{key}", f"judgements.{rule}") if f"{path}.verdict" in design.leaves), f"judgements.{rule}")
+    scope.touched.add(base)
+    missing = [name for name in ("verdict", "role", "reason") if _words(scope, f"{base}.{name}", question.span) is None]
+    day = _date(scope, f"{base}.date", question.span)
+    if day is None:
+        missing.append("date")
+    text = f"judgement: {question.text}"
+    if missing:
+        told = "" if len(missing) == 4 else f" ({', '.join(missing)})"
+        gone = scope.bank.unknown(Reason("missing", f"a judgement{told}", question.span), "flag")
+        return Part("judgement", text, gone, span=question.span)
+    if day is not None and _after(scope, day):
+        return Part("judgement", text, scope.missing("a judgement that is not of a later day", "flag", PURE, question.span), span=question.span)
+    verdict = _words(scope, f"{base}.verdict", question.span)
+    return Part("judgement", text, scope.bank.flag(verdict == "complies"), span=question.span, place=design.keys.get(base))

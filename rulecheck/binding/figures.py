@@ -1,0 +1,397 @@
+"""Figures: derived formulas, tables and lists of a ruleset, physics, and other rules by reference."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from dataclasses import dataclass, replace
+from fractions import Fraction
+
+from rulecheck.binding.bound import BROKEN, Bound, Broken, Date, Item, Number, Place, Truth, Words, kind_of
+from rulecheck.binding.inputs import quantity, scalar
+from rulecheck.binding.rule_margins import margin_term
+from rulecheck.binding.scope import Owner, Scope
+from rulecheck.binding.tables import list_of, table_value
+from rulecheck.diagnostics import Refused, Span
+from rulecheck.formula.parser import parse_each, parse_formula
+from rulecheck.formula.syntax import Call, Each, Name, Syntax
+from rulecheck.graph.conditions import BoundRule
+from rulecheck.graph.figures import DeclaredCheck, Figure
+from rulecheck.graph.terms import Term
+from rulecheck.model.design import holders
+from rulecheck.model.ruleset import Formula, PhysicsModule, Ruleset
+from rulecheck.operations.arithmetic import absolute, subtract
+from rulecheck.operations.comparison import at_most
+from rulecheck.operations.logic import reconcile
+from rulecheck.physics.declared import DECLARED, Declared
+from rulecheck.quantity.dimension_names import name_of
+from rulecheck.quantity.quantity import Tolerance, Uncertainty
+from rulecheck.quantity.units import Unit, UnitFault, find_unit
+from rulecheck.reading.nearest import nearest
+from rulecheck.reading.nodes import Located
+
+
+@dataclass(frozen=True, slots=True)
+class Made:
+    """A figure that is bound, and what it rests on."""
+
+    bound: Bound
+    touched: frozenset[str]
+    figures: frozenset[str]
+
+
+def parsed(scope: Scope, where: Located) -> Syntax | None:
+    """A formula as syntax, read once; None with the faults noted."""
+    key = ("syntax", where.span)
+    if key not in scope.shared.memo:
+        try:
+            scope.shared.memo[key] = parse_formula(where)
+        except Refused as refused:
+            scope.shared.faults.take(refused)
+            scope.shared.memo[key] = None
+    syntax: Syntax | None = scope.shared.memo[key]
+    return syntax
+
+
+def parsed_each(scope: Scope, where: Located) -> Each | None:
+    """A loop head as syntax; None with the faults noted."""
+    key = ("each", where.span)
+    if key not in scope.shared.memo:
+        try:
+            scope.shared.memo[key] = parse_each(where)
+        except Refused as refused:
+            scope.shared.faults.take(refused)
+            scope.shared.memo[key] = None
+    head: Each | None = scope.shared.memo[key]
+    return head
+
+
+# --- by name ---------------------------------------------------------------------------------------------------------
+
+
+def own_figure(scope: Scope, name: str, span: Span) -> Bound | None:
+    """A derived figure, table or list of the owner by its bare name; None where it has none."""
+    owner = scope.owner
+    if isinstance(owner, PhysicsModule):
+        return figure(scope, owner, owner.figures[name], f"{owner.name}.{name}", span) if name in owner.figures else None
+    if name in owner.derived:
+        return figure(scope, owner, owner.derived[name], name, span)
+    if name in owner.tables:
+        return table_value(scope, owner.tables[name], None, parsed)
+    if name in owner.lists:
+        return list_of(scope, owner.lists[name], name, parsed)
+    if name in owner.rules:
+        return scope.fault("kind-mismatch", f"'{name}' is a rule", span, advice=f"write rule({name}) or margin({name})")
+    return None
+
+
+def physics_module(scope: Scope, name: str) -> PhysicsModule | None:
+    """A physics module by its name, read when it is first used."""
+    key = ("module", name)
+    if key not in scope.shared.memo:
+        try:
+            scope.shared.memo[key] = scope.shared.physics(name)
+        except Refused as refused:
+            scope.shared.faults.take(refused)
+            scope.shared.memo[key] = None
+    module: PhysicsModule | None = scope.shared.memo[key]
+    return module
+
+
+def physics_figure(scope: Scope, path: tuple[str, ...], span: Span) -> Bound | None:
+    """`mass.total`: a figure of a physics module; None where there is none."""
+    module = physics_module(scope, path[0]) if len(path) == 2 else None
+    if module is None or path[1] not in module.figures:
+        return None
+    bound = figure(scope, module, module.figures[path[1]], ".".join(path), span)
+    name = ".".join(path)
+    entry = scope.shared.vocabulary.entry(name)
+    if entry is not None and entry.computed and isinstance(bound, Number) and name in scope.view.design.leaves:
+        return _declared_figure(scope, name, bound)
+    return bound
+
+
+def known_names(scope: Scope) -> list[str]:
+    """Names of figures, for advice."""
+    owner = scope.owner
+    own = owner.figures if isinstance(owner, PhysicsModule) else {**owner.derived, **owner.tables, **owner.lists, **owner.rules}
+    modules = (physics_module(scope, name) for name in scope.shared.physics_names)
+    return [*own, *(f"{module.name}.{name}" for module in modules if module for name in module.figures)]
+
+
+def callable_names(scope: Scope) -> list[str]:
+    """Names of the owner that can be called."""
+    owner = scope.owner
+    formulas = owner.figures if isinstance(owner, PhysicsModule) else owner.derived
+    tables = owner.tables if isinstance(owner, Ruleset) else {}
+    return [name for name, formula in formulas.items() if formula.loop or formula.of] + list(tables)
+
+
+# --- with an argument ------------------------------------------------------------------------------------------------
+
+
+def called_figure(scope: Scope, syntax: Call) -> Bound | None:
+    """`usable(b)`, `minimum_mass(x)`; None where the owner has no such name."""
+    owner = scope.owner
+    name = syntax.function
+    if isinstance(owner, Ruleset) and name in owner.tables:
+        if len(syntax.arguments) != 1:
+            return scope.fault("wrong-arguments", f"the table '{name}' takes one key", syntax.span)
+        return table_value(scope, owner.tables[name], syntax.arguments[0], parsed)
+    formulas = owner.figures if isinstance(owner, PhysicsModule) else owner.derived
+    if name not in formulas:
+        return None
+    if len(syntax.arguments) != 1:
+        return scope.fault("wrong-arguments", f"'{name}' takes one argument", syntax.span)
+    argument = scope.express(syntax.arguments[0])
+    if isinstance(argument, Broken):
+        return BROKEN
+    return _with_argument(scope, owner, formulas[name], argument, syntax.span)
+
+
+def module_call(scope: Scope, module_name: str, name: str, argument: Bound, span: Span) -> Bound:
+    """A figure of a physics module at a given point."""
+    module = physics_module(scope, module_name)
+    if module is None or name not in module.figures:
+        return scope.fault("bad-physics", f"there is no figure '{module_name}.{name}'", span)
+    return _with_argument(scope, module, module.figures[name], argument, span)
+
+
+def _with_argument(scope: Scope, owner: Owner, formula: Formula, argument: Bound, span: Span) -> Bound:
+    if formula.of is not None:
+        if not isinstance(argument, Place):
+            return scope.fault("kind-mismatch", f"'{formula.name}' takes a point, and this is {kind_of(argument)}", span)
+        label = ",".join(str(number.term.index) for number in (argument.x, argument.y, argument.z))
+        return figure(scope, owner, formula, f"{formula.name}({label})", span, {formula.of.text: argument})
+    if formula.loop is None:
+        return scope.fault("wrong-arguments", f"'{formula.name}' takes no argument", span)
+    head = parsed_each(scope, formula.loop)
+    if head is None:
+        return BROKEN
+    if not isinstance(argument, Item):
+        return scope.fault("kind-mismatch", f"'{formula.name}' takes an item, and this is {kind_of(argument)}", span)
+    return figure(scope, owner, formula, f"{_full(owner, formula)}({argument.path})", span, {head.variables[0]: argument})
+
+
+def _full(owner: Owner, formula: Formula) -> str:
+    return f"{owner.name}.{formula.name}" if isinstance(owner, PhysicsModule) else formula.name
+
+
+# --- one figure ------------------------------------------------------------------------------------------------------
+
+
+def figure(
+    scope: Scope, owner: Owner, formula: Formula, name: str, span: Span, variables: Mapping[str, Bound] | None = None
+) -> Bound:
+    """Bind a named formula in its owner's name space and this state; each is bound once."""
+    if variables is None and (formula.loop or formula.of):
+        word = formula.loop.text if formula.loop else formula.of.text if formula.of else ""
+        return scope.fault("wrong-arguments", f"'{formula.name}' is defined for {word}", span, expected=f"{formula.name}(…)")
+    made = _made(scope, owner, formula, name, span, variables)
+    scope.touched.update(made.touched)
+    scope.figures.update(made.figures)
+    return made.bound
+
+
+def _made(
+    scope: Scope, owner: Owner, formula: Formula, name: str, span: Span, variables: Mapping[str, Bound] | None
+) -> Made:
+    shared, states = scope.shared, scope.view.states
+    key = ("figure", owner.file, name, states)
+    known: Made | None = shared.memo.get(key)
+    if known is not None:
+        return known
+    if states:
+        base = _made(scope.fresh(shared.base, owner), owner, formula, name, span, variables)
+        # Points carry terms of their own state: only figures without arguments are shared between states.
+        if not variables and not affected(scope, base.touched):
+            shared.memo[key] = base
+            return base
+    if name in shared.stack:
+        chain = " -> ".join((*shared.stack[shared.stack.index(name) :], name))
+        scope.fault("cycle", f"'{name}' is defined by itself: {chain}", formula.span, advice="break the circle at one of them")
+        return Made(BROKEN, frozenset(), frozenset())
+    shared.stack.append(name)
+    made = _bind(scope.fresh(scope.view, owner, variables), owner, formula, name)
+    shared.stack.pop()
+    shared.memo[key] = made
+    return made
+
+
+def affected(scope: Scope, touched: frozenset[str] | set[str]) -> bool:
+    """True where the state changes something that was read."""
+    base, here = scope.shared.base.design, scope.view.design
+    for path in scope.view.set_paths:
+        if any(holder in touched for holder in holders(path)):
+            for holder in holders(path):
+                if holder in touched and (holder == path or base.names(holder) != here.names(holder) or not _is_collection(scope, holder)):
+                    return True
+        if any(read.startswith(path + ".") for read in touched):
+            return True
+    return False
+
+
+def _is_collection(scope: Scope, path: str) -> bool:
+    entry = scope.shared.vocabulary.entry(path)
+    return bool(entry and entry.kind == "collection")
+
+
+def _bind(scope: Scope, owner: Owner, formula: Formula, name: str) -> Made:
+    syntax = parsed(scope, formula.formula)
+    bound = scope.express(syntax) if syntax is not None else BROKEN
+    bound = _spoken(scope, formula, bound)
+    valid = _validity(scope, formula)
+    if syntax is not None and isinstance(bound, (Number, Truth, Words, Date)):
+        states = ",".join(f"{axis}={state}" for axis, state in scope.view.states)
+        full = f"{name} [{states}]" if states else name
+        scope.shared.figures[full] = Figure(
+            full, bound.term, getattr(bound, "unit", None), syntax, formula.meaning, _source(owner, formula),
+            formula.formula.span, tuple(scope.uses.values()), valid,
+        )  # fmt: skip
+        scope.figures.add(full)
+    return Made(bound, frozenset(scope.touched), frozenset(scope.figures))
+
+
+def _source(owner: Owner, formula: Formula) -> str:
+    return owner.sources.get(formula.source, formula.source) if isinstance(owner, PhysicsModule) else formula.source
+
+
+def _validity(scope: Scope, formula: Formula) -> Term | None:
+    if formula.valid is None:
+        return None
+    apart = replace(scope, uses={})
+    syntax = parsed(scope, formula.valid)
+    bound = apart.express(syntax) if syntax is not None else BROKEN
+    if isinstance(bound, (Truth, Broken)):
+        return bound.term if isinstance(bound, Truth) else None
+    scope.fault("kind-mismatch", f"a range of validity is a condition, and this is {kind_of(bound)}", formula.valid.span)
+    return None
+
+
+def _spoken(scope: Scope, formula: Formula, bound: Bound) -> Bound:
+    """A number in the declared unit, whose dimension must be the formula's."""
+    if isinstance(bound, Broken):
+        return BROKEN
+    unit = declared_unit(scope, formula.unit)
+    if isinstance(bound, Number):
+        if unit is not None and unit.dimension != bound.dimension:
+            return scope.fault(
+                "wrong-dimension",
+                f"'{formula.name}' is declared in {unit.symbol}, {name_of(unit.dimension)}, and its formula gives {name_of(bound.dimension)}",
+                formula.formula.span, advice="mend the formula or the unit",
+            )  # fmt: skip
+        return replace(bound, unit=unit or bound.unit, bare=False)
+    if formula.unit is not None:
+        return scope.fault("kind-mismatch", f"'{formula.name}' is {kind_of(bound)} and has no unit", formula.unit.span, advice="leave 'unit:' out")
+    if isinstance(bound, (Truth, Words, Date, Place)):
+        return bound
+    return scope.fault("kind-mismatch", f"'{formula.name}' is {kind_of(bound)}", formula.formula.span, expected="a number, flag, text, date or point")
+
+
+def declared_unit(scope: Scope, where: Located | None) -> Unit | None:
+    """A unit as declared, or None with the fault noted."""
+    if where is None:
+        return None
+    try:
+        return find_unit(where.text, scope.units)
+    except UnitFault as fault:
+        scope.fault("unknown-unit", str(fault), where.span, advice=fault.advice)
+        return None
+
+
+# --- declared against computed ---------------------------------------------------------------------------------------
+
+
+def reconciled(scope: Scope, path: str, bound: Number, span: Span) -> Number:
+    """A declared input, unless the car's own parts are known to contradict it."""
+    declared = DECLARED.get(path)
+    if declared is None or path not in scope.view.design.leaves:
+        return bound
+    apart = scope.fresh(scope.view, scope.owner)
+    computed = physics_figure(apart, (declared.module, declared.figure), span)
+    if not isinstance(computed, Number) or computed.dimension != bound.dimension:
+        return bound
+    return replace(bound, term=_agreeing(scope, declared, bound, computed, bound.term))
+
+
+def _declared_figure(scope: Scope, name: str, computed: Number) -> Number:
+    """A computed figure beside its declared value."""
+    entry = scope.shared.vocabulary.entry(name)
+    assert entry is not None
+    read = quantity(scope, entry, scope.view.design.leaves[name])
+    if read is None:
+        return computed
+    rational, _ = read.si()
+    stated = Number(scope.bank.number(rational, computed.dimension), computed.unit)
+    return replace(computed, term=_agreeing(scope, DECLARED[name], stated, computed, computed.term))
+
+
+def _agreeing(scope: Scope, declared: Declared, stated: Number, computed: Number, kept: Term) -> Term:
+    width = scope.bank.number(_closeness(scope, declared.path), stated.dimension)
+    apart = scope.apply(subtract, [computed.term, stated.term], None)
+    gap = scope.apply(absolute, [apart], None) if apart and declared.relation == "equal" else apart
+    agrees = scope.apply(at_most, [gap, width], None) if gap else None
+    assert agrees is not None
+    node = scope.view.design.leaves[declared.path]
+    scope.shared.declared[declared.path] = DeclaredCheck(
+        declared.path, f"{declared.module}.{declared.figure}", declared.relation, agrees, stated.term, computed.term,
+        stated.unit, node.span,
+    )  # fmt: skip
+    made = scope.apply(reconcile, [kept, agrees], node.span)
+    assert made is not None
+    return made
+
+
+def _closeness(scope: Scope, path: str) -> Fraction:
+    """How closely a declared value is meant: its spread, else half a unit of its last digit (SI)."""
+    entry = scope.shared.vocabulary.entry(path)
+    node = scope.view.design.leaves[path]
+    read = quantity(scope, entry, node) if entry is not None else None
+    if read is None:
+        return Fraction(0)
+    spread = read.spread
+    if isinstance(spread, Uncertainty):
+        return spread.half_width * read.unit.factor
+    if isinstance(spread, Tolerance):
+        return max(abs(spread.upper), abs(spread.lower)) * read.unit.factor
+    where = scalar(node)
+    digits = where.text.split()[0] if where else ""
+    decimals = len(digits.partition(".")[2]) if "e" not in digits.lower() else 0
+    return Fraction(1, 2 * 10**decimals) * read.unit.factor
+
+
+# --- other rules -----------------------------------------------------------------------------------------------------
+
+
+def rule_reference(scope: Scope, syntax: Call) -> Bound:
+    """`rule(x)`: whether another rule is met."""
+    rule = _referred(scope, syntax)
+    return BROKEN if rule is None else Truth(rule.met)
+
+
+def margin_reference(scope: Scope, syntax: Call) -> Bound:
+    """`margin(x)`: another rule's margin."""
+    rule = _referred(scope, syntax)
+    return BROKEN if rule is None else margin_term(scope, rule, syntax.span)
+
+
+def _referred(scope: Scope, syntax: Call) -> BoundRule | None:
+    owner = scope.owner
+    argument = syntax.arguments[0] if len(syntax.arguments) == 1 else None
+    if not isinstance(argument, Name) or len(argument.path) != 1 or not isinstance(owner, Ruleset):
+        scope.fault("wrong-arguments", f"'{syntax.function}' takes the name of a rule", syntax.span, expected=f"{syntax.function}(overall_width)")
+        return None
+    name = argument.path[0]
+    if name not in owner.rules:
+        scope.fault("unknown-name", f"there is no rule '{name}'", argument.span, advice=nearest(name, owner.rules))
+        return None
+    marker = f"rule({name})"
+    if marker in scope.shared.stack:
+        chain = " -> ".join((*scope.shared.stack[scope.shared.stack.index(marker) :], marker))
+        scope.fault("cycle", f"rules refer to each other: {chain}", syntax.span, advice="break the circle at one of them")
+        return None
+    rule = scope.shared.bind_rule(scope.shared, owner, name)
+    if rule is not None:
+        scope.touched.update(rule.inputs)
+    return rule
+
+

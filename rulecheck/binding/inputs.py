@@ -1,0 +1,277 @@
+"""Inputs: what a design gives under a path, by the kind that the vocabulary tells."""
+
+from __future__ import annotations
+
+from dataclasses import replace
+from datetime import date
+from typing import Any
+
+from rulecheck.binding.bound import BROKEN, Bound, Date, Item, Items, Number, Truth, Words
+from rulecheck.binding.scope import Scope
+from rulecheck.diagnostics import Faults, Span
+from rulecheck.graph.figures import InputFact
+from rulecheck.model.design import NONE, LeafNode
+from rulecheck.model.vocabulary import Entry
+from rulecheck.operations.values import Monomial
+from rulecheck.quantity.dimension import PURE
+from rulecheck.quantity.quantity import Quantity
+from rulecheck.quantity.reading_records import read_stated
+from rulecheck.quantity.reading_values import read_day, read_point
+from rulecheck.quantity.units import Unit, UnitFault, find_unit
+from rulecheck.reading.nearest import nearest
+from rulecheck.reading.nodes import Located, Mapping, Sequence
+
+VALUE_KEYS = ("value", "uncertainty", "coverage", "shape", "tolerance", "basis", "reference", "definition")
+
+
+def unit_of(entry: Entry, scope: Scope) -> Unit:
+    """The unit in which an input is spoken of."""
+    try:
+        return find_unit(entry.unit or "1", scope_units(scope))
+    except UnitFault as fault:
+        scope.fault("unknown-unit", str(fault), entry.span, advice=fault.advice)
+        return find_unit("1")
+
+
+def scope_units(scope: Scope) -> dict[str, Any]:
+    """Base units that any ruleset in use declares."""
+    key = ("units",)
+    if key not in scope.shared.memo:
+        scope.shared.memo[key] = {name: unit for book in scope.shared.rulesets for name, unit in book.units.items()}
+    units: dict[str, Any] = scope.shared.memo[key]
+    return units
+
+
+def bind_input(scope: Scope, path: str, entry: Entry, span: Span) -> Bound:
+    """The value of an input that is no point: a number leaf, or a constant that is settled here."""
+    scope.touched.add(path)
+    if entry.kind == "collection":
+        return collection(scope, path, entry)
+    node = stated(scope, path)
+    if entry.kind == "number":
+        return _number(scope, path, entry, node, span)
+    if entry.kind == "flag":
+        return _flag(scope, path, entry, node, span)
+    if entry.kind == "date":
+        return _date(scope, path, node, span)
+    if entry.kind == "item":
+        return _item(scope, path, entry, node, span)
+    return _words(scope, path, entry, node, span)
+
+
+def stated(scope: Scope, path: str) -> LeafNode | None:
+    """What the design states under a path in this state; None where nothing is, or `none`."""
+    node = scope.view.design.leaves.get(path)
+    return node
+
+
+def scalar(node: LeafNode | None) -> Located | None:
+    """The text of a leaf, also where it stands with what is known about it."""
+    if isinstance(node, Mapping):
+        inner = node.get("value")
+        return inner if isinstance(inner, Located) else None
+    return node if isinstance(node, Located) else None
+
+
+def beside(node: LeafNode | None, key: str) -> str:
+    """What a value says of itself: its basis, reference, definition."""
+    inner = node.get(key) if isinstance(node, Mapping) else None
+    return inner.text if isinstance(inner, Located) else ""
+
+
+def quantity(scope: Scope, entry: Entry, node: LeafNode) -> Quantity | None:
+    """A leaf as a quantity; read once."""
+    known = scope.shared.parsed.get(id(node))
+    if known is not None:
+        return known[1]  # type: ignore[no-any-return]
+    value = _read(scope, entry, node)
+    scope.shared.parsed[id(node)] = (node, value)
+    return value
+
+
+def _read(scope: Scope, entry: Entry, node: LeafNode) -> Quantity | None:
+    if isinstance(node, Sequence) or scalar(node) is None:
+        scope.fault("bad-value", f"'{entry.path}' is a number", node.span, expected=f"a value in {entry.unit}, such as '10 {entry.unit}'")
+        return None
+    unit = unit_of(entry, scope)
+    return read_stated(
+        node, unit.dimension, own=scope_units(scope), missing_blank=node.span.file.startswith("--"), declared=unit,
+        faults=scope.shared.faults,
+    )  # fmt: skip
+
+
+def _number(scope: Scope, path: str, entry: Entry, node: LeafNode | None, span: Span) -> Bound:
+    unit = unit_of(entry, scope)
+    if node is None and entry.default:
+        node = _default(scope, entry)
+    counted = entry.unit == "1"
+    if node is None or (isinstance(node, Located) and node.text == NONE):
+        return Number(scope.bank.input(path, "number", unit.dimension, span), unit, counted)
+    read = quantity(scope, entry, node)
+    if read is None:
+        return BROKEN
+    if entry.definition and beside(node, "definition") != entry.definition:
+        found = beside(node, "definition") or "none"
+        what = f"{path} by the definition '{entry.definition}' (stated: {found})"
+        return Number(scope.missing(what, "number", unit.dimension, node.span), unit)
+    rational, power = read.si()
+    return Number(leaf(scope, path, entry, node, Monomial(rational, power), unit), unit, counted)
+
+
+def leaf(scope: Scope, path: str, entry: Entry, node: LeafNode, value: Monomial, unit: Unit) -> Any:
+    """The term of a stated number: an input of the graph, or a constant where a state or a default sets it."""
+    if path in scope.view.set_paths or node.span.file == "default":
+        return scope.bank.constant(value, "number", unit.dimension, node.span)
+    if path not in scope.shared.inputs:
+        scope.shared.inputs[path] = value
+        shown = scalar(node)
+        scope.shared.facts[path] = InputFact(
+            path, unit, node.span, basis_of(scope, path, node), beside(node, "reference"), shown.text if shown else ""
+        )
+    return scope.bank.input(path, "number", unit.dimension, node.span)
+
+
+def basis_of(scope: Scope, path: str, node: LeafNode) -> str:
+    """Where a value comes from: said beside it, or by the item that it belongs to."""
+    own = beside(node, "basis")
+    if own:
+        return own
+    item = path.rpartition(".")[0]
+    while item:
+        shared = scope.view.design.leaves.get(f"{item}.basis")
+        if isinstance(shared, Located):
+            return shared.text
+        entry = scope.shared.vocabulary.entry(f"{item}.basis")
+        if entry is not None:
+            return entry.default
+        item = item.rpartition(".")[0]
+    return ""
+
+
+def _default(scope: Scope, entry: Entry) -> Located:
+    """The default as a leaf; one object an entry, so that it is read once."""
+    key = ("default", entry.path)
+    if key not in scope.shared.memo:
+        scope.shared.memo[key] = Located(entry.default, Span("default", 0, len(entry.default), 1, 1))
+    made: Located = scope.shared.memo[key]
+    return made
+
+
+def _flag(scope: Scope, path: str, entry: Entry, node: LeafNode | None, span: Span) -> Bound:
+    if node is None and entry.default:
+        node = _default(scope, entry)
+    where = scalar(node)
+    if node is None or (where and where.text == NONE):
+        return Truth(scope.bank.input(path, "flag", PURE, span))
+    if where is None or where.text not in ("yes", "no"):
+        return scope.fault("bad-value", f"'{path}' is a flag", node.span, expected="yes or no")
+    return Truth(scope.bank.flag(where.text == "yes"))
+
+
+def _date(scope: Scope, path: str, node: LeafNode | None, span: Span) -> Bound:
+    where = scalar(node)
+    if node is None or (where and where.text == NONE):
+        return Date(scope.bank.input(path, "date", PURE, span))
+    if where is None:
+        return scope.fault("bad-value", f"'{path}' is a date", node.span, expected="a date such as 2027-03-01")
+    day = _day(where, scope.shared.faults)
+    return Date(scope.bank.day(day)) if day else BROKEN
+
+
+def _day(where: Located, faults: Faults) -> date | None:
+    return read_day(where, faults)
+
+
+def _item(scope: Scope, path: str, entry: Entry, node: LeafNode | None, span: Span) -> Bound:
+    where = scalar(node)
+    if where is None:
+        # Nothing is said: its fields are looked up under a name that no item has.
+        return Item(f"{entry.of}.*")
+    if where.text not in (scope.view.design.names(entry.of) or ()):
+        known = scope.view.design.names(entry.of) or ()
+        return scope.fault("unknown-name", f"'{where.text}' is no item of {entry.of}", where.span, advice=nearest(where.text, known))
+    return Item(f"{entry.of}.{where.text}")
+
+
+def _words(scope: Scope, path: str, entry: Entry, node: LeafNode | None, span: Span) -> Bound:
+    choices = entry.choices if entry.kind == "choice" else ()
+    where = scalar(node)
+    if where is None and node is None:
+        implied = _implied(path, entry) or entry.default
+        if implied:
+            return Words(scope.bank.text(implied), choices)
+    none_is_choice = NONE in choices
+    if where is None or (where.text == NONE and not none_is_choice):
+        return Words(scope.bank.input(path, "text", PURE, span), choices)
+    if choices and where.text not in choices:
+        return scope.fault(
+            "unknown-choice", f"'{where.text}' is not a choice of '{path}'", where.span,
+            expected=" or ".join(choices), advice=nearest(where.text, choices),
+        )
+    return Words(scope.bank.text(where.text), choices)
+
+
+def _implied(path: str, entry: Entry) -> str:
+    """Tyres and corners carry their axle and side in their name."""
+    if entry.path in ("tyres.*.axle", "corners.*.axle", "corners.*.side"):
+        words = path.split(".")[1].split("_")
+        return next((word for word in words if word in entry.choices), "")
+    return ""
+
+
+def collection(scope: Scope, path: str, entry: Entry) -> Items:
+    """A collection with its items in order; required items that are not there stand as items without fields."""
+    names = scope.view.design.names(path)
+    if names is None and scope.view.design.states_none(path):
+        names = ()
+    if names is None:
+        return Items(path, None, lacking=path, missing=max(entry.at_least, len(entry.items), 1))
+    gone = [name for name in entry.items if name not in names]
+    items = tuple(Item(f"{path}.{name}") for name in (*names, *gone))
+    short = entry.at_least - len(items)
+    if short > 0:
+        return Items(path, items, lacking=f"{path} (at least {entry.at_least} are needed)", missing=short)
+    return Items(path, items)
+
+
+def bind_point(scope: Scope, path: str, entry: Entry, span: Span) -> tuple[Number, Number, Number]:
+    """The coordinates of a point as they are stated, before the datum is added."""
+    scope.touched.add(path)
+    unit = find_unit(entry.unit or "mm")
+    node = stated(scope, path) or stated(scope, f"{path}.at")
+    coordinates = _coordinates(scope, node)
+    numbers = []
+    for axis, given in zip("xyz", coordinates, strict=True):
+        own = stated(scope, f"{path}.{axis}")
+        single = replace(entry, path=f"{entry.path}.{axis}", kind="number", unit=entry.unit or "mm", default="")
+        if own is None and given is not None and node is not None:
+            numbers.append(Number(_coordinate(scope, path, axis, single, node, given, unit), unit))
+        else:
+            bound = _number(scope, f"{path}.{axis}", single, own, span)
+            numbers.append(bound if isinstance(bound, Number) else Number(scope.missing(f"{path}.{axis}", "number", unit.dimension, span), unit))
+    return numbers[0], numbers[1], numbers[2]
+
+
+def _coordinate(scope: Scope, path: str, axis: str, entry: Entry, node: LeafNode, given: Quantity, unit: Unit) -> Any:
+    rational, power = given.si()
+    name = f"{path}.{axis}"
+    if path in scope.view.set_paths:
+        return scope.bank.constant(Monomial(rational, power), "number", unit.dimension, node.span)
+    return leaf(scope, name, entry, node, Monomial(rational, power), unit)
+
+
+def _coordinates(scope: Scope, node: LeafNode | None) -> tuple[Quantity | None, Quantity | None, Quantity | None]:
+    where = scalar(node)
+    if node is None or (where and where.text == NONE):
+        return (None, None, None)
+    known = scope.shared.parsed.get(id(node))
+    if known is None:
+        if where is None or isinstance(node, Sequence):
+            scope.fault("bad-value", "this is a point", node.span, expected="three lengths, such as '1250 0 310 mm'")
+            read = None
+        else:
+            read = read_point(where, scope_units(scope), scope.shared.faults)
+        known = (node, read)
+        scope.shared.parsed[id(node)] = known
+    return known[1] or (None, None, None)
+

@@ -1,0 +1,125 @@
+"""What binding shares, and what an expression is bound in."""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Mapping, Sequence
+from dataclasses import dataclass, field, replace
+from datetime import date
+from typing import Any
+
+from rulecheck.binding.bound import BROKEN, Bound, Broken
+from rulecheck.diagnostics import Faults, Related, Span
+from rulecheck.formula.syntax import Syntax
+from rulecheck.graph.conditions import BoundRule
+from rulecheck.graph.figures import DeclaredCheck, Figure, InputFact, Use
+from rulecheck.graph.terms import Bank, Constant, Term
+from rulecheck.model.design import Design, LeafNode
+from rulecheck.model.ruleset import PhysicsModule, Ruleset
+from rulecheck.model.vocabulary import Vocabulary
+from rulecheck.operations.operation import DimensionFault, Operation
+from rulecheck.operations.values import Reason
+from rulecheck.quantity.dimension import PURE, Dimension
+from rulecheck.reading.nodes import Located
+
+
+@dataclass(frozen=True, slots=True)
+class View:
+    """The design in one combination of states; `set_paths` are constants in it."""
+
+    design: Design
+    states: tuple[tuple[str, str], ...] = ()
+    set_paths: frozenset[str] = frozenset()
+
+
+Owner = Ruleset | PhysicsModule
+
+
+@dataclass(slots=True)
+class Shared:
+    """One binding: what it reads, and what it makes."""
+
+    base: View
+    vocabulary: Vocabulary
+    rulesets: tuple[Ruleset, ...]
+    physics: Callable[[str], PhysicsModule | None]
+    physics_names: tuple[str, ...]
+    day: date
+    faults: Faults
+    express: Callable[[Scope, Syntax], Bound]
+    bind_rule: Callable[[Shared, Ruleset, str], BoundRule | None]
+    bank: Bank = field(default_factory=Bank)
+    inputs: dict[str, Constant] = field(default_factory=dict)
+    facts: dict[str, InputFact] = field(default_factory=dict)
+    figures: dict[str, Figure] = field(default_factory=dict)
+    memo: dict[tuple[object, ...], Any] = field(default_factory=dict)
+    parsed: dict[int, tuple[LeafNode, Any]] = field(default_factory=dict)
+    stack: list[str] = field(default_factory=list)
+    declared: dict[str, DeclaredCheck] = field(default_factory=dict)
+
+
+@dataclass(frozen=True, slots=True)
+class Scope:
+    """Where an expression is bound: the state, the file whose names hold, the variables of loops around it."""
+
+    shared: Shared
+    view: View
+    owner: Owner
+    variables: Mapping[str, Bound] = field(default_factory=dict)
+    uses: dict[str, Use] = field(default_factory=dict)
+    touched: set[str] = field(default_factory=set)
+    figures: set[str] = field(default_factory=set)
+    loop: bool = False
+
+    @property
+    def bank(self) -> Bank:
+        """The terms of the graph."""
+        return self.shared.bank
+
+    @property
+    def units(self) -> Mapping[str, Dimension]:
+        """Base units of the owner's own."""
+        return self.owner.units if isinstance(self.owner, Ruleset) else {}
+
+    def express(self, syntax: Syntax) -> Bound:
+        """Bind an expression here."""
+        return self.shared.express(self, syntax)
+
+    def inside(self, variables: Sequence[tuple[str, Bound]], *, loop: bool = True) -> Scope:
+        """The scope inside a loop."""
+        return replace(self, variables={**self.variables, **dict(variables)}, loop=self.loop or loop)
+
+    def fresh(self, view: View, owner: Owner, variables: Mapping[str, Bound] | None = None) -> Scope:
+        """A scope for another formula, with its own record of what it uses."""
+        return Scope(self.shared, view, owner, variables or {})
+
+    def fault(
+        self,
+        code: str,
+        message: str,
+        span: Span | None,
+        *,
+        expected: str = "",
+        advice: str = "",
+        related: tuple[Related, ...] = (),
+    ) -> Broken:
+        """Note a fault; what is bound is broken."""
+        self.shared.faults.add(code, message, span, expected=expected, advice=advice, related=related)
+        return BROKEN
+
+    def apply(self, operation: Operation, arguments: Sequence[Term], span: Span | None) -> Term | None:
+        """An operation on terms of the right sorts, or None with the fault of dimensions noted."""
+        try:
+            dimension = operation.dimension([term.dimension for term in arguments])
+        except DimensionFault as fault:
+            self.fault("dimension-mismatch", str(fault), span, advice=fault.advice)
+            return None
+        return self.bank.apply(operation, arguments, dimension, span)
+
+    def missing(self, what: str, sort: Any, dimension: Dimension = PURE, span: Span | None = None) -> Term:
+        """An unknown value: something that the design should say is missing."""
+        return self.bank.unknown(Reason("missing", what, span), sort, dimension)
+
+
+def located(text: str, span: Span) -> Located:
+    """A text at a place, for formulas that the program itself supplies."""
+    return Located(text, span)

@@ -1,0 +1,168 @@
+"""Tables and lists of a ruleset."""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from dataclasses import replace
+
+from rulecheck.binding.bound import BROKEN, Bound, Broken, Choices, Number, Truth, Words, kind_of
+from rulecheck.binding.comparing import compare
+from rulecheck.binding.scope import Scope
+from rulecheck.formula.syntax import Comparison, Name, Syntax
+from rulecheck.graph.terms import Term
+from rulecheck.model.ruleset import Row, Table
+from rulecheck.operations.arithmetic import add, divide, multiply, subtract
+from rulecheck.operations.comparison import at_most, below
+from rulecheck.operations.operation import Operation, Sort
+from rulecheck.operations.values import Reason
+from rulecheck.quantity.dimension import PURE
+from rulecheck.quantity.dimension_names import name_of
+from rulecheck.quantity.units import Unit, UnitFault, find_unit
+from rulecheck.reading.nodes import Located
+
+Parse = Callable[[Scope, Located], Syntax | None]
+
+
+def table_value(scope: Scope, table: Table, key: Syntax | None, parse: Parse) -> Bound:
+    """The value of a table for its own key, or for another one."""
+    if key is None and len(table.over) == 1:
+        key = parse(scope, table.over[0])
+        if key is None:
+            return BROKEN
+    if len(table.over) > 1:
+        for over in table.over:
+            syntax = parse(scope, over)
+            if syntax is None or isinstance(scope.express(syntax), Broken):
+                return BROKEN
+    return _linear(scope, table, key, parse) if table.linear else _steps(scope, table, key, parse)
+
+
+def _no_row(table: Table, what: str) -> Reason:
+    return Reason("missing", f"a row of table '{table.name}' for {what}", table.span)
+
+
+def _steps(scope: Scope, table: Table, key: Syntax | None, parse: Parse) -> Bound:
+    rows: list[tuple[Term | None, Bound]] = []
+    for row in table.steps:
+        test = _test(scope, row, key, parse)
+        value = _value(scope, row.value, parse)
+        if isinstance(test, Broken) or isinstance(value, Broken):
+            return BROKEN
+        rows.append((test, value))
+    return _chain(scope, table, rows)
+
+
+def _value(scope: Scope, where: Located, parse: Parse) -> Bound:
+    """The value of a row: a formula; a bare word that is no name is a text."""
+    syntax = parse(scope, where)
+    if syntax is None:
+        return BROKEN
+    if isinstance(syntax, Name) and len(syntax.path) == 1:
+        before = list(scope.shared.faults.found)
+        bound = scope.express(syntax)
+        if isinstance(bound, Broken):
+            scope.shared.faults.found[:] = before
+            return Words(scope.bank.text(syntax.path[0]))
+        return bound
+    return scope.express(syntax)
+
+
+def _test(scope: Scope, row: Row, key: Syntax | None, parse: Parse) -> Term | None | Broken:
+    """The flag of a row; None for `otherwise`."""
+    if row.key is None:
+        return None
+    syntax = parse(scope, row.key)
+    if syntax is None:
+        return BROKEN
+    if row.test == "when":
+        bound = scope.express(syntax)
+        if isinstance(bound, (Truth, Broken)):
+            return bound.term if isinstance(bound, Truth) else BROKEN
+        return scope.fault("kind-mismatch", f"'when' takes a condition, and this is {kind_of(bound)}", syntax.span)
+    if key is None:
+        return scope.fault("bad-structure", "a table over several keys has rows with a condition each", row.key.span, expected="{when: condition, value: value}")
+    operator = {"up_to": "<=", "below": "<", "is": "=="}[row.test]
+    compared = compare(scope, Comparison((key, syntax), (operator,), span=syntax.span))  # type: ignore[arg-type]
+    return BROKEN if isinstance(compared, Broken) else compared[0].holds
+
+
+def _chain(scope: Scope, table: Table, rows: list[tuple[Term | None, Bound]]) -> Bound:
+    first = rows[0][1] if rows else None
+    if not isinstance(first, (Number, Words)):
+        return scope.fault("kind-mismatch", f"the values of table '{table.name}' are neither numbers nor texts", table.span)
+    sort: Sort = "number" if isinstance(first, Number) else "text"
+    dimension = first.dimension if isinstance(first, Number) else PURE
+    for _, value in rows:
+        if type(value) is not type(first) or (isinstance(value, Number) and value.dimension != dimension):
+            return scope.fault("dimension-mismatch", f"the values of table '{table.name}' are not all of one dimension", table.span)
+    term = scope.bank.unknown(_no_row(table, "this key"), sort, dimension)
+    for test, value in reversed(rows):
+        assert isinstance(value, (Number, Words))
+        term = value.term if test is None else scope.bank.branch(test, value.term, term, table.span)
+    if isinstance(first, Words):
+        texts = tuple(str(v.term.value) for _, v in rows if isinstance(v, Words) and v.term.kind == "constant")
+        return Words(term, texts)
+    unit = _unit(scope, table) or next((v.unit for _, v in rows if isinstance(v, Number) and v.unit), None)
+    return replace(first, term=term, unit=unit, bare=False)
+
+
+def _unit(scope: Scope, table: Table) -> Unit | None:
+    if table.unit is None:
+        return None
+    try:
+        return find_unit(table.unit.text, scope.units)
+    except UnitFault as fault:
+        scope.fault("unknown-unit", str(fault), table.unit.span, advice=fault.advice)
+        return None
+
+
+def _linear(scope: Scope, table: Table, key: Syntax | None, parse: Parse) -> Bound:
+    """Straight lines between rows; left of the first row and right of the last there is no value."""
+    at = scope.express(key) if key is not None else BROKEN
+    rows: list[tuple[Number, Number]] = []
+    for left, right in table.linear:
+        syntaxes = parse(scope, left), parse(scope, right)
+        bound = [scope.express(item) if item is not None else BROKEN for item in syntaxes]
+        if not all(isinstance(item, Number) for item in bound):
+            return BROKEN if any(isinstance(item, Broken) for item in bound) else scope.fault(
+                "kind-mismatch", f"a row of table '{table.name}' holds two numbers", left.span)
+        rows.append((bound[0], bound[1]))  # type: ignore[arg-type]
+    if isinstance(at, Broken):
+        return BROKEN
+    if not isinstance(at, Number):
+        return scope.fault("kind-mismatch", f"the key of table '{table.name}' is {kind_of(at)}", table.span, expected="a number")
+    for x, y in rows:
+        if x.dimension != at.dimension or y.dimension != rows[0][1].dimension:
+            return scope.fault("dimension-mismatch", f"table '{table.name}' has a row of {name_of(x.dimension)} and {name_of(y.dimension)}", table.span)
+    return _lines(scope, table, at, rows)
+
+
+def _lines(scope: Scope, table: Table, at: Number, rows: list[tuple[Number, Number]]) -> Bound:
+    dimension = rows[0][1].dimension
+    term = scope.bank.unknown(_no_row(table, "a key beyond its last row"), "number", dimension)
+    for (x0, y0), (x1, y1) in reversed(list(zip(rows, rows[1:], strict=False))):
+        run = _do(scope, subtract, x1.term, x0.term)
+        share = _do(scope, divide, _do(scope, subtract, at.term, x0.term), run)
+        height = _do(scope, add, y0.term, _do(scope, multiply, share, _do(scope, subtract, y1.term, y0.term)))
+        term = scope.bank.branch(_do(scope, at_most, at.term, x1.term), height, term, table.span)
+    before = scope.bank.unknown(_no_row(table, "a key left of its first row"), "number", dimension)
+    term = scope.bank.branch(_do(scope, below, at.term, rows[0][0].term), before, term, table.span)
+    return Number(term, _unit(scope, table) or rows[0][1].unit)
+
+
+def _do(scope: Scope, operation: Operation, *terms: Term) -> Term:
+    made = scope.apply(operation, terms, None)
+    assert made is not None
+    return made
+
+
+def list_of(scope: Scope, members: tuple[Located, ...], name: str, parse: Parse) -> Bound:
+    """A list: numbers with units are numbers, everything else is text."""
+    bound: list[Bound] = []
+    for member in members:
+        if member.text[:1].isdigit() and not member.quoted:
+            syntax = parse(scope, member)
+            bound.append(scope.express(syntax) if syntax is not None else BROKEN)
+        else:
+            bound.append(Words(scope.bank.text(member.text)))
+    return Choices(tuple(bound), name)

@@ -1,0 +1,91 @@
+"""What a rule asks, bound to terms: parts joined by `and` and `or`, for each element and state."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, field
+from datetime import date
+from typing import Literal
+
+from rulecheck.diagnostics import Span
+from rulecheck.graph.terms import Term
+from rulecheck.quantity.units import Unit
+
+PartKind = Literal["comparison", "flag", "evidence", "judgement"]
+
+
+@dataclass(frozen=True, slots=True)
+class Part:
+    """One condition. `holds` decides it; `margin` is its room to the limit in SI, None where it has no number.
+
+    `scale` is what the relative margin is measured by (SI, positive), None where there is none. `unit` is the unit of
+    the margin, `value` and `limit` the two sides of a comparison.
+    """
+
+    kind: PartKind
+    text: str
+    holds: Term
+    margin: Term | None = None
+    strict: bool = False
+    scale: Term | None = None
+    unit: Unit | None = None
+    value: Term | None = None
+    limit: Term | None = None
+    sense: str = ""
+    span: Span | None = field(default=None, compare=False)
+    place: Span | None = field(default=None, compare=False)
+
+
+@dataclass(frozen=True, slots=True)
+class AllOf:
+    """Joined by `and`: the least relative margin binds."""
+
+    parts: tuple[Condition, ...]
+
+
+@dataclass(frozen=True, slots=True)
+class AnyOf:
+    """Joined by `or`, or named branches: the greatest relative margin binds."""
+
+    parts: tuple[Condition, ...]
+    labels: tuple[str, ...] = ()
+
+
+Condition = Part | AllOf | AnyOf
+
+
+@dataclass(frozen=True, slots=True)
+class Case:
+    """A rule for one element in one combination of states. `applies` and `exempt` are flags; `gates` the conditions
+    behind `applies`, with their margins."""
+
+    element: str
+    states: tuple[tuple[str, str], ...]
+    applies: Term
+    exempt: Term
+    condition: Condition
+    because: str = ""
+    gates: tuple[Condition, ...] = ()
+
+
+@dataclass(frozen=True, slots=True)
+class Permit:
+    """A dispensation in force: its reference, its last day, and where it stands."""
+
+    reference: str
+    until: date
+    span: Span | None = field(default=None, compare=False)
+
+
+@dataclass(frozen=True, slots=True)
+class BoundRule:
+    """A rule with its cases, and one flag term that says whether it is met (what `rule(x)` reads)."""
+
+    name: str
+    ruleset: str
+    met: Term
+    cases: tuple[Case, ...]
+    empty: str
+    estimated: tuple[str, ...]
+    inputs: tuple[str, ...]
+    figures: tuple[str, ...]
+    permit: Permit | None = None

@@ -1,0 +1,77 @@
+"""Figures: the only things with a name."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from dataclasses import dataclass, field
+from datetime import date
+
+from rulecheck.diagnostics import Span
+from rulecheck.formula.syntax import Syntax
+from rulecheck.graph.conditions import BoundRule
+from rulecheck.graph.terms import Bank, Inputs, Term
+from rulecheck.quantity.units import Unit
+
+
+@dataclass(frozen=True, slots=True)
+class Use:
+    """A name in a formula with what it stands for: its term, unit, and the figure or input that it names."""
+
+    text: str
+    target: str
+    term: Term
+    unit: Unit | None
+
+
+@dataclass(frozen=True, slots=True)
+class Figure:
+    """A named value with the formula behind it. `valid` is a flag: within the range of validity, or None."""
+
+    name: str
+    term: Term
+    unit: Unit | None
+    syntax: Syntax
+    meaning: str
+    source: str
+    span: Span
+    uses: tuple[Use, ...]
+    valid: Term | None = None
+
+
+@dataclass(frozen=True, slots=True)
+class InputFact:
+    """What is known of an input beside its value."""
+
+    path: str
+    unit: Unit | None
+    span: Span | None
+    basis: str = ""
+    reference: str = ""
+    text: str = ""
+
+
+@dataclass(frozen=True, slots=True)
+class DeclaredCheck:
+    """A declared value beside what the car's own parts give; `agrees` is a flag."""
+
+    path: str
+    figure: str
+    relation: str
+    agrees: Term
+    declared: Term
+    computed: Term
+    unit: Unit | None
+    span: Span | None
+
+
+@dataclass(frozen=True, slots=True)
+class Graph:
+    """Everything that was bound: terms, values of inputs, figures and rules by name."""
+
+    bank: Bank
+    inputs: Inputs
+    facts: Mapping[str, InputFact]
+    figures: Mapping[str, Figure]
+    rules: tuple[BoundRule, ...]
+    day: date
+    declared: tuple[DeclaredCheck, ...] = field(default=())

@@ -1,0 +1,142 @@
+"""Terms: what formulas become. In SI units, without places, interned, acyclic.
+
+A bank makes the terms of one graph. Equal terms of one bank are one object, so identity is equality;
+`index` grows with creation and arguments come first, so order of index is a topological order.
+Kinds: `constant`; `input` (a number a design gives under a path, or lacks); `apply` (an operation);
+`branch` (condition, then, otherwise: reads its condition and the arm that it takes); `unknown`.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Iterator, Mapping
+from dataclasses import dataclass, field
+from datetime import date
+from fractions import Fraction
+from typing import Literal
+
+from rulecheck.diagnostics import Span
+from rulecheck.operations.operation import Operation, Sort
+from rulecheck.operations.values import Monomial, Reason
+from rulecheck.quantity.dimension import PURE, Dimension
+
+Kind = Literal["constant", "input", "apply", "branch", "unknown"]
+Constant = Monomial | bool | str
+
+
+@dataclass(frozen=True, slots=True, eq=False)
+class Term:
+    """One node of the graph. `value` is the constant, the input's path, or the reason it is unknown."""
+
+    index: int
+    kind: Kind
+    sort: Sort
+    dimension: Dimension
+    operation: Operation | None = None
+    arguments: tuple[Term, ...] = ()
+    value: Constant | Reason | None = None
+    path: str = ""
+
+
+@dataclass(slots=True)
+class Bank:
+    """Makes and keeps the terms of one graph; `spans[index]` is where a term was first written.
+
+    >>> bank = Bank()
+    >>> bank.number(Fraction(2)) is bank.number(Fraction(2))
+    True
+    """
+
+    terms: list[Term] = field(default_factory=list)
+    spans: list[Span | None] = field(default_factory=list)
+    _known: dict[tuple[object, ...], Term] = field(default_factory=dict)
+
+    def number(self, value: Fraction | int, dimension: Dimension = PURE, power: int = 0) -> Term:
+        """The constant `value * pi^power` in SI units."""
+        return self.constant(Monomial(Fraction(value), power), "number", dimension)
+
+    def day(self, value: date) -> Term:
+        """A date as a constant: its ordinal day."""
+        return self.constant(Monomial(Fraction(value.toordinal())), "date", PURE)
+
+    def flag(self, value: bool) -> Term:
+        """A constant flag."""
+        return self.constant(value, "flag", PURE)
+
+    def text(self, value: str) -> Term:
+        """A constant text or choice."""
+        return self.constant(value, "text", PURE)
+
+    def constant(self, value: Constant, sort: Sort, dimension: Dimension, span: Span | None = None) -> Term:
+        """Any constant."""
+        return self._make(("constant", sort, dimension, type(value), value), "constant", sort, dimension, span, value=value)
+
+    def input(self, path: str, sort: Sort, dimension: Dimension, span: Span | None = None) -> Term:
+        """What the design gives under a path."""
+        return self._make(("input", path, sort, dimension), "input", sort, dimension, span, path=path)
+
+    def unknown(self, reason: Reason, sort: Sort, dimension: Dimension = PURE) -> Term:
+        """A value that cannot be had, and why."""
+        return self._make(("unknown", reason, sort, dimension), "unknown", sort, dimension, reason.span, value=reason)
+
+    def apply(
+        self,
+        operation: Operation,
+        arguments: Iterable[Term],
+        dimension: Dimension,
+        span: Span | None = None,
+    ) -> Term:
+        """An operation on terms. The caller has checked kinds and dimensions."""
+        parts = tuple(arguments)
+        key = ("apply", operation.name, dimension, *(part.index for part in parts))
+        return self._make(key, "apply", operation.gives, dimension, span, operation=operation, arguments=parts)
+
+    def branch(self, condition: Term, then: Term, otherwise: Term, span: Span | None = None) -> Term:
+        """`then` where the condition holds, else `otherwise`; a known condition is settled here."""
+        if condition.kind == "constant":
+            return then if condition.value else otherwise
+        if then is otherwise:
+            # Not the same: an unknown condition makes the whole unknown (LANGUAGE, Meaning 1).
+            pass
+        parts = (condition, then, otherwise)
+        key = ("branch", *(part.index for part in parts))
+        return self._make(key, "branch", then.sort, then.dimension, span, arguments=parts)
+
+    def _make(
+        self,
+        key: tuple[object, ...],
+        kind: Kind,
+        sort: Sort,
+        dimension: Dimension,
+        span: Span | None,
+        *,
+        operation: Operation | None = None,
+        arguments: tuple[Term, ...] = (),
+        value: Constant | Reason | None = None,
+        path: str = "",
+    ) -> Term:
+        known = self._known.get(key)
+        if known is not None:
+            return known
+        term = Term(len(self.terms), kind, sort, dimension, operation, arguments, value, path)
+        self._known[key] = term
+        self.terms.append(term)
+        self.spans.append(span)
+        return term
+
+    def __iter__(self) -> Iterator[Term]:
+        return iter(self.terms)
+
+
+Inputs = Mapping[str, Monomial | bool | str]
+
+
+def cone(roots: Iterable[Term]) -> list[Term]:
+    """All terms that the roots rest on, arguments first, each once."""
+    seen: dict[int, Term] = {}
+    waiting = list(roots)
+    while waiting:
+        term = waiting.pop()
+        if term.index not in seen:
+            seen[term.index] = term
+            waiting.extend(term.arguments)
+    return [seen[index] for index in sorted(seen)]

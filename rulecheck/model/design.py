@@ -1,0 +1,168 @@
+"""A design laid flat, and overlays that change it."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Iterator, Mapping as MappingOf
+from dataclasses import dataclass, field, replace
+
+from rulecheck.diagnostics import Span
+from rulecheck.reading.nodes import Located, Mapping, Node, Sequence
+
+LeafNode = Located | Mapping | Sequence
+NONE = "none"
+
+
+def is_leaf(node: Node) -> bool:
+    """A scalar, a list, or a mapping that gives a value with what is known about it."""
+    return not isinstance(node, Mapping) or node.get("value") is not None
+
+
+def flat(path: str, node: Node) -> Iterator[tuple[str, LeafNode]]:
+    """Paths and leaves of a node; an empty mapping gives nothing."""
+    if is_leaf(node):
+        yield path, node
+    elif isinstance(node, Mapping):
+        for entry in node:
+            yield from flat(f"{path}.{entry.key.text}" if path else entry.key.text, entry.value)
+
+
+@dataclass(frozen=True, slots=True)
+class Overlay:
+    """Settings in order, path and value; a later setting of a path, or of what holds it, wins.
+
+    Laying one overlay after another is associative, and the empty overlay is the identity.
+
+    >>> Overlay() .then(Overlay()) == Overlay()
+    True
+    """
+
+    settings: tuple[tuple[str, LeafNode], ...] = ()
+
+    @classmethod
+    def of(cls, pairs: Iterable[tuple[str, Node]]) -> Overlay:
+        """An overlay from paths and nodes; mappings are laid flat."""
+        return cls(_settled([item for path, node in pairs for item in flat(path, node)]))
+
+    def then(self, later: Overlay) -> Overlay:
+        """This overlay with another laid over it."""
+        if not self.settings or not later.settings:
+            return later if not self.settings else self
+        return Overlay(_settled([*self.settings, *later.settings]))
+
+    @property
+    def paths(self) -> tuple[str, ...]:
+        """The paths that are set."""
+        return tuple(path for path, _ in self.settings)
+
+    def __bool__(self) -> bool:
+        return bool(self.settings)
+
+
+def _settled(settings: list[tuple[str, LeafNode]]) -> tuple[tuple[str, LeafNode], ...]:
+    """Without the settings that a later one makes void."""
+    kept: list[tuple[str, LeafNode]] = []
+    later: set[str] = set()
+    for path, node in reversed(settings):
+        if not any(holder in later for holder in holders(path)):
+            kept.append((path, node))
+            later.add(path)
+    return tuple(reversed(kept))
+
+
+def holders(path: str) -> Iterator[str]:
+    """The path itself and every path that holds it, longest first.
+
+    >>> list(holders("a.b.c"))
+    ['a.b.c', 'a.b', 'a']
+    """
+    yield path
+    while "." in path:
+        path = path.rpartition(".")[0]
+        yield path
+
+
+@dataclass(frozen=True, slots=True)
+class State:
+    """A named overlay on one axis."""
+
+    axis: str
+    name: str
+    overlay: Overlay
+    span: Span = field(compare=False)
+
+
+@dataclass(frozen=True, slots=True)
+class Design:
+    """One car. `leaves` has what is stated by path, `items` the names directly below each inner path in order.
+
+    `complete` are the collections that are closed, `absent` what is stated `none`, `keys` where each key stands.
+    """
+
+    file: str
+    name: str
+    revision: str
+    note: str
+    rulesets: tuple[Located, ...]
+    leaves: MappingOf[str, LeafNode]
+    items: MappingOf[str, tuple[str, ...]]
+    complete: frozenset[str]
+    absent: frozenset[str]
+    states: MappingOf[str, MappingOf[str, State]]
+    keys: MappingOf[str, Span]
+
+    def with_overlay(self, overlay: Overlay) -> Design:
+        """The design with the changes laid over it; the design itself stays."""
+        if not overlay:
+            return self
+        leaves, items, keys = dict(self.leaves), dict(self.items), dict(self.keys)
+        absent = set(self.absent)
+        for path, node in overlay.settings:
+            _lay(path, node, leaves, items, absent)
+            keys[path] = node.span
+        return replace(self, leaves=leaves, items=items, absent=frozenset(absent), keys=keys)
+
+    def names(self, path: str) -> tuple[str, ...] | None:
+        """The names directly below a path, or None where nothing is stated there."""
+        return self.items.get(path)
+
+    def states_none(self, path: str) -> bool:
+        """True where the path, or what holds it, is stated `none`."""
+        return any(holder in self.absent for holder in holders(path))
+
+
+def _lay(
+    path: str, node: LeafNode, leaves: dict[str, LeafNode], items: dict[str, tuple[str, ...]], absent: set[str]
+) -> None:
+    gone = isinstance(node, Located) and node.text == NONE
+    if gone and path in items:
+        _remove(path, leaves, items)
+        absent.add(path)
+        return
+    for holder in holders(path):
+        absent.discard(holder)
+    if gone:
+        absent.add(path)
+    elif path in items:
+        _remove(path, leaves, items)
+    leaves[path] = node
+    _register(path, items)
+
+
+def _remove(path: str, leaves: dict[str, LeafNode], items: dict[str, tuple[str, ...]]) -> None:
+    for name in items.pop(path, ()):
+        below = f"{path}.{name}"
+        leaves.pop(below, None)
+        _remove(below, leaves, items)
+    holder, _, name = path.rpartition(".")
+    if holder in items:
+        items[holder] = tuple(item for item in items[holder] if item != name)
+
+
+def _register(path: str, items: dict[str, tuple[str, ...]]) -> None:
+    """Make the names of a path known to those that hold it."""
+    while path:
+        holder, _, name = path.rpartition(".")
+        known = items.get(holder, ())
+        if name not in known:
+            items[holder] = (*known, name)
+        path = holder

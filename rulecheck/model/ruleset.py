@@ -1,0 +1,191 @@
+"""Rulesets, physics modules and the house file as frozen values."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping as MappingOf
+from dataclasses import dataclass, field
+from datetime import date
+from typing import Literal
+
+from rulecheck.diagnostics import Span
+from rulecheck.model.vocabulary import Entry
+from rulecheck.quantity.dimension import Dimension
+from rulecheck.reading.nodes import Located, Node
+
+Standing = Literal["shall", "should", "may", "note"]
+EmptyMeans = Literal["open", "complies", "breach", "not applicable"]
+
+
+@dataclass(frozen=True, slots=True)
+class Window:
+    """First and last day on which something holds; both days included, None for no end."""
+
+    first: date | None = None
+    last: date | None = None
+
+    def holds(self, day: date) -> bool:
+        """True within the window.
+
+        >>> Window(date(2027, 1, 1), None).holds(date(2026, 12, 31))
+        False
+        """
+        return (self.first is None or self.first <= day) and (self.last is None or day <= self.last)
+
+
+@dataclass(frozen=True, slots=True)
+class EvidenceWanted:
+    """A document that a rule asks for."""
+
+    kind: Located
+    name: Located
+    due: Located | None
+    expires: bool
+
+
+@dataclass(frozen=True, slots=True)
+class Alternative:
+    """The conditions of a rule or of one branch; all that are given must hold."""
+
+    name: str
+    require: Located | None
+    evidence: EvidenceWanted | None
+    judgement: Located | None
+    when: Located | None
+
+
+@dataclass(frozen=True, slots=True)
+class Unless:
+    """An exemption."""
+
+    when: Located
+    because: str
+
+
+@dataclass(frozen=True, slots=True)
+class Origin:
+    """Where an older form of a rule stood, and what became of it."""
+
+    ruleset: str
+    span: Span
+    what: str
+
+
+@dataclass(frozen=True, slots=True)
+class Rule:
+    """One rule, as written. `own` are its own conditions, `branches` its alternatives; `states` is None for the design
+    as written, () for every state, else pairs of axis and names (() for every name)."""
+
+    name: str
+    span: Span
+    ruleset: str
+    clause: str
+    title: str
+    note: str
+    standing: Standing
+    own: Alternative
+    branches: tuple[Alternative, ...]
+    each: tuple[Located, ...]
+    empty: EmptyMeans
+    states: tuple[tuple[str, tuple[Located, ...]], ...] | None
+    when: tuple[Located, ...]
+    unless: Unless | None
+    scale: Located | None
+    valid: Window
+    measure: Node | None = None
+    scrutineer: Node | None = None
+    examples: tuple[Node, ...] = ()
+    history: tuple[Origin, ...] = ()
+
+
+@dataclass(frozen=True, slots=True)
+class Row:
+    """A row of a table: `test` is up_to, below, is, when or otherwise."""
+
+    test: str
+    key: Located | None
+    value: Located
+
+
+@dataclass(frozen=True, slots=True)
+class Table:
+    """A table by steps or straight lines."""
+
+    name: str
+    span: Span
+    over: tuple[Located, ...]
+    steps: tuple[Row, ...]
+    linear: tuple[tuple[Located, Located], ...]
+    unit: Located | None
+    meaning: str
+
+
+@dataclass(frozen=True, slots=True)
+class Formula:
+    """A figure defined by a formula: derived in a ruleset, or of a physics module."""
+
+    name: str
+    span: Span
+    formula: Located
+    unit: Located | None
+    meaning: str
+    source: str
+    valid: Located | None
+    loop: Located | None
+    of: Located | None
+
+
+@dataclass(frozen=True, slots=True)
+class Withdrawn:
+    """A rule that no longer holds."""
+
+    rule: Rule
+    reason: str
+    span: Span
+
+
+@dataclass(frozen=True, slots=True)
+class Ruleset:
+    """A rule book with what it extends already merged in; `needed` are the states by axis, with the paths they set."""
+
+    file: str
+    name: str
+    edition: str
+    note: str
+    valid: Window
+    units: MappingOf[str, Dimension]
+    inputs: tuple[Entry, ...]
+    tables: MappingOf[str, Table]
+    lists: MappingOf[str, tuple[Located, ...]]
+    derived: MappingOf[str, Formula]
+    needed: MappingOf[str, MappingOf[str, tuple[Located, ...]]]
+    rules: MappingOf[str, Rule]
+    withdrawn: tuple[Withdrawn, ...]
+    files: tuple[str, ...]
+    span: Span = field(compare=False)
+
+
+@dataclass(frozen=True, slots=True)
+class PhysicsModule:
+    """A named set of formulas."""
+
+    name: str
+    file: str
+    meaning: str
+    sources: MappingOf[str, str]
+    figures: MappingOf[str, Formula]
+    caution: str
+
+
+@dataclass(frozen=True, slots=True)
+class House:
+    """What the constructor adds."""
+
+    file: str
+    name: str
+    designs: tuple[Located, ...]
+    rulesets: tuple[Located, ...]
+    reserves: MappingOf[str, Located]
+    decision: str
+    fails_on: tuple[Located, ...]
+    eroded: MappingOf[str, Located]
+    ending: MappingOf[str, Located]

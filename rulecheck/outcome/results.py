@@ -1,0 +1,187 @@
+"""The results of `check` and `workings`."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from dataclasses import dataclass, field
+from typing import Literal
+
+Verdict = Literal["complies", "tight", "breach", "unproven", "open", "dispensed", "not applicable", "not followed"]
+VERDICTS: tuple[Verdict, ...] = (
+    "complies",
+    "tight",
+    "breach",
+    "unproven",
+    "open",
+    "dispensed",
+    "not applicable",
+    "not followed",
+)
+
+
+@dataclass(frozen=True, slots=True)
+class Amount:
+    """A number in a unit: `shown` for the screen, `exact` as a rational where it is one, `value` as a double."""
+
+    shown: str
+    unit: str
+    value: float | None = None
+    exact: str = ""
+
+    def __str__(self) -> str:
+        return self.shown if self.unit in ("", "1") else f"{self.shown} {self.unit}"
+
+
+@dataclass(frozen=True, slots=True)
+class Place:
+    """A place in a file."""
+
+    file: str
+    line: int
+    column: int
+
+    def __str__(self) -> str:
+        return f"{self.file}:{self.line}:{self.column}"
+
+
+@dataclass(frozen=True, slots=True)
+class PartResult:
+    """One condition of a rule, for one element in one case."""
+
+    text: str
+    kind: str
+    verdict: Verdict
+    reason: str
+    margin: Amount | None
+    strict: bool
+    relative_margin: float | None
+    value: Amount | None
+    limit: Amount | None
+    sense: str
+    element: str
+    state: Mapping[str, str]
+    place: Place | None
+    branch: str = ""
+
+
+@dataclass(frozen=True, slots=True)
+class BindingPart:
+    """What decides a rule: the part, the element, the states."""
+
+    part: str
+    element: str
+    state: Mapping[str, str]
+    branch: str = ""
+
+
+@dataclass(frozen=True, slots=True)
+class Finding:
+    """A rule with its verdict. `margin` is None where there is no number."""
+
+    name: str
+    ruleset: str
+    clause: str
+    title: str
+    standing: str
+    verdict: Verdict
+    reason: str
+    margin: Amount | None
+    strict: bool
+    relative_margin: float | None
+    value: Amount | None
+    limit: Amount | None
+    sense: str
+    binding: BindingPart | None
+    parts: tuple[PartResult, ...]
+    rule_place: Place
+    value_place: Place | None
+    estimates: tuple[str, ...] = ()
+    outside_validity: tuple[str, ...] = ()
+    notes: tuple[str, ...] = ()
+    dispensation: str = ""
+    history: tuple[str, ...] = ()
+    ruleset_name: str = ""
+
+
+@dataclass(frozen=True, slots=True)
+class RulesetInfo:
+    """A ruleset that was checked."""
+
+    name: str
+    edition: str
+    file: str
+    withdrawn: tuple[str, ...] = ()
+    note: str = ""
+
+
+@dataclass(frozen=True, slots=True)
+class Report:
+    """The outcome of `check`."""
+
+    design: str
+    revision: str
+    file: str
+    date: str
+    verdict: Verdict
+    rulesets: tuple[RulesetInfo, ...]
+    rules: tuple[Finding, ...]
+    counts: Mapping[str, int]
+    tightest: str
+    notes: tuple[str, ...]
+    cautions: tuple[str, ...]
+    changes: tuple[str, ...]
+    reserve: str
+    version: str
+    files: Mapping[str, str] = field(default_factory=dict)
+
+
+@dataclass(frozen=True, slots=True)
+class Step:
+    """One step of a calculation."""
+
+    name: str
+    meaning: str
+    formula: str
+    numbers: str
+    result: str
+    exact: str
+    source: str
+    place: Place | None
+    outside_validity: bool = False
+    depth: int = 0
+
+
+@dataclass(frozen=True, slots=True)
+class ClosedFormResult:
+    """A margin as one formula of the inputs, in SI units."""
+
+    formula: str
+    derivatives: Mapping[str, str]
+    solved: Mapping[str, tuple[str, ...]]
+    conditions: tuple[str, ...]
+
+
+@dataclass(frozen=True, slots=True)
+class Working:
+    """The workings of one rule or figure."""
+
+    name: str
+    title: str
+    clause: str
+    verdict: str
+    margin: str
+    conditions: tuple[PartResult, ...]
+    steps: tuple[Step, ...]
+    closed_form: ClosedFormResult | None = None
+    caution: str = ""
+
+
+@dataclass(frozen=True, slots=True)
+class Workings:
+    """The outcome of `workings`."""
+
+    design: str
+    file: str
+    date: str
+    items: tuple[Working, ...]
+    version: str

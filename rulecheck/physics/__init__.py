@@ -1,0 +1,5 @@
+"""The physics modules: YAML files in the formula language, read when their prefix is used.
+
+Each figure states unit, meaning, source and range of validity; binding treats them like the derived figures of a
+ruleset. `declared` says which declared inputs a computed figure can contradict.
+"""

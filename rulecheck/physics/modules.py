@@ -1,0 +1,49 @@
+"""Reading physics modules: the built-in ones by name, from the package."""
+
+from __future__ import annotations
+
+from pathlib import Path
+
+from rulecheck.diagnostics import Faults
+from rulecheck.model.edge import PhysicsShape, shaped
+from rulecheck.model.names import check_name
+from rulecheck.model.ruleset import PhysicsModule
+from rulecheck.model.ruleset_reader import formula_of, text
+from rulecheck.reading.nodes import Mapping
+from rulecheck.reading.workspace import Workspace
+from rulecheck.reading.yaml_reader import read_yaml
+
+FOLDER = Path(__file__).parent
+BUILT_IN: tuple[str, ...] = tuple(sorted(path.stem for path in FOLDER.glob("*.yaml")))
+
+
+def built_in(name: str) -> PhysicsModule | None:
+    """The built-in module of a name, or None. Raises `Refused` where its file is at fault.
+
+    >>> built_in("mass").figures["total"].unit.text
+    'kg'
+    """
+    if name not in BUILT_IN:
+        return None
+    return read_module(Workspace(FOLDER), f"{name}.yaml")
+
+
+def read_module(workspace: Workspace, file: str) -> PhysicsModule:
+    """A module from a file. Raises `Refused`."""
+    root = read_yaml(workspace, file)
+    faults = Faults()
+    shape = shaped(PhysicsShape, root, faults)
+    faults.settle()
+    assert shape is not None
+    node = root.get("figures")
+    assert isinstance(node, Mapping)
+    figures = {}
+    for entry in node:
+        if check_name(entry.key, faults):
+            made = shape.figures[entry.key.text]
+            figures[entry.key.text] = formula_of(entry.key.text, entry.key, made)
+            if made.source is not None and made.source.text not in shape.sources:
+                faults.add("bad-physics", f"there is no source '{made.source.text}'", made.source.span, expected=" or ".join(shape.sources))
+    faults.settle()
+    sources = {name: where.text for name, where in shape.sources.items()}
+    return PhysicsModule(shape.module.text, f"physics/{file}", shape.meaning.text, sources, figures, text(shape.caution))

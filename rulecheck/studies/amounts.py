@@ -1,0 +1,112 @@
+"""Terms as amounts for the eye: in the unit that is spoken of, exact where they are rational."""
+
+from __future__ import annotations
+
+from datetime import date
+from fractions import Fraction
+
+from rulecheck.graph.terms import Bank, Term
+from rulecheck.operations.arithmetic import divide
+from rulecheck.operations.values import Bounds, Monomial, Reason, Unknown
+from rulecheck.outcome.results import Amount, Place
+from rulecheck.diagnostics import Span
+from rulecheck.quantity.numbers import show_exact, show_number
+from rulecheck.quantity.units import Unit
+from rulecheck.readers.exact import ExactReader
+
+DIGITS = 6
+
+
+def place(span: Span | None) -> Place | None:
+    """A span as the place that outputs name."""
+    return Place(span.file, span.line, span.column) if span is not None else None
+
+
+def amount(reader: ExactReader, bank: Bank, term: Term, unit: Unit | None, *, width: bool = False) -> Amount | None:
+    """A term in a unit, None where it is not known. With `width` the zero of the unit plays no part."""
+    if term.sort == "date":
+        return _day(reader, term)
+    if term.sort != "number":
+        return _word(reader, term)
+    symbol = unit.symbol if unit else ""
+    if width and unit is not None and unit.offset:
+        symbol = "K"
+    value = reader.value(term)
+    if isinstance(value, Unknown):
+        return None
+    if isinstance(value, Bounds):
+        return Amount(f"{_text(value.low)} to {_text(value.high)}", symbol)
+    exact = _exact(reader, bank, term, unit, width)
+    if exact is not None:
+        return Amount(show_number(exact, DIGITS), symbol, _double(exact), show_exact(exact))
+    return _rounded(reader, bank, term, unit, symbol)
+
+
+def _text(value: object) -> str:
+    return show_number(Fraction(str(value)))
+
+
+def _double(value: Fraction) -> float | None:
+    try:
+        return float(value)
+    except OverflowError:
+        return None
+
+
+def _exact(reader: ExactReader, bank: Bank, term: Term, unit: Unit | None, width: bool) -> Fraction | None:
+    if unit is None:
+        return reader.exact_fraction(term)
+    if not unit.power:
+        found = reader.exact_fraction(term)
+        if found is None:
+            return None
+        return found / unit.factor if width else unit.of_si(found)[0]
+    return reader.exact_fraction(_in_unit(bank, term, unit))
+
+
+def _in_unit(bank: Bank, term: Term, unit: Unit) -> Term:
+    one = bank.constant(Monomial(unit.factor, unit.power), "number", unit.dimension)
+    return bank.apply(divide, [term, one], divide.dimension([term.dimension, unit.dimension]))
+
+
+def _rounded(reader: ExactReader, bank: Bank, term: Term, unit: Unit | None, symbol: str) -> Amount | None:
+    scaled = _in_unit(bank, term, unit) if unit is not None else term
+    digits = reader.decimal(scaled, DIGITS)
+    if digits is None:
+        return None
+    rational = Fraction(digits)
+    if unit is not None and unit.offset and symbol != "K":
+        rational -= unit.offset / unit.factor
+    return Amount(show_number(rational, DIGITS), symbol, reader.approximate(scaled))
+
+
+def _day(reader: ExactReader, term: Term) -> Amount | None:
+    found = reader.value(term)
+    if isinstance(found, Unknown):
+        return None
+    ordinal = int(Fraction(str(found)))
+    return Amount(date.fromordinal(ordinal).isoformat(), "", float(ordinal))
+
+
+def _word(reader: ExactReader, term: Term) -> Amount | None:
+    found = reader.truth(term) if term.sort == "flag" else reader.value(term)
+    if isinstance(found, Unknown):
+        return None
+    return Amount({True: "yes", False: "no"}.get(found, str(found)) if isinstance(found, bool) else str(found), "")
+
+
+def reason_text(reasons: tuple[Reason, ...], most: int = 4) -> str:
+    """Reasons in words: what is missing, and where something is undefined."""
+    missing = list(dict.fromkeys(reason.text for reason in reasons if reason.kind == "missing"))
+    others = [_where(reason) for reason in reasons if reason.kind != "missing"]
+    told = []
+    if missing:
+        more = f" and {len(missing) - most} more" if len(missing) > most else ""
+        told.append(f"missing: {', '.join(missing[:most])}{more}")
+    told.extend(dict.fromkeys(others[:most]))
+    return "; ".join(told)
+
+
+def _where(reason: Reason) -> str:
+    place = f" ({reason.span})" if reason.span is not None else ""
+    return f"{reason.text}{place}"

@@ -1,0 +1,227 @@
+"""`check`: does it comply, and by how much."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Mapping, Sequence
+from dataclasses import dataclass, field
+from fractions import Fraction
+
+from rulecheck.graph.conditions import AnyOf, BoundRule, Case, Condition, Part
+from rulecheck.graph.figures import Graph
+from rulecheck.graph.terms import Term
+from rulecheck.model.ruleset import Rule
+from rulecheck.operations.comparison import below
+from rulecheck.operations.values import Unknown
+from rulecheck.outcome.results import BindingPart, Finding, PartResult, Verdict
+from rulecheck.quantity.dimension import PURE
+from rulecheck.quantity.quantity import Quantity
+from rulecheck.readers.exact import ExactReader
+from rulecheck.studies.amounts import amount, place, reason_text
+from rulecheck.studies.judging import Judge, Judged, all_of, verdict_of
+
+NEAR = Fraction(1, 100)
+
+
+@dataclass(frozen=True, slots=True)
+class Reserves:
+    """Room that the house keeps: by rule in the margin's unit, and as a share for every rule."""
+
+    by_rule: Mapping[str, Quantity] = field(default_factory=dict)
+    share: Fraction | None = None
+
+
+class Checker:
+    """Judges the rules of one graph, with one reader."""
+
+    def __init__(self, graph: Graph, reserves: Reserves | None = None) -> None:
+        self.graph, self.bank = graph, graph.bank
+        self.reader = ExactReader(graph.bank, graph.inputs)
+        self.judge = Judge(graph.bank, self.reader)
+        self.reserves = reserves or Reserves()
+
+    def finding(self, bound: BoundRule, rule: Rule, ruleset_name: str = "") -> Finding:
+        """One rule with its verdict."""
+        judged = [(case, *self._case(case)) for case in bound.cases]
+        verdict, binding, reason = self._rule(judged)
+        verdict, reason, permit = self._settled(bound, rule, verdict, binding, reason)
+        part = binding.part if binding else None
+        shown = part if part is not None and verdict not in ("open", "unproven") else None
+        relative = self.judge.relative(shown) if shown else None
+        return Finding(
+            name=rule.name,
+            ruleset=rule.ruleset,
+            clause=rule.clause,
+            title=rule.title or rule.name.replace("_", " "),
+            standing=rule.standing,
+            verdict=verdict,
+            reason=reason,
+            margin=self._amount(shown.margin, shown, width=True) if shown else None,
+            strict=bool(shown and shown.strict),
+            relative_margin=self.reader.approximate(relative) if relative is not None else None,
+            value=self._amount(part.value, part) if part else None,
+            limit=self._amount(part.limit, part) if part else None,
+            sense=part.sense if part else "",
+            binding=_binding(binding),
+            parts=tuple(self._parts(bound.cases)),
+            rule_place=place(part.span if part and part.span else rule.span) or place(rule.span),  # type: ignore[arg-type]
+            value_place=place(self._value_place(part)),
+            estimates=bound.estimated,
+            outside_validity=self._outside(bound),
+            notes=tuple(self._near(bound.cases)),
+            dispensation=permit,
+            history=tuple(f"{origin.what}: {origin.span}" for origin in rule.history),
+            ruleset_name=ruleset_name,
+        )
+
+    # --- cases -------------------------------------------------------------------------------------------------------
+
+    def _case(self, case: Case) -> tuple[Verdict, Judged, str]:
+        applies = self.reader.truth(case.applies)
+        exempt = self.reader.truth(case.exempt)
+        found = self.judge.condition(case.condition)
+        found = Judged(found.truth, found.part, case, found.branch, found.room)
+        if applies is False:
+            return "not applicable", found, case.because if case.applies is case.exempt else ""
+        if isinstance(applies, Unknown):
+            return verdict_of(applies), found, reason_text(applies.reasons)
+        if exempt is True:
+            return "not applicable", found, case.because or "exempt"
+        if isinstance(exempt, Unknown) and found.truth is not True:
+            return verdict_of(exempt), found, reason_text(exempt.reasons)
+        reason = reason_text(found.truth.reasons) if isinstance(found.truth, Unknown) else ""
+        return verdict_of(found.truth), found, reason
+
+    def _rule(self, judged: Sequence[tuple[Case, Verdict, Judged, str]]) -> tuple[Verdict, Judged | None, str]:
+        for verdict in ("breach", "open", "unproven", "complies"):
+            chosen = [(found, reason) for _, said, found, reason in judged if said == verdict]
+            if not chosen:
+                continue
+            if verdict in ("open", "unproven"):
+                reasons = dict.fromkeys(reason for _, reason in chosen if reason)
+                found = chosen[0][0]
+                return verdict, found, "; ".join(list(reasons)[:4])  # type: ignore[return-value]
+            return verdict, all_of([found for found, _ in chosen]), ""  # type: ignore[return-value]
+        if not judged:
+            return "not applicable", None, ""
+        numbered = [found for _, _, found, _ in judged if found.room is not None]
+        worst = all_of(numbered) if numbered else judged[0][2]
+        reason = next((said for _, _, _, said in judged if said), "its condition does not hold")
+        return "not applicable", worst, reason
+
+    def _settled(
+        self, bound: BoundRule, rule: Rule, verdict: Verdict, binding: Judged | None, reason: str
+    ) -> tuple[Verdict, str, str]:
+        permit = ""
+        if bound.permit is not None and verdict in ("breach", "open", "unproven"):
+            permit = f"{bound.permit.reference}, until {bound.permit.until.isoformat()}"
+            return "dispensed", f"dispensation {permit}", permit
+        if verdict == "breach" and rule.standing == "should":
+            return "not followed", reason, permit
+        if verdict == "complies" and binding is not None and binding.part is not None and self._is_tight(rule, binding.part):
+            return "tight", "inside the house reserve", permit
+        return verdict, reason, permit
+
+    def _is_tight(self, rule: Rule, part: Part) -> bool:
+        if part.margin is None:
+            return False
+        own = self.reserves.by_rule.get(rule.name)
+        if own is not None and own.unit.dimension == part.margin.dimension:
+            rational, power = own.unit.width_in_si(own.value)
+            if self._is_below(part.margin, self.bank.number(rational, part.margin.dimension, power)):
+                return True
+        relative = self.judge.relative(part) if self.reserves.share is not None else None
+        if relative is None or self.reserves.share is None:
+            return False
+        return self._is_below(relative, self.bank.number(self.reserves.share))
+
+    def _is_below(self, margin: Term, reserve: Term) -> bool:
+        return self.reader.truth(self.bank.apply(below, [margin, reserve], PURE)) is True
+
+    # --- what is shown -----------------------------------------------------------------------------------------------
+
+    def _amount(self, term: Term | None, part: Part, *, width: bool = False):  # type: ignore[no-untyped-def]
+        return None if term is None else amount(self.reader, self.bank, term, part.unit, width=width)
+
+    def _parts(self, cases: Iterable[Case]) -> Iterable[PartResult]:
+        for case in cases:
+            if self.reader.truth(case.applies) is False:
+                continue
+            for part, branch in _leaves(case.condition):
+                yield self.part_result(part, case, branch)
+
+    def part_result(self, part: Part, case: Case, branch: str) -> PartResult:
+        """One part for the report."""
+        truth = self.reader.truth(part.holds)
+        known = not isinstance(truth, Unknown)
+        relative = self.judge.relative(part) if known else None
+        return PartResult(
+            part.text,
+            part.kind,
+            verdict_of(truth),
+            "" if known else reason_text(truth.reasons),  # type: ignore[union-attr]
+            self._amount(part.margin, part, width=True) if known and part.margin is not None else None,
+            part.strict,
+            self.reader.approximate(relative) if relative is not None else None,
+            self._amount(part.value, part),
+            self._amount(part.limit, part),
+            part.sense,
+            case.element,
+            dict(case.states),
+            place(part.span),
+            branch,
+        )
+
+    def _value_place(self, part: Part | None):  # type: ignore[no-untyped-def]
+        if part is None:
+            return None
+        if part.place is not None:
+            return part.place
+        term = part.value
+        if term is None:
+            return None
+        while term.arguments and term.kind != "input":
+            inputs = [argument for argument in term.arguments if argument.kind in ("input", "apply", "branch")]
+            if not inputs:
+                break
+            term = inputs[0]
+        fact = self.graph.facts.get(term.path) if term.kind == "input" else None
+        return fact.span if fact else None
+
+    def _outside(self, bound: BoundRule) -> tuple[str, ...]:
+        names = []
+        for name in bound.figures:
+            figure = self.graph.figures.get(name)
+            if figure is not None and figure.valid is not None and self.reader.truth(figure.valid) is False:
+                names.append(name)
+        return tuple(names)
+
+    def _near(self, cases: Iterable[Case]) -> Iterable[str]:
+        """Conditions that are close to their own threshold: a small change would turn whether the rule applies."""
+        seen = set()
+        for case in cases:
+            for gate in case.gates:
+                for part, _ in _leaves(gate):
+                    if part.margin is None or part.text in seen or part.scale is None:
+                        continue
+                    seen.add(part.text)
+                    room = self.judge.room(part)
+                    if room is not None and abs(room) <= NEAR:
+                        yield f"its condition '{part.text}' is within 1 % of turning"
+
+
+def _leaves(condition: Condition, branch: str = "") -> Iterable[tuple[Part, str]]:
+    if isinstance(condition, Part):
+        yield condition, branch
+        return
+    labels = condition.labels if isinstance(condition, AnyOf) and condition.labels else (branch,) * len(condition.parts)
+    for part, label in zip(condition.parts, labels, strict=True):
+        yield from _leaves(part, label)
+
+
+def _binding(judged: Judged | None) -> BindingPart | None:
+    if judged is None or judged.part is None:
+        return None
+    case = judged.case
+    return BindingPart(judged.part.text, case.element if case else "", dict(case.states) if case else {}, judged.branch)
+
+

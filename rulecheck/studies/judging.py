@@ -1,0 +1,147 @@
+"""From conditions to verdicts: Kleene's logic for what holds, robustness semantics for the margin.
+
+Source of the margins of joined conditions: G. E. Fainekos and G. J. Pappas, Robustness of temporal logic specifications
+for continuous-time signals, Theoretical Computer Science 410 (2009): least for `and`, greatest for `or`; here by
+relative margin, so that parts of several units can be held against each other.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import dataclass
+from fractions import Fraction
+
+from rulecheck.graph.conditions import AnyOf, Case, Condition, Part
+from rulecheck.graph.terms import Bank, Term
+from rulecheck.operations.arithmetic import divide
+from rulecheck.operations.values import Bounds, Reason, Unknown
+from rulecheck.outcome.results import Verdict
+from rulecheck.readers.exact import ExactReader
+
+Truth = bool | Unknown
+
+
+@dataclass(frozen=True, slots=True)
+class Judged:
+    """A condition with its truth; `part` is what binds, in its case, on its branch; `room` orders margins."""
+
+    truth: Truth
+    part: Part | None
+    case: Case | None = None
+    branch: str = ""
+    room: Fraction | float | None = None
+
+
+class Judge:
+    """Judges the conditions of one graph."""
+
+    def __init__(self, bank: Bank, reader: ExactReader) -> None:
+        self.bank, self.reader = bank, reader
+        self._rooms: dict[int, Fraction | float | None] = {}
+
+    def part(self, part: Part) -> Judged:
+        """One part: its truth, and its relative margin where it has one."""
+        truth = self.reader.truth(part.holds)
+        return Judged(truth, part, room=self.room(part))
+
+    def room(self, part: Part) -> Fraction | float | None:
+        """What a part's margin is ordered by: the relative margin, else the margin itself (SI); None without number."""
+        if part.margin is None:
+            return None
+        term = self.relative(part)
+        found = None if term is None else self._number(term)
+        return self._number(part.margin) if found is None else found
+
+    def relative(self, part: Part) -> Term | None:
+        """The relative margin as a term; None where nothing measures it."""
+        if part.margin is None or part.scale is None:
+            return None
+        size = self.reader.sign(part.scale)
+        if isinstance(size, Unknown) or size == 0:
+            return None
+        return self.bank.apply(divide, [part.margin, part.scale], divide.dimension([part.margin.dimension, part.scale.dimension]))
+
+    def _number(self, term: Term) -> Fraction | float | None:
+        if term.index not in self._rooms:
+            value = self.reader.value(term)
+            if isinstance(value, Bounds):
+                self._rooms[term.index] = None
+            else:
+                exact = self.reader.exact_fraction(term)
+                # A ball is ordered by its middle: it only chooses which part is named, never whether it holds.
+                self._rooms[term.index] = self.reader.approximate(term) if exact is None else exact
+        return self._rooms[term.index]
+
+    def condition(self, condition: Condition) -> Judged:
+        """A tree of conditions."""
+        if isinstance(condition, Part):
+            return self.part(condition)
+        inner = [self.condition(part) for part in condition.parts]
+        if isinstance(condition, AnyOf):
+            if condition.labels:
+                inner = [_on_branch(item, label) for item, label in zip(inner, condition.labels, strict=True)]
+            return any_of(inner)
+        return all_of(inner)
+
+
+def _on_branch(item: Judged, label: str) -> Judged:
+    return Judged(item.truth, item.part, item.case, label, item.room)
+
+
+def all_of(items: Sequence[Judged]) -> Judged:
+    """`and`: a part that fails without a number decides; else the least relative margin binds."""
+    failing = [item for item in items if item.truth is False]
+    if failing:
+        bare = [item for item in failing if item.room is None]
+        return bare[0] if bare else _least(failing)
+    unknown = [item for item in items if isinstance(item.truth, Unknown)]
+    if unknown:
+        return _unknown(unknown)
+    numbered = [item for item in items if item.room is not None]
+    return _least(numbered) if numbered else items[0]
+
+
+def any_of(items: Sequence[Judged]) -> Judged:
+    """`or`: a part that holds without a number decides; else the greatest relative margin binds."""
+    holding = [item for item in items if item.truth is True]
+    if holding:
+        bare = [item for item in holding if item.room is None]
+        return bare[0] if bare else _greatest(holding)
+    unknown = [item for item in items if isinstance(item.truth, Unknown)]
+    if unknown:
+        return _unknown(unknown)
+    numbered = [item for item in items if item.room is not None]
+    return _greatest(numbered) if numbered else items[0]
+
+
+def _unknown(items: Sequence[Judged]) -> Judged:
+    reasons: dict[Reason, None] = {}
+    for item in items:
+        assert isinstance(item.truth, Unknown)
+        reasons.update(dict.fromkeys(item.truth.reasons))
+    first = items[0]
+    return Judged(Unknown(tuple(reasons)), first.part, first.case, first.branch)
+
+
+def _least(items: Sequence[Judged]) -> Judged:
+    return min(items, key=_order)
+
+
+def _greatest(items: Sequence[Judged]) -> Judged:
+    return max(items, key=_order)
+
+
+def _order(item: Judged) -> tuple[Fraction | float, bool]:
+    assert item.room is not None
+    # Of two margins of zero the strict one is the worse.
+    return item.room, not (item.part is not None and item.part.strict)
+
+
+def verdict_of(truth: Truth) -> Verdict:
+    """The verdict of a truth: unknown for want of something is `open`, else `unproven`."""
+    if truth is True:
+        return "complies"
+    if truth is False:
+        return "breach"
+    assert isinstance(truth, Unknown)
+    return "open" if any(reason.kind == "missing" for reason in truth.reasons) else "unproven"
