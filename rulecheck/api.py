@@ -136,7 +136,9 @@ def workings(
     loaded = _load(session, design, rules, settings, changes, states, needs_rules=False)
     graph = _bind(loaded, day, [name for name in names if name.partition(".")[0] in BUILT_IN])
     checker = Checker(graph, _reserves(loaded.house, None))
-    return workings_of(checker, loaded.design, loaded.rulesets, names, day, closed_form=closed_form, solve_for=solve_for)
+    return workings_of(
+        checker, loaded.design, loaded.rulesets, names, day, closed_form=closed_form, solve_for=solve_for
+    )
 
 
 def _load(
@@ -166,7 +168,11 @@ def _load(
     faults.settle()
     assert design is not None
     if needs_rules and not rulesets:
-        faults.add("no-rules", f"{design.file} names no ruleset", expected="rulesets: [name.ruleset.yaml] in the design, or --rules FILE")
+        faults.add(
+            "no-rules",
+            f"{design.file} names no ruleset",
+            expected="rulesets: [name.ruleset.yaml] in the design, or --rules FILE",
+        )
     design = design.with_overlay(overlay)
     design, said = _in_states(design, states or {}, faults)
     faults.settle()
@@ -232,7 +238,9 @@ def _setting(session: Session, path: str, text: str, faults: Faults) -> Overlay:
     file = f"--set {path}"
     session.extra[file] = text
     if not all(is_name(part) for part in path.split(".")):
-        faults.add("bad-name", f"'{path}' cannot be a path", Span(file, 0, 0, 1, 1), expected="--set tyres.rear.width=250mm")
+        faults.add(
+            "bad-name", f"'{path}' cannot be a path", Span(file, 0, 0, 1, 1), expected="--set tyres.rear.width=250mm"
+        )
         return Overlay()
     try:
         return Overlay.of([(path, parse_yaml(text, file))])
@@ -246,7 +254,12 @@ def _in_states(design: Design, states: Mapping[str, str], faults: Faults) -> tup
         state: State | None = design.states.get(axis, {}).get(name)
         if state is None:
             known = [f"{a}={s}" for a, named in design.states.items() for s in named]
-            faults.add("unknown-state", f"the design has no state {axis}={name}", expected=" or ".join(known), advice=nearest(f"{axis}={name}", known))
+            faults.add(
+                "unknown-state",
+                f"the design has no state {axis}={name}",
+                expected=" or ".join(known),
+                advice=nearest(f"{axis}={name}", known),
+            )
             continue
         design = design.with_overlay(state.overlay)
     return design, tuple(f"state {axis}: {name}" for axis, name in states.items())

@@ -51,9 +51,7 @@ class Loop:
     empty_name: tuple[tuple[str, Bound], ...]
 
 
-def loop(
-    scope: Scope, variables: Sequence[str], collection: Syntax, where: Syntax | None, span: Span
-) -> Loop | Broken:
+def loop(scope: Scope, variables: Sequence[str], collection: Syntax, where: Syntax | None, span: Span) -> Loop | Broken:
     """Expand a collection; elements that a condition certainly leaves out are left out."""
     items = _collection(scope, collection)
     if isinstance(items, Broken):
@@ -76,7 +74,9 @@ def loop(
         if isinstance(condition, Broken):
             return BROKEN
         if not isinstance(condition, Truth):
-            return scope.fault("kind-mismatch", f"'where' takes a condition, and this is {kind_of(condition)}", where.span)
+            return scope.fault(
+                "kind-mismatch", f"'where' takes a condition, and this is {kind_of(condition)}", where.span
+            )
         if condition.term.kind != "constant":
             elements.append(Element(label, pairs, condition.term))
         elif condition.term.value:
@@ -90,7 +90,9 @@ def _turns(
     paired = isinstance(collection, Call) and collection.function == "pairs"
     if paired != (len(variables) == 2):
         return scope.fault(
-            "wrong-arguments", "two variables go with pairs(collection), one with a collection", span,
+            "wrong-arguments",
+            "two variables go with pairs(collection), one with a collection",
+            span,
             expected="a, b in pairs(lamps), or a in lamps",
         )
     if not paired:
@@ -111,7 +113,12 @@ def _collection(scope: Scope, syntax: Syntax) -> Items | Broken:
     found = scope.express(syntax)
     if isinstance(found, (Items, Broken)):
         return found
-    return scope.fault("kind-mismatch", f"'{show(syntax)}' is {kind_of(found)}, not a collection", syntax.span, expected="a collection such as tyres")
+    return scope.fault(
+        "kind-mismatch",
+        f"'{show(syntax)}' is {kind_of(found)}, not a collection",
+        syntax.span,
+        expected="a collection such as tyres",
+    )
 
 
 def aggregate(scope: Scope, syntax: Aggregate) -> Bound:
@@ -161,7 +168,11 @@ def _quantified(scope: Scope, syntax: Aggregate, turns: Loop) -> Bound:
         if isinstance(bound, Broken):
             return BROKEN
         if not isinstance(bound, Truth):
-            return scope.fault("kind-mismatch", f"'{syntax.function}' takes a condition, and this is {kind_of(bound)}", syntax.expression.span)
+            return scope.fault(
+                "kind-mismatch",
+                f"'{syntax.function}' takes a condition, and this is {kind_of(bound)}",
+                syntax.expression.span,
+            )
         if not turns.elements:
             break
         if element.condition is None:
@@ -182,7 +193,9 @@ def _numbers(scope: Scope, syntax: Aggregate, turns: Loop, expression: Syntax) -
         if isinstance(bound, Broken):
             return BROKEN
         if not isinstance(bound, Number):
-            return scope.fault("kind-mismatch", f"'{syntax.function}' takes numbers, and this is {kind_of(bound)}", expression.span)
+            return scope.fault(
+                "kind-mismatch", f"'{syntax.function}' takes numbers, and this is {kind_of(bound)}", expression.span
+            )
         bounds.append(bound)
     first = bounds[0]
     counted = all(bound.counted for bound in bounds) and syntax.function in ("sum", "min", "max")

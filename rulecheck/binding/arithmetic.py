@@ -42,10 +42,14 @@ def literal(scope: Scope, syntax: NumberSyntax) -> Bound:
 
 def _period(scope: Scope, syntax: NumberSyntax, unit: Unit) -> Bound:
     if syntax.value.denominator != 1 or syntax.value < 0:
-        return scope.fault("bad-number", "a calendar period is a whole number", syntax.span, expected="such as 5 years, 30 days")
+        return scope.fault(
+            "bad-number", "a calendar period is a whole number", syntax.span, expected="such as 5 years, 30 days"
+        )
     count = int(syntax.value * unit.factor)
     if count > 120_000:
-        return scope.fault("too-large", "this period is longer than the calendar", syntax.span, expected="at most 10,000 years")
+        return scope.fault(
+            "too-large", "this period is longer than the calendar", syntax.span, expected="at most 10,000 years"
+        )
     return Period(0, count) if unit.dimension == CALENDAR else Period(count, 0)
 
 
@@ -89,7 +93,9 @@ def _numbers(scope: Scope, syntax: Binary, left: Number, right: Number) -> Bound
     for side, part in ((left, syntax.left), (right, syntax.right)):
         if side.offset:
             return scope.fault(
-                "dimension-mismatch", f"'{show(part)}' is a point on a scale and cannot be calculated with", part.span,
+                "dimension-mismatch",
+                f"'{show(part)}' is a point on a scale and cannot be calculated with",
+                part.span,
                 advice="write a difference in K",
             )
     if syntax.operator == "^":
@@ -130,11 +136,19 @@ def result_unit(operator: str, left: Number, right: Number) -> Unit | None:
 
 def _power(scope: Scope, syntax: Binary, base: Number, exponent: Number) -> Bound:
     if not exponent.dimension.is_pure:
-        return scope.fault("dimension-mismatch", f"an exponent is a pure number, and '{show(syntax.right)}' is {name_of(exponent.dimension)}", syntax.right.span)
+        return scope.fault(
+            "dimension-mismatch",
+            f"an exponent is a pure number, and '{show(syntax.right)}' is {name_of(exponent.dimension)}",
+            syntax.right.span,
+        )
     constant = constant_value(syntax.right)
     if constant is not None:
         term = scope.apply(rational_power(constant), [base.term], syntax.span)
-        unit = base.unit if constant == 1 or (base.dimension.is_pure and base.unit and not base.unit.power and base.unit.factor == 1) else None
+        unit = (
+            base.unit
+            if constant == 1 or (base.dimension.is_pure and base.unit and not base.unit.power and base.unit.factor == 1)
+            else None
+        )
         counted = base.counted and constant.denominator == 1 and constant >= 0
         return Number(term, unit, counted) if term else BROKEN
     if not base.dimension.is_pure:
@@ -181,8 +195,15 @@ def _dates(scope: Scope, syntax: Binary, left: Date, right: Bound) -> Bound:
         term = scope.apply(subtract, [days[0], days[1]], syntax.span)
         return Number(term, find_unit("days")) if term else BROKEN
     if isinstance(right, Number):
-        return scope.fault("kind-mismatch", "a date takes a calendar period", syntax.right.span, expected="such as 30 days or 5 years")
-    return scope.fault("kind-mismatch", f"a date does not go with {kind_of(right)} here", syntax.right.span, expected="a period, or for '-' a date")
+        return scope.fault(
+            "kind-mismatch", "a date takes a calendar period", syntax.right.span, expected="such as 30 days or 5 years"
+        )
+    return scope.fault(
+        "kind-mismatch",
+        f"a date does not go with {kind_of(right)} here",
+        syntax.right.span,
+        expected="a period, or for '-' a date",
+    )
 
 
 def _places(scope: Scope, syntax: Binary, left: Place, right: Place) -> Bound:

@@ -7,7 +7,8 @@ from datetime import date
 
 from rulecheck.binding.bound import Item
 from rulecheck.binding.express import express
-from rulecheck.binding.figures import figure, parsed, parsed_each, physics_figure, physics_module
+from rulecheck.binding.figures import figure, physics_figure, physics_module
+from rulecheck.binding.parsing import parsed, parsed_each
 from rulecheck.binding.rules import bind_rule
 from rulecheck.binding.scope import Scope, Shared, View
 from rulecheck.binding.tables import table_value
@@ -90,7 +91,14 @@ def _formula(scope: Scope, formula: Formula, name: str) -> None:
     elif formula.loop is not None and (head := parsed_each(scope, formula.loop)) is not None:
         collection = head.collection.path if hasattr(head.collection, "path") else ()
         stand_in = Item(f"{'.'.join(collection)}.*")
-        figure(scope.fresh(scope.view, owner), owner, formula, f"{name}({stand_in.path})", formula.span, {head.variables[0]: stand_in})
+        figure(
+            scope.fresh(scope.view, owner),
+            owner,
+            formula,
+            f"{name}({stand_in.path})",
+            formula.span,
+            {head.variables[0]: stand_in},
+        )
 
 
 def _wanted(scope: Scope, name: str) -> None:
@@ -99,7 +107,9 @@ def _wanted(scope: Scope, name: str) -> None:
     if module is None:
         return
     if "." in name:
-        physics_figure(scope, tuple(name.split(".")), module.figures[name.partition(".")[2]].span) if name.partition(".")[2] in module.figures else None
+        physics_figure(scope, tuple(name.split(".")), module.figures[name.partition(".")[2]].span) if name.partition(
+            "."
+        )[2] in module.figures else None
         return
     for formula in module.figures.values():
         if formula.loop is None and formula.of is None:

@@ -4,8 +4,8 @@ from __future__ import annotations
 
 from dataclasses import dataclass, replace
 
-from rulecheck.binding.bound import BROKEN, Bound, Broken, Choices, Date, Item, Number, Period, Truth, Words, kind_of
 from rulecheck.binding.arithmetic import mismatch
+from rulecheck.binding.bound import BROKEN, Bound, Broken, Choices, Date, Item, Number, Period, Truth, Words, kind_of
 from rulecheck.binding.scope import Scope
 from rulecheck.diagnostics import Span
 from rulecheck.formula.printing import show
@@ -106,7 +106,12 @@ def _sides(scope: Scope, syntax: Comparison) -> list[Side]:
     """The operands; a bare word is a choice only opposite an input that declares choices."""
     operands = syntax.operands
     first = operands[0]
-    if len(operands) == 2 and isinstance(first, Name) and len(first.path) == 1 and not isinstance(operands[1], (Name, Listing)):
+    if (
+        len(operands) == 2
+        and isinstance(first, Name)
+        and len(first.path) == 1
+        and not isinstance(operands[1], (Name, Listing))
+    ):
         second = _side(scope, operands[1], None)
         return [_side(scope, first, second.bound), second]
     if len(operands) == 2 and isinstance(first, Name) and len(first.path) == 1 and first.path[0] not in scope.variables:
@@ -155,8 +160,11 @@ def _choice(scope: Scope, syntax: Name, other: Words) -> Bound:
     if isinstance(bound, Broken):
         del scope.shared.faults.found[before:]
         return scope.fault(
-            "unknown-choice", f"'{word}' is not one of the choices here", syntax.span,
-            expected=" or ".join(other.choices), advice=nearest(word, other.choices),
+            "unknown-choice",
+            f"'{word}' is not one of the choices here",
+            syntax.span,
+            expected=" or ".join(other.choices),
+            advice=nearest(word, other.choices),
         )
     return bound
 
@@ -208,7 +216,9 @@ def _numbers(
     if operator in ("==", "!="):
         return _equality(scope, syntax, left, operator, right, text, negated)
     if syntax.within is not None:
-        return scope.fault("formula-syntax", "'within' belongs to '=='", syntax.within.span, expected="a == b within width")
+        return scope.fault(
+            "formula-syntax", "'within' belongs to '=='", syntax.within.span, expected="a == b within width"
+        )
     turned = FLIPPED[operator] if negated else operator
     limit_right = not right.rests_on_inputs or left.rests_on_inputs
     value, limit = (a, b) if limit_right else (b, a)
@@ -233,7 +243,9 @@ def _equality(
     if syntax.within is None:
         if not (a.counted and b.counted):
             return scope.fault(
-                "formula-syntax", f"'{text}' compares measured numbers for equality and does not say how close", syntax.span,
+                "formula-syntax",
+                f"'{text}' compares measured numbers for equality and does not say how close",
+                syntax.span,
                 expected="a == b within 1 mm",
             )
         flag = scope.apply(equal, [a.term, b.term], syntax.span)
@@ -245,7 +257,9 @@ def _equality(
         return BROKEN
     if not isinstance(width, Number) or width.dimension != a.dimension:
         found = name_of(width.dimension) if isinstance(width, Number) else kind_of(width)
-        return scope.fault("dimension-mismatch", f"the width is {found}, the sides are {name_of(a.dimension)}", syntax.within.span)
+        return scope.fault(
+            "dimension-mismatch", f"the width is {found}, the sides are {name_of(a.dimension)}", syntax.within.span
+        )
     apart = scope.apply(subtract, [a.term, b.term], syntax.span)
     gap = scope.apply(absolute, [apart], syntax.span) if apart else None
     if gap is None:
@@ -264,15 +278,20 @@ def _others(
     a, b = left.bound, right.bound
     if operator not in ("==", "!="):
         return scope.fault(
-            "kind-mismatch", f"'{show(left.syntax)}' is {kind_of(a)} and '{show(right.syntax)}' is {kind_of(b)}: these have no order",
-            syntax.span, expected="numbers of one dimension, or dates",
+            "kind-mismatch",
+            f"'{show(left.syntax)}' is {kind_of(a)} and '{show(right.syntax)}' is {kind_of(b)}: these have no order",
+            syntax.span,
+            expected="numbers of one dimension, or dates",
         )
     flag = _same(scope, a, b)
     if flag is None:
         advice = "quote the text" if isinstance(a, Words) != isinstance(b, Words) else ""
         return scope.fault(
-            "kind-mismatch", f"'{show(left.syntax)}' is {kind_of(a)} and '{show(right.syntax)}' is {kind_of(b)}", syntax.span,
-            expected="two values of one kind", advice=advice,
+            "kind-mismatch",
+            f"'{show(left.syntax)}' is {kind_of(a)} and '{show(right.syntax)}' is {kind_of(b)}",
+            syntax.span,
+            expected="two values of one kind",
+            advice=advice,
         )
     if (operator == "!=") != negated:
         flag = opposite(scope, flag)
@@ -298,7 +317,9 @@ def _same(scope: Scope, a: Bound, b: Bound) -> Term | None:
 def _membership(scope: Scope, left: Side, right: Side, text: str, negated: bool) -> Compared | Broken:
     if not isinstance(right.bound, Choices):
         return scope.fault(
-            "kind-mismatch", f"'{show(right.syntax)}' is {kind_of(right.bound)}, and 'in' asks for a list", right.syntax.span,
+            "kind-mismatch",
+            f"'{show(right.syntax)}' is {kind_of(right.bound)}, and 'in' asks for a list",
+            right.syntax.span,
             expected="a list of the ruleset, or [a, b, c]",
         )
     flags = []
@@ -306,12 +327,19 @@ def _membership(scope: Scope, left: Side, right: Side, text: str, negated: bool)
         if isinstance(member, Broken):
             return BROKEN
         flag = _same(scope, left.bound, member)
-        if flag is None and isinstance(left.bound, Number) and isinstance(member, Number) and left.bound.dimension == member.dimension:
+        if (
+            flag is None
+            and isinstance(left.bound, Number)
+            and isinstance(member, Number)
+            and left.bound.dimension == member.dimension
+        ):
             flag = scope.apply(equal, [left.bound.term, member.term], left.syntax.span)
         if flag is None:
             return scope.fault(
-                "kind-mismatch", f"'{show(left.syntax)}' is {kind_of(left.bound)}, and the list holds {kind_of(member)}",
-                left.syntax.span, expected="values of the kind that the list holds",
+                "kind-mismatch",
+                f"'{show(left.syntax)}' is {kind_of(left.bound)}, and the list holds {kind_of(member)}",
+                left.syntax.span,
+                expected="values of the kind that the list holds",
             )
         flags.append(flag)
     found = any_of(scope, flags)

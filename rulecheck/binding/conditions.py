@@ -35,7 +35,9 @@ class Builder:
         if isinstance(syntax, Not):
             return self.build(syntax.operand, negated=not negated)
         if isinstance(syntax, Joined):
-            return self._joined([self.build(item, negated=negated) for item in syntax.operands], (syntax.word == "and") != negated)
+            return self._joined(
+                [self.build(item, negated=negated) for item in syntax.operands], (syntax.word == "and") != negated
+            )
         if isinstance(syntax, Comparison):
             return self._comparison(syntax, negated)
         if isinstance(syntax, Aggregate) and syntax.function in ("every", "some"):
@@ -56,7 +58,9 @@ class Builder:
             return bound
         if not isinstance(bound, Truth):
             return self.scope.fault(
-                "kind-mismatch", f"a rule asks for a condition, and '{show(syntax)}' is {kind_of(bound)}", syntax.span,
+                "kind-mismatch",
+                f"a rule asks for a condition, and '{show(syntax)}' is {kind_of(bound)}",
+                syntax.span,
                 expected="a comparison such as x <= 10 mm",
             )
         holds = opposite(self.scope, bound.term) if negated else bound.term
@@ -96,7 +100,9 @@ class Builder:
             value = pair.value.term if pair.value else None
             limit = pair.limit.term if pair.limit else None
             unit = (pair.limit.unit if pair.limit else None) or (pair.value.unit if pair.value else None)
-            return Part("flag", pair.text, pair.holds, value=value, limit=limit, unit=unit, sense=pair.sense, span=pair.span)
+            return Part(
+                "flag", pair.text, pair.holds, value=value, limit=limit, unit=unit, sense=pair.sense, span=pair.span
+            )
         assert pair.value is not None and pair.limit is not None
         return Part(
             "comparison", pair.text, pair.holds, pair.margin, pair.strict, scale, self._unit(pair),
@@ -119,7 +125,7 @@ class Builder:
         if self.scale is not None and dimension == self.scale.dimension:
             return self.scale.term
         limits = [pair.limit for pair in pairs if pair.margin is not None and pair.limit is not None]
-        if not limits or any(not _measures(limit) for limit in limits) and len(limits) == 1:
+        if not limits or (any(not _measures(limit) for limit in limits) and len(limits) == 1):
             return None
         if any((limit.unit.symbol if limit.unit else "") in (*_NO_SCALE, "days", "day") for limit in limits):
             return None

@@ -4,8 +4,8 @@ from __future__ import annotations
 
 from rulecheck.binding.bound import Broken, Date, Item, Words
 from rulecheck.binding.conditions import open_part
-from rulecheck.binding.figures import parsed
 from rulecheck.binding.inputs import bind_input
+from rulecheck.binding.parsing import parsed
 from rulecheck.binding.scope import Scope
 from rulecheck.diagnostics import Span
 from rulecheck.graph.conditions import AllOf, Condition, Part
@@ -64,7 +64,7 @@ def _words(scope: Scope, path: str, span: Span) -> str | None:
     return None
 
 
-def _due(scope: Scope, wanted: EvidenceWanted) -> Term | None | Broken:
+def _due(scope: Scope, wanted: EvidenceWanted) -> Term | Broken | None:
     if wanted.due is None:
         return None
     syntax = parsed(scope, wanted.due)
@@ -129,7 +129,10 @@ def judgement(scope: Scope, rule: str, element: str, question: Located) -> Part:
     """A slot for a person: verdict, role, date and reason; what is not filled in is open."""
     design = scope.view.design
     key = element.replace(", ", "_")
-    base = next((path for path in (f"judgements.{rule}.{key}", f"judgements.{rule}") if f"{path}.verdict" in design.leaves), f"judgements.{rule}")
+    base = next(
+        (path for path in (f"judgements.{rule}.{key}", f"judgements.{rule}") if f"{path}.verdict" in design.leaves),
+        f"judgements.{rule}",
+    )
     scope.touched.add(base)
     missing = [name for name in ("verdict", "role", "reason") if _words(scope, f"{base}.{name}", question.span) is None]
     day = _date(scope, f"{base}.date", question.span)
@@ -141,6 +144,13 @@ def judgement(scope: Scope, rule: str, element: str, question: Located) -> Part:
         gone = scope.bank.unknown(Reason("missing", f"a judgement{told}", question.span), "flag")
         return Part("judgement", text, gone, span=question.span)
     if day is not None and _after(scope, day):
-        return Part("judgement", text, scope.missing("a judgement that is not of a later day", "flag", PURE, question.span), span=question.span)
+        return Part(
+            "judgement",
+            text,
+            scope.missing("a judgement that is not of a later day", "flag", PURE, question.span),
+            span=question.span,
+        )
     verdict = _words(scope, f"{base}.verdict", question.span)
-    return Part("judgement", text, scope.bank.flag(verdict == "complies"), span=question.span, place=design.keys.get(base))
+    return Part(
+        "judgement", text, scope.bank.flag(verdict == "complies"), span=question.span, place=design.keys.get(base)
+    )

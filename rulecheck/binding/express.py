@@ -78,7 +78,12 @@ def flag(scope: Scope, syntax: Syntax, what: str) -> Truth | Broken:
     bound = scope.express(syntax)
     if isinstance(bound, (Truth, Broken)):
         return bound
-    return scope.fault("kind-mismatch", f"{what} takes a condition, and this is {kind_of(bound)}", syntax.span, expected="a comparison or a flag")
+    return scope.fault(
+        "kind-mismatch",
+        f"{what} takes a condition, and this is {kind_of(bound)}",
+        syntax.span,
+        expected="a comparison or a flag",
+    )
 
 
 def _not(scope: Scope, syntax: Not) -> Bound:
@@ -103,7 +108,9 @@ def _conditional(scope: Scope, syntax: Conditional) -> Bound:
         return mismatch(scope, "choose", syntax.then, then, syntax.otherwise, otherwise, syntax.span)
     if type(then) is not type(otherwise) or not isinstance(then, (Number, Truth, Words, Date)):
         return scope.fault(
-            "kind-mismatch", f"the arms of 'if' are {kind_of(then)} and {kind_of(otherwise)}", syntax.span,
+            "kind-mismatch",
+            f"the arms of 'if' are {kind_of(then)} and {kind_of(otherwise)}",
+            syntax.span,
             expected="two numbers, flags, texts or dates",
         )
     assert isinstance(otherwise, (Number, Truth, Words, Date))

@@ -4,29 +4,20 @@ from __future__ import annotations
 
 from collections.abc import Mapping
 from dataclasses import dataclass, replace
-from fractions import Fraction
 
 from rulecheck.binding.bound import BROKEN, Bound, Broken, Date, Item, Number, Place, Truth, Words, kind_of
-from rulecheck.binding.inputs import quantity, scalar
-from rulecheck.binding.rule_margins import margin_term
+from rulecheck.binding.parsing import parsed, parsed_each
+from rulecheck.binding.reconciling import declared_figure
 from rulecheck.binding.scope import Owner, Scope
 from rulecheck.binding.tables import list_of, table_value
 from rulecheck.diagnostics import Refused, Span
-from rulecheck.formula.parser import parse_each, parse_formula
-from rulecheck.formula.syntax import Call, Each, Name, Syntax
-from rulecheck.graph.conditions import BoundRule
-from rulecheck.graph.figures import DeclaredCheck, Figure
+from rulecheck.formula.syntax import Call
+from rulecheck.graph.figures import Figure
 from rulecheck.graph.terms import Term
 from rulecheck.model.design import holders
 from rulecheck.model.ruleset import Formula, PhysicsModule, Ruleset
-from rulecheck.operations.arithmetic import absolute, subtract
-from rulecheck.operations.comparison import at_most
-from rulecheck.operations.logic import reconcile
-from rulecheck.physics.declared import DECLARED, Declared
 from rulecheck.quantity.dimension_names import name_of
-from rulecheck.quantity.quantity import Tolerance, Uncertainty
 from rulecheck.quantity.units import Unit, UnitFault, find_unit
-from rulecheck.reading.nearest import nearest
 from rulecheck.reading.nodes import Located
 
 
@@ -39,32 +30,6 @@ class Made:
     figures: frozenset[str]
 
 
-def parsed(scope: Scope, where: Located) -> Syntax | None:
-    """A formula as syntax, read once; None with the faults noted."""
-    key = ("syntax", where.span)
-    if key not in scope.shared.memo:
-        try:
-            scope.shared.memo[key] = parse_formula(where)
-        except Refused as refused:
-            scope.shared.faults.take(refused)
-            scope.shared.memo[key] = None
-    syntax: Syntax | None = scope.shared.memo[key]
-    return syntax
-
-
-def parsed_each(scope: Scope, where: Located) -> Each | None:
-    """A loop head as syntax; None with the faults noted."""
-    key = ("each", where.span)
-    if key not in scope.shared.memo:
-        try:
-            scope.shared.memo[key] = parse_each(where)
-        except Refused as refused:
-            scope.shared.faults.take(refused)
-            scope.shared.memo[key] = None
-    head: Each | None = scope.shared.memo[key]
-    return head
-
-
 # --- by name ---------------------------------------------------------------------------------------------------------
 
 
@@ -72,7 +37,9 @@ def own_figure(scope: Scope, name: str, span: Span) -> Bound | None:
     """A derived figure, table or list of the owner by its bare name; None where it has none."""
     owner = scope.owner
     if isinstance(owner, PhysicsModule):
-        return figure(scope, owner, owner.figures[name], f"{owner.name}.{name}", span) if name in owner.figures else None
+        return (
+            figure(scope, owner, owner.figures[name], f"{owner.name}.{name}", span) if name in owner.figures else None
+        )
     if name in owner.derived:
         return figure(scope, owner, owner.derived[name], name, span)
     if name in owner.tables:
@@ -106,14 +73,18 @@ def physics_figure(scope: Scope, path: tuple[str, ...], span: Span) -> Bound | N
     name = ".".join(path)
     entry = scope.shared.vocabulary.entry(name)
     if entry is not None and entry.computed and isinstance(bound, Number) and name in scope.view.design.leaves:
-        return _declared_figure(scope, name, bound)
+        return declared_figure(scope, name, bound)
     return bound
 
 
 def known_names(scope: Scope) -> list[str]:
     """Names of figures, for advice."""
     owner = scope.owner
-    own = owner.figures if isinstance(owner, PhysicsModule) else {**owner.derived, **owner.tables, **owner.lists, **owner.rules}
+    own = (
+        owner.figures
+        if isinstance(owner, PhysicsModule)
+        else {**owner.derived, **owner.tables, **owner.lists, **owner.rules}
+    )
     modules = (physics_module(scope, name) for name in scope.shared.physics_names)
     return [*own, *(f"{module.name}.{name}" for module in modules if module for name in module.figures)]
 
@@ -159,7 +130,9 @@ def module_call(scope: Scope, module_name: str, name: str, argument: Bound, span
 def _with_argument(scope: Scope, owner: Owner, formula: Formula, argument: Bound, span: Span) -> Bound:
     if formula.of is not None:
         if not isinstance(argument, Place):
-            return scope.fault("kind-mismatch", f"'{formula.name}' takes a point, and this is {kind_of(argument)}", span)
+            return scope.fault(
+                "kind-mismatch", f"'{formula.name}' takes a point, and this is {kind_of(argument)}", span
+            )
         label = ",".join(str(number.term.index) for number in (argument.x, argument.y, argument.z))
         return figure(scope, owner, formula, f"{formula.name}({label})", span, {formula.of.text: argument})
     if formula.loop is None:
@@ -169,7 +142,9 @@ def _with_argument(scope: Scope, owner: Owner, formula: Formula, argument: Bound
         return BROKEN
     if not isinstance(argument, Item):
         return scope.fault("kind-mismatch", f"'{formula.name}' takes an item, and this is {kind_of(argument)}", span)
-    return figure(scope, owner, formula, f"{_full(owner, formula)}({argument.path})", span, {head.variables[0]: argument})
+    return figure(
+        scope, owner, formula, f"{_full(owner, formula)}({argument.path})", span, {head.variables[0]: argument}
+    )
 
 
 def _full(owner: Owner, formula: Formula) -> str:
@@ -185,7 +160,9 @@ def figure(
     """Bind a named formula in its owner's name space and this state; each is bound once."""
     if variables is None and (formula.loop or formula.of):
         word = formula.loop.text if formula.loop else formula.of.text if formula.of else ""
-        return scope.fault("wrong-arguments", f"'{formula.name}' is defined for {word}", span, expected=f"{formula.name}(…)")
+        return scope.fault(
+            "wrong-arguments", f"'{formula.name}' is defined for {word}", span, expected=f"{formula.name}(…)"
+        )
     made = _made(scope, owner, formula, name, span, variables)
     scope.touched.update(made.touched)
     scope.figures.update(made.figures)
@@ -208,7 +185,9 @@ def _made(
             return base
     if name in shared.stack:
         chain = " -> ".join((*shared.stack[shared.stack.index(name) :], name))
-        scope.fault("cycle", f"'{name}' is defined by itself: {chain}", formula.span, advice="break the circle at one of them")
+        scope.fault(
+            "cycle", f"'{name}' is defined by itself: {chain}", formula.span, advice="break the circle at one of them"
+        )
         return Made(BROKEN, frozenset(), frozenset())
     shared.stack.append(name)
     made = _bind(scope.fresh(scope.view, owner, variables), owner, formula, name)
@@ -223,7 +202,9 @@ def affected(scope: Scope, touched: frozenset[str] | set[str]) -> bool:
     for path in scope.view.set_paths:
         if any(holder in touched for holder in holders(path)):
             for holder in holders(path):
-                if holder in touched and (holder == path or base.names(holder) != here.names(holder) or not _is_collection(scope, holder)):
+                if holder in touched and (
+                    holder == path or base.names(holder) != here.names(holder) or not _is_collection(scope, holder)
+                ):
                     return True
         if any(read.startswith(path + ".") for read in touched):
             return True
@@ -263,7 +244,9 @@ def _validity(scope: Scope, formula: Formula) -> Term | None:
     bound = apart.express(syntax) if syntax is not None else BROKEN
     if isinstance(bound, (Truth, Broken)):
         return bound.term if isinstance(bound, Truth) else None
-    scope.fault("kind-mismatch", f"a range of validity is a condition, and this is {kind_of(bound)}", formula.valid.span)
+    scope.fault(
+        "kind-mismatch", f"a range of validity is a condition, and this is {kind_of(bound)}", formula.valid.span
+    )
     return None
 
 
@@ -281,10 +264,20 @@ def _spoken(scope: Scope, formula: Formula, bound: Bound) -> Bound:
             )  # fmt: skip
         return replace(bound, unit=unit or bound.unit, bare=False)
     if formula.unit is not None:
-        return scope.fault("kind-mismatch", f"'{formula.name}' is {kind_of(bound)} and has no unit", formula.unit.span, advice="leave 'unit:' out")
+        return scope.fault(
+            "kind-mismatch",
+            f"'{formula.name}' is {kind_of(bound)} and has no unit",
+            formula.unit.span,
+            advice="leave 'unit:' out",
+        )
     if isinstance(bound, (Truth, Words, Date, Place)):
         return bound
-    return scope.fault("kind-mismatch", f"'{formula.name}' is {kind_of(bound)}", formula.formula.span, expected="a number, flag, text, date or point")
+    return scope.fault(
+        "kind-mismatch",
+        f"'{formula.name}' is {kind_of(bound)}",
+        formula.formula.span,
+        expected="a number, flag, text, date or point",
+    )
 
 
 def declared_unit(scope: Scope, where: Located | None) -> Unit | None:
@@ -296,102 +289,3 @@ def declared_unit(scope: Scope, where: Located | None) -> Unit | None:
     except UnitFault as fault:
         scope.fault("unknown-unit", str(fault), where.span, advice=fault.advice)
         return None
-
-
-# --- declared against computed ---------------------------------------------------------------------------------------
-
-
-def reconciled(scope: Scope, path: str, bound: Number, span: Span) -> Number:
-    """A declared input, unless the car's own parts are known to contradict it."""
-    declared = DECLARED.get(path)
-    if declared is None or path not in scope.view.design.leaves:
-        return bound
-    apart = scope.fresh(scope.view, scope.owner)
-    computed = physics_figure(apart, (declared.module, declared.figure), span)
-    if not isinstance(computed, Number) or computed.dimension != bound.dimension:
-        return bound
-    return replace(bound, term=_agreeing(scope, declared, bound, computed, bound.term))
-
-
-def _declared_figure(scope: Scope, name: str, computed: Number) -> Number:
-    """A computed figure beside its declared value."""
-    entry = scope.shared.vocabulary.entry(name)
-    assert entry is not None
-    read = quantity(scope, entry, scope.view.design.leaves[name])
-    if read is None:
-        return computed
-    rational, _ = read.si()
-    stated = Number(scope.bank.number(rational, computed.dimension), computed.unit)
-    return replace(computed, term=_agreeing(scope, DECLARED[name], stated, computed, computed.term))
-
-
-def _agreeing(scope: Scope, declared: Declared, stated: Number, computed: Number, kept: Term) -> Term:
-    width = scope.bank.number(_closeness(scope, declared.path), stated.dimension)
-    apart = scope.apply(subtract, [computed.term, stated.term], None)
-    gap = scope.apply(absolute, [apart], None) if apart and declared.relation == "equal" else apart
-    agrees = scope.apply(at_most, [gap, width], None) if gap else None
-    assert agrees is not None
-    node = scope.view.design.leaves[declared.path]
-    scope.shared.declared[declared.path] = DeclaredCheck(
-        declared.path, f"{declared.module}.{declared.figure}", declared.relation, agrees, stated.term, computed.term,
-        stated.unit, node.span,
-    )  # fmt: skip
-    made = scope.apply(reconcile, [kept, agrees], node.span)
-    assert made is not None
-    return made
-
-
-def _closeness(scope: Scope, path: str) -> Fraction:
-    """How closely a declared value is meant: its spread, else half a unit of its last digit (SI)."""
-    entry = scope.shared.vocabulary.entry(path)
-    node = scope.view.design.leaves[path]
-    read = quantity(scope, entry, node) if entry is not None else None
-    if read is None:
-        return Fraction(0)
-    spread = read.spread
-    if isinstance(spread, Uncertainty):
-        return spread.half_width * read.unit.factor
-    if isinstance(spread, Tolerance):
-        return max(abs(spread.upper), abs(spread.lower)) * read.unit.factor
-    where = scalar(node)
-    digits = where.text.split()[0] if where else ""
-    decimals = len(digits.partition(".")[2]) if "e" not in digits.lower() else 0
-    return Fraction(1, 2 * 10**decimals) * read.unit.factor
-
-
-# --- other rules -----------------------------------------------------------------------------------------------------
-
-
-def rule_reference(scope: Scope, syntax: Call) -> Bound:
-    """`rule(x)`: whether another rule is met."""
-    rule = _referred(scope, syntax)
-    return BROKEN if rule is None else Truth(rule.met)
-
-
-def margin_reference(scope: Scope, syntax: Call) -> Bound:
-    """`margin(x)`: another rule's margin."""
-    rule = _referred(scope, syntax)
-    return BROKEN if rule is None else margin_term(scope, rule, syntax.span)
-
-
-def _referred(scope: Scope, syntax: Call) -> BoundRule | None:
-    owner = scope.owner
-    argument = syntax.arguments[0] if len(syntax.arguments) == 1 else None
-    if not isinstance(argument, Name) or len(argument.path) != 1 or not isinstance(owner, Ruleset):
-        scope.fault("wrong-arguments", f"'{syntax.function}' takes the name of a rule", syntax.span, expected=f"{syntax.function}(overall_width)")
-        return None
-    name = argument.path[0]
-    if name not in owner.rules:
-        scope.fault("unknown-name", f"there is no rule '{name}'", argument.span, advice=nearest(name, owner.rules))
-        return None
-    marker = f"rule({name})"
-    if marker in scope.shared.stack:
-        chain = " -> ".join((*scope.shared.stack[scope.shared.stack.index(marker) :], marker))
-        scope.fault("cycle", f"rules refer to each other: {chain}", syntax.span, advice="break the circle at one of them")
-        return None
-    rule = scope.shared.bind_rule(scope.shared, owner, name)
-    if rule is not None:
-        scope.touched.update(rule.inputs)
-    return rule
-
-

@@ -10,16 +10,12 @@ from rulecheck.binding.bound import (
     Bound,
     Broken,
     Date,
-    Item,
-    Line,
     Number,
-    Place,
-    Plane,
-    Truth,
     kind_of,
 )
 from rulecheck.binding.geometry_calls import GEOMETRY, geometry
 from rulecheck.binding.presence import present
+from rulecheck.binding.references import margin_reference, rule_reference
 from rulecheck.binding.scope import Scope
 from rulecheck.formula.printing import show
 from rulecheck.formula.syntax import Call, Negative, Syntax
@@ -54,8 +50,8 @@ def call(scope: Scope, syntax: Call) -> Bound:
     name = syntax.function
     special: dict[str, Callable[[Scope, Call], Bound]] = {
         "present": present,
-        "rule": figures.rule_reference,
-        "margin": figures.margin_reference,
+        "rule": rule_reference,
+        "margin": margin_reference,
         "end_of_year": _end_of_year,
         "years_between": _years_between,
         "atan2": _atan2,
@@ -71,7 +67,12 @@ def call(scope: Scope, syntax: Call) -> Bound:
     if name in GEOMETRY:
         return geometry(scope, syntax)
     if name in _AGGREGATES:
-        return scope.fault("wrong-arguments", f"'{name}' runs over a collection", syntax.span, expected=f"{name}(… for x in collection)")
+        return scope.fault(
+            "wrong-arguments",
+            f"'{name}' runs over a collection",
+            syntax.span,
+            expected=f"{name}(… for x in collection)",
+        )
     own = figures.called_figure(scope, syntax)
     if own is not None:
         return own
@@ -83,7 +84,9 @@ def arguments(scope: Scope, syntax: Call, least: int, most: int) -> list[Bound] 
     """The arguments bound, or None with the fault noted."""
     if not least <= len(syntax.arguments) <= most:
         count = str(least) if least == most else f"{least} to {most}"
-        scope.fault("wrong-arguments", f"'{syntax.function}' takes {count} arguments, not {len(syntax.arguments)}", syntax.span)
+        scope.fault(
+            "wrong-arguments", f"'{syntax.function}' takes {count} arguments, not {len(syntax.arguments)}", syntax.span
+        )
         return None
     bound = [scope.express(argument) for argument in syntax.arguments]
     return None if any(isinstance(item, Broken) for item in bound) else bound
@@ -96,7 +99,11 @@ def numbers(scope: Scope, syntax: Call, least: int, most: int) -> list[Number] |
         return None
     for item, argument in zip(bound, syntax.arguments, strict=True):
         if not isinstance(item, Number):
-            scope.fault("kind-mismatch", f"'{syntax.function}' takes numbers, and '{show(argument)}' is {kind_of(item)}", argument.span)
+            scope.fault(
+                "kind-mismatch",
+                f"'{syntax.function}' takes numbers, and '{show(argument)}' is {kind_of(item)}",
+                argument.span,
+            )
             return None
     return [item for item in bound if isinstance(item, Number)]
 
@@ -108,7 +115,12 @@ def _one(scope: Scope, syntax: Call, operation: Operation) -> Bound:
     operand = given[0]
     if syntax.function in _TRIGONOMETRIC and operand.bare and _is_literal(syntax.arguments[0]):
         shown = show(syntax.arguments[0])
-        return scope.fault("ambiguous-angle", f"{shown} is {shown} rad", syntax.arguments[0].span, advice=f"write {shown} deg or {shown} rad")
+        return scope.fault(
+            "ambiguous-angle",
+            f"{shown} is {shown} rad",
+            syntax.arguments[0].span,
+            advice=f"write {shown} deg or {shown} rad",
+        )
     term = scope.apply(operation, [operand.term], syntax.span)
     if term is None:
         return BROKEN
@@ -127,7 +139,9 @@ def _round(scope: Scope, syntax: Call) -> Bound:
     whole, stepped = _ROUND[syntax.function]
     if len(given) == 1 and not given[0].dimension.is_pure:
         return scope.fault(
-            "wrong-arguments", f"'{syntax.function}' of {name_of(given[0].dimension)} needs the step", syntax.span,
+            "wrong-arguments",
+            f"'{syntax.function}' of {name_of(given[0].dimension)} needs the step",
+            syntax.span,
             expected=f"{syntax.function}(x, 1 mm)",
         )
     term = scope.apply(stepped if len(given) == 2 else whole, [item.term for item in given], syntax.span)
@@ -155,7 +169,11 @@ def _dates(scope: Scope, syntax: Call, count: int) -> list[Term] | None:
         return None
     for item, argument in zip(bound, syntax.arguments, strict=True):
         if not isinstance(item, Date):
-            scope.fault("kind-mismatch", f"'{syntax.function}' takes dates, and '{show(argument)}' is {kind_of(item)}", argument.span)
+            scope.fault(
+                "kind-mismatch",
+                f"'{syntax.function}' takes dates, and '{show(argument)}' is {kind_of(item)}",
+                argument.span,
+            )
             return None
     return [item.term for item in bound if isinstance(item, Date)]
 
@@ -170,5 +188,3 @@ def _years_between(scope: Scope, syntax: Call) -> Bound:
     days = _dates(scope, syntax, 2)
     term = scope.apply(years_between, days, syntax.span) if days else None
     return Number(term, find_unit("1"), counted=True) if term else BROKEN
-
-

@@ -63,7 +63,9 @@ def geometry(scope: Scope, syntax: Call) -> Bound:
     if result is not None:
         return result
     kinds = ", ".join(kind_of(item) for item in bound) or "nothing"
-    return scope.fault("wrong-arguments", f"'{syntax.function}' does not take {kinds}", syntax.span, expected=_USAGE[syntax.function])
+    return scope.fault(
+        "wrong-arguments", f"'{syntax.function}' does not take {kinds}", syntax.span, expected=_USAGE[syntax.function]
+    )
 
 
 def _view(scope: Scope, syntax: Call) -> tuple[tuple[Syntax, ...], str]:
@@ -90,7 +92,12 @@ def _point(scope: Scope, syntax: Call, given: list[Bound], view: str) -> Bound |
     for item, argument in zip(given, syntax.arguments, strict=True):
         assert isinstance(item, Number)
         if item.dimension != LENGTH:
-            return scope.fault("wrong-dimension", f"'{show(argument)}' is {name_of(item.dimension)}", argument.span, expected="a length")
+            return scope.fault(
+                "wrong-dimension",
+                f"'{show(argument)}' is {name_of(item.dimension)}",
+                argument.span,
+                expected="a length",
+            )
     x, y, z = given
     assert isinstance(x, Number) and isinstance(y, Number) and isinstance(z, Number)
     return Place(x, y, z)

@@ -91,7 +91,12 @@ def quantity(scope: Scope, entry: Entry, node: LeafNode) -> Quantity | None:
 
 def _read(scope: Scope, entry: Entry, node: LeafNode) -> Quantity | None:
     if isinstance(node, Sequence) or scalar(node) is None:
-        scope.fault("bad-value", f"'{entry.path}' is a number", node.span, expected=f"a value in {entry.unit}, such as '10 {entry.unit}'")
+        scope.fault(
+            "bad-value",
+            f"'{entry.path}' is a number",
+            node.span,
+            expected=f"a value in {entry.unit}, such as '10 {entry.unit}'",
+        )
         return None
     unit = unit_of(entry, scope)
     return read_stated(
@@ -189,7 +194,9 @@ def _item(scope: Scope, path: str, entry: Entry, node: LeafNode | None, span: Sp
         return Item(f"{entry.of}.*")
     if where.text not in (scope.view.design.names(entry.of) or ()):
         known = scope.view.design.names(entry.of) or ()
-        return scope.fault("unknown-name", f"'{where.text}' is no item of {entry.of}", where.span, advice=nearest(where.text, known))
+        return scope.fault(
+            "unknown-name", f"'{where.text}' is no item of {entry.of}", where.span, advice=nearest(where.text, known)
+        )
     return Item(f"{entry.of}.{where.text}")
 
 
@@ -205,8 +212,11 @@ def _words(scope: Scope, path: str, entry: Entry, node: LeafNode | None, span: S
         return Words(scope.bank.input(path, "text", PURE, span), choices)
     if choices and where.text not in choices:
         return scope.fault(
-            "unknown-choice", f"'{where.text}' is not a choice of '{path}'", where.span,
-            expected=" or ".join(choices), advice=nearest(where.text, choices),
+            "unknown-choice",
+            f"'{where.text}' is not a choice of '{path}'",
+            where.span,
+            expected=" or ".join(choices),
+            advice=nearest(where.text, choices),
         )
     return Words(scope.bank.text(where.text), choices)
 
@@ -248,7 +258,11 @@ def bind_point(scope: Scope, path: str, entry: Entry, span: Span) -> tuple[Numbe
             numbers.append(Number(_coordinate(scope, path, axis, single, node, given, unit), unit))
         else:
             bound = _number(scope, f"{path}.{axis}", single, own, span)
-            numbers.append(bound if isinstance(bound, Number) else Number(scope.missing(f"{path}.{axis}", "number", unit.dimension, span), unit))
+            numbers.append(
+                bound
+                if isinstance(bound, Number)
+                else Number(scope.missing(f"{path}.{axis}", "number", unit.dimension, span), unit)
+            )
     return numbers[0], numbers[1], numbers[2]
 
 
@@ -274,4 +288,3 @@ def _coordinates(scope: Scope, node: LeafNode | None) -> tuple[Quantity | None, 
         known = (node, read)
         scope.shared.parsed[id(node)] = known
     return known[1] or (None, None, None)
-

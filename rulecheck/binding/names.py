@@ -8,12 +8,14 @@ from rulecheck.binding import figures
 from rulecheck.binding.bound import BROKEN, Bound, Date, Item, Items, Number, Place, Truth, Words
 from rulecheck.binding.inputs import bind_input
 from rulecheck.binding.points import direction, place_of
+from rulecheck.binding.reconciling import reconciled
 from rulecheck.binding.scope import Scope
 from rulecheck.diagnostics import Span
 from rulecheck.formula.syntax import Member, Name
 from rulecheck.graph.figures import Use
 from rulecheck.graph.terms import Term
 from rulecheck.model.vocabulary import Entry
+from rulecheck.physics.declared import DECLARED
 from rulecheck.quantity.units import find_unit
 from rulecheck.reading.nearest import nearest
 
@@ -80,12 +82,23 @@ def member(scope: Scope, bound: Bound, path: tuple[str, ...], span: Span, said: 
         place = as_place(scope, bound, span)
         if place is None:
             known = scope.shared.vocabulary.below(bound.path)
-            return scope.fault("unknown-name", f"'{said}' has no field '{'.'.join(path)}'", span, expected=" or ".join(known[:12]), advice=nearest(path[0], known))
+            return scope.fault(
+                "unknown-name",
+                f"'{said}' has no field '{'.'.join(path)}'",
+                span,
+                expected=" or ".join(known[:12]),
+                advice=nearest(path[0], known),
+            )
         bound = place
     if isinstance(bound, Place) and len(path) == 1 and path[0] in ("x", "y", "z"):
         coordinate: Number = getattr(bound, path[0])
         return coordinate
-    return scope.fault("unknown-name", f"'{said}' has no field '{'.'.join(path)}'", span, expected="x, y or z of a point, or a field of an item")
+    return scope.fault(
+        "unknown-name",
+        f"'{said}' has no field '{'.'.join(path)}'",
+        span,
+        expected="x, y or z of a point, or a field of an item",
+    )
 
 
 def bind_member(scope: Scope, syntax: Member) -> Bound:
@@ -144,8 +157,17 @@ def _guarded(scope: Scope, path: str, entry: Entry, span: Span) -> Bound:
         return place_of(scope, path, entry, span)
     bound = bind_input(scope, path, entry, span)
     if isinstance(bound, Number):
-        return figures.reconciled(scope, path, bound, span)
+        return _checked(scope, path, bound, span)
     return bound
+
+
+def _checked(scope: Scope, path: str, bound: Number, span: Span) -> Number:
+    """A declared input beside what the car's own parts give."""
+    declared = DECLARED.get(path)
+    if declared is None or path not in scope.view.design.leaves:
+        return bound
+    apart = scope.fresh(scope.view, scope.owner)
+    return reconciled(scope, path, bound, figures.physics_figure(apart, (declared.module, declared.figure), span))
 
 
 def _unknown(scope: Scope, name: str, span: Span) -> Bound:

@@ -70,7 +70,13 @@ def _origin(scope: Scope, datum: str, span: Span, above: tuple[str, ...]) -> tup
         known = (*BUILT_IN_DATUMS, *(scope.view.design.names("datums") or ()))
         gone = scope.missing(f"datums.{datum}", "number", LENGTH, span)
         if scope.view.design.names("datums") is None or datum not in known:
-            scope.fault("unknown-name", f"there is no datum '{datum}'", span, expected=" or ".join(known), advice=nearest(datum, known))
+            scope.fault(
+                "unknown-name",
+                f"there is no datum '{datum}'",
+                span,
+                expected=" or ".join(known),
+                advice=nearest(datum, known),
+            )
         return (Number(gone, unit),) * 3
     x, y, z = bind_point(scope, f"{path}.at", entry, span)
     held = scalar(stated(scope, f"{path}.from"))

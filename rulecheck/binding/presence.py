@@ -16,13 +16,20 @@ from rulecheck.reading.nodes import Located
 def present(scope: Scope, syntax: Call) -> Bound:
     """Yes if stated; no if stated `none` or missing from a collection that is complete; unknown else."""
     if len(syntax.arguments) != 1 or not isinstance(syntax.arguments[0], Name):
-        return scope.fault("wrong-arguments", "'present' takes the name of one thing", syntax.span, expected="present(aero_surfaces.rear_wing)")
+        return scope.fault(
+            "wrong-arguments",
+            "'present' takes the name of one thing",
+            syntax.span,
+            expected="present(aero_surfaces.rear_wing)",
+        )
     name = syntax.arguments[0]
     variable = scope.variables.get(name.path[0])
     path = ".".join((variable.path, *name.path[1:])) if isinstance(variable, Item) else ".".join(name.path)
     if not _can_be(scope, path):
         known = [entry.path for entry in scope.shared.vocabulary]
-        return scope.fault("unknown-name", f"nothing can be stated under '{path}'", name.span, advice=nearest(path, known))
+        return scope.fault(
+            "unknown-name", f"nothing can be stated under '{path}'", name.span, advice=nearest(path, known)
+        )
     scope.touched.add(path)
     return Truth(presence(scope, path, name.span))
 
@@ -31,7 +38,11 @@ def _can_be(scope: Scope, path: str) -> bool:
     vocabulary = scope.shared.vocabulary
     holder = path.rpartition(".")[0]
     entry = vocabulary.entry(holder) if holder else None
-    return vocabulary.entry(path) is not None or vocabulary.knows_inside(path) or bool(entry and entry.kind == "collection")
+    return (
+        vocabulary.entry(path) is not None
+        or vocabulary.knows_inside(path)
+        or bool(entry and entry.kind == "collection")
+    )
 
 
 def presence(scope: Scope, path: str, span: Span) -> Term:

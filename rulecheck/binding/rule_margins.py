@@ -30,7 +30,9 @@ def margin_term(scope: Scope, rule: BoundRule, span: Span) -> Bound:
     for case in rule.cases:
         room = _room(scope, case.condition)
         if room is None:
-            return scope.fault("kind-mismatch", f"rule '{rule.name}' has parts without a number, and so no margin", span)
+            return scope.fault(
+                "kind-mismatch", f"rule '{rule.name}' has parts without a number, and so no margin", span
+            )
         if case.applies.kind == "constant" and not case.applies.value:
             continue
         rooms.append(room)

@@ -12,7 +12,7 @@ from rulecheck.binding.comparing import all_of, any_of, opposite
 from rulecheck.binding.conditions import Builder, certain, holds, open_part, scales_agree
 from rulecheck.binding.dispensations import dispensation
 from rulecheck.binding.documents import evidence, judgement
-from rulecheck.binding.figures import parsed, parsed_each
+from rulecheck.binding.parsing import parsed, parsed_each
 from rulecheck.binding.scope import Scope, Shared
 from rulecheck.binding.states import Stance, stances
 from rulecheck.graph.conditions import AllOf, AnyOf, BoundRule, Case, Condition
@@ -51,14 +51,18 @@ class _Binding:
             return None
         if not all(scales_agree(case.condition) for case in cases):
             self.record.fault(
-                "scale-needed", f"rule '{self.rule.name}' compares margins that have no common measure", self.rule.span,
+                "scale-needed",
+                f"rule '{self.rule.name}' compares margins that have no common measure",
+                self.rule.span,
                 expected="scale: a value that margins are measured by",
             )
             return None
         touched = sorted(self.record.touched)
         permit = dispensation(self.record, self.rule.name)
         met = self.record.bank.flag(True) if permit is not None else self._met(cases)
-        estimated = tuple(path for path in touched if self.shared.facts.get(path) and self.shared.facts[path].basis == "estimated")
+        estimated = tuple(
+            path for path in touched if self.shared.facts.get(path) and self.shared.facts[path].basis == "estimated"
+        )
         return BoundRule(
             self.rule.name, self.ruleset.file, met, tuple(cases), self.rule.empty, estimated, tuple(touched),
             tuple(sorted(self.record.figures)), permit,
@@ -101,12 +105,17 @@ class _Binding:
         for item in whole:
             count *= max(1, len(item.elements))
         if count > MOST_CASES:
-            scope.fault("too-large", f"rule '{self.rule.name}' has {count} elements", self.rule.span, expected=f"at most {MOST_CASES}")
+            scope.fault(
+                "too-large",
+                f"rule '{self.rule.name}' has {count} elements",
+                self.rule.span,
+                expected=f"at most {MOST_CASES}",
+            )
             return []
         cases = [self._lacking(scope, item) for item in whole if item.lacking]
         for elements in product(*(item.elements for item in whole)):
             inner = scope.inside([pair for element in elements for pair in element.variables], loop=False)
-            label = " × ".join(element.label for element in elements)
+            label = " with ".join(element.label for element in elements)
             case = self._case(inner, label, self._takes_part(scope, elements))
             cases.extend([case] if case is not None else [])
         if not cases:
@@ -182,7 +191,13 @@ class _Binding:
         parts: list[Condition | Broken] = []
         if alternative.when is not None:
             flag = self._flag(scope, alternative.when, "'when'")
-            parts.append(Broken() if flag is None else replace(certain(scope, True, f"open to it: {alternative.when.text}", alternative.when.span), holds=flag))
+            parts.append(
+                Broken()
+                if flag is None
+                else replace(
+                    certain(scope, True, f"open to it: {alternative.when.text}", alternative.when.span), holds=flag
+                )
+            )
         if alternative.require is not None:
             syntax = parsed(scope, alternative.require)
             parts.append(Broken() if syntax is None else Builder(scope, self._scale(scope)).build(syntax))
@@ -200,7 +215,9 @@ class _Binding:
         if isinstance(bound, Number):
             return bound
         if not isinstance(bound, Broken):
-            scope.fault("kind-mismatch", f"'scale' is {kind_of(bound)}", self.rule.scale.span, expected="a value such as 10 mm")
+            scope.fault(
+                "kind-mismatch", f"'scale' is {kind_of(bound)}", self.rule.scale.span, expected="a value such as 10 mm"
+            )
         return None
 
     def _branches(self, scope: Scope, element: str) -> Condition | Broken:
@@ -210,7 +227,13 @@ class _Binding:
             scope.touched.add(f"claims.{self.rule.name}")
             names = tuple(branch.name for branch in branches)
             if claim.text not in names:
-                return scope.fault("unknown-choice", f"rule '{self.rule.name}' has no branch '{claim.text}'", claim.span, expected=" or ".join(names), advice=nearest(claim.text, names))
+                return scope.fault(
+                    "unknown-choice",
+                    f"rule '{self.rule.name}' has no branch '{claim.text}'",
+                    claim.span,
+                    expected=" or ".join(names),
+                    advice=nearest(claim.text, names),
+                )
             branches = tuple(branch for branch in branches if branch.name == claim.text)
         made: list[Condition] = []
         for branch in branches:

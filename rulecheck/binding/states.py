@@ -31,13 +31,23 @@ def stances(shared: Shared, ruleset: Ruleset, rule: Rule) -> tuple[Stance, ...]:
     wanted = rule.states or tuple((axis, ()) for axis in ruleset.needed)
     axes = [_axis(shared, ruleset, rule, axis, names) for axis, names in wanted]
     if not axes:
-        shared.faults.add("unknown-state", "this rule asks for states, and its ruleset needs none", rule.span, expected="states_needed: {axis: [names]}")
+        shared.faults.add(
+            "unknown-state",
+            "this rule asks for states, and its ruleset needs none",
+            rule.span,
+            expected="states_needed: {axis: [names]}",
+        )
         return ()
     count = 1
     for states in axes:
         count *= len(states)
     if count > MOST_COMBINATIONS:
-        shared.faults.add("too-large", f"this rule asks for {count} combinations of states", rule.span, expected=f"at most {MOST_COMBINATIONS}")
+        shared.faults.add(
+            "too-large",
+            f"this rule asks for {count} combinations of states",
+            rule.span,
+            expected=f"at most {MOST_COMBINATIONS}",
+        )
         return ()
     return tuple(_stance(shared, ruleset, combination) for combination in product(*axes))
 
@@ -47,7 +57,13 @@ def _axis(shared: Shared, ruleset: Ruleset, rule: Rule, axis: str, names: tuple[
     defined = shared.base.design.states.get(axis, {})
     if not names and not needed:
         known = tuple(ruleset.needed)
-        shared.faults.add("unknown-state", f"the ruleset needs no states on an axis '{axis}'", rule.span, expected=" or ".join(known), advice=nearest(axis, known))
+        shared.faults.add(
+            "unknown-state",
+            f"the ruleset needs no states on an axis '{axis}'",
+            rule.span,
+            expected=" or ".join(known),
+            advice=nearest(axis, known),
+        )
         return []
     if not names:
         return [(axis, name) for name in needed]
@@ -55,7 +71,13 @@ def _axis(shared: Shared, ruleset: Ruleset, rule: Rule, axis: str, names: tuple[
         if name.text not in needed and name.text not in defined:
             known = (*needed, *defined)
             if nearest(name.text, known) or not known:
-                shared.faults.add("unknown-state", f"axis '{axis}' has no state '{name.text}'", name.span, expected=" or ".join(known), advice=nearest(name.text, known))
+                shared.faults.add(
+                    "unknown-state",
+                    f"axis '{axis}' has no state '{name.text}'",
+                    name.span,
+                    expected=" or ".join(known),
+                    advice=nearest(name.text, known),
+                )
     return [(axis, name.text) for name in names]
 
 

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Callable
 from dataclasses import replace
+from itertools import pairwise
 
 from rulecheck.binding.bound import BROKEN, Bound, Broken, Choices, Number, Truth, Words, kind_of
 from rulecheck.binding.comparing import compare
@@ -67,7 +68,7 @@ def _value(scope: Scope, where: Located, parse: Parse) -> Bound:
     return scope.express(syntax)
 
 
-def _test(scope: Scope, row: Row, key: Syntax | None, parse: Parse) -> Term | None | Broken:
+def _test(scope: Scope, row: Row, key: Syntax | None, parse: Parse) -> Term | Broken | None:
     """The flag of a row; None for `otherwise`."""
     if row.key is None:
         return None
@@ -80,7 +81,12 @@ def _test(scope: Scope, row: Row, key: Syntax | None, parse: Parse) -> Term | No
             return bound.term if isinstance(bound, Truth) else BROKEN
         return scope.fault("kind-mismatch", f"'when' takes a condition, and this is {kind_of(bound)}", syntax.span)
     if key is None:
-        return scope.fault("bad-structure", "a table over several keys has rows with a condition each", row.key.span, expected="{when: condition, value: value}")
+        return scope.fault(
+            "bad-structure",
+            "a table over several keys has rows with a condition each",
+            row.key.span,
+            expected="{when: condition, value: value}",
+        )
     operator = {"up_to": "<=", "below": "<", "is": "=="}[row.test]
     compared = compare(scope, Comparison((key, syntax), (operator,), span=syntax.span))  # type: ignore[arg-type]
     return BROKEN if isinstance(compared, Broken) else compared[0].holds
@@ -89,12 +95,16 @@ def _test(scope: Scope, row: Row, key: Syntax | None, parse: Parse) -> Term | No
 def _chain(scope: Scope, table: Table, rows: list[tuple[Term | None, Bound]]) -> Bound:
     first = rows[0][1] if rows else None
     if not isinstance(first, (Number, Words)):
-        return scope.fault("kind-mismatch", f"the values of table '{table.name}' are neither numbers nor texts", table.span)
+        return scope.fault(
+            "kind-mismatch", f"the values of table '{table.name}' are neither numbers nor texts", table.span
+        )
     sort: Sort = "number" if isinstance(first, Number) else "text"
     dimension = first.dimension if isinstance(first, Number) else PURE
     for _, value in rows:
         if type(value) is not type(first) or (isinstance(value, Number) and value.dimension != dimension):
-            return scope.fault("dimension-mismatch", f"the values of table '{table.name}' are not all of one dimension", table.span)
+            return scope.fault(
+                "dimension-mismatch", f"the values of table '{table.name}' are not all of one dimension", table.span
+            )
     term = scope.bank.unknown(_no_row(table, "this key"), sort, dimension)
     for test, value in reversed(rows):
         assert isinstance(value, (Number, Words))
@@ -124,23 +134,32 @@ def _linear(scope: Scope, table: Table, key: Syntax | None, parse: Parse) -> Bou
         syntaxes = parse(scope, left), parse(scope, right)
         bound = [scope.express(item) if item is not None else BROKEN for item in syntaxes]
         if not all(isinstance(item, Number) for item in bound):
-            return BROKEN if any(isinstance(item, Broken) for item in bound) else scope.fault(
-                "kind-mismatch", f"a row of table '{table.name}' holds two numbers", left.span)
+            return (
+                BROKEN
+                if any(isinstance(item, Broken) for item in bound)
+                else scope.fault("kind-mismatch", f"a row of table '{table.name}' holds two numbers", left.span)
+            )
         rows.append((bound[0], bound[1]))  # type: ignore[arg-type]
     if isinstance(at, Broken):
         return BROKEN
     if not isinstance(at, Number):
-        return scope.fault("kind-mismatch", f"the key of table '{table.name}' is {kind_of(at)}", table.span, expected="a number")
+        return scope.fault(
+            "kind-mismatch", f"the key of table '{table.name}' is {kind_of(at)}", table.span, expected="a number"
+        )
     for x, y in rows:
         if x.dimension != at.dimension or y.dimension != rows[0][1].dimension:
-            return scope.fault("dimension-mismatch", f"table '{table.name}' has a row of {name_of(x.dimension)} and {name_of(y.dimension)}", table.span)
+            return scope.fault(
+                "dimension-mismatch",
+                f"table '{table.name}' has a row of {name_of(x.dimension)} and {name_of(y.dimension)}",
+                table.span,
+            )
     return _lines(scope, table, at, rows)
 
 
 def _lines(scope: Scope, table: Table, at: Number, rows: list[tuple[Number, Number]]) -> Bound:
     dimension = rows[0][1].dimension
     term = scope.bank.unknown(_no_row(table, "a key beyond its last row"), "number", dimension)
-    for (x0, y0), (x1, y1) in reversed(list(zip(rows, rows[1:], strict=False))):
+    for (x0, y0), (x1, y1) in reversed(list(pairwise(rows))):
         run = _do(scope, subtract, x1.term, x0.term)
         share = _do(scope, divide, _do(scope, subtract, at.term, x0.term), run)
         height = _do(scope, add, y0.term, _do(scope, multiply, share, _do(scope, subtract, y1.term, y0.term)))

@@ -27,9 +27,9 @@ def _leaf(scope: Scope, path: str, node: LeafNode) -> None:
     entry = scope.shared.vocabulary.entry(path)
     holder, _, last = path.rpartition(".")
     above = scope.shared.vocabulary.entry(holder) if holder else None
-    if entry is None and above is not None and above.kind == "point" and last in ("x", "y", "z"):
-        bind_point(scope, holder, above, node.span)
-    elif entry is None and above is not None and above.kind == "point" and last in ("at", "datum"):
+    if (entry is None and above is not None and above.kind == "point" and last in ("x", "y", "z")) or (
+        entry is None and above is not None and above.kind == "point" and last in ("at", "datum")
+    ):
         bind_point(scope, holder, above, node.span)
     elif entry is None:
         if not _is_absent_item(scope, path, node):
@@ -44,7 +44,7 @@ def _is_absent_item(scope: Scope, path: str, node: LeafNode) -> bool:
 
 def _unknown(scope: Scope, path: str, span: Span | None) -> None:
     vocabulary = scope.shared.vocabulary
-    holder, _, last = path.rpartition(".")
+    holder = path.rpartition(".")[0]
     here = vocabulary.below(holder)
     known = [f"{holder}.{name}" for name in here] if here else [entry.path for entry in vocabulary]
     advice = nearest(path, known) or nearest(path, [entry.path for entry in vocabulary])
@@ -58,7 +58,13 @@ def _value(scope: Scope, path: str, entry: Entry, node: LeafNode) -> None:
     if isinstance(node, Mapping):
         for item in node:
             if item.key.text not in VALUE_KEYS:
-                scope.fault("unknown-key", f"a value has no '{item.key.text}'", item.key.span, expected=" or ".join(VALUE_KEYS), advice=nearest(item.key.text, VALUE_KEYS))
+                scope.fault(
+                    "unknown-key",
+                    f"a value has no '{item.key.text}'",
+                    item.key.span,
+                    expected=" or ".join(VALUE_KEYS),
+                    advice=nearest(item.key.text, VALUE_KEYS),
+                )
     if isinstance(node, Located) and node.text == NONE:
         return
     if entry.kind == "point":

@@ -109,9 +109,10 @@ def _stuck(wrong: Wrong) -> Advice:
     if sign == "." and re.search(r"\^-?[0-9]+$", unit):
         return Advice(message, f"a unit takes whole powers only; a broken one is written ({token.text} m)^2.5")
     if not unit.endswith(")") and (sign == "(" or re.match(r"\.[^\W\d]", wrong.text[wrong.start :])):
-        before, operator, name = re.fullmatch(r"(.*?)([*/]?)([^*/]*)", unit).groups()  # type: ignore[union-attr]
+        cut = max(unit.rfind("*"), unit.rfind("/"))
+        name = unit[cut + 1 :]
         goes_on = f"{name}(...)" if sign == "(" else name + wrong.text[wrong.start :].split(maxsplit=1)[0]
-        shown = f"{token.text} {before} {operator} {goes_on}" if operator else f"{token.text} * {goes_on}"
+        shown = f"{token.text} * {goes_on}" if cut < 0 else f"{token.text} {unit[:cut]} {unit[cut]} {goes_on}"
         return Advice(message, f"put a blank behind a unit, as in {quoted(shown)}")
     return Advice(message, "put a blank behind the unit")
 

@@ -68,7 +68,9 @@ class Bank:
 
     def constant(self, value: Constant, sort: Sort, dimension: Dimension, span: Span | None = None) -> Term:
         """Any constant."""
-        return self._make(("constant", sort, dimension, type(value), value), "constant", sort, dimension, span, value=value)
+        return self._make(
+            ("constant", sort, dimension, type(value), value), "constant", sort, dimension, span, value=value
+        )
 
     def input(self, path: str, sort: Sort, dimension: Dimension, span: Span | None = None) -> Term:
         """What the design gives under a path."""

@@ -20,9 +20,23 @@ DIMENSIONS = (
     Entry("dimensions.overall_length", "number", "Length over everything", unit="mm", term="vehicle length (ISO 612)"),
     Entry("dimensions.overall_width", "number", "Width over everything", unit="mm", term="vehicle width (ISO 612)"),
     Entry("dimensions.overall_height", "number", "Height above ground", unit="mm", term="vehicle height (ISO 612)"),
-    Entry("dimensions.front_overhang", "number", "Foremost point to front axle", unit="mm", term="front overhang (ISO 612)"),
-    Entry("dimensions.rear_overhang", "number", "Rear axle to rearmost point", unit="mm", term="rear overhang (ISO 612)"),
-    Entry("dimensions.ground_clearance", "number", "Lowest point above ground", unit="mm", term="ground clearance (ISO 612)"),
+    Entry(
+        "dimensions.front_overhang",
+        "number",
+        "Foremost point to front axle",
+        unit="mm",
+        term="front overhang (ISO 612)",
+    ),
+    Entry(
+        "dimensions.rear_overhang", "number", "Rear axle to rearmost point", unit="mm", term="rear overhang (ISO 612)"
+    ),
+    Entry(
+        "dimensions.ground_clearance",
+        "number",
+        "Lowest point above ground",
+        unit="mm",
+        term="ground clearance (ISO 612)",
+    ),
     *_numbers(
         "dimensions",
         "mm",
@@ -44,18 +58,39 @@ MASSES = (
     Entry("masses.*.datum", "datum", "What the place is counted from", default="front_axle"),
     Entry("masses.*.quantity", "number", "How many pieces", unit="1", default="1"),
     Entry("masses.*.mirror", "flag", "A second one stands at -y", default="no"),
-    Entry("masses.*.basis", "choice", "Where the values come from", choices=(
-        "measured", "weighed", "calculated", "drawing", "supplier", "estimated"), default="estimated"),
-    Entry("masses.*.maturity", "choice", "How far the part is designed", choices=(
-        "concept", "layout", "detail", "released", "made")),
-    Entry("masses.*.growth", "number", "Growth that is still expected, as a share of the mass", unit="%", default="0 %"),
-    Entry("masses.*.unsprung", "choice", "Axle whose unsprung mass it belongs to", choices=(
-        "front", "rear", "none"), default="none"),
+    Entry(
+        "masses.*.basis",
+        "choice",
+        "Where the values come from",
+        choices=("measured", "weighed", "calculated", "drawing", "supplier", "estimated"),
+        default="estimated",
+    ),
+    Entry(
+        "masses.*.maturity",
+        "choice",
+        "How far the part is designed",
+        choices=("concept", "layout", "detail", "released", "made"),
+    ),
+    Entry(
+        "masses.*.growth", "number", "Growth that is still expected, as a share of the mass", unit="%", default="0 %"
+    ),
+    Entry(
+        "masses.*.unsprung",
+        "choice",
+        "Axle whose unsprung mass it belongs to",
+        choices=("front", "rear", "none"),
+        default="none",
+    ),
     Entry("masses.*.owner", "text", "Who answers for it"),
     Entry("masses.*.group", "text", "Group of the ledger"),
     *(
-        Entry(f"masses.*.inertia.{axis}", "number", f"Moment of inertia of one piece about its own {name} axis",
-              unit="kg*m^2", default="0 kg*m^2")
+        Entry(
+            f"masses.*.inertia.{axis}",
+            "number",
+            f"Moment of inertia of one piece about its own {name} axis",
+            unit="kg*m^2",
+            default="0 kg*m^2",
+        )
         for axis, name in (("xx", "longitudinal"), ("yy", "transverse"), ("zz", "vertical"))
     ),
 )
@@ -90,8 +125,24 @@ TYRES = (
 
 AERO = (
     Entry("aero_surfaces", "collection", "Surfaces that make downforce or drag"),
-    Entry("aero_surfaces.*.kind", "choice", "What it is", choices=(
-        "wing", "flap", "splitter", "diffuser", "floor", "body", "dive_plane", "louvre", "duct", "mirror", "other")),
+    Entry(
+        "aero_surfaces.*.kind",
+        "choice",
+        "What it is",
+        choices=(
+            "wing",
+            "flap",
+            "splitter",
+            "diffuser",
+            "floor",
+            "body",
+            "dive_plane",
+            "louvre",
+            "duct",
+            "mirror",
+            "other",
+        ),
+    ),
     Entry("aero_surfaces.*.at", "point", "Where its force acts", unit="mm"),
     Entry("aero_surfaces.*.datum", "datum", "What the place is counted from", default="front_axle"),
     *_numbers(
@@ -100,7 +151,13 @@ AERO = (
         downforce_area="Downforce over dynamic pressure, positive down",
         drag_area="Drag over dynamic pressure, positive rearward",
     ),
-    *_numbers("aero_surfaces.*", "mm", span="Width across the car", chord="Depth along the car", height="Top above the reference plane"),
+    *_numbers(
+        "aero_surfaces.*",
+        "mm",
+        span="Width across the car",
+        chord="Depth along the car",
+        height="Top above the reference plane",
+    ),
     Entry("aero.reference_area", "number", "Area that coefficients are based on", unit="m^2"),
 )
 
@@ -116,8 +173,14 @@ PLACES = (
     Entry("edges.*.exposed", "flag", "A person can touch it"),
     Entry("members", "collection", "Members of the structure"),
     Entry("members.*.material", "text", "Grade of the material"),
-    *_numbers("members.*", "mm", outer_diameter="Outer diameter of the tube", wall="Wall thickness", length="Length between nodes",
-              bend_radius="Radius of the bend on the centre line"),
+    *_numbers(
+        "members.*",
+        "mm",
+        outer_diameter="Outer diameter of the tube",
+        wall="Wall thickness",
+        length="Length between nodes",
+        bend_radius="Radius of the bend on the centre line",
+    ),
     *_numbers("members.*", "MPa", yield_strength="Yield strength of the material"),
 )
 
@@ -158,8 +221,14 @@ SYSTEMS = (
     Entry("recovery.measuring_point", "choice", "Where power is measured", choices=("wheel", "shaft", "bus")),
     Entry("recovery.voltage", "number", "Greatest voltage of the store", unit="V"),
     Entry("diffuser.width_held", "choice", "What stays when tyres change", choices=("track", "outer")),
-    *_numbers("diffuser", "mm", gap="Gap to the tyre on each side", length="Length along the floor", inlet_height="Height of the throat",
-              width="Width between its side plates"),
+    *_numbers(
+        "diffuser",
+        "mm",
+        gap="Gap to the tyre on each side",
+        length="Length along the floor",
+        inlet_height="Height of the throat",
+        width="Width between its side plates",
+    ),
     Entry("diffuser.angle", "number", "Slope of the roof", unit="deg"),
     Entry("diffuser.flare", "number", "Outlet width over inlet width", unit="1"),
 )
@@ -188,9 +257,22 @@ SAFETY = (
 
 RECORDS = (
     Entry("evidence", "collection", "Certificates, drawings, measurement sheets and inspections"),
-    Entry("evidence.*.kind", "choice", "What it is", choices=(
-        "certificate", "homologation", "licence", "drawing", "measurement", "calculation", "inspection", "declaration",
-        "data_sheet")),
+    Entry(
+        "evidence.*.kind",
+        "choice",
+        "What it is",
+        choices=(
+            "certificate",
+            "homologation",
+            "licence",
+            "drawing",
+            "measurement",
+            "calculation",
+            "inspection",
+            "declaration",
+            "data_sheet",
+        ),
+    ),
     Entry("evidence.*.reference", "text", "Number or title of the document"),
     Entry("evidence.*.issuer", "text", "Who issued it"),
     Entry("evidence.*.part", "text", "Part that it covers"),

@@ -40,7 +40,12 @@ def declared_entries(
         key = node.key(path) if isinstance(node, Mapping) else None
         span = key.span if key else None
         if not all(part == "*" or is_name(part) for part in path.split(".")):
-            faults.add("bad-name", f"'{path}' cannot be the path of an input", span, expected="names joined by dots; * for any item")
+            faults.add(
+                "bad-name",
+                f"'{path}' cannot be the path of an input",
+                span,
+                expected="names joined by dots; * for any item",
+            )
             continue
         entries.extend(_rows(path, shape, rivals, file, span, faults))
     return tuple(entries)
@@ -70,14 +75,29 @@ def _rows(
     for name, inner in (shape.element or {}).items():
         rows.extend(_rows(f"{path}.*.{name}", inner, rivals, file, span, faults))
         if inner.kind is not None and inner.kind.text == "point":
-            rows.append(Entry(f"{path}.*.datum", "datum", "What its places are counted from", default="front_axle", origin=file, span=span))
+            rows.append(
+                Entry(
+                    f"{path}.*.datum",
+                    "datum",
+                    "What its places are counted from",
+                    default="front_axle",
+                    origin=file,
+                    span=span,
+                )
+            )
     return rows
 
 
 def _kind(path: str, shape: InputShape, span: Span | None, faults: Faults) -> Any:
     if shape.kind is not None:
         if shape.kind.text not in KINDS:
-            faults.add("unknown-choice", f"there is no kind '{shape.kind.text}' of input", shape.kind.span, expected=" or ".join(KINDS), advice=nearest(shape.kind.text, KINDS))
+            faults.add(
+                "unknown-choice",
+                f"there is no kind '{shape.kind.text}' of input",
+                shape.kind.span,
+                expected=" or ".join(KINDS),
+                advice=nearest(shape.kind.text, KINDS),
+            )
             return "number"
         return shape.kind.text
     if shape.choices is not None:
@@ -85,7 +105,12 @@ def _kind(path: str, shape: InputShape, span: Span | None, faults: Faults) -> An
     if shape.element is not None or shape.items is not None or shape.at_least is not None:
         return "collection"
     if shape.unit is None and shape.definition is None:
-        faults.add("missing-key", f"the input '{path}' has neither a unit nor a kind", span, expected="unit: mm, or kind: flag, …")
+        faults.add(
+            "missing-key",
+            f"the input '{path}' has neither a unit nor a kind",
+            span,
+            expected="unit: mm, or kind: flag, …",
+        )
     return "number"
 
 

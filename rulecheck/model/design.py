@@ -2,7 +2,8 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Iterator, Mapping as MappingOf
+from collections.abc import Iterable, Iterator
+from collections.abc import Mapping as MappingOf
 from dataclasses import dataclass, field, replace
 
 from rulecheck.diagnostics import Span

@@ -99,7 +99,9 @@ def _read_design(workspace: Workspace, file: str, asked: Span | None, above: tup
     if isinstance(base, Located):
         return _variant(workspace, file, root, base, above, faults)
     if root.get("design") is None and root.get("set") is not None:
-        faults.add("missing-key", "this is a change file, not a design", root.span, advice="lay it over a design with --change")
+        faults.add(
+            "missing-key", "this is a change file, not a design", root.span, advice="lay it over a design with --change"
+        )
         faults.settle()
     return _plain_design(workspace, file, root, faults)
 
@@ -109,8 +111,14 @@ def _plain_design(workspace: Workspace, file: str, root: Mapping, faults: Faults
     draft.walk("", Mapping(tuple(entry for entry in root if entry.key.text not in HEADER), root.span))
     for row in _ledger_rows(workspace, file, root.get("ledger"), faults):
         draft.row(row)
-    if root.get("set") is not None:
-        faults.add("unknown-key", "'set' stands in a file that changes nothing", root.get("set").span, advice="add 'changes:' with the design that it changes")  # type: ignore[union-attr]
+    changes = root.key("set")
+    if changes is not None:
+        faults.add(
+            "unknown-key",
+            "'set' stands in a file that changes nothing",
+            changes.span,
+            advice="add 'changes:' with the design that it changes",
+        )
     design = Design(
         file=file,
         name=_text(root, "design", faults, needed=True),
@@ -226,8 +234,17 @@ def _ledger_entry(node: Node, faults: Faults) -> tuple[Located | None, str, str]
         reference = node.get("file")
         if isinstance(reference, Located):
             delimiter = {"tab": "\t", "semicolon": ";", "comma": ","}.get(_text(node, "delimiter", faults), "")
-            return reference, delimiter or _text(node, "delimiter", faults) or ",", _text(node, "decimal", faults) or "."
-    faults.add("bad-structure", "a ledger is a file name", node.span, expected="parts.csv, or {file: parts.csv, delimiter: ';', decimal: ','}")
+            return (
+                reference,
+                delimiter or _text(node, "delimiter", faults) or ",",
+                _text(node, "decimal", faults) or ".",
+            )
+    faults.add(
+        "bad-structure",
+        "a ledger is a file name",
+        node.span,
+        expected="parts.csv, or {file: parts.csv, delimiter: ';', decimal: ','}",
+    )
     return None, ",", "."
 
 

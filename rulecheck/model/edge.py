@@ -55,7 +55,9 @@ class RuleShape(BranchShape):
     standing: Leaf | None = Field(None, description="shall, should, may or note")
     branches: dict[str, BranchShape] | None = Field(None, description="Alternatives, any of which will do")
     each: Leaf | list[Leaf] | None = Field(None, description="One margin for each element")
-    empty: Leaf | None = Field(None, description="What an empty collection means: open, complies, breach, not applicable")
+    empty: Leaf | None = Field(
+        None, description="What an empty collection means: open, complies, breach, not applicable"
+    )
     states: Leaf | dict[str, Leaf | list[Leaf]] | None = Field(None, description="every, or states by axis")
     unless: Leaves | None = Field(None, description="Exemption: when and because")
     scale: Leaf | None = Field(None, description="What relative margins are measured by")
@@ -174,11 +176,19 @@ def _note(item: Any, shape: type[Shape], root: Node, faults: Faults) -> None:
     key = str(location[-1]) if location else ""
     if item["type"] == "extra_forbidden":
         names = _fields(shape, location[:-1])
-        faults.add("unknown-key", f"there is no key '{key}' here", _key_span(root, location) or place, expected=" or ".join(names), advice=nearest(key, names))
+        faults.add(
+            "unknown-key",
+            f"there is no key '{key}' here",
+            _key_span(root, location) or place,
+            expected=" or ".join(names),
+            advice=nearest(key, names),
+        )
     elif item["type"] == "missing":
         faults.add("missing-key", f"'{key}:' is missing here", place, advice="add it")
     elif not known or not rest:
-        faults.add("bad-structure", f"this is not what '{_last_name(location)}' takes", place, expected=_wording(item["type"]))
+        faults.add(
+            "bad-structure", f"this is not what '{_last_name(location)}' takes", place, expected=_wording(item["type"])
+        )
 
 
 def _wording(kind: str) -> str:
@@ -188,7 +198,9 @@ def _wording(kind: str) -> str:
 
 
 def _last_name(location: tuple[Any, ...]) -> str:
-    names = [part for part in location if isinstance(part, str) and not part.startswith(("is-instance", "list[", "dict["))]
+    names = [
+        part for part in location if isinstance(part, str) and not part.startswith(("is-instance", "list[", "dict["))
+    ]
     return str(names[-1]) if names else "the file"
 
 

@@ -18,7 +18,12 @@ def read_house(workspace: Workspace, file: str = HOUSE_FILE) -> House:
     faults = Faults()
     shape = shaped(HouseShape, root, faults)
     if shape is not None and shape.decision is not None and shape.decision.text not in DECISIONS:
-        faults.add("unknown-choice", f"'{shape.decision.text}' is no decision rule", shape.decision.span, expected=" or ".join(DECISIONS))
+        faults.add(
+            "unknown-choice",
+            f"'{shape.decision.text}' is no decision rule",
+            shape.decision.span,
+            expected=" or ".join(DECISIONS),
+        )
     faults.settle()
     assert shape is not None
     return House(

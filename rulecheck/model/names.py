@@ -7,7 +7,7 @@ import re
 from rulecheck.diagnostics import Faults
 from rulecheck.reading.nodes import Located
 
-RESERVED = frozenset("and or not if else for in where within yes no".split())
+RESERVED = frozenset(["and", "or", "not", "if", "else", "for", "in", "where", "within", "yes", "no"])
 _NAME = re.compile(r"[^\W\d]\w*\Z")
 
 
@@ -25,7 +25,13 @@ def check_name(key: Located, faults: Faults) -> bool:
     if is_name(key.text):
         return True
     advice = f"'{key.text}' is a word of the language" if key.text in RESERVED else "join words by underscores"
-    faults.add("bad-name", f"'{key.text}' cannot be a name", key.span, expected="letters, digits and underscores, a letter first", advice=advice)
+    faults.add(
+        "bad-name",
+        f"'{key.text}' cannot be a name",
+        key.span,
+        expected="letters, digits and underscores, a letter first",
+        advice=advice,
+    )
     return False
 
 
@@ -33,5 +39,10 @@ def check_path(key: Located, faults: Faults) -> bool:
     """Note a fault where a key cannot be a path."""
     if all(is_name(part) for part in key.text.split(".")):
         return True
-    faults.add("bad-name", f"'{key.text}' cannot be a path", key.span, expected="names joined by dots, such as tyres.rear.width")
+    faults.add(
+        "bad-name",
+        f"'{key.text}' cannot be a path",
+        key.span,
+        expected="names joined by dots, such as tyres.rear.width",
+    )
     return False

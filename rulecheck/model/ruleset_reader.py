@@ -7,7 +7,7 @@ from typing import Any
 
 from rulecheck.diagnostics import Faults, Refused, Related, Span
 from rulecheck.model.declarations import declared_entries, needed_states, own_units
-from rulecheck.model.edge import BranchShape, EvidenceShape, FigureShape, RuleShape, RulesetShape, TableShape, shaped
+from rulecheck.model.edge import BranchShape, EvidenceShape, FigureShape, RulesetShape, RuleShape, TableShape, shaped
 from rulecheck.model.names import check_name
 from rulecheck.model.ruleset import (
     Alternative,
@@ -105,7 +105,9 @@ class _Reader:
             note=text(shape.note),
             valid=window(shape.valid, faults),
             units=units,
-            inputs=declared_entries(self.root.get("inputs"), shape.inputs or {}, shape.definitions or {}, self.file, faults),
+            inputs=declared_entries(
+                self.root.get("inputs"), shape.inputs or {}, shape.definitions or {}, self.file, faults
+            ),
             tables={name: self.table(name, key, value) for name, key, value in self.named("tables", shape.tables)},
             lists={name: tuple(value) for name, _, value in self.named("lists", shape.lists)},
             derived={n: formula_of(n, key, value) for n, key, value in self.named("derived", shape.derived)},
@@ -141,12 +143,22 @@ class _Reader:
             when = group.get("when") if isinstance(group, Mapping) else None
             rules = group.get("rules") if isinstance(group, Mapping) else None
             if not isinstance(when, Located) or rules is None or isinstance(rules, Mapping):
-                self.faults.add("bad-structure", f"group '{entry.key.text}' needs a condition and its rules", entry.key.span, expected="{when: condition, rules: [names]}")
+                self.faults.add(
+                    "bad-structure",
+                    f"group '{entry.key.text}' needs a condition and its rules",
+                    entry.key.span,
+                    expected="{when: condition, rules: [names]}",
+                )
                 continue
             for rule in (rules,) if isinstance(rules, Located) else rules:
                 if not isinstance(rule, Located) or rule.text not in (self.shape.rules or {}):
                     name = rule.text if isinstance(rule, Located) else ""
-                    self.faults.add("unknown-name", f"there is no rule '{name}' in this file", rule.span, advice=nearest(name, self.shape.rules or ()))
+                    self.faults.add(
+                        "unknown-name",
+                        f"there is no rule '{name}' in this file",
+                        rule.span,
+                        advice=nearest(name, self.shape.rules or ()),
+                    )
                 else:
                     conditions[rule.text] = (*conditions.get(rule.text, ()), when)
         return conditions
@@ -158,7 +170,12 @@ class _Reader:
         branches = tuple(self.alternative(label, branch) for label, branch in (shape.branches or {}).items())
         standing: Standing = self._word(shape.standing, STANDINGS, "shall")  # type: ignore[assignment]
         if standing in ("shall", "should") and not branches and not (own.require or own.evidence or own.judgement):
-            self.faults.add("missing-key", f"rule '{name}' asks for nothing", key.span, expected="require, branches, evidence or judgement")
+            self.faults.add(
+                "missing-key",
+                f"rule '{name}' asks for nothing",
+                key.span,
+                expected="require, branches, evidence or judgement",
+            )
         return Rule(
             name=name,
             span=key.span,
@@ -184,7 +201,13 @@ class _Reader:
     def _word(self, where: Located | None, known: tuple[str, ...], default: str) -> str:
         if where is None or where.text in known:
             return where.text if where else default
-        self.faults.add("unknown-choice", f"'{where.text}' is not one of the words here", where.span, expected=" or ".join(known), advice=nearest(where.text, known))
+        self.faults.add(
+            "unknown-choice",
+            f"'{where.text}' is not one of the words here",
+            where.span,
+            expected=" or ".join(known),
+            advice=nearest(where.text, known),
+        )
         return default
 
     def alternative(self, name: str, shape: BranchShape) -> Alternative:
@@ -202,7 +225,12 @@ class _Reader:
             return None
         if isinstance(node, Located):
             if node.text != "every":
-                self.faults.add("bad-value", f"'{node.text}' does not say which states", node.span, expected="every, or {axis: every} or {axis: [names]}")
+                self.faults.add(
+                    "bad-value",
+                    f"'{node.text}' does not say which states",
+                    node.span,
+                    expected="every, or {axis: every} or {axis: [names]}",
+                )
             return ()
         chosen = []
         for axis, names in node.items():
@@ -217,21 +245,36 @@ class _Reader:
             return None
         if "when" not in shape or set(shape) - {"when", "because"}:
             node = _inside(inner, "unless")
-            self.faults.add("bad-structure", "an exemption has a condition and a reason", node.span if node else None, expected="{when: condition, because: text}")
+            self.faults.add(
+                "bad-structure",
+                "an exemption has a condition and a reason",
+                node.span if node else None,
+                expected="{when: condition, because: text}",
+            )
             return None
         return Unless(shape["when"], text(shape.get("because")))
 
     def table(self, name: str, key: Located, shape: TableShape) -> Table:
         over = (shape.over,) if isinstance(shape.over, Located) else tuple(shape.over)
         if (shape.steps is None) == (shape.linear is None):
-            self.faults.add("bad-structure", f"table '{name}' has either steps or linear rows", key.span, expected="steps: [...] or linear: [...]")
+            self.faults.add(
+                "bad-structure",
+                f"table '{name}' has either steps or linear rows",
+                key.span,
+                expected="steps: [...] or linear: [...]",
+            )
         rows = tuple(row for step in shape.steps or () if (row := self._row(name, key, step)) is not None)
         linear = []
         for pair in shape.linear or ():
             if len(pair) == 2:
                 linear.append((pair[0], pair[1]))
             else:
-                self.faults.add("bad-structure", f"a linear row of table '{name}' is a key and a value", pair[0].span if pair else key.span, expected="[key, value]")
+                self.faults.add(
+                    "bad-structure",
+                    f"a linear row of table '{name}' is a key and a value",
+                    pair[0].span if pair else key.span,
+                    expected="[key, value]",
+                )
         return Table(name, key.span, over, rows, tuple(linear), shape.unit, text(shape.meaning))
 
     def _row(self, table: str, key: Located, step: dict[str, Located]) -> Row | None:
@@ -240,7 +283,12 @@ class _Reader:
         tests = [test for test in step if test in _TESTS]
         if len(tests) != 1 or "value" not in step or len(step) != 2:
             place = next(iter(step.values())).span if step else key.span
-            self.faults.add("bad-structure", f"a row of table '{table}' has one test and a value", place, expected="{up_to: key, value: value}, or below, is, when; or {otherwise: value}")
+            self.faults.add(
+                "bad-structure",
+                f"a row of table '{table}' has one test and a value",
+                place,
+                expected="{up_to: key, value: value}, or below, is, when; or {otherwise: value}",
+            )
             return None
         return Row(tests[0], step[tests[0]], step["value"])
 
@@ -257,7 +305,15 @@ def text(where: Located | None) -> str:
 def formula_of(name: str, key: Located, shape: FigureShape) -> Formula:
     """A named formula."""
     return Formula(
-        name, key.span, shape.formula, shape.unit, text(shape.meaning), text(shape.source), shape.valid, shape.loop, shape.of
+        name,
+        key.span,
+        shape.formula,
+        shape.unit,
+        text(shape.meaning),
+        text(shape.source),
+        shape.valid,
+        shape.loop,
+        shape.of,
     )
 
 
@@ -288,7 +344,12 @@ def _merged(base: Ruleset, top: Ruleset, root: Mapping, faults: Faults) -> Rules
         if entry.key.text in base.rules:
             withdrawn.append(Withdrawn(rules.pop(entry.key.text), reason, entry.key.span))
         elif entry.key.text not in {item.rule.name for item in withdrawn}:
-            faults.add("unknown-name", f"there is no rule '{entry.key.text}' to withdraw", entry.key.span, advice=nearest(entry.key.text, base.rules))
+            faults.add(
+                "unknown-name",
+                f"there is no rule '{entry.key.text}' to withdraw",
+                entry.key.span,
+                advice=nearest(entry.key.text, base.rules),
+            )
     return replace(
         top,
         units={**base.units, **top.units},
@@ -296,7 +357,9 @@ def _merged(base: Ruleset, top: Ruleset, root: Mapping, faults: Faults) -> Rules
         tables={**base.tables, **top.tables},
         lists={**base.lists, **top.lists},
         derived={**base.derived, **top.derived},
-        needed={axis: {**base.needed.get(axis, {}), **top.needed.get(axis, {})} for axis in {**base.needed, **top.needed}},
+        needed={
+            axis: {**base.needed.get(axis, {}), **top.needed.get(axis, {})} for axis in {**base.needed, **top.needed}
+        },
         rules=rules,
         withdrawn=tuple(withdrawn),
         files=(*base.files, *top.files),

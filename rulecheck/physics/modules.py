@@ -25,7 +25,7 @@ def built_in(name: str) -> PhysicsModule | None:
     """
     if name not in BUILT_IN:
         return None
-    return read_module(Workspace(FOLDER), f"{name}.yaml")
+    return read_module(Workspace(FOLDER.parent), f"{FOLDER.name}/{name}.yaml")
 
 
 def read_module(workspace: Workspace, file: str) -> PhysicsModule:
@@ -43,7 +43,12 @@ def read_module(workspace: Workspace, file: str) -> PhysicsModule:
             made = shape.figures[entry.key.text]
             figures[entry.key.text] = formula_of(entry.key.text, entry.key, made)
             if made.source is not None and made.source.text not in shape.sources:
-                faults.add("bad-physics", f"there is no source '{made.source.text}'", made.source.span, expected=" or ".join(shape.sources))
+                faults.add(
+                    "bad-physics",
+                    f"there is no source '{made.source.text}'",
+                    made.source.span,
+                    expected=" or ".join(shape.sources),
+                )
     faults.settle()
     sources = {name: where.text for name, where in shape.sources.items()}
-    return PhysicsModule(shape.module.text, f"physics/{file}", shape.meaning.text, sources, figures, text(shape.caution))
+    return PhysicsModule(shape.module.text, file, shape.meaning.text, sources, figures, text(shape.caution))

@@ -5,11 +5,11 @@ from __future__ import annotations
 from datetime import date
 from fractions import Fraction
 
+from rulecheck.diagnostics import Span
 from rulecheck.graph.terms import Bank, Term
 from rulecheck.operations.arithmetic import divide
 from rulecheck.operations.values import Bounds, Monomial, Reason, Unknown
 from rulecheck.outcome.results import Amount, Place
-from rulecheck.diagnostics import Span
 from rulecheck.quantity.numbers import show_exact, show_number
 from rulecheck.quantity.units import Unit
 from rulecheck.readers.exact import ExactReader

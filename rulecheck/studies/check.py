@@ -6,13 +6,14 @@ from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass, field
 from fractions import Fraction
 
+from rulecheck.diagnostics import Span
 from rulecheck.graph.conditions import AnyOf, BoundRule, Case, Condition, Part
 from rulecheck.graph.figures import Graph
 from rulecheck.graph.terms import Term
 from rulecheck.model.ruleset import Rule
 from rulecheck.operations.comparison import below
 from rulecheck.operations.values import Unknown
-from rulecheck.outcome.results import BindingPart, Finding, PartResult, Verdict
+from rulecheck.outcome.results import Amount, BindingPart, Finding, PartResult, Verdict
 from rulecheck.quantity.dimension import PURE
 from rulecheck.quantity.quantity import Quantity
 from rulecheck.readers.exact import ExactReader
@@ -92,15 +93,16 @@ class Checker:
         return verdict_of(found.truth), found, reason
 
     def _rule(self, judged: Sequence[tuple[Case, Verdict, Judged, str]]) -> tuple[Verdict, Judged | None, str]:
-        for verdict in ("breach", "open", "unproven", "complies"):
+        order: tuple[Verdict, ...] = ("breach", "open", "unproven", "complies")
+        for verdict in order:
             chosen = [(found, reason) for _, said, found, reason in judged if said == verdict]
             if not chosen:
                 continue
             if verdict in ("open", "unproven"):
                 reasons = dict.fromkeys(reason for _, reason in chosen if reason)
                 found = chosen[0][0]
-                return verdict, found, "; ".join(list(reasons)[:4])  # type: ignore[return-value]
-            return verdict, all_of([found for found, _ in chosen]), ""  # type: ignore[return-value]
+                return verdict, found, "; ".join(list(reasons)[:4])
+            return verdict, all_of([found for found, _ in chosen]), ""
         if not judged:
             return "not applicable", None, ""
         numbered = [found for _, _, found, _ in judged if found.room is not None]
@@ -117,7 +119,12 @@ class Checker:
             return "dispensed", f"dispensation {permit}", permit
         if verdict == "breach" and rule.standing == "should":
             return "not followed", reason, permit
-        if verdict == "complies" and binding is not None and binding.part is not None and self._is_tight(rule, binding.part):
+        if (
+            verdict == "complies"
+            and binding is not None
+            and binding.part is not None
+            and self._is_tight(rule, binding.part)
+        ):
             return "tight", "inside the house reserve", permit
         return verdict, reason, permit
 
@@ -139,7 +146,7 @@ class Checker:
 
     # --- what is shown -----------------------------------------------------------------------------------------------
 
-    def _amount(self, term: Term | None, part: Part, *, width: bool = False):  # type: ignore[no-untyped-def]
+    def _amount(self, term: Term | None, part: Part, *, width: bool = False) -> Amount | None:
         return None if term is None else amount(self.reader, self.bank, term, part.unit, width=width)
 
     def _parts(self, cases: Iterable[Case]) -> Iterable[PartResult]:
@@ -158,7 +165,7 @@ class Checker:
             part.text,
             part.kind,
             verdict_of(truth),
-            "" if known else reason_text(truth.reasons),  # type: ignore[union-attr]
+            reason_text(truth.reasons) if isinstance(truth, Unknown) else "",
             self._amount(part.margin, part, width=True) if known and part.margin is not None else None,
             part.strict,
             self.reader.approximate(relative) if relative is not None else None,
@@ -171,7 +178,7 @@ class Checker:
             branch,
         )
 
-    def _value_place(self, part: Part | None):  # type: ignore[no-untyped-def]
+    def _value_place(self, part: Part | None) -> Span | None:
         if part is None:
             return None
         if part.place is not None:
@@ -205,7 +212,7 @@ class Checker:
                         continue
                     seen.add(part.text)
                     room = self.judge.room(part)
-                    if room is not None and abs(room) <= NEAR:
+                    if room is not None and -NEAR <= room <= NEAR:
                         yield f"its condition '{part.text}' is within 1 % of turning"
 
 
@@ -223,5 +230,3 @@ def _binding(judged: Judged | None) -> BindingPart | None:
         return None
     case = judged.case
     return BindingPart(judged.part.text, case.element if case else "", dict(case.states) if case else {}, judged.branch)
-
-

@@ -59,7 +59,9 @@ class Judge:
         size = self.reader.sign(part.scale)
         if isinstance(size, Unknown) or size == 0:
             return None
-        return self.bank.apply(divide, [part.margin, part.scale], divide.dimension([part.margin.dimension, part.scale.dimension]))
+        return self.bank.apply(
+            divide, [part.margin, part.scale], divide.dimension([part.margin.dimension, part.scale.dimension])
+        )
 
     def _number(self, term: Term) -> Fraction | float | None:
         if term.index not in self._rooms:

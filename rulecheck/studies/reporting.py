@@ -36,7 +36,8 @@ def report(
     """All findings in the order of the rule books."""
     books = {ruleset.file: ruleset for ruleset in rulesets}
     findings = tuple(
-        checker.finding(rule, books[rule.ruleset].rules[rule.name], books[rule.ruleset].name) for rule in checker.graph.rules
+        checker.finding(rule, books[rule.ruleset].rules[rule.name], books[rule.ruleset].name)
+        for rule in checker.graph.rules
     )
     return Report(
         design=design.name,
@@ -65,7 +66,11 @@ def counts(findings: Iterable[Finding]) -> dict[str, int]:
 
 def _tightest(findings: Iterable[Finding]) -> str:
     """The binding rule with the least relative margin."""
-    measured = [f for f in findings if binds(f) and f.relative_margin is not None and f.verdict in ("complies", "tight", "breach")]
+    measured = [
+        f
+        for f in findings
+        if binds(f) and f.relative_margin is not None and f.verdict in ("complies", "tight", "breach")
+    ]
     return min(measured, key=lambda finding: finding.relative_margin or 0.0).name if measured else ""
 
 

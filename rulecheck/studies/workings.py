@@ -108,7 +108,9 @@ class _Walk:
             shown = self._amount(use.term, use)
             source = ", ".join(filter(None, (fact.basis, fact.reference)))
             result, exact = (str(shown), shown.exact) if shown else ("not stated", "")
-            self.steps[use.target] = Step(use.target, "input", "", "", result, exact, source, place(fact.span), depth=depth + 1)
+            self.steps[use.target] = Step(
+                use.target, "input", "", "", result, exact, source, place(fact.span), depth=depth + 1
+            )
 
     def _amount(self, term: Term, use: Use | Figure) -> Amount | None:
         return amount(self.checker.reader, self.checker.bank, term, use.unit)

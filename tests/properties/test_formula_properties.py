@@ -174,12 +174,13 @@ def test_the_place_of_each_part_holds_the_part(source: random.Random) -> None:
 @given(st.randoms(use_true_random=False))
 @settings(max_examples=100, deadline=None)
 def test_no_parentheses_are_needless(source: random.Random) -> None:
-    """Without any one pair the print is another formula or none, but for pairs kept for the eye and for calls."""
+    """Without any one pair the print is another formula or none, but for pairs kept for the eye."""
     tree = Grower(source).tree(2)
     text = show(tree)
     for start, end in groups(text):
-        if any(sign in text[start:end] for sign in ("m", "%", "g", "°", "W", "/")):
-            continue  # a unit within: these pairs set off a number, or an inch from a membership
+        eye = text[start - 1 : start] == "/" or isinstance(parse(text[start + 1 : end]), Number)
+        if eye or text[end + 1 :].startswith(" in "):
+            continue  # a unit, a number as base or exponent, and what could end in an inch
         without = f"{text[:start]} {text[start + 1 : end]} {text[end + 1 :]}"
         try:
             assert parse(without) != tree
