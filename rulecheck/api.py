@@ -17,13 +17,14 @@ from pathlib import Path
 from rulecheck.binding.bind import bind
 from rulecheck.diagnostics import Faults, Refused, Span
 from rulecheck.graph.figures import Graph
+from rulecheck.graph.terms import Term
 from rulecheck.model.design import Design, Overlay, State
 from rulecheck.model.design_reader import read_change, read_design
 from rulecheck.model.house import has_house, read_house
 from rulecheck.model.names import is_name
 from rulecheck.model.ruleset import House, Ruleset
 from rulecheck.model.ruleset_reader import read_ruleset
-from rulecheck.outcome.results import Report, Workings
+from rulecheck.outcome.results import ClosedFormResult, Report, Workings
 from rulecheck.physics.modules import BUILT_IN, built_in
 from rulecheck.quantity.quantity import Quantity
 from rulecheck.quantity.reading_values import read_quantity
@@ -136,9 +137,15 @@ def workings(
     loaded = _load(session, design, rules, settings, changes, states, needs_rules=False)
     graph = _bind(loaded, day, [name for name in names if name.partition(".")[0] in BUILT_IN])
     checker = Checker(graph, _reserves(loaded.house, None))
-    return workings_of(
-        checker, loaded.design, loaded.rulesets, names, day, closed_form=closed_form, solve_for=solve_for
-    )
+    describe = None
+    if closed_form or solve_for:
+        # sympy takes longer to load than all the rest: only where a closed form is asked for.
+        from rulecheck.studies.closed_form import closed_form as form
+
+        def describe(term: Term) -> ClosedFormResult:
+            return form(graph, term, solve_for)
+
+    return workings_of(checker, loaded.design, loaded.rulesets, names, day, describe=describe)
 
 
 def _load(

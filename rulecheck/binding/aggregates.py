@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from fractions import Fraction
 from itertools import combinations
 
@@ -13,6 +13,7 @@ from rulecheck.binding.scope import Scope
 from rulecheck.diagnostics import Span
 from rulecheck.formula.printing import show
 from rulecheck.formula.syntax import Aggregate, Call, Listing, Syntax
+from rulecheck.graph.conditions import Use
 from rulecheck.graph.terms import Term
 from rulecheck.operations.arithmetic import divide, total
 from rulecheck.operations.extremes import maximum, minimum
@@ -38,6 +39,15 @@ _CONDITIONAL: dict[str, Operation] = {
 }
 _PLAIN: dict[str, Operation] = {"sum": total, "min": minimum, "max": maximum}
 _MOST_ELEMENTS = 20_000
+
+
+@dataclass(frozen=True, slots=True)
+class _Turn:
+    """An expression bound for one element, and what it rests on."""
+
+    bound: Bound
+    touched: frozenset[str]
+    figures: frozenset[str]
 
 
 @dataclass(frozen=True, slots=True)
@@ -70,7 +80,7 @@ def loop(scope: Scope, variables: Sequence[str], collection: Syntax, where: Synt
         if where is None:
             elements.append(Element(label, pairs))
             continue
-        condition = scope.inside(pairs).express(where)
+        condition = _turn(scope, pairs, where)
         if isinstance(condition, Broken):
             return BROKEN
         if not isinstance(condition, Truth):
@@ -82,6 +92,26 @@ def loop(scope: Scope, variables: Sequence[str], collection: Syntax, where: Synt
         elif condition.term.value:
             elements.append(Element(label, pairs))
     return Loop(tuple(elements), items.lacking, items.missing, items.items is None, stand_in)
+
+
+def _turn(scope: Scope, pairs: tuple[tuple[str, Bound], ...], expression: Syntax) -> Bound:
+    """An expression for one element; bound once for all states that change nothing that it reads."""
+    variables = {**scope.variables, **dict(pairs)}
+    if not all(isinstance(bound, Item) for bound in variables.values()):
+        return scope.inside(pairs).express(expression)
+    names = tuple((name, bound.path) for name, bound in variables.items() if isinstance(bound, Item))
+    key = ("turn", expression.span, scope.owner.file, names)
+    known: _Turn | None = scope.shared.memo.get((*key, ()))
+    if known is None or scope.view.changes_any(known.touched):
+        known = scope.shared.memo.get((*key, scope.view.states))
+    if known is None:
+        inner = replace(scope.inside(pairs), touched=set(), figures=set())
+        bound = inner.express(expression)
+        known = _Turn(bound, frozenset(inner.touched), frozenset(inner.figures))
+        scope.shared.memo[(*key, scope.view.states)] = known
+    scope.touched.update(known.touched)
+    scope.figures.update(known.figures)
+    return known.bound
 
 
 def _turns(
@@ -126,6 +156,14 @@ def aggregate(scope: Scope, syntax: Aggregate) -> Bound:
     turns = loop(scope, syntax.variables, syntax.collection, syntax.where, syntax.span)
     if isinstance(turns, Broken):
         return BROKEN
+    bound = _folded_turns(scope, syntax, turns)
+    if isinstance(bound, (Number, Truth)) and not scope.loop:
+        text = show(syntax)
+        scope.uses.setdefault(text, Use(text, "", bound.term, bound.unit if isinstance(bound, Number) else None))
+    return bound
+
+
+def _folded_turns(scope: Scope, syntax: Aggregate, turns: Loop) -> Bound:
     if syntax.function in ("count", "share"):
         return _count(scope, syntax, turns)
     assert syntax.expression is not None
@@ -189,7 +227,7 @@ def _quantified(scope: Scope, syntax: Aggregate, turns: Loop) -> Bound:
 def _numbers(scope: Scope, syntax: Aggregate, turns: Loop, expression: Syntax) -> Bound:
     bounds: list[Number] = []
     for element in turns.elements or (Element("", turns.empty_name),):
-        bound = scope.inside(element.variables).express(expression)
+        bound = _turn(scope, element.variables, expression)
         if isinstance(bound, Broken):
             return BROKEN
         if not isinstance(bound, Number):

@@ -45,6 +45,7 @@ class Compared:
     limit: Number | None = None
     sense: str = ""
     width: Term | None = None
+    formula: Syntax | None = None
 
 
 def compare(scope: Scope, syntax: Comparison, *, negated: bool = False) -> list[Compared] | Broken:
@@ -55,8 +56,15 @@ def compare(scope: Scope, syntax: Comparison, *, negated: bool = False) -> list[
         compared = _pair(scope, syntax, sides[index], operator, sides[index + 1], negated)
         if isinstance(compared, Broken):
             return BROKEN
-        made.append(compared)
+        made.append(replace(compared, formula=_alone(syntax, index)))
     return made
+
+
+def _alone(syntax: Comparison, index: int) -> Comparison:
+    """One pair of a chain as a comparison of its own."""
+    if len(syntax.operators) == 1:
+        return syntax
+    return replace(syntax, operands=syntax.operands[index : index + 2], operators=(syntax.operators[index],))
 
 
 def truth(scope: Scope, syntax: Comparison) -> Bound:

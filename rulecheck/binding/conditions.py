@@ -65,7 +65,7 @@ class Builder:
             )
         holds = opposite(self.scope, bound.term) if negated else bound.term
         text = show(Not(syntax, span=syntax.span)) if negated else show(syntax)
-        return Part("flag", text, holds, span=syntax.span)
+        return Part("flag", text, holds, span=syntax.span, formula=syntax)
 
     def _quantified(self, syntax: Aggregate, negated: bool) -> Condition | Broken:
         """`every` and `some` keep the margins of their elements, where it is certain which take part."""
@@ -101,12 +101,13 @@ class Builder:
             limit = pair.limit.term if pair.limit else None
             unit = (pair.limit.unit if pair.limit else None) or (pair.value.unit if pair.value else None)
             return Part(
-                "flag", pair.text, pair.holds, value=value, limit=limit, unit=unit, sense=pair.sense, span=pair.span
-            )
+                "flag", pair.text, pair.holds, value=value, limit=limit, unit=unit, sense=pair.sense, span=pair.span,
+                formula=pair.formula,
+            )  # fmt: skip
         assert pair.value is not None and pair.limit is not None
         return Part(
             "comparison", pair.text, pair.holds, pair.margin, pair.strict, scale, self._unit(pair),
-            pair.value.term, pair.limit.term, pair.sense, pair.span,
+            pair.value.term, pair.limit.term, pair.sense, pair.span, formula=pair.formula,
         )  # fmt: skip
 
     def _unit(self, pair: Compared) -> Unit:

@@ -14,7 +14,6 @@ from rulecheck.diagnostics import Refused, Span
 from rulecheck.formula.syntax import Call
 from rulecheck.graph.figures import Figure
 from rulecheck.graph.terms import Term
-from rulecheck.model.design import holders
 from rulecheck.model.ruleset import Formula, PhysicsModule, Ruleset
 from rulecheck.quantity.dimension_names import name_of
 from rulecheck.quantity.units import Unit, UnitFault, find_unit
@@ -177,10 +176,10 @@ def _made(
     known: Made | None = shared.memo.get(key)
     if known is not None:
         return known
-    if states:
+    if states and not _of_points(variables):
         base = _made(scope.fresh(shared.base, owner), owner, formula, name, span, variables)
-        # Points carry terms of their own state: only figures without arguments are shared between states.
-        if not variables and not affected(scope, base.touched):
+        # Points carry terms of their own state: figures of a point are not shared between states.
+        if not scope.view.changes_any(base.touched):
             shared.memo[key] = base
             return base
     if name in shared.stack:
@@ -196,24 +195,8 @@ def _made(
     return made
 
 
-def affected(scope: Scope, touched: frozenset[str] | set[str]) -> bool:
-    """True where the state changes something that was read."""
-    base, here = scope.shared.base.design, scope.view.design
-    for path in scope.view.set_paths:
-        if any(holder in touched for holder in holders(path)):
-            for holder in holders(path):
-                if holder in touched and (
-                    holder == path or base.names(holder) != here.names(holder) or not _is_collection(scope, holder)
-                ):
-                    return True
-        if any(read.startswith(path + ".") for read in touched):
-            return True
-    return False
-
-
-def _is_collection(scope: Scope, path: str) -> bool:
-    entry = scope.shared.vocabulary.entry(path)
-    return bool(entry and entry.kind == "collection")
+def _of_points(variables: Mapping[str, Bound] | None) -> bool:
+    return any(not isinstance(bound, Item) for bound in (variables or {}).values())
 
 
 def _bind(scope: Scope, owner: Owner, formula: Formula, name: str) -> Made:

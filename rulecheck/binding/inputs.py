@@ -45,6 +45,14 @@ def scope_units(scope: Scope) -> dict[str, Any]:
 def bind_input(scope: Scope, path: str, entry: Entry, span: Span) -> Bound:
     """The value of an input that is no point: a number leaf, or a constant that is settled here."""
     scope.touched.add(path)
+    key = ("input", path, scope.view.states if scope.view.changes(path) else ())
+    bound: Bound | None = scope.shared.memo.get(key)
+    if bound is None:
+        bound = scope.shared.memo[key] = _bind_input(scope, path, entry, span)
+    return bound
+
+
+def _bind_input(scope: Scope, path: str, entry: Entry, span: Span) -> Bound:
     if entry.kind == "collection":
         return collection(scope, path, entry)
     node = stated(scope, path)

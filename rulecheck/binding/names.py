@@ -12,8 +12,9 @@ from rulecheck.binding.reconciling import reconciled
 from rulecheck.binding.scope import Scope
 from rulecheck.diagnostics import Span
 from rulecheck.formula.syntax import Member, Name
-from rulecheck.graph.figures import Use
+from rulecheck.graph.conditions import Use
 from rulecheck.graph.terms import Term
+from rulecheck.model.ruleset import PhysicsModule
 from rulecheck.model.vocabulary import Entry
 from rulecheck.physics.declared import DECLARED
 from rulecheck.quantity.units import find_unit
@@ -37,6 +38,9 @@ def bind_name(scope: Scope, syntax: Name) -> Bound:
 def _target(scope: Scope, path: tuple[str, ...]) -> str:
     """The full name of what a name stands for, with loop variables written out."""
     variable = scope.variables.get(path[0])
+    owner = scope.owner
+    if isinstance(owner, PhysicsModule) and len(path) == 1 and path[0] in owner.figures:
+        return f"{owner.name}.{path[0]}"
     return ".".join((variable.path, *path[1:])) if isinstance(variable, Item) else ".".join(path)
 
 

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
 from fractions import Fraction
 
 from rulecheck.binding.bound import Line, Number, Place, Plane
@@ -26,6 +27,19 @@ Vector = tuple[Term, ...]
 
 def place_of(scope: Scope, path: str, entry: Entry, span: Span) -> Place:
     """A stated point, counted from the front axle and the reference plane whatever its datum."""
+    key = ("place", path, scope.view.states)
+    known: tuple[Place, set[str]] | None = scope.shared.memo.get(key)
+    if known is None and scope.view.states:
+        base = scope.shared.memo.get(("place", path, ()))
+        known = base if base is not None and not scope.view.changes_any(base[1]) else None
+    if known is None:
+        apart = replace(scope, touched=set())
+        known = scope.shared.memo[key] = (_place(apart, path, entry, span), apart.touched)
+    scope.touched.update(known[1])
+    return known[0]
+
+
+def _place(scope: Scope, path: str, entry: Entry, span: Span) -> Place:
     x, y, z = bind_point(scope, path, entry, span)
     datum = _datum_of(scope, path)
     if datum is None and entry.datum_required and (stated(scope, path) or stated(scope, f"{path}.at")):
@@ -38,9 +52,9 @@ def _datum_of(scope: Scope, path: str) -> str | None:
     """The datum stated for a point: below it, or beside it in the same item."""
     holder = path.rpartition(".")[0]
     for candidate in (f"{path}.datum", f"{holder}.datum"):
+        scope.touched.add(candidate)
         where = scalar(stated(scope, candidate))
         if where is not None:
-            scope.touched.add(candidate)
             return where.text
     return None
 

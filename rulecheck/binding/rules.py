@@ -153,6 +153,7 @@ class _Binding:
     # --- one case ----------------------------------------------------------------------------------------------------
 
     def _case(self, scope: Scope, element: str, takes_part: Term | None) -> Case | None:
+        scope = replace(scope, uses={})
         gates = [self._gate(scope, where) for where in self.rule.when]
         exempt = self._flag(scope, self.rule.unless.when, "'unless'") if self.rule.unless else scope.bank.flag(False)
         condition = self._condition(scope, element)
@@ -162,7 +163,9 @@ class _Binding:
         flags = [holds(scope, gate) for gate in whole]
         applies = all_of(scope, [*flags, *([takes_part] if takes_part is not None else [])])
         because = self.rule.unless.because if self.rule.unless else ""
-        return Case(element, scope.view.states, applies, exempt, condition, because, tuple(whole))
+        return Case(
+            element, scope.view.states, applies, exempt, condition, because, tuple(whole), tuple(scope.uses.values())
+        )
 
     def _gate(self, scope: Scope, where: Located) -> Condition | Broken:
         """A condition under which the rule applies, with its margin."""

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Mapping, Sequence
+from collections.abc import Callable, Iterable, Mapping, Sequence
 from dataclasses import dataclass, field, replace
 from datetime import date
 from typing import Any
@@ -10,10 +10,10 @@ from typing import Any
 from rulecheck.binding.bound import BROKEN, Bound, Broken
 from rulecheck.diagnostics import Faults, Related, Span
 from rulecheck.formula.syntax import Syntax
-from rulecheck.graph.conditions import BoundRule
-from rulecheck.graph.figures import DeclaredCheck, Figure, InputFact, Use
+from rulecheck.graph.conditions import BoundRule, Use
+from rulecheck.graph.figures import DeclaredCheck, Figure, InputFact
 from rulecheck.graph.terms import Bank, Constant, Term
-from rulecheck.model.design import Design, LeafNode
+from rulecheck.model.design import Design, LeafNode, holders
 from rulecheck.model.ruleset import PhysicsModule, Ruleset
 from rulecheck.model.vocabulary import Vocabulary
 from rulecheck.operations.operation import DimensionFault, Operation
@@ -29,6 +29,29 @@ class View:
     design: Design
     states: tuple[tuple[str, str], ...] = ()
     set_paths: frozenset[str] = frozenset()
+    base: Design | None = None
+    _known: dict[str, bool] = field(default_factory=dict)
+
+    def changes(self, path: str) -> bool:
+        """True where the states change what is read under a path: it, what holds it, or what it holds."""
+        known = self._known.get(path)
+        if known is None:
+            known = self._known[path] = self._changes(path)
+        return known
+
+    def _changes(self, path: str) -> bool:
+        if any(holder in self.set_paths for holder in holders(path)):
+            return True
+        inside = f"{path}."
+        if not any(changed.startswith(inside) for changed in self.set_paths):
+            return False
+        # A collection is changed by the items that it holds, a point by its coordinates.
+        base = self.base or self.design
+        return base.names(path) != self.design.names(path) or path in self.design.leaves
+
+    def changes_any(self, paths: Iterable[str]) -> bool:
+        """True where one of the paths is changed."""
+        return bool(self.set_paths) and any(self.changes(path) for path in paths)
 
 
 Owner = Ruleset | PhysicsModule

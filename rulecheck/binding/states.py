@@ -116,7 +116,7 @@ def combined_view(shared: Shared, chosen: list[State]) -> View:
     states = tuple((state.axis, state.name) for state in chosen)
     if not overlay:
         return View(shared.base.design, states, frozenset())
-    return View(shared.base.design.with_overlay(overlay), states, frozenset(overlay.paths))
+    return View(shared.base.design.with_overlay(overlay), states, frozenset(overlay.paths), shared.base.design)
 
 
 def _clash(shared: Shared, path: str, span: Span, other: State) -> None:

@@ -7,8 +7,20 @@ from datetime import date
 from typing import Literal
 
 from rulecheck.diagnostics import Span
+from rulecheck.formula.syntax import Syntax
 from rulecheck.graph.terms import Term
 from rulecheck.quantity.units import Unit
+
+
+@dataclass(frozen=True, slots=True)
+class Use:
+    """A name in a formula with what it stands for: its term, unit, and the figure or input that it names."""
+
+    text: str
+    target: str
+    term: Term
+    unit: Unit | None
+
 
 PartKind = Literal["comparison", "flag", "evidence", "judgement"]
 
@@ -33,6 +45,7 @@ class Part:
     sense: str = ""
     span: Span | None = field(default=None, compare=False)
     place: Span | None = field(default=None, compare=False)
+    formula: Syntax | None = field(default=None, compare=False)
 
 
 @dataclass(frozen=True, slots=True)
@@ -56,7 +69,7 @@ Condition = Part | AllOf | AnyOf
 @dataclass(frozen=True, slots=True)
 class Case:
     """A rule for one element in one combination of states. `applies` and `exempt` are flags; `gates` the conditions
-    behind `applies`, with their margins."""
+    behind `applies`, with their margins; `uses` the names in its formulas."""
 
     element: str
     states: tuple[tuple[str, str], ...]
@@ -65,6 +78,7 @@ class Case:
     condition: Condition
     because: str = ""
     gates: tuple[Condition, ...] = ()
+    uses: tuple[Use, ...] = ()
 
 
 @dataclass(frozen=True, slots=True)

@@ -8,19 +8,9 @@ from datetime import date
 
 from rulecheck.diagnostics import Span
 from rulecheck.formula.syntax import Syntax
-from rulecheck.graph.conditions import BoundRule
+from rulecheck.graph.conditions import BoundRule, Use
 from rulecheck.graph.terms import Bank, Inputs, Term
 from rulecheck.quantity.units import Unit
-
-
-@dataclass(frozen=True, slots=True)
-class Use:
-    """A name in a formula with what it stands for: its term, unit, and the figure or input that it names."""
-
-    text: str
-    target: str
-    term: Term
-    unit: Unit | None
 
 
 @dataclass(frozen=True, slots=True)

@@ -170,6 +170,7 @@ class Working:
     clause: str
     verdict: str
     margin: str
+    binding: BindingPart | None
     conditions: tuple[PartResult, ...]
     steps: tuple[Step, ...]
     closed_form: ClosedFormResult | None = None

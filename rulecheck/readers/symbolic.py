@@ -8,6 +8,7 @@ from __future__ import annotations
 
 from collections.abc import Iterable, Mapping
 from dataclasses import dataclass
+from fractions import Fraction
 from typing import Any
 
 import sympy
@@ -199,6 +200,8 @@ def _solutions(expression: Any, path: str) -> list[Any]:
     if polynomial is not None and unknown not in sympy.Tuple(*polynomial.all_coeffs()).free_symbols:
         found = sympy.roots(polynomial) if polynomial.degree() <= 2 else {}
         return [root for root in found if root.is_real is not False and bottom.subs(unknown, root) != 0]
+    if expression.free_symbols == {unknown} and expression.has(sympy.Min, sympy.Max, sympy.Piecewise):
+        return _on_arms(expression, unknown)
     # With one occurrence the functions around it are undone one by one; else sympy may search for minutes.
     if sympy.count_ops(expression) > _SOLVED_UP_TO or _occurrences(top, unknown) > 1 or expression.has(*_JUMPS):
         return []
@@ -206,6 +209,26 @@ def _solutions(expression: Any, path: str) -> list[Any]:
         return [root for root in sympy.solve(expression, unknown) if root.is_real is not False]
     except NotImplementedError:
         return []
+
+
+def _on_arms(expression: Any, unknown: Any) -> list[Any]:
+    """Roots of a form in one symbol alone that has arms: each arm is solved, and holds where it is taken."""
+    if sympy.count_ops(expression) > _SOLVED_UP_TO or expression.has(sympy.floor, sympy.ceiling):
+        return []
+    try:
+        found = sympy.solve(expression.rewrite(sympy.Piecewise), unknown)
+    except NotImplementedError:
+        return []
+    return [root for root in found if root.is_number and root.is_real is not False]
+
+
+def numeric(expression: Any) -> Fraction | None:
+    """A form without inputs as a rational: exact where it is one, else to 20 digits; None where it has no value."""
+    if not expression.is_number or not expression.is_finite:
+        return None
+    if expression.is_Rational:
+        return Fraction(int(expression.p), int(expression.q))
+    return Fraction(str(sympy.N(expression, 20)))
 
 
 def _occurrences(expression: Any, unknown: Any) -> int:

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from datetime import date
+from decimal import Decimal
 from fractions import Fraction
 
 from rulecheck.diagnostics import Span
@@ -10,11 +11,14 @@ from rulecheck.graph.terms import Bank, Term
 from rulecheck.operations.arithmetic import divide
 from rulecheck.operations.values import Bounds, Monomial, Reason, Unknown
 from rulecheck.outcome.results import Amount, Place
+from rulecheck.quantity.dimension_names import preferred
 from rulecheck.quantity.numbers import show_exact, show_number
 from rulecheck.quantity.units import Unit
 from rulecheck.readers.exact import ExactReader
 
 DIGITS = 6
+MOST_DIGITS = 10_000
+"""A number with more digits before or behind the point is shown from its decimal form."""
 
 
 def place(span: Span | None) -> Place | None:
@@ -28,8 +32,9 @@ def amount(reader: ExactReader, bank: Bank, term: Term, unit: Unit | None, *, wi
         return _day(reader, term)
     if term.sort != "number":
         return _word(reader, term)
-    symbol = unit.symbol if unit else ""
-    if width and unit is not None and unit.offset:
+    unit = unit or preferred(term.dimension)
+    symbol = unit.symbol
+    if width and unit.offset:
         symbol = "K"
     value = reader.value(term)
     if isinstance(value, Unknown):
@@ -74,10 +79,20 @@ def _rounded(reader: ExactReader, bank: Bank, term: Term, unit: Unit | None, sym
     digits = reader.decimal(scaled, DIGITS)
     if digits is None:
         return None
+    if abs(digits.adjusted()) > MOST_DIGITS:
+        # As a fraction such a number would fill the memory.
+        return Amount(_far(digits), symbol, reader.approximate(scaled))
     rational = Fraction(digits)
     if unit is not None and unit.offset and symbol != "K":
         rational -= unit.offset / unit.factor
     return Amount(show_number(rational, DIGITS), symbol, reader.approximate(scaled))
+
+
+def _far(digits: Decimal) -> str:
+    """A number whose exponent is beyond what `Decimal` computes with."""
+    figures = "".join(map(str, digits.as_tuple().digits)).rstrip("0")
+    mantissa = figures[0] + (f".{figures[1:]}" if figures[1:] else "")
+    return f"{'-' if digits.is_signed() else ''}{mantissa}e{digits.adjusted()}"
 
 
 def _day(reader: ExactReader, term: Term) -> Amount | None:

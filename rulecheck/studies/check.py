@@ -74,6 +74,10 @@ class Checker:
             ruleset_name=ruleset_name,
         )
 
+    def binding(self, bound: BoundRule) -> Judged | None:
+        """What decides a rule."""
+        return self._rule([(case, *self._case(case)) for case in bound.cases])[1]
+
     # --- cases -------------------------------------------------------------------------------------------------------
 
     def _case(self, case: Case) -> tuple[Verdict, Judged, str]:

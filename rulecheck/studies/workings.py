@@ -2,24 +2,26 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Sequence
+from collections.abc import Callable, Iterable, Sequence
 from datetime import date
 
 from rulecheck import __version__
 from rulecheck.diagnostics import Faults
 from rulecheck.formula.printing import show, show_with
-from rulecheck.formula.syntax import Name, Syntax
-from rulecheck.graph.conditions import BoundRule
-from rulecheck.graph.figures import Figure, Use
+from rulecheck.formula.syntax import Aggregate, Name, Syntax
+from rulecheck.graph.conditions import BoundRule, Part, Use
+from rulecheck.graph.figures import Figure
 from rulecheck.graph.terms import Term
 from rulecheck.model.design import Design
 from rulecheck.model.ruleset import Rule, Ruleset
-from rulecheck.outcome.results import Amount, Step, Working, Workings
+from rulecheck.operations.values import Unknown
+from rulecheck.outcome.results import Amount, ClosedFormResult, Step, Working, Workings
 from rulecheck.reading.nearest import nearest
-from rulecheck.studies.amounts import amount, place
+from rulecheck.studies.amounts import amount, place, reason_text
 from rulecheck.studies.check import Checker
 
 MOST_STEPS = 400
+Describe = Callable[[Term], ClosedFormResult]
 
 
 def workings_of(
@@ -29,14 +31,16 @@ def workings_of(
     names: Sequence[str],
     day: date,
     *,
-    closed_form: bool = False,
-    solve_for: str = "",
+    describe: Describe | None = None,
 ) -> Workings:
-    """The workings of each name. Raises `Refused` where a name is not known."""
+    """The workings of each name. Raises `Refused` where a name is not known.
+
+    `describe` gives the closed form of a term; without it none is given.
+    """
     faults = Faults()
     items: list[Working] = []
     for name in names:
-        found = list(_named(checker, rulesets, name))
+        found = list(_named(checker, rulesets, name, describe))
         if not found:
             known = _known(checker, rulesets)
             faults.add("unknown-name", f"there is no rule, figure or module '{name}'", advice=nearest(name, known))
@@ -49,30 +53,50 @@ def _known(checker: Checker, rulesets: Sequence[Ruleset]) -> list[str]:
     return [*(name for book in rulesets for name in book.rules), *checker.graph.figures]
 
 
-def _named(checker: Checker, rulesets: Sequence[Ruleset], name: str) -> Iterable[Working]:
+def _named(checker: Checker, rulesets: Sequence[Ruleset], name: str, describe: Describe | None) -> Iterable[Working]:
     books = {book.file: book for book in rulesets}
     for bound in checker.graph.rules:
         if bound.name == name:
-            yield _rule(checker, bound, books[bound.ruleset].rules[name])
+            yield _rule(checker, bound, books[bound.ruleset].rules[name], describe)
     figures = checker.graph.figures
     if name in figures:
-        yield _figure(checker, figures[name])
+        yield _figure(checker, figures[name], describe, "")
     elif any(full.startswith(f"{name}.") for full in figures):
         for full, figure in figures.items():
             if full.startswith(f"{name}.") and "(" not in full and "[" not in full:
-                yield _figure(checker, figure)
+                yield _figure(checker, figure, describe, "")
 
 
-def _rule(checker: Checker, bound: BoundRule, rule: Rule) -> Working:
+def _rule(checker: Checker, bound: BoundRule, rule: Rule, describe: Describe | None) -> Working:
+    """The steps behind the case that decides, and the condition itself as the last of them."""
     finding = checker.finding(bound, rule)
-    steps = _Walk(checker).figures(bound.figures)
+    judged = checker.binding(bound)
+    walk = _Walk(checker)
+    part = judged.part if judged else None
+    if judged is not None and judged.case is not None:
+        walk.uses(judged.case.uses, judged.case.states)
+        if part is not None:
+            walk.condition(rule, part, judged.case.uses)
     margin = f"{finding.margin}" if finding.margin else ""
-    return Working(rule.name, finding.title, rule.clause, finding.verdict, margin, finding.parts, tuple(steps))
+    form = describe(part.margin) if describe is not None and part is not None and part.margin is not None else None
+    return Working(
+        rule.name,
+        finding.title,
+        rule.clause,
+        finding.verdict,
+        margin,
+        finding.binding,
+        finding.parts,
+        tuple(walk.steps.values()),
+        form,
+    )
 
 
-def _figure(checker: Checker, figure: Figure) -> Working:
-    steps = _Walk(checker).figures([figure.name])
-    return Working(figure.name, figure.meaning, "", "", "", (), tuple(steps))
+def _figure(checker: Checker, figure: Figure, describe: Describe | None, caution: str) -> Working:
+    walk = _Walk(checker)
+    walk.figure(figure, 0)
+    form = describe(figure.term) if describe is not None and figure.term.sort == "number" else None
+    return Working(figure.name, figure.meaning, "", "", "", None, (), tuple(walk.steps.values()), form, caution)
 
 
 class _Walk:
@@ -82,14 +106,31 @@ class _Walk:
         self.checker = checker
         self.steps: dict[str, Step] = {}
 
-    def figures(self, names: Iterable[str]) -> list[Step]:
-        known = self.checker.graph.figures
-        for name in names:
-            if name in known:
-                self._visit(known[name], 0)
-        return list(self.steps.values())[:MOST_STEPS]
+    def uses(self, uses: Iterable[Use], states: tuple[tuple[str, str], ...]) -> None:
+        """What a condition names, in its case."""
+        state = ",".join(f"{axis}={name}" for axis, name in states)
+        for use in uses:
+            self._use(use, f"{state}]" if state else "", 0)
 
-    def _visit(self, figure: Figure, depth: int) -> None:
+    def condition(self, rule: Rule, part: Part, uses: Iterable[Use]) -> None:
+        """The condition as the last step."""
+        margin = (
+            amount(self.checker.reader, self.checker.bank, part.margin, part.unit, width=True) if part.margin else None
+        )
+        result = f"margin {margin}" if margin else self._holds(part)
+        numbers = self._with_numbers(part.formula, uses) if part.formula is not None else ""
+        exact = margin.exact if margin else ""
+        self.steps[f"rule {rule.name}"] = Step(
+            f"rule {rule.name}", rule.title, part.text, numbers, result, exact, "", place(part.span)
+        )
+
+    def _holds(self, part: Part) -> str:
+        truth = self.checker.reader.truth(part.holds)
+        if isinstance(truth, Unknown):
+            return f"unknown: {reason_text(truth.reasons)}"
+        return "holds" if truth else "does not hold"
+
+    def figure(self, figure: Figure, depth: int) -> None:
         if figure.name in self.steps or len(self.steps) >= MOST_STEPS:
             return
         state = figure.name.partition(" [")[2]
@@ -101,7 +142,7 @@ class _Walk:
         figures = self.checker.graph.figures
         for candidate in (f"{use.target} [{state}" if state else "", use.target):
             if candidate in figures:
-                self._visit(figures[candidate], depth + 1)
+                self.figure(figures[candidate], depth + 1)
                 return
         fact = self.checker.graph.facts.get(use.target)
         if fact is not None and use.target not in self.steps:
@@ -122,7 +163,7 @@ class _Walk:
             figure.name,
             figure.meaning,
             show(figure.syntax),
-            self._with_numbers(figure),
+            self._with_numbers(figure.syntax, figure.uses),
             str(shown) if shown else self._why(figure.term),
             shown.exact if shown else "",
             figure.source,
@@ -131,15 +172,17 @@ class _Walk:
             depth,
         )
 
-    def _with_numbers(self, figure: Figure) -> str:
-        uses = {use.text: use for use in figure.uses}
+    def _with_numbers(self, syntax: Syntax, names: Iterable[Use]) -> str:
+        uses = {use.text: use for use in names}
 
-        def number(syntax: Syntax) -> str | None:
-            use = uses.get(".".join(syntax.path)) if isinstance(syntax, Name) else None
+        def number(node: Syntax) -> str | None:
+            if not isinstance(node, (Name, Aggregate)):
+                return None
+            use = uses.get(show(node))
             shown = self._amount(use.term, use) if use else None
             return str(shown) if shown else None
 
-        return show_with(figure.syntax, number)
+        return show_with(syntax, number)
 
     def _why(self, term: Term) -> str:
         from_reader = self.checker.reader.value(term)

@@ -1,0 +1,106 @@
+"""JSON Schemas (2020-12) of rulesets and house files, from the shapes at the edge."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from typing import Any
+
+from rulecheck.model.declarations import KINDS
+from rulecheck.model.edge import HouseShape, RulesetShape, Shape
+from rulecheck.model.house import DECISIONS
+from rulecheck.model.ruleset_reader import EMPTY, STANDINGS
+
+Schema = dict[str, Any]
+
+DIALECT = "https://json-schema.org/draft/2020-12/schema"
+DAY: Schema = {"type": "string", "pattern": r"^[0-9]{4}-[0-9]{2}-[0-9]{2}$"}
+TEXT: Schema = {"type": ["string", "number", "boolean"]}
+
+_WINDOW: Schema = {
+    "type": "object",
+    "properties": {
+        "from": {**DAY, "description": "First day, included"},
+        "until": {**DAY, "description": "Last day, included"},
+    },
+    "additionalProperties": False,
+}
+_UNLESS: Schema = {
+    "type": "object",
+    "properties": {
+        "when": {**TEXT, "description": "Condition"},
+        "because": {**TEXT, "description": "Reason, for the report"},
+    },
+    "required": ["when"],
+    "additionalProperties": False,
+}
+_STEPS: Schema = {
+    "type": "array",
+    "items": {
+        "type": "object",
+        "properties": {test: TEXT for test in ("up_to", "below", "is", "when", "otherwise", "value")},
+        "additionalProperties": False,
+        "oneOf": [{"required": [test, "value"]} for test in ("up_to", "below", "is", "when")]
+        + [{"required": ["otherwise"], "maxProperties": 1}],
+    },
+}
+_PAIRS: Schema = {"type": "array", "items": {"type": "array", "items": TEXT, "minItems": 2, "maxItems": 2}}
+_GROUPS: Schema = {
+    "type": "object",
+    "additionalProperties": {
+        "type": "object",
+        "properties": {"when": TEXT, "rules": {"anyOf": [TEXT, {"type": "array", "items": TEXT}]}},
+        "required": ["when", "rules"],
+        "additionalProperties": False,
+    },
+}
+_NARROWER: Mapping[tuple[str, str], Schema] = {
+    ("RuleShape", "standing"): {"enum": list(STANDINGS)},
+    ("RuleShape", "empty"): {"enum": list(EMPTY)},
+    ("RuleShape", "valid"): _WINDOW,
+    ("RuleShape", "unless"): _UNLESS,
+    ("EvidenceShape", "expires"): {"enum": ["yes", "no", True, False]},
+    ("TableShape", "steps"): _STEPS,
+    ("TableShape", "linear"): _PAIRS,
+    ("InputShape", "kind"): {"enum": list(KINDS)},
+    ("InputShape", "at_least"): {"type": ["integer", "string"]},
+    ("RulesetShape", "valid"): _WINDOW,
+    ("RulesetShape", "groups"): _GROUPS,
+    ("HouseShape", "decision"): {"enum": list(DECISIONS)},
+}
+"""What the readers hold beyond the shapes, by shape and key."""
+
+
+def ruleset_schema() -> Schema:
+    """The schema of a ruleset file."""
+    return _of(RulesetShape, "Ruleset")
+
+
+def house_schema() -> Schema:
+    """The schema of a house file, `rulecheck.yaml`."""
+    return _of(HouseShape, "House file")
+
+
+def _of(shape: type[Shape], title: str) -> Schema:
+    made = shape.model_json_schema()
+    inner = {name: _tidy(name, part) for name, part in made.pop("$defs", {}).items()}
+    return {"$schema": DIALECT, **_tidy(shape.__name__, made), "title": title, "$defs": inner}
+
+
+def _tidy(name: str, made: Schema) -> Schema:
+    """A shape without what only Python needs, narrowed to what its reader takes."""
+    properties = {key: _property(name, key, part) for key, part in made.get("properties", {}).items()}
+    kept = {key: part for key, part in made.items() if key != "title"}
+    return {**kept, "properties": properties}
+
+
+def _property(name: str, key: str, made: Schema) -> Schema:
+    narrower = _NARROWER.get((name, key))
+    forms = [form for form in made.get("anyOf", ()) if form != {"type": "null"}]
+    if narrower is not None:
+        form = narrower
+    elif forms:
+        form = forms[0] if len(forms) == 1 else {"anyOf": forms}
+    else:
+        form = {word: part for word, part in made.items() if word not in ("title", "default", "description")}
+    said = made.get("description")
+    return {**form, **({"description": said} if said else {})}

@@ -1,0 +1,164 @@
+"""`check` and `workings` as JSON, by the schemas of `report_schema`."""
+
+from __future__ import annotations
+
+import json
+import math
+from dataclasses import fields, is_dataclass
+
+from rulecheck.outcome.results import Amount, Finding, PartResult, Place, Report, RulesetInfo, Workings
+
+Json = dict[str, object]
+
+
+def report_json(report: Report) -> str:
+    """The outcome of `check` as JSON text; the same outcome gives the same bytes."""
+    return _text(
+        {
+            "form": "report",
+            "version": report.version,
+            "design": report.design,
+            "revision": report.revision,
+            "file": report.file,
+            "date": report.date,
+            "verdict": report.verdict,
+            "tightest": report.tightest,
+            "counts": dict(report.counts),
+            "rulesets": [_ruleset(item) for item in report.rulesets],
+            "changes": list(report.changes),
+            "reserve": report.reserve,
+            "rules": [_finding(item) for item in report.rules],
+            "notes": list(report.notes),
+            "cautions": list(report.cautions),
+            "files": dict(report.files),
+        }
+    )
+
+
+def workings_json(workings: Workings) -> str:
+    """The outcome of `workings` as JSON text."""
+    return _text(
+        {
+            "form": "workings",
+            "version": workings.version,
+            "design": workings.design,
+            "file": workings.file,
+            "date": workings.date,
+            "items": [
+                {
+                    "name": item.name,
+                    "title": item.title,
+                    "clause": item.clause,
+                    "verdict": item.verdict,
+                    "margin": item.margin,
+                    "caution": item.caution,
+                    "conditions": [_part(part) for part in item.conditions],
+                    "steps": [_record(step) for step in item.steps],
+                    "closed_form": _record(item.closed_form) if item.closed_form else None,
+                }
+                for item in workings.items
+            ],
+        }
+    )
+
+
+def _text(value: Json) -> str:
+    return json.dumps(value, indent=2, ensure_ascii=False, allow_nan=False) + "\n"
+
+
+def _ruleset(item: RulesetInfo) -> Json:
+    return {
+        "name": item.name,
+        "edition": item.edition,
+        "file": item.file,
+        "withdrawn": list(item.withdrawn),
+        "note": item.note,
+    }
+
+
+def _finding(item: Finding) -> Json:
+    binding = item.binding
+    return {
+        "name": item.name,
+        "clause": item.clause,
+        "title": item.title,
+        "standing": item.standing,
+        "ruleset": item.ruleset,
+        "ruleset_name": item.ruleset_name,
+        "verdict": item.verdict,
+        "reason": item.reason,
+        "margin": _margin(item.margin, item.strict),
+        "relative_margin": _number(item.relative_margin),
+        "value": _amount(item.value),
+        "limit": _amount(item.limit),
+        "sense": item.sense,
+        "binding": {
+            "part": binding.part,
+            "element": binding.element,
+            "branch": binding.branch,
+            "case": {"state": dict(binding.state)},
+        }
+        if binding
+        else None,
+        "parts": [_part(part) for part in item.parts],
+        "places": {"rule": _place(item.rule_place), "value": _place(item.value_place)},
+        "dispensation": item.dispensation,
+        "estimates": list(item.estimates),
+        "outside_validity": list(item.outside_validity),
+        "notes": list(item.notes),
+        "history": list(item.history),
+    }
+
+
+def _part(item: PartResult) -> Json:
+    return {
+        "text": item.text,
+        "kind": item.kind,
+        "verdict": item.verdict,
+        "reason": item.reason,
+        "margin": _margin(item.margin, item.strict),
+        "relative_margin": _number(item.relative_margin),
+        "value": _amount(item.value),
+        "limit": _amount(item.limit),
+        "sense": item.sense,
+        "element": item.element,
+        "branch": item.branch,
+        "case": {"state": dict(item.state)},
+        "place": _place(item.place),
+    }
+
+
+def _margin(amount: Amount | None, strict: bool) -> Json | None:
+    shown = _amount(amount)
+    return {**shown, "strict": strict} if shown is not None else None
+
+
+def _amount(amount: Amount | None) -> Json | None:
+    if amount is None:
+        return None
+    return {
+        "value": _number(amount.value),
+        "unit": amount.unit,
+        "exact": amount.exact or None,
+        "shown": amount.shown,
+    }
+
+
+def _number(value: float | None) -> float | None:
+    """A double, or null where there is none: JSON has no infinity."""
+    return value if value is not None and math.isfinite(value) else None
+
+
+def _place(place: Place | None) -> Json | None:
+    return {"file": place.file, "line": place.line, "column": place.column} if place else None
+
+
+def _record(value: object) -> object:
+    """A flat result as it is: fields in their order."""
+    if is_dataclass(value) and not isinstance(value, type):
+        return {field.name: _record(getattr(value, field.name)) for field in fields(value)}
+    if isinstance(value, tuple):
+        return [_record(item) for item in value]
+    if hasattr(value, "items"):
+        return {key: _record(item) for key, item in value.items()}
+    return value

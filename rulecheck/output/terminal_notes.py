@@ -1,0 +1,68 @@
+"""Notes below the rules: contradictions, figures outside their range, estimates, and what the rule books changed."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable
+
+from rich.console import RenderableType
+from rich.padding import Padding
+from rich.text import Text
+
+from rulecheck.outcome.results import Finding, Report
+from rulecheck.output.screen import words
+from rulecheck.output.wording import counted
+
+_MOST = 6
+
+
+def notes(report: Report) -> Iterable[RenderableType]:
+    """A heading and the notes; nothing where there are none."""
+    lines = [*_told(report)]
+    if not lines:
+        return
+    yield Text()
+    yield words("notes", "bold")
+    for line in lines:
+        yield Padding(words(line), (0, 0, 0, 2))
+
+
+def _told(report: Report) -> Iterable[str]:
+    yield from report.notes
+    for book in report.rulesets:
+        if book.note:
+            yield f"{book.name}: {book.note}"
+    yield from _outside(report)
+    for item in report.rules:
+        yield from (f"{_rule(item)}: {note}" for note in item.notes)
+    yield from _estimates(report)
+    for item in report.rules:
+        yield from (f"{_rule(item)}: {line}" for line in item.history)
+    for book in report.rulesets:
+        yield from (f"withdrawn by {book.name}: {line}" for line in book.withdrawn)
+
+
+def _rule(item: Finding) -> str:
+    return " ".join(filter(None, (item.clause, item.name)))
+
+
+def _outside(report: Report) -> Iterable[str]:
+    by_figure: dict[str, list[str]] = {}
+    for item in report.rules:
+        for figure in item.outside_validity:
+            by_figure.setdefault(figure, []).append(_rule(item))
+    for figure, rules in by_figure.items():
+        yield f"{figure} is used outside its range of validity, in {_some(rules)}"
+
+
+def _estimates(report: Report) -> Iterable[str]:
+    resting = [item for item in report.rules if item.estimates]
+    if not resting:
+        return
+    values = list(dict.fromkeys(path for item in resting for path in item.estimates))
+    yield f"{counted(len(resting), 'rule')} on estimates: {_some([_rule(item) for item in resting])}"
+    yield f"{counted(len(values), 'estimate')}: {_some(values)}"
+
+
+def _some(texts: list[str]) -> str:
+    more = f" and {len(texts) - _MOST} more" if len(texts) > _MOST else ""
+    return ", ".join(texts[:_MOST]) + more

@@ -1,0 +1,67 @@
+"""Amounts, cases and verdicts in the words that the terminal form uses."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from decimal import ROUND_DOWN, Context, Decimal, InvalidOperation
+
+from rulecheck.outcome.results import Amount
+
+_DOWN = Context(prec=4, rounding=ROUND_DOWN)
+
+
+def short(amount: Amount | None) -> str:
+    """An amount for a narrow column: four figures, cut and not rounded, so that no room is promised that is not there.
+
+    >>> short(Amount("0.00935039", "in")), short(Amount("13.66", "kg")), short(Amount("123456", "mm"))
+    ('0.00935 in', '13.66 kg', '123456 mm')
+    """
+    if amount is None:
+        return ""
+    return str(Amount(_four_figures(amount.shown), amount.unit))
+
+
+def _four_figures(shown: str) -> str:
+    try:
+        number = Decimal(shown)
+    except InvalidOperation:
+        return shown
+    if not number.is_finite() or abs(number) >= 1000 or number.adjusted() < -6:
+        return shown
+    return f"{_DOWN.plus(number).normalize():f}"
+
+
+def percent(share: float | None) -> str:
+    """A relative margin in percent, two figures or one decimal, cut and not rounded.
+
+    >>> percent(0.02047), percent(-0.0034), percent(1.4), percent(None)
+    ('2.0 %', '-0.34 %', '140 %', '')
+    """
+    if share is None:
+        return ""
+    size = Decimal(repr(share)) * 100
+    if size == 0:
+        return "0 %"
+    places = 0 if abs(size) >= 100 else 1 if abs(size) >= 1 else 2
+    if abs(size) >= 100_000:
+        return f"{size:.0e} %"
+    cut = size.quantize(Decimal(1).scaleb(-places), rounding=ROUND_DOWN)
+    return f"{cut} %" if cut else f"{'-' if size < 0 else ''}0.00 %"
+
+
+def state_words(state: Mapping[str, str]) -> str:
+    """The case in which a margin arises.
+
+    >>> state_words({"fuel": "empty", "driver": "heavy"})
+    'fuel empty, driver heavy'
+    """
+    return ", ".join(f"{axis} {name}" for axis, name in state.items())
+
+
+def counted(number: int, singular: str, plural: str = "") -> str:
+    """A number with its noun.
+
+    >>> counted(1, "rule"), counted(3, "rule")
+    ('1 rule', '3 rules')
+    """
+    return f"{number} {singular if number == 1 else plural or singular + 's'}"
