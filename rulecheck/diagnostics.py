@@ -162,4 +162,5 @@ CODES: dict[str, str] = {
     # the command line
     "usage": "The command line cannot be understood.",
     "cannot-write": "An output file cannot be written.",
+    "internal": "A fault of rulecheck itself.",
 }

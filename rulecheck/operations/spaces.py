@@ -41,7 +41,8 @@ def over(space: Any, top: Any, bottom: Any) -> Any:
         with space.errstate(all="ignore"):
             return top / space.where(space.equal(bottom, 0), space.nan, bottom)
     if is_symbolic(space):
-        return top / bottom
+        # Partials write constants as floats; in a form they stay exact.
+        return (space.Rational(top) if isinstance(top, float) else top) / bottom
     return top / bottom if bottom else math.nan
 
 

@@ -39,6 +39,15 @@ def _steps(size: float, steps: tuple[float, ...]) -> int:
 
 
 def legend(*, unicode: bool = True) -> str:
-    """One line that says how to read a rail."""
-    post, touching = ("┃", "◆") if unicode else ("|", "#")
-    return f"rail: the limit is {post} ({touching} on it), left of it breach, right of it room; steps at 1, 2, 5, 10, 20 %"
+    """How to read a rail, with its steps.
+
+    >>> print(legend(unicode=False))
+    rail: | limit, o value (# on the limit); breach left (steps at 2, 10 %), room
+    right (1, 2, 5, 10, 20 %)
+    """
+    post, marker, touching = "┃●◆" if unicode else "|o#"
+    left, right = (", ".join(f"{step * 100:g}" for step in steps) for steps in (UNSAFE_STEPS, SAFE_STEPS))
+    return (
+        f"rail: {post} limit, {marker} value ({touching} on the limit); breach left (steps at {left} %), room\n"
+        f"right ({right} %)"
+    )

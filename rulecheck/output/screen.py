@@ -13,6 +13,7 @@ from io import StringIO
 from typing import Literal, TextIO
 
 from rich.console import Console, RenderableType
+from rich.padding import Padding
 from rich.text import Text
 
 from rulecheck.outcome.results import Verdict
@@ -64,7 +65,7 @@ def screen_of(stream: TextIO) -> Screen:
 def _known(colours: str) -> Colours:
     for name in ("truecolor", "256", "standard"):
         if colours == name:
-            return name  # type: ignore[return-value]
+            return name
     return ""
 
 
@@ -79,6 +80,11 @@ def _takes_lines(encoding: str) -> bool:
 def words(text: str, style: str = "") -> Text:
     """Text from a file, harmless, in a style."""
     return Text(plain(text), style)
+
+
+def line(text: str, indent: int = 0, style: str = "") -> Padding:
+    """Text from a file on a line of its own; what does not fit goes on below it, as far in."""
+    return Padding(words(text, style), (0, 0, 0, indent))
 
 
 def draw(parts: Iterable[RenderableType], screen: Screen) -> str:

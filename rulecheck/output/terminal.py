@@ -6,13 +6,12 @@ from collections.abc import Iterable, Sequence
 
 from rich.cells import cell_len
 from rich.console import RenderableType
-from rich.padding import Padding
 from rich.table import Table
 from rich.text import Text
 
 from rulecheck.outcome.results import VERDICTS, Finding, Report
 from rulecheck.output.rail import LENGTH, legend, rail
-from rulecheck.output.screen import PAPER, STYLES, Screen, draw, words
+from rulecheck.output.screen import PAPER, STYLES, Screen, draw, line, words
 from rulecheck.output.terminal_details import details
 from rulecheck.output.terminal_notes import notes
 from rulecheck.output.wording import percent, short
@@ -33,7 +32,8 @@ def _parts(report: Report, screen: Screen) -> Iterable[RenderableType]:
         yield _table(findings, screen)
     if any(item.relative_margin is not None for item in report.rules):
         yield Text()
-        yield words(legend(unicode=screen.unicode), "dim")
+        for told in legend(unicode=screen.unicode).splitlines():
+            yield line(told, style="dim")
     yield from details(report)
     yield from notes(report)
     yield Text()
@@ -64,20 +64,19 @@ def _books(report: Report) -> Iterable[tuple[str, Sequence[Finding]]]:
 
 
 def _table(findings: Sequence[Finding], screen: Screen) -> Table:
-    widest = max((cell_len(item.clause) for item in findings), default=0)
-    margins = max((cell_len(short(item.margin)) for item in findings), default=0)
-    table = Table(box=None, padding=(0, 1, 0, 0), expand=False, pad_edge=False, header_style="underline")
-    table.add_column("clause", width=min(max(widest, 6), 10))
+    widest = max(cell_len(item.clause) for item in findings)
+    margins = max(cell_len(short(item.margin)) for item in findings)
+    table = Table(box=None, padding=(0, 1, 0, 0), expand=True, pad_edge=False, header_style="underline")
+    table.add_column("", width=min(max(widest, 4), 10))
     table.add_column("rule", ratio=1)
     if screen.width >= _NAMES_FROM:
         table.add_column("name", no_wrap=True)
     table.add_column("verdict", width=max(len(verdict) for verdict in VERDICTS))
     table.add_column("margin", width=min(max(margins, 6), 14), justify="right")
-    table.add_column("share", width=8, justify="right")
+    table.add_column("share", width=7, justify="right")
     table.add_column("rail", width=LENGTH, no_wrap=True)
     for item in findings:
         table.add_row(*_row(item, screen))
-    table.expand = True
     return table
 
 
@@ -106,4 +105,5 @@ def _total(report: Report) -> Iterable[RenderableType]:
         share = f" ({percent(tightest.relative_margin)})" if tightest.relative_margin is not None else ""
         yield words(f"tightest: {tightest.clause} {tightest.title}, margin {short(tightest.margin)}{share}")
     for caution in report.cautions:
-        yield Padding(words(f"caution: {caution}"), (1, 0, 0, 0))
+        yield Text()
+        yield line(f"caution: {caution}")

@@ -5,11 +5,10 @@ from __future__ import annotations
 from collections.abc import Iterable
 
 from rich.console import RenderableType
-from rich.padding import Padding
 from rich.text import Text
 
 from rulecheck.outcome.results import Amount, Finding, PartResult, Report, Verdict
-from rulecheck.output.screen import STYLES, words
+from rulecheck.output.screen import STYLES, line, words
 from rulecheck.output.wording import state_words
 
 # In this order: what stops the car first.
@@ -29,7 +28,9 @@ def details(report: Report) -> Iterable[RenderableType]:
         yield Text.assemble(
             words(item.verdict, STYLES[item.verdict]), words(f" {item.clause} {item.title} ({item.name})")
         )
-        yield Padding(Text("\n").join(words(line) for line in _lines(item)), (0, 0, 0, 4))
+        yield from (line(told, 4) for told in _lines(item))
+    yield Text()
+    yield line(f"how each came about: rulecheck workings {report.file} NAME")
 
 
 def _lines(item: Finding) -> Iterable[str]:

@@ -5,11 +5,10 @@ from __future__ import annotations
 from collections.abc import Iterable
 
 from rich.console import RenderableType
-from rich.padding import Padding
 from rich.text import Text
 
 from rulecheck.outcome.results import Finding, Report
-from rulecheck.output.screen import words
+from rulecheck.output.screen import line, words
 from rulecheck.output.wording import counted
 
 _MOST = 6
@@ -22,8 +21,7 @@ def notes(report: Report) -> Iterable[RenderableType]:
         return
     yield Text()
     yield words("notes", "bold")
-    for line in lines:
-        yield Padding(words(line), (0, 0, 0, 2))
+    yield from (line(told, 2) for told in lines)
 
 
 def _told(report: Report) -> Iterable[str]:
@@ -36,9 +34,9 @@ def _told(report: Report) -> Iterable[str]:
         yield from (f"{_rule(item)}: {note}" for note in item.notes)
     yield from _estimates(report)
     for item in report.rules:
-        yield from (f"{_rule(item)}: {line}" for line in item.history)
+        yield from (f"{_rule(item)}: {told}" for told in item.history)
     for book in report.rulesets:
-        yield from (f"withdrawn by {book.name}: {line}" for line in book.withdrawn)
+        yield from (f"withdrawn by {book.name}: {told}" for told in book.withdrawn)
 
 
 def _rule(item: Finding) -> str:

@@ -5,13 +5,14 @@ from __future__ import annotations
 from collections.abc import Iterable
 
 from rich.console import RenderableType
-from rich.padding import Padding
 from rich.text import Text
 
 from rulecheck.outcome.results import VERDICTS, ClosedFormResult, PartResult, Step, Working, Workings
-from rulecheck.output.screen import PAPER, STYLES, Screen, draw, words
+from rulecheck.output.screen import PAPER, STYLES, Screen, draw, line, words
 from rulecheck.output.terminal_details import compared
 from rulecheck.output.wording import state_words
+
+_MOST_CONDITIONS = 12
 
 
 def workings_text(workings: Workings, screen: Screen = PAPER) -> str:
@@ -29,48 +30,64 @@ def _parts(workings: Workings) -> Iterable[RenderableType]:
 def _working(item: Working) -> Iterable[RenderableType]:
     yield words(" ".join(filter(None, (item.clause, item.name))) + (f": {item.title}" if item.title else ""), "bold")
     for number, step in enumerate(item.steps, 1):
-        yield Padding(_step(number, step), (0, 0, 0, 2))
-    for part in item.conditions:
-        yield Padding(_condition(part), (0, 0, 0, 2))
+        yield from _step(number, step)
+    yield from _conditions(item)
     if item.verdict:
         style = next((STYLES[verdict] for verdict in VERDICTS if verdict == item.verdict), "")
         margin = f", margin {item.margin}" if item.margin else ""
         yield Text.assemble("  verdict: ", words(item.verdict, style), words(margin))
     if item.closed_form is not None:
-        yield Padding(_closed_form(item.closed_form), (1, 0, 0, 2))
+        yield from _closed_form(item.closed_form)
     if item.caution:
-        yield words(f"caution: {item.caution}")
+        yield line(f"caution: {item.caution}", 2)
 
 
-def _step(number: int, step: Step) -> Text:
-    lines = [f"{number}. {step.name} = {step.result}" if not step.formula else f"{number}. {step.name}"]
-    if step.formula:
-        lines.append(f"   = {step.formula}")
-        if step.numbers and step.numbers != step.formula:
-            lines.append(f"   = {step.numbers}")
-        lines.append(f"   = {step.result}")
+def _step(number: int, step: Step) -> Iterable[RenderableType]:
+    if not step.formula:
+        yield line(f"{number}. {step.name} = {step.result}", 2)
+    else:
+        yield line(f"{number}. {step.name}", 2)
+        for text in dict.fromkeys(filter(None, (step.formula, step.numbers, step.result))):
+            yield line(f"= {text}", 5)
     meaning = "" if step.meaning == "input" else step.meaning
     told = "; ".join(filter(None, (meaning, step.source, str(step.place) if step.place else "")))
     if told:
-        lines.append(f"   {told}")
+        yield line(told, 5, "dim")
     if step.outside_validity:
-        lines.append("   outside its range of validity")
-    return Text("\n").join(words(line) for line in lines)
+        yield line("outside its range of validity", 5)
 
 
-def _condition(part: PartResult) -> Text:
+def _conditions(item: Working) -> Iterable[RenderableType]:
+    """All conditions where there are several, or where no step shows the only one."""
+    if len(item.conditions) == 1 and item.steps:
+        return
+    for text, parts in _by_text(item.conditions).items():
+        yield line(text, 2)
+        yield from (line(_judged(part), 5) for part in parts[:_MOST_CONDITIONS])
+        if len(parts) > _MOST_CONDITIONS:
+            yield line(f"and {len(parts) - _MOST_CONDITIONS} more", 5)
+
+
+def _by_text(parts: Iterable[PartResult]) -> dict[str, list[PartResult]]:
+    found: dict[str, list[PartResult]] = {}
+    for part in parts:
+        found.setdefault(part.text, []).append(part)
+    return found
+
+
+def _judged(part: PartResult) -> str:
     where = ", ".join(filter(None, (part.element, state_words(part.state), part.branch)))
-    told = [f"{part.text}{f' ({where})' if where else ''}"]
     numbers = compared(part.value, part.sense, part.limit)
     margin = f"margin {part.margin}" if part.margin else ""
-    told.append("   " + "; ".join(filter(None, (part.verdict, numbers, margin, part.reason))))
-    return Text("\n").join(words(line) for line in told)
+    told = "; ".join(filter(None, (part.verdict, numbers, margin, part.reason)))
+    return f"{where}: {told}" if where else told
 
 
-def _closed_form(found: ClosedFormResult) -> Text:
-    lines = ["as one formula of the inputs, in SI units:", f"   margin = {found.formula}"]
-    lines.extend(f"   change with {path}: {text}" for path, text in found.derivatives.items())
+def _closed_form(found: ClosedFormResult) -> Iterable[RenderableType]:
+    yield Text()
+    yield line("as one formula of the inputs, in SI units:", 2)
+    yield line(f"margin = {found.formula}", 5)
+    yield from (line(f"change with {path}: {text}", 5) for path, text in found.derivatives.items())
     for path, texts in found.solved.items():
-        lines.extend(f"   on the limit: {path} = {text}" for text in texts)
-    lines.extend(f"   where {text}" for text in found.conditions)
-    return Text("\n").join(words(line) for line in lines)
+        yield from (line(f"on the limit: {path} = {text}", 5) for text in texts)
+    yield from (line(f"where {text}", 5) for text in found.conditions)

@@ -32,17 +32,17 @@ def _four_figures(shown: str) -> str:
 
 
 def percent(share: float | None) -> str:
-    """A relative margin in percent, two figures or one decimal, cut and not rounded.
+    """A relative margin in percent with two or three figures, cut and not rounded.
 
-    >>> percent(0.02047), percent(-0.0034), percent(1.4), percent(None)
-    ('2.0 %', '-0.34 %', '140 %', '')
+    >>> percent(0.02047), percent(-0.0034), percent(0.166), percent(1.4), percent(None)
+    ('2.0 %', '-0.34 %', '16 %', '140 %', '')
     """
     if share is None:
         return ""
     size = Decimal(repr(share)) * 100
     if size == 0:
         return "0 %"
-    places = 0 if abs(size) >= 100 else 1 if abs(size) >= 1 else 2
+    places = 0 if abs(size) >= 10 else 1 if abs(size) >= 1 else 2
     if abs(size) >= 100_000:
         return f"{size:.0e} %"
     cut = size.quantize(Decimal(1).scaleb(-places), rounding=ROUND_DOWN)

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import re
 from fractions import Fraction
+from functools import lru_cache
 
 MAXIMUM_DIGITS = 400
 MAXIMUM_EXPONENT = 999
@@ -105,6 +106,7 @@ _FAULTS: tuple[tuple[str, str, str], ...] = (
 )  # fmt: skip
 
 
+@lru_cache(maxsize=4096)
 def show_number(value: Fraction, digits: int = 6) -> str:
     """A decimal for the screen: exact where it ends within `digits` significant digits, else rounded to them.
 
@@ -127,6 +129,7 @@ def show_number(value: Fraction, digits: int = 6) -> str:
     return f"-{shown}" if value < 0 else shown
 
 
+@lru_cache(maxsize=4096)
 def show_exact(value: Fraction) -> str:
     """The value itself: a decimal where one ends, else a fraction in lowest terms.
 
@@ -155,20 +158,28 @@ def show_exact(value: Fraction) -> str:
 def _rounded(value: Fraction, digits: int) -> tuple[int, int]:
     """`number * 10^power` with `digits` digits, nearest to a positive value."""
     power = _leading(value) - digits + 1
-    scaled = value / Fraction(10) ** power
-    number = (2 * scaled.numerator + scaled.denominator) // (2 * scaled.denominator)
-    return number, power
+    top, bottom = value.numerator, value.denominator
+    if power >= 0:
+        bottom *= 10**power
+    else:
+        top *= 10**-power
+    return (2 * top + bottom) // (2 * bottom), power
 
 
 def _leading(value: Fraction) -> int:
     """The power of ten of the first digit of a positive value."""
-    bits = value.numerator.bit_length() - value.denominator.bit_length()
-    guess = bits * 30103 // 100000 - 1
-    while value >= Fraction(10) ** (guess + 1):
+    top, bottom = value.numerator, value.denominator
+    guess = (top.bit_length() - bottom.bit_length()) * 30103 // 100000 - 1
+    while _reaches(top, bottom, guess + 1):
         guess += 1
-    while value < Fraction(10) ** guess:
+    while not _reaches(top, bottom, guess):
         guess -= 1
     return guess
+
+
+def _reaches(top: int, bottom: int, power: int) -> bool:
+    """True where `top / bottom` is at least ten to the power; in whole numbers, since this runs for every figure."""
+    return top >= bottom * 10**power if power >= 0 else top * 10**-power >= bottom
 
 
 def _decimals(denominator: int) -> int | None:

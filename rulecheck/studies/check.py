@@ -16,6 +16,7 @@ from rulecheck.operations.values import Unknown
 from rulecheck.outcome.results import Amount, BindingPart, Finding, PartResult, Verdict
 from rulecheck.quantity.dimension import PURE
 from rulecheck.quantity.quantity import Quantity
+from rulecheck.quantity.units import Unit
 from rulecheck.readers.exact import ExactReader
 from rulecheck.studies.amounts import amount, place, reason_text
 from rulecheck.studies.judging import Judge, Judged, all_of, verdict_of
@@ -39,6 +40,7 @@ class Checker:
         self.reader = ExactReader(graph.bank, graph.inputs)
         self.judge = Judge(graph.bank, self.reader)
         self.reserves = reserves or Reserves()
+        self._amounts: dict[tuple[int, Unit | None, bool], Amount | None] = {}
 
     def finding(self, bound: BoundRule, rule: Rule, ruleset_name: str = "") -> Finding:
         """One rule with its verdict."""
@@ -151,7 +153,12 @@ class Checker:
     # --- what is shown -----------------------------------------------------------------------------------------------
 
     def _amount(self, term: Term | None, part: Part, *, width: bool = False) -> Amount | None:
-        return None if term is None else amount(self.reader, self.bank, term, part.unit, width=width)
+        if term is None:
+            return None
+        key = (term.index, part.unit, width)
+        if key not in self._amounts:
+            self._amounts[key] = amount(self.reader, self.bank, term, part.unit, width=width)
+        return self._amounts[key]
 
     def _parts(self, cases: Iterable[Case]) -> Iterable[PartResult]:
         for case in cases:

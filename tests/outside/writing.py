@@ -81,3 +81,24 @@ def as_fraction(amount: Amount | None) -> Fraction:
     assert amount is not None
     assert amount.exact, f"{amount} is not exact"
     return Fraction(amount.exact)
+
+
+def write_figures(folder: Path, units: Mapping[str, str], **parts: object) -> None:
+    """A ruleset with one rule a figure, so that `values` can read each figure in the unit given."""
+    rules = {
+        name.replace(".", "_"): {"require": f"{name} >= 0 {unit}" if unit != "1" else f"{name} >= 0"}
+        for name, unit in units.items()
+    }
+    write_ruleset(folder, **parts, rules=rules)
+
+
+def values(folder: Path, units: Mapping[str, str], settings: Mapping[str, str] | None = None) -> dict[str, float]:
+    """The figures of `write_figures` as doubles; each must be known, in the unit asked for."""
+    found = findings(folder, settings)
+    result = {}
+    for name, unit in units.items():
+        amount = found[name.replace(".", "_")].value
+        assert amount is not None, (name, found[name.replace(".", "_")].reason)
+        assert amount.unit in (unit, "" if unit == "1" else unit)
+        result[name] = as_float(amount)
+    return result

@@ -117,7 +117,7 @@ def bomb(levels: int) -> str:
     [
         ("a <= 9^9^9^9 * 1 mm", ("it: unproven", "refused: too-large")),
         ("a <= 9^9^9^9^9^9^9 * 1 mm", ("it: unproven", "refused: too-large")),
-        ("a / 1 mm <= (a / 1 mm)^(10^9)", ("it: unproven", "refused: too-large")),
+        ("a / 1 mm <= (a / 1 mm)^(10^9)", ("it: complies",)),
         ("a <= 1e999999999 mm", ("refused: too-large",)),
         ("exp(exp(exp(exp(exp(a / 1 mm))))) >= 1", ("it: unproven", "it: complies")),
         ("sin(exp(exp(exp(a / 1 mm)))) <= 0.5", ("it: unproven",)),

@@ -1,0 +1,85 @@
+"""`python -m tests.benchmark`: the measures of the program, as ratios within one run."""
+
+from __future__ import annotations
+
+import statistics
+import subprocess
+import sys
+import tempfile
+import time
+from collections.abc import Callable
+from datetime import date
+from pathlib import Path
+from typing import Any
+
+from rulecheck import api
+from rulecheck.readers.exact import ExactReader
+from tests.benchmark.reference_work import Work, write
+
+# What `check` loads from others, as a bare import.
+LIBRARIES = "import yaml, pydantic, flint, click, rich.console, rich.table, rich.text"
+RUNS = 9
+
+
+def seconds(action: Callable[[], Any]) -> float:
+    """One run."""
+    started = time.perf_counter()
+    action()
+    return time.perf_counter() - started
+
+
+def paired(first: Callable[[], Any], second: Callable[[], Any], runs: int = RUNS) -> tuple[float, float, float]:
+    """Medians of two actions in turn, and of their ratio pair by pair."""
+    first(), second()
+    pairs = [(seconds(first), seconds(second)) for _ in range(runs)]
+    ratio = statistics.median(a / b for a, b in pairs)
+    return statistics.median(a for a, _ in pairs), statistics.median(b for _, b in pairs), ratio
+
+
+def run(*arguments: str) -> None:
+    """A command as a whole process."""
+    subprocess.run([sys.executable, *arguments], check=False, stdout=subprocess.DEVNULL, stderr=subprocess.DEVNULL)
+
+
+def cold_check(work: Work) -> None:
+    """The whole command against the bare import of its libraries."""
+    ours, theirs, ratio = paired(
+        lambda: run("-m", "rulecheck", "check", str(work.design), "--on", "2027-03-01"),
+        lambda: run("-c", LIBRARIES),
+    )
+    print(f"cold check                 {ours:8.3f} s   bare import of its libraries {theirs:8.3f} s   ratio {ratio:6.2f}  (goal <= 1.5)")
+
+
+def certified_verdicts(work: Work) -> None:
+    """Verdicts of 200 rules on a bound graph against generated float Python."""
+    graph = _graph(work)
+    parts = [case.condition for rule in graph.rules for case in rule.cases]
+    space: dict[str, Any] = {}
+    exec(compile(work.python, "reference", "exec"), space)  # noqa: S102  # the generated float program
+    floats = space["margins_of"]
+
+    def exact() -> None:
+        reader = ExactReader(graph.bank, graph.inputs)
+        for part in parts:
+            reader.truth(part.holds)
+
+    ours, theirs, ratio = paired(exact, lambda: floats(*work.values), 201)
+    print(f"certified verdicts         {ours * 1e3:8.3f} ms  float Python                {theirs * 1e3:8.3f} ms  ratio {ratio:6.2f}  (goal <= 10)")
+
+
+def _graph(work: Work) -> Any:
+    session = api.Session()
+    loaded = api._load(session, work.design, (), (), (), None)
+    return api._bind(loaded, date(2027, 3, 1))
+
+
+def main() -> None:
+    """All measures."""
+    with tempfile.TemporaryDirectory() as folder:
+        work = write(Path(folder))
+        cold_check(work)
+        certified_verdicts(work)
+
+
+if __name__ == "__main__":
+    main()
