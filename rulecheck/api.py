@@ -110,7 +110,8 @@ def check(
     loaded = _load(session, design, rules, settings, changes, states)
     graph = _bind(loaded, day)
     checker = Checker(graph, _reserves(loaded.house, reserve))
-    asked = Asked(day, loaded.changes, _reserve_text(loaded.house, reserve))
+    decision = loaded.house.decision if loaded.house else "simple"
+    asked = Asked(day, loaded.changes, _reserve_text(loaded.house, reserve), decision)
     return report(checker, loaded.design, loaded.rulesets, asked, session.digests)
 
 

@@ -30,6 +30,7 @@ class Side:
     syntax: Syntax
     bound: Bound
     rests_on_inputs: bool
+    day: Term | None = None
 
 
 @dataclass(frozen=True, slots=True)
@@ -211,7 +212,7 @@ def _ordinal(scope: Scope, side: Side) -> Side:
     assert isinstance(side.bound, Date)
     term = scope.apply(ordinal, [side.bound.term], side.syntax.span)
     assert term is not None
-    return replace(side, bound=Number(term, find_unit("days"), counted=True))
+    return replace(side, bound=Number(term, find_unit("days"), counted=True), day=side.bound.term)
 
 
 def _numbers(
@@ -237,7 +238,14 @@ def _numbers(
     margin = scope.apply(subtract, [large, small], syntax.span)
     if holds is None or margin is None:
         return BROKEN
+    days = (left.day, right.day) if limit_right else (right.day, left.day)
+    value, limit = (_shown(number, day) for number, day in zip((value, limit), days, strict=True))
     return Compared(text, syntax.span, holds, margin, strict, value, limit, "at most" if upper else "at least")
+
+
+def _shown(number: Number, day: Term | None) -> Number:
+    """A day is shown as a date, though it is compared as a number."""
+    return number if day is None else replace(number, term=day)
 
 
 def _equality(

@@ -108,6 +108,7 @@ class Builder:
         return Part(
             "comparison", pair.text, pair.holds, pair.margin, pair.strict, scale, self._unit(pair),
             pair.value.term, pair.limit.term, pair.sense, pair.span, formula=pair.formula,
+            counted=pair.value.counted and pair.limit.counted,
         )  # fmt: skip
 
     def _unit(self, pair: Compared) -> Unit:

@@ -107,7 +107,7 @@ def _in_force(scope: Scope, wanted: EvidenceWanted, base: str, text: str) -> Con
     margin = scope.apply(subtract, [last, today], None)
     assert holds is not None
     parts.append(
-        Part("evidence", text, holds, margin, unit=find_unit("days"), value=today, limit=last, sense="until",
+        Part("evidence", text, holds, margin, unit=find_unit("days"), value=scope.bank.day(scope.shared.day), limit=until, sense="until",
              span=wanted.kind.span, place=place)
     )  # fmt: skip
     return parts[0] if len(parts) == 1 else AllOf(tuple(parts))

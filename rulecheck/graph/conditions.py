@@ -30,7 +30,8 @@ class Part:
     """One condition. `holds` decides it; `margin` is its room to the limit in SI, None where it has no number.
 
     `scale` is what the relative margin is measured by (SI, positive), None where there is none. `unit` is the unit of
-    the margin, `value` and `limit` the two sides of a comparison.
+    the margin, `value` and `limit` the two sides of a comparison; `counted` marks a count, which may well stand
+    on its limit.
     """
 
     kind: PartKind
@@ -46,6 +47,7 @@ class Part:
     span: Span | None = field(default=None, compare=False)
     place: Span | None = field(default=None, compare=False)
     formula: Syntax | None = field(default=None, compare=False)
+    counted: bool = False
 
 
 @dataclass(frozen=True, slots=True)

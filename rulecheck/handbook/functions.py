@@ -78,14 +78,14 @@ FUNCTIONS: tuple[Row, ...] = (
     Row(
         "below(p, line(a, b))",
         "room in z under a line, in side view",
-        "below(points.nose, line(points.left, points.roof))",
-        "0 mm",
+        "below(points.left, line(points.nose, points.roof))",
+        "800 mm",
     ),
     Row(
         "above(p, line(a, b))",
         "room in z over a line, in side view",
-        "above(points.nose, line(points.left, points.roof))",
-        "0 mm",
+        "above(points.roof, line(points.nose, points.left))",
+        "800 mm",
     ),
     Row(
         "angle(line, line or plane)",

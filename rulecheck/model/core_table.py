@@ -79,7 +79,6 @@ MASSES = (
         "choice",
         "Axle whose unsprung mass it belongs to",
         choices=("front", "rear", "none"),
-        default="none",
     ),
     Entry("masses.*.owner", "text", "Who answers for it"),
     Entry("masses.*.group", "text", "Group of the ledger"),
@@ -89,7 +88,6 @@ MASSES = (
             "number",
             f"Moment of inertia of one piece about its own {name} axis",
             unit="kg*m^2",
-            default="0 kg*m^2",
         )
         for axis, name in (("xx", "longitudinal"), ("yy", "transverse"), ("zz", "vertical"))
     ),
@@ -239,8 +237,8 @@ CONDITIONS = (
     Entry("vehicle.lateral_acceleration", "number", "Lateral acceleration", unit="m/s^2"),
     Entry("air.altitude", "number", "Geopotential altitude", unit="m"),
     Entry("air.temperature", "number", "Temperature of the air", unit="degC"),
-    Entry("air.humidity", "number", "Relative humidity", unit="%", default="0 %"),
-    Entry("air.wind", "number", "Wind against the direction of travel, positive ahead", unit="m/s", default="0 m/s"),
+    Entry("air.humidity", "number", "Relative humidity", unit="%"),
+    Entry("air.wind", "number", "Wind against the direction of travel, positive ahead", unit="m/s"),
 )
 
 SAFETY = (

@@ -61,7 +61,6 @@ def _rows(
         _text(shape.meaning),
         unit=_text(shape.unit),
         choices=tuple(item.text for item in shape.choices or ()),
-        default=_text(shape.default),
         items=tuple(item.text for item in shape.items or ()),
         at_least=_count(shape.at_least, faults),
         of=_text(shape.of),

@@ -80,6 +80,8 @@ class _Draft:
             self.keys[f"{path}.{name}"] = cell.span
             names.append(name.partition(".")[0])
         self.items[path] = tuple(dict.fromkeys(names))
+        if axes := tuple(column for column in ("x", "y", "z") if column in row.cells):
+            self.items[f"{path}.at"] = axes
 
 
 def read_design(workspace: Workspace, file: str, asked: Span | None = None) -> Design:

@@ -96,7 +96,6 @@ class InputShape(Shape):
     unit: Leaf | None = Field(None, description="Unit of a number")
     choices: list[Leaf] | None = Field(None, description="Words of a choice")
     meaning: Leaf | None = Field(None, description="One line on what it is")
-    default: Leaf | None = Field(None, description="What holds where nothing is stated")
     datum: Leaf | None = Field(None, description="required: a point must name its datum")
     definition: Leaf | None = Field(None, description="Definition that a value must meet")
     of: Leaf | None = Field(None, description="Collection that an item is of")

@@ -341,6 +341,15 @@ def _merged(base: Ruleset, top: Ruleset, root: Mapping, faults: Faults) -> Rules
     node = root.get("withdrawn")
     for entry in node if isinstance(node, Mapping) else ():
         reason = entry.value.text if isinstance(entry.value, Located) else ""
+        if not reason:
+            faults.add(
+                "quote-this",
+                f"'{entry.key.text}' is withdrawn without a reason",
+                entry.key.span,
+                expected="rule: reason",
+                advice="quote a reason that has a comma in it",
+            )
+            continue
         if entry.key.text in base.rules:
             withdrawn.append(Withdrawn(rules.pop(entry.key.text), reason, entry.key.span))
         elif entry.key.text not in {item.rule.name for item in withdrawn}:

@@ -16,7 +16,7 @@ from rulecheck.operations.operation import UNDECIDED, Operation, Undefined
 from rulecheck.operations.values import Bounds, Unknown, merged
 from rulecheck.quantity.dimension import Dimension
 
-CONTRADICTION = Undefined("declared and computed values contradict each other")
+CONTRADICTION = Undefined("declared and computed values contradict each other", "contradiction")
 
 
 def _joined(decides: bool) -> Callable[[Sequence[Any]], Any]:

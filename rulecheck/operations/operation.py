@@ -25,6 +25,7 @@ class Undefined:
     """What a rule gives where the operation has no value: `division by zero`."""
 
     text: str
+    kind: ReasonKind = "undefined"
 
 
 class Undecided:

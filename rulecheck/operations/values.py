@@ -14,7 +14,7 @@ from typing import Any, Literal
 
 from rulecheck.diagnostics import Span
 
-ReasonKind = Literal["missing", "undefined", "tie", "budget"]
+ReasonKind = Literal["missing", "contradiction", "undefined", "tie", "budget"]
 
 
 @dataclass(frozen=True, slots=True)

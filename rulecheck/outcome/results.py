@@ -101,6 +101,7 @@ class Finding:
     dispensation: str = ""
     history: tuple[str, ...] = ()
     ruleset_name: str = ""
+    counted: bool = False
 
 
 @dataclass(frozen=True, slots=True)

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Iterable, Mapping, Sequence
+from textwrap import wrap
 
 from rich.cells import cell_len
 
@@ -38,12 +39,23 @@ def _block(item: Diagnostic, texts: Mapping[str, str], width: int) -> Iterable[s
     if item.span is not None:
         yield from _quoted(item.span, texts, width)
     if item.expected:
-        yield f"{_MARGIN}expected: {plain(item.expected)}"
+        yield from _wrapped(f"expected: {plain(item.expected)}", width)
     if item.advice:
-        yield f"{_MARGIN}do: {plain(item.advice)}"
+        yield from _wrapped(f"do: {plain(item.advice)}", width)
     for other in item.related:
         yield f"{_MARGIN}see {plain(str(other.span))}: {plain(other.message)}"
         yield from _quoted(other.span, texts, width)
+
+
+def _wrapped(text: str, width: int) -> Iterable[str]:
+    yield from wrap(
+        text,
+        width,
+        initial_indent=_MARGIN,
+        subsequent_indent=_MARGIN * 2,
+        break_long_words=False,
+        break_on_hyphens=False,
+    )
 
 
 def _quoted(span: Span, texts: Mapping[str, str], width: int) -> Iterable[str]:

@@ -34,6 +34,11 @@ def details(report: Report) -> Iterable[RenderableType]:
 
 
 def _lines(item: Finding) -> Iterable[str]:
+    if item.verdict == "tight":
+        # Nothing is broken: the numbers and the place of the value say enough.
+        yield from _numbers(item)
+        yield f"value at {item.value_place}" if item.value_place else f"rule at {item.rule_place}"
+        return
     if item.reason:
         yield item.reason
     binding = item.binding
@@ -66,8 +71,10 @@ def compared(value: Amount | None, sense: str, limit: Amount | None) -> str:
 
     >>> compared(Amount("1180", "mm"), "at most", Amount("1176", "mm"))
     'value 1180 mm, at most 1176 mm'
+    >>> compared(None, "at least", Amount("2", "kg"))
+    'value not known, at least 2 kg'
     """
-    shown = f"value {value}" if value else ""
+    shown = f"value {value}" if value else "value not known" if limit else ""
     bound = f"{sense or 'limit'} {limit}" if limit else ""
     return ", ".join(filter(None, (shown, bound)))
 

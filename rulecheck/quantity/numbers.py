@@ -179,7 +179,9 @@ def _leading(value: Fraction) -> int:
 
 def _reaches(top: int, bottom: int, power: int) -> bool:
     """True where `top / bottom` is at least ten to the power; in whole numbers, since this runs for every figure."""
-    return top >= bottom * 10**power if power >= 0 else top * 10**-power >= bottom
+    if power >= 0:
+        return top >= bottom * 10**power
+    return int(top * 10**-power) >= bottom
 
 
 def _decimals(denominator: int) -> int | None:

@@ -76,7 +76,7 @@ class Applying:
         if found is UNDECIDED and bits >= PROOF_BITS:
             found = self._proved(term, values)
         if isinstance(found, Undefined):
-            return Unknown((Reason("undefined", found.text, self._bank.spans[term.index]),))
+            return Unknown((Reason(found.kind, found.text, self._bank.spans[term.index]),))
         if isinstance(found, (Rational, PiNumber)) and size(found) > BITS:
             found = to_ball(found)
         if isinstance(found, Ball) and not found.is_finite():

@@ -74,6 +74,7 @@ class Checker:
             dispensation=permit,
             history=tuple(f"{origin.what}: {origin.span}" for origin in rule.history),
             ruleset_name=ruleset_name,
+            counted=bool(part and part.counted),
         )
 
     def binding(self, bound: BoundRule) -> Judged | None:

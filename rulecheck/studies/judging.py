@@ -140,10 +140,10 @@ def _order(item: Judged) -> tuple[Fraction | float, bool]:
 
 
 def verdict_of(truth: Truth) -> Verdict:
-    """The verdict of a truth: unknown for want of something is `open`, else `unproven`."""
+    """The verdict of a truth: unknown for want of something, or by contradiction, is `open`, else `unproven`."""
     if truth is True:
         return "complies"
     if truth is False:
         return "breach"
     assert isinstance(truth, Unknown)
-    return "open" if any(reason.kind == "missing" for reason in truth.reasons) else "unproven"
+    return "open" if any(reason.kind in ("missing", "contradiction") for reason in truth.reasons) else "unproven"

@@ -28,6 +28,7 @@ class Asked:
     day: date
     changes: tuple[str, ...] = ()
     reserve: str = ""
+    decision: str = "simple"
 
 
 def report(
@@ -49,7 +50,7 @@ def report(
         rules=findings,
         counts=counts(findings),
         tightest=_tightest(findings),
-        notes=tuple(_notes(checker)),
+        notes=(*_decision(asked), *_notes(checker)),
         cautions=(CAUTION,),
         changes=asked.changes,
         reserve=asked.reserve,
@@ -65,19 +66,29 @@ def counts(findings: Iterable[Finding]) -> dict[str, int]:
 
 
 def _tightest(findings: Iterable[Finding]) -> str:
-    """The binding rule with the least relative margin."""
-    measured = [
-        f
-        for f in findings
-        if binds(f) and f.relative_margin is not None and f.verdict in ("complies", "tight", "breach")
-    ]
+    """The binding rule with the least relative margin; a count may well stand on its limit, and is left out."""
+    measured = [finding for finding in findings if binds(finding) and _is_measured(finding)]
     return min(measured, key=lambda finding: finding.relative_margin or 0.0).name if measured else ""
+
+
+def _is_measured(finding: Finding) -> bool:
+    if finding.relative_margin is None or finding.verdict not in ("complies", "tight", "breach"):
+        return False
+    return not finding.counted or finding.verdict == "breach"
 
 
 def _info(ruleset: Ruleset, day: date) -> RulesetInfo:
     note = "" if ruleset.valid.holds(day) else f"not in force on {day.isoformat()}"
     withdrawn = tuple(f"{item.rule.name}: {item.reason}" for item in ruleset.withdrawn)
     return RulesetInfo(ruleset.name, ruleset.edition, ruleset.file, withdrawn, note)
+
+
+def _decision(asked: Asked) -> Iterable[str]:
+    if asked.decision != "simple":
+        yield (
+            f"the house asks for the decision rule '{asked.decision}'; this version judges every value as stated "
+            "(simple), and takes no account of its uncertainty or tolerance"
+        )
 
 
 def _notes(checker: Checker) -> Iterable[str]:

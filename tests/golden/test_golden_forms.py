@@ -1,0 +1,77 @@
+"""Whole outputs on a small invented car, held against files of the form's own extension.
+
+The folder is copied away first, so that file names in the outputs do not hang on where the project lies.
+"""
+
+from __future__ import annotations
+
+import json
+import shutil
+from collections.abc import Callable
+from pathlib import Path
+
+import pytest
+from jsonschema import Draft202012Validator
+
+from rulecheck import __version__
+from rulecheck.cli import run
+from rulecheck.output.report_schema import diagnostics_schema, report_schema, workings_schema
+
+HERE = Path(__file__).parent
+CASE = HERE / "plover"
+DAY = ("--on", "2027-03-01")
+Golden = Callable[[Path, str], None]
+
+
+@pytest.fixture(autouse=True)
+def _in_the_case(tmp_path: Path, monkeypatch: pytest.MonkeyPatch) -> None:
+    folder = tmp_path / "plover"
+    shutil.copytree(CASE, folder, ignore=shutil.ignore_patterns("expected"))
+    monkeypatch.chdir(folder)
+    monkeypatch.delenv("FORCE_COLOR", raising=False)
+
+
+def _without_version(text: str) -> str:
+    return text.replace(f'"version": "{__version__}"', '"version": "VERSION"')
+
+
+SHOWN = [
+    ("check.txt", 1, ["check", "plover.design.yaml"]),
+    ("check.json", 1, ["check", "plover.design.yaml", "--form", "json"]),
+    ("check-heavy-reserve.txt", 1, ["check", "plover.design.yaml", "--state", "driver=heavy", "--reserve", "5 %"]),
+    ("check-mended.txt", 3, ["check", "plover.design.yaml", "--change", "mended.change.yaml"]),
+    ("check-settled.txt", 0, ["check", "plover.design.yaml", "--change", "settled.change.yaml"]),
+    ("workings.txt", 0, ["workings", "plover.design.yaml", "tyre_width", "mass_with_driver", "diffuser_room"]),
+    ("workings.json", 0, ["workings", "plover.design.yaml", "diffuser_width", "--form", "json"]),
+    ("workings-closed-form.txt", 0, ["workings", "plover.design.yaml", "diffuser_width", "--closed-form"]),
+    ("refused.json", 2, ["check", "faulty.design.yaml", "--form", "json"]),
+]
+
+
+@pytest.mark.parametrize(("name", "code", "arguments"), SHOWN, ids=[name for name, _, _ in SHOWN])
+def test_standard_output(
+    name: str, code: int, arguments: list[str], capsys: pytest.CaptureFixture[str], golden: Golden
+) -> None:
+    assert run([*arguments, *DAY]) == code
+    golden(CASE / "expected" / name, _without_version(capsys.readouterr().out))
+
+
+def test_diagnostics_on_standard_error(capsys: pytest.CaptureFixture[str], golden: Golden) -> None:
+    assert run(["check", "faulty.design.yaml", *DAY]) == 2
+    shown = capsys.readouterr()
+    assert shown.out == ""
+    golden(CASE / "expected" / "refused.txt", shown.err)
+
+
+@pytest.mark.parametrize(
+    ("name", "schema"),
+    [("check.json", report_schema()), ("workings.json", workings_schema()), ("refused.json", diagnostics_schema())],
+)
+def test_json_meets_its_schema(name: str, schema: dict[str, object]) -> None:
+    Draft202012Validator(schema).validate(json.loads((CASE / "expected" / name).read_text(encoding="utf-8")))
+
+
+@pytest.mark.parametrize("path", sorted((CASE / "expected").glob("check*.txt")), ids=lambda path: path.name)
+def test_tables_fit_80_columns(path: Path) -> None:
+    too_wide = [line for line in path.read_text(encoding="utf-8").splitlines() if len(line) > 80]
+    assert too_wide == []
