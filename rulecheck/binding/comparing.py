@@ -145,7 +145,7 @@ def _quiet(scope: Scope, syntax: Syntax) -> Bound | None:
 
 
 def _side(scope: Scope, syntax: Syntax, other: Bound | None) -> Side:
-    apart = replace(scope, touched=set())
+    apart = scope.apart()
     bound = _expressed(apart, syntax, other)
     scope.touched.update(apart.touched)
     return Side(syntax, bound, bool(apart.touched))

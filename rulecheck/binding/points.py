@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-from dataclasses import replace
 from fractions import Fraction
 
 from rulecheck.binding.bound import Line, Number, Place, Plane
@@ -33,7 +32,7 @@ def place_of(scope: Scope, path: str, entry: Entry, span: Span) -> Place:
         base = scope.shared.memo.get(("place", path, ()))
         known = base if base is not None and not scope.view.changes_any(base[1]) else None
     if known is None:
-        apart = replace(scope, touched=set())
+        apart = scope.apart()
         known = scope.shared.memo[key] = (_place(apart, path, entry, span), apart.touched)
     scope.touched.update(known[1])
     return known[0]

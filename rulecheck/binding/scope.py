@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Callable, Iterable, Mapping, Sequence
-from dataclasses import dataclass, field, replace
+from dataclasses import dataclass, field
 from datetime import date
 from typing import Any
 
@@ -109,7 +109,16 @@ class Scope:
 
     def inside(self, variables: Sequence[tuple[str, Bound]], *, loop: bool = True) -> Scope:
         """The scope inside a loop."""
-        return replace(self, variables={**self.variables, **dict(variables)}, loop=self.loop or loop)
+        inner = {**self.variables, **dict(variables)}
+        return Scope(
+            self.shared, self.view, self.owner, inner, self.uses, self.touched, self.figures, self.loop or loop
+        )  # fmt: skip
+
+    def apart(self) -> Scope:
+        """The same scope with a record of its own of what is read."""
+        return Scope(
+            self.shared, self.view, self.owner, self.variables, self.uses, set(), self.figures, self.loop
+        )  # fmt: skip
 
     def fresh(self, view: View, owner: Owner, variables: Mapping[str, Bound] | None = None) -> Scope:
         """A scope for another formula, with its own record of what it uses."""

@@ -6,6 +6,7 @@ from collections.abc import Callable, Sequence
 from dataclasses import dataclass
 from typing import Any, Literal
 
+from rulecheck.operations.values import ReasonKind
 from rulecheck.quantity.dimension import Dimension
 
 Sort = Literal["number", "flag", "text", "date"]

@@ -6,7 +6,7 @@ import json
 import math
 from dataclasses import fields, is_dataclass
 
-from rulecheck.outcome.results import Amount, Finding, PartResult, Place, Report, RulesetInfo, Workings
+from rulecheck.outcome.results import Amount, BindingPart, Finding, PartResult, Place, Report, RulesetInfo, Workings
 
 Json = dict[str, object]
 
@@ -52,6 +52,7 @@ def workings_json(workings: Workings) -> str:
                     "verdict": item.verdict,
                     "margin": item.margin,
                     "caution": item.caution,
+                    "binding": _binding(item.binding),
                     "conditions": [_part(part) for part in item.conditions],
                     "steps": [_record(step) for step in item.steps],
                     "closed_form": _record(item.closed_form) if item.closed_form else None,
@@ -77,7 +78,6 @@ def _ruleset(item: RulesetInfo) -> Json:
 
 
 def _finding(item: Finding) -> Json:
-    binding = item.binding
     return {
         "name": item.name,
         "clause": item.clause,
@@ -92,14 +92,7 @@ def _finding(item: Finding) -> Json:
         "value": _amount(item.value),
         "limit": _amount(item.limit),
         "sense": item.sense,
-        "binding": {
-            "part": binding.part,
-            "element": binding.element,
-            "branch": binding.branch,
-            "case": {"state": dict(binding.state)},
-        }
-        if binding
-        else None,
+        "binding": _binding(item.binding),
         "parts": [_part(part) for part in item.parts],
         "places": {"rule": _place(item.rule_place), "value": _place(item.value_place)},
         "dispensation": item.dispensation,
@@ -107,6 +100,17 @@ def _finding(item: Finding) -> Json:
         "outside_validity": list(item.outside_validity),
         "notes": list(item.notes),
         "history": list(item.history),
+    }
+
+
+def _binding(binding: BindingPart | None) -> Json | None:
+    if binding is None:
+        return None
+    return {
+        "part": binding.part,
+        "element": binding.element,
+        "branch": binding.branch,
+        "case": {"state": dict(binding.state)},
     }
 
 

@@ -98,6 +98,16 @@ def _shared() -> Schema:
             }
         ),
         "part": _object(_part()),
+        "binding": _object(_binding()),
+    }
+
+
+def _binding() -> Schema:
+    return {
+        "part": _text("The condition that decides"),
+        "element": _text("For which element, empty where the rule has none"),
+        "branch": _text("On which branch, empty where the rule has none"),
+        "case": {"$ref": "#/$defs/case"},
     }
 
 
@@ -149,12 +159,6 @@ def _judged() -> Schema:
 
 
 def _rule() -> Schema:
-    binding = {
-        "part": _text("The condition that decides"),
-        "element": _text("For which element, empty where the rule has none"),
-        "branch": _text("On which branch, empty where the rule has none"),
-        "case": {"$ref": "#/$defs/case"},
-    }
     places = {
         "rule": {"$ref": "#/$defs/place"},
         "value": _or_null({"$ref": "#/$defs/place"}),
@@ -167,7 +171,7 @@ def _rule() -> Schema:
         "ruleset": _text("File of the rule book"),
         "ruleset_name": _text(),
         **_judged(),
-        "binding": _or_null(_object(binding), "What decides the rule"),
+        "binding": _or_null({"$ref": "#/$defs/binding"}, "What decides the rule"),
         "parts": _list({"$ref": "#/$defs/part"}, "Every condition, for every element, in every case"),
         "places": _object(places),
         "dispensation": _text("Reference and last day of the permission, empty without one"),
@@ -198,6 +202,7 @@ def _working() -> Schema:
         "verdict": {"description": "Empty for a figure", "enum": [*VERDICTS, ""]},
         "margin": _text("With its unit, empty where there is none"),
         "caution": _text(),
+        "binding": _or_null({"$ref": "#/$defs/binding"}, "What decides a rule; null for a figure"),
         "conditions": _list({"$ref": "#/$defs/part"}, "The conditions of a rule"),
         "steps": _list(_object(_step()), "What comes first stands first"),
         "closed_form": _or_null(_object(_closed_form()), "Where it was asked for"),

@@ -5,9 +5,10 @@ from __future__ import annotations
 from collections.abc import Iterable
 
 from rich.console import RenderableType
+from rich.padding import Padding
 from rich.text import Text
 
-from rulecheck.outcome.results import VERDICTS, ClosedFormResult, PartResult, Step, Working, Workings
+from rulecheck.outcome.results import VERDICTS, BindingPart, ClosedFormResult, PartResult, Step, Working, Workings
 from rulecheck.output.screen import PAPER, STYLES, Screen, draw, line, words
 from rulecheck.output.terminal_details import compared
 from rulecheck.output.wording import state_words
@@ -35,11 +36,26 @@ def _working(item: Working) -> Iterable[RenderableType]:
     if item.verdict:
         style = next((STYLES[verdict] for verdict in VERDICTS if verdict == item.verdict), "")
         margin = f", margin {item.margin}" if item.margin else ""
-        yield Text.assemble("  verdict: ", words(item.verdict, style), words(margin))
+        case = _case(item.binding)
+        decided = f", decided {case}" if case else ""
+        yield Padding(Text.assemble("verdict: ", words(item.verdict, style), words(f"{margin}{decided}")), (0, 0, 0, 2))
     if item.closed_form is not None:
         yield from _closed_form(item.closed_form)
     if item.caution:
         yield line(f"caution: {item.caution}", 2)
+
+
+def _case(binding: BindingPart | None) -> str:
+    """For which element, in which states and on which branch it was decided."""
+    if binding is None:
+        return ""
+    state = state_words(binding.state)
+    told = (
+        f"for {binding.element}" if binding.element else "",
+        f"in state {state}" if state else "",
+        f"on branch {binding.branch}" if binding.branch else "",
+    )
+    return ", ".join(filter(None, told))
 
 
 def _step(number: int, step: Step) -> Iterable[RenderableType]:

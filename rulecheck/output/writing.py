@@ -36,9 +36,16 @@ def write_files(contents: Mapping[Path, str], *, sources: Collection[Path] = ())
 
 
 def _check(path: Path, target: Path, sources: Collection[Path], faults: Faults) -> None:
+    try:
+        mode = target.stat().st_mode
+    except FileNotFoundError:
+        mode = None
+    except OSError as error:
+        faults.found.append(_refusal(str(path), error.strerror or str(error), "name another file"))
+        return
     if target in {Path(os.path.realpath(source)) for source in sources}:
         faults.found.append(_refusal(str(path), "it is one of the files that were read", "name another file"))
-    elif target.exists() and not stat.S_ISREG(target.stat().st_mode):
+    elif mode is not None and not stat.S_ISREG(mode):
         faults.found.append(_refusal(str(path), "it is there and is not a regular file", "name another file"))
     elif not target.parent.is_dir():
         faults.found.append(_refusal(str(path), f"there is no folder {path.parent}", "make the folder first"))

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, field
 from fractions import Fraction
 from functools import lru_cache
 
@@ -20,6 +20,14 @@ class Dimension:
     """
 
     exponents: tuple[tuple[str, Fraction], ...] = ()
+    # Computed once: dimensions are keys wherever terms are made.
+    _hash: int = field(init=False, repr=False, compare=False, default=0)
+
+    def __post_init__(self) -> None:
+        object.__setattr__(self, "_hash", hash(self.exponents))
+
+    def __hash__(self) -> int:
+        return self._hash
 
     @classmethod
     def of(cls, **exponents: int | Fraction) -> Dimension:

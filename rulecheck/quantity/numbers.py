@@ -180,8 +180,8 @@ def _leading(value: Fraction) -> int:
 def _reaches(top: int, bottom: int, power: int) -> bool:
     """True where `top / bottom` is at least ten to the power; in whole numbers, since this runs for every figure."""
     if power >= 0:
-        return top >= bottom * 10**power
-    return int(top * 10**-power) >= bottom
+        return bool(top >= bottom * 10**power)
+    return bool(top * 10**-power >= bottom)
 
 
 def _decimals(denominator: int) -> int | None:

@@ -7,7 +7,7 @@ balls, and the precision is doubled until a sign or a truth is certain. Nothing 
 from __future__ import annotations
 
 import math
-from collections.abc import Callable, Iterator
+from collections.abc import Callable, Iterable, Iterator
 from decimal import Decimal
 from fractions import Fraction
 from typing import Any
@@ -67,6 +67,10 @@ class ExactReader:
         self._levels: dict[int, dict[int, Any]] = {}
         self._applying = Applying(bank, self._exact, self._most)
 
+    def take(self, found: Iterable[tuple[int, Any]]) -> None:
+        """Take over values that were found exactly by other means, by the index of their term."""
+        self._exact.update(found)
+
     def value(self, term: Term) -> Value:
         """The value: exact where it can be, else a ball at the first precision that decides it."""
         for bits in self._precisions():
@@ -84,6 +88,9 @@ class ExactReader:
 
     def truth(self, term: Term) -> bool | Unknown:
         """Whether a flag holds, certain; or why it cannot be said."""
+        known = self._exact.get(term.index)
+        if known is True or known is False:
+            return known
         return self._decided(term, lambda term, value, bits: value)  # type: ignore[no-any-return]
 
     def ball(self, term: Term, bits: int) -> Ball | Unknown:

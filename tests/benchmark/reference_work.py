@@ -47,6 +47,15 @@ def _formula(chance: random.Random, names: list[str]) -> tuple[str, str]:
     return text, python
 
 
+def _ledger(folder: Path, chance: random.Random) -> None:
+    parts = [
+        f"part_{index},{chance.randint(10, 900) / 100},{chance.randint(-500, 3200)},{chance.randint(-600, 600)},{chance.randint(50, 700)}"
+        for index in range(PARTS)
+    ]
+    text = "item,mass [kg],x [mm],y [mm],z [mm]\n" + "\n".join(parts) + "\n"
+    (folder / "parts.csv").write_text(text, encoding="utf-8")
+
+
 def write(folder: Path, seed: int = 20270301) -> Work:
     """Write the reference work to a folder."""
     chance = random.Random(seed)
@@ -77,18 +86,22 @@ def write(folder: Path, seed: int = 20270301) -> Work:
     declared = "\n".join(f'  v.{name}: {{unit: "1", meaning: Input {name}}}' for name in inputs)
     ruleset = folder / "reference.ruleset.yaml"
     ruleset.write_text(
-        f"ruleset: Reference work\ninputs:\n{declared}\nderived:\n" + "\n".join(lines) + "\nrules:\n" + "\n".join(rules) + "\n",
+        f"ruleset: Reference work\ninputs:\n{declared}\nderived:\n"
+        + "\n".join(lines)
+        + "\nrules:\n"
+        + "\n".join(rules)
+        + "\n",
         encoding="utf-8",
     )
-    parts = [
-        f"part_{index},{chance.randint(10, 900) / 100},{chance.randint(-500, 3200)},{chance.randint(-600, 600)},{chance.randint(50, 700)}"
-        for index in range(PARTS)
-    ]
-    (folder / "parts.csv").write_text("item,mass [kg],x [mm],y [mm],z [mm]\n" + "\n".join(parts) + "\n", encoding="utf-8")
+    _ledger(folder, chance)
     stated = "\n".join(f"  {name}: {value}" for name, value in zip(inputs, values, strict=True))
     design = folder / "reference.design.yaml"
     design.write_text(
         f"design: Reference\nrulesets: [reference.ruleset.yaml]\nledger: [parts.csv]\nv:\n{stated}\n", encoding="utf-8"
     )
-    code = f"def margins_of({', '.join(inputs)}):\n    margins = [0.0] * {RULES}\n" + "\n".join(python) + "\n    return margins\n"
+    code = (
+        f"def margins_of({', '.join(inputs)}):\n    margins = [0.0] * {RULES}\n"
+        + "\n".join(python)
+        + "\n    return margins\n"
+    )
     return Work(design, ruleset, code, values)

@@ -90,7 +90,9 @@ def test_the_last_day_is_included(tmp_path, start, period):
     rules |= {"first": f"on >= made.label + {period}", "after": f"on > made.label + {period}"}
     write_dates(tmp_path, rules, label=start)
     verdicts = {
-        step: {name: finding.verdict == "complies" for name, finding in findings(tmp_path, on=border + step * DAY).items()}
+        step: {
+            name: finding.verdict == "complies" for name, finding in findings(tmp_path, on=border + step * DAY).items()
+        }
         for step in (-1, 0, 1)
     }
     assert verdicts[-1] == {"last": True, "before": True, "first": False, "after": False}
@@ -155,7 +157,9 @@ def test_a_limit_by_the_day_of_approval(tmp_path):
     assert list(margins.values()) == [5, 0, 0, -5]
 
 
-@pytest.mark.parametrize(("first", "last"), [(date(2027, 1, 1), date(2027, 12, 31)), (date(2028, 2, 29), date(2028, 2, 29))])
+@pytest.mark.parametrize(
+    ("first", "last"), [(date(2027, 1, 1), date(2027, 12, 31)), (date(2028, 2, 29), date(2028, 2, 29))]
+)
 def test_the_window_of_a_rule(tmp_path, first, last):
     """A rule with its own window applies from its first to its last day, both included."""
     write_ruleset(
@@ -166,7 +170,12 @@ def test_the_window_of_a_rule(tmp_path, first, last):
         },
     )
     write_design(tmp_path, part={"width": "10 mm"})
-    for day, verdict in ((first - DAY, "not applicable"), (first, "breach"), (last, "breach"), (last + DAY, "not applicable")):
+    for day, verdict in (
+        (first - DAY, "not applicable"),
+        (first, "breach"),
+        (last, "breach"),
+        (last + DAY, "not applicable"),
+    ):
         assert findings(tmp_path, on=day)["width"].verdict == verdict, day
 
 
@@ -179,9 +188,10 @@ def test_the_window_of_a_ruleset(tmp_path):
         rules={"width": {"require": "part.width <= 9 mm"}},
     )
     write_design(tmp_path, part={"width": "8 mm"})
-    notes = {day: checked(tmp_path, on=date.fromisoformat(day)).rulesets[0].note for day in (
-        "2026-12-31", "2027-01-01", "2027-12-31", "2028-01-01"
-    )}
+    notes = {
+        day: checked(tmp_path, on=date.fromisoformat(day)).rulesets[0].note
+        for day in ("2026-12-31", "2027-01-01", "2027-12-31", "2028-01-01")
+    }
     assert [bool(note) for note in notes.values()] == [True, False, False, True]
     assert "2026-12-31" in notes["2026-12-31"]
 
@@ -217,7 +227,9 @@ def test_a_drawing_needs_no_last_day(tmp_path):
 
 
 def test_evidence_of_another_kind_does_not_count(tmp_path):
-    write_evidence(tmp_path, {"kind": "certificate"}, {"kind": "drawing", "reference": "sheet 4", "until": "2030-01-01"})
+    write_evidence(
+        tmp_path, {"kind": "certificate"}, {"kind": "drawing", "reference": "sheet 4", "until": "2030-01-01"}
+    )
     assert findings(tmp_path)["paper"].verdict == "open"
 
 
@@ -250,6 +262,10 @@ def test_a_dispensation_is_good_on_its_last_day(tmp_path):
     )
     permit = {"rule": "width", "reference": "letter 7", "until": "2028-02-29"}
     write_design(tmp_path, part={"width": "10 mm"}, dispensations={"old_part": permit})
-    for day, verdict in ((date(2028, 2, 28), "dispensed"), (date(2028, 2, 29), "dispensed"), (date(2028, 3, 1), "breach")):
+    for day, verdict in (
+        (date(2028, 2, 28), "dispensed"),
+        (date(2028, 2, 29), "dispensed"),
+        (date(2028, 3, 1), "breach"),
+    ):
         found = findings(tmp_path, on=day)["width"]
         assert (found.verdict, as_fraction(found.margin)) == (verdict, -1)

@@ -47,9 +47,7 @@ def _rows() -> list[Row]:
             for text in row["variables"].split(", "):
                 variable, number, unit = re.fullmatch(r"(\w+) = (\S+) (\S+)", text).groups()  # type: ignore[union-attr]
                 variables[variable] = (number, unit)
-            found.append(
-                Row(row["name"], f"row{index}", row["formula"], row["unit"], float(row["value"]), variables)
-            )
+            found.append(Row(row["name"], f"row{index}", row["formula"], row["unit"], float(row["value"]), variables))
     return found
 
 

@@ -137,13 +137,11 @@ def test_whole_margins_are_exact(tmp_path):
 def test_the_exact_optimum_of_hs76_lies_on_its_constraint(tmp_path):
     """Exact: x = (3/11, 23/11, 0, 6/11) and f = -103/22 (derived from the published problem)."""
     problem = BY_NAME["HS76"]
-    write_problem(tmp_path, problem)
-    inputs = {"trial.scale": {"unit": "1", "meaning": "Variable"}}
     text = TOKEN.sub(lambda token: f"({token[0]}/11)" if token[0] in problem.point else token[0], problem.margins["g1"])
     objective = TOKEN.sub(
         lambda token: f"({token[0]}/11)" if token[0] in problem.point else token[0], problem.objective
     )
-    inputs |= {f"trial.{name}": {"unit": "1", "meaning": "Variable"} for name in problem.point}
+    inputs = {f"trial.{name}": {"unit": "1", "meaning": "Variable"} for name in problem.point}
     write_ruleset(
         tmp_path,
         inputs=inputs,
@@ -152,7 +150,7 @@ def test_the_exact_optimum_of_hs76_lies_on_its_constraint(tmp_path):
             "value": {"require": f"{ours(problem, objective)} <= 0"},
         },
     )
-    write_design(tmp_path, trial={"x1": "3", "x2": "23", "x3": "0", "x4": "6", "scale": "1"})
+    write_design(tmp_path, trial={"x1": "3", "x2": "23", "x3": "0", "x4": "6"})
     found = findings(tmp_path)
     assert as_fraction(found["constraint"].margin) == 0
     assert found["constraint"].verdict == "complies"
