@@ -24,15 +24,18 @@ from rulecheck.model.house import has_house, read_house
 from rulecheck.model.names import is_name
 from rulecheck.model.ruleset import House, Ruleset
 from rulecheck.model.ruleset_reader import read_ruleset
+from rulecheck.outcome.changes import WhatIf
 from rulecheck.outcome.results import ClosedFormResult, Report, Workings
 from rulecheck.physics.modules import BUILT_IN, built_in
 from rulecheck.quantity.quantity import Quantity
 from rulecheck.quantity.reading_values import read_quantity
 from rulecheck.reading.nearest import nearest
+from rulecheck.reading.nodes import Located
 from rulecheck.reading.workspace import Workspace
 from rulecheck.reading.yaml_reader import parse_yaml
 from rulecheck.studies.check import Checker, Reserves
 from rulecheck.studies.reporting import Asked, report
+from rulecheck.studies.whatif import Column, what_if
 from rulecheck.studies.workings import workings_of
 
 File = str | PathLike[str]
@@ -147,6 +150,49 @@ def workings(
             return form(graph, term, solve_for)
 
     return workings_of(checker, loaded.design, loaded.rulesets, names, day, describe=describe)
+
+
+@dataclass(frozen=True, slots=True)
+class Change:
+    """One change to try: change files first, then settings (path to text)."""
+
+    changes: tuple[File, ...] = ()
+    settings: tuple[tuple[str, str], ...] = ()
+
+
+def whatif(
+    design: File,
+    columns: Sequence[Change],
+    *,
+    rules: Sequence[File] = (),
+    on: date | None = None,
+    session: Session | None = None,
+) -> WhatIf:
+    """Every margin and figure before and after each change. Raises `Refused` with every fault.
+
+    A change is laid over the design as it stands; several changes stand side by side.
+    """
+    session = session or Session()
+    day = on or date.today()
+    base = _load(session, design, rules, (), (), None)
+    made = [_column(session, design, rules, change, base, day) for change in columns]
+    return what_if(Checker(_bind(base, day, BUILT_IN)), made, base.design, base.rulesets, day)
+
+
+def _column(session: Session, design: File, rules: Sequence[File], change: Change, base: _Loaded, day: date) -> Column:
+    loaded = _load(session, design, rules, change.settings, change.changes, None)
+    checker = Checker(_bind(loaded, day, BUILT_IN))
+    name = ", ".join(Path(path).name.removesuffix(".change.yaml") for path in change.changes)
+    structural = _structure(loaded.design) != _structure(base.design)
+    return Column(name or "change", loaded.changes, checker, structural)
+
+
+def _structure(design: Design) -> tuple[object, ...]:
+    """What a design has beside its numbers: names, and the texts of leaves that are no numbers."""
+    words = {
+        path: node for path, node in design.leaves.items() if isinstance(node, Located) and node.text[:1].isalpha()
+    }
+    return (sorted(design.leaves), sorted((path, node.text) for path, node in words.items()))
 
 
 def _load(
@@ -304,4 +350,4 @@ def _reserve_text(house: House | None, share: Fraction | None) -> str:
     return f"{len(house.reserves)} of {house.file}" if house and house.reserves else ""
 
 
-__all__ = ["Session", "check", "load_design", "load_ruleset", "workings"]
+__all__ = ["Session", "check", "load_design", "load_ruleset", "whatif", "workings"]

@@ -184,8 +184,10 @@ def deliveries(
 ) -> tuple[tuple[str, Path | None], ...]:
     """Each form with the file that follows it; without a form the terminal form. Raises a usage error.
 
-    >>> deliveries(["terminal", "json"], ["report.json"], ["form", "form", "output"])
-    (('terminal', None), ('json', PosixPath('report.json')))
+    >>> for form, path in deliveries(["terminal", "json"], ["report.json"], ["form", "form", "output"]):
+    ...     print(form, path)
+    terminal None
+    json report.json
     """
     context = click.get_current_context(silent=True)
     if not forms and len(outputs) == 1:

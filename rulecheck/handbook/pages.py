@@ -9,6 +9,7 @@ True
 from __future__ import annotations
 
 import re
+import shlex
 from pathlib import Path
 
 from rulecheck.handbook.tables import TABLES
@@ -28,6 +29,7 @@ FIRST = (
 """The order of reading; a page that is not named here comes behind these."""
 
 _MARKER = re.compile(r"^<!-- table: ([a-z-]+) -->$", re.MULTILINE)
+_EXAMPLE = re.compile(r"^```(\w+) (.+)$", re.MULTILINE)
 
 
 def names() -> tuple[str, ...]:
@@ -41,7 +43,18 @@ def page(name: str) -> str:
     if name not in names():
         raise KeyError(name)
     text = (FOLDER / f"{name}.md").read_text(encoding="utf-8")
-    return _MARKER.sub(lambda found: TABLES[found[1]](), text)
+    return _MARKER.sub(lambda found: TABLES[found[1]](), _EXAMPLE.sub(_captioned, text))
+
+
+def _captioned(found: re.Match[str]) -> str:
+    """The head of an example: what is said for its test becomes a line that people read."""
+    said = dict(word.partition("=")[::2] for word in shlex.split(found[2]))
+    caption = ""
+    if "file" in said and f"`{said['file']}`" not in found.string[: found.start()].rstrip().rpartition("\n")[2]:
+        caption = f"File `{said['file']}`:\n\n"
+    elif "expect" in said:
+        caption = f"Gives {said['expect']}.\n\n"
+    return f"{caption}```{found[1]}"
 
 
 def title(name: str) -> str:

@@ -92,6 +92,7 @@ def _finding(item: Finding) -> Json:
         "value": _amount(item.value),
         "limit": _amount(item.limit),
         "sense": item.sense,
+        "counted": item.counted,
         "binding": _binding(item.binding),
         "parts": [_part(part) for part in item.parts],
         "places": {"rule": _place(item.rule_place), "value": _place(item.value_place)},

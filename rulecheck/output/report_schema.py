@@ -171,6 +171,7 @@ def _rule() -> Schema:
         "ruleset": _text("File of the rule book"),
         "ruleset_name": _text(),
         **_judged(),
+        "counted": {"description": "Value and margin count whole things", "type": "boolean"},
         "binding": _or_null({"$ref": "#/$defs/binding"}, "What decides the rule"),
         "parts": _list({"$ref": "#/$defs/part"}, "Every condition, for every element, in every case"),
         "places": _object(places),

@@ -46,6 +46,14 @@ def test_every_page_has_its_place_and_is_named_by_the_index() -> None:
     assert [name for name in pages.names() if name != "index"] == re.findall(r"^\| `([a-z-]+)` \|", index, re.MULTILINE)
 
 
+def test_heads_of_examples_are_for_readers() -> None:
+    shown = "".join(pages.page(name) for name in pages.names())
+    assert "File `plover.design.yaml`:\n\n```yaml\n" in shown
+    assert "Save this as `grebe.design.yaml`, beside it:\n\n```yaml\n" in shown
+    assert "Gives shares: complies, 3 %; ratio: complies, 15 mm.\n\n```yaml\n" in shown
+    assert not re.search(r"^```\w+ ", shown, re.MULTILINE)
+
+
 def test_an_unknown_page() -> None:
     with pytest.raises(KeyError):
         pages.page("../api")

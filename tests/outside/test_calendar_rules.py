@@ -73,10 +73,10 @@ def test_dates_with_periods(tmp_path):
 
 
 def test_limits_and_values_are_shown_as_days(tmp_path):
-    """The reader of a report sees calendar days, not the number of a day."""
+    """The reader of a report sees calendar days, not the number of a day; the limit is the side without inputs."""
     write_dates(tmp_path, {"plus": "on <= made.label + 1 month"}, label=date(2024, 1, 31))
     found = findings(tmp_path, on=ON)["plus"]
-    assert (str(found.value), str(found.limit)) == ("2027-03-01", "2024-02-29")
+    assert (str(found.value), str(found.limit)) == ("2024-02-29", "2027-03-01")
     write_evidence(tmp_path, {"kind": "certificate"}, {"kind": "certificate", "reference": "A", "until": "2028-02-29"})
     found = findings(tmp_path, on=ON)["paper"]
     assert (str(found.value), str(found.limit)) == ("2027-03-01", "2028-02-29")

@@ -13,8 +13,8 @@ PURE = {f"part.n{index}": "" for index in range(4)}
 MIXED = {"part.length": "mm", "part.width": "mm", "part.mass": "kg", "part.angle": "rad"}
 FLAGS = ("part.fitted", "part.sealed")
 VERDICT = {True: "complies", False: "breach", None: "open"}
-SEEDS = range(6)
-TREES = 40
+SEEDS = range(5)
+TREES = 24
 
 
 def write_trees(folder, kinds: Kinds, trees: list[Tree], point: Point) -> None:

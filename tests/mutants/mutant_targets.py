@@ -1,0 +1,54 @@
+"""The verdict logic: which functions of which files are mutated, and the tests that must notice."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from pathlib import Path
+
+ROOT = Path(__file__).resolve().parents[2]
+
+SUITE = (
+    "tests/unit/test_verdict_logic_*.py",
+    "tests/unit/test_shapes_*.py",
+    "tests/unit/operations/test_logic.py",
+)
+"""Quick tests, as patterns from the root; a mutant is killed by the first of them that fails."""
+
+
+@dataclass(frozen=True, slots=True)
+class Target:
+    """A file with the functions of it that decide verdicts; `only` is empty for all but `without`."""
+
+    file: str
+    only: tuple[str, ...] = ()
+    without: tuple[str, ...] = ()
+
+    def takes(self, function: str) -> bool:
+        """Whether a function (by its dotted name, `Class.method`, `outer.inner`) is mutated."""
+        if any(function == name or function.startswith(f"{name}.") for name in self.without):
+            return False
+        return not self.only or function in self.only
+
+
+TARGETS = (
+    Target("rulecheck/studies/judging.py"),
+    Target("rulecheck/studies/totals.py"),
+    Target(
+        "rulecheck/studies/check.py",
+        only=("Checker._case", "Checker._rule", "Checker._settled", "Checker._is_tight", "Checker._is_below"),
+    ),
+    # How an operation looks in arrays, in sympy and in script decides no verdict.
+    Target("rulecheck/operations/logic.py", only=("_joined", "_joined.rule", "_reconcile", "_reconcile_balls", "both",
+                                                  "either", "negation", "reconcile")),
+    Target("rulecheck/operations/comparison.py", only=("_compare.rule", "at_most", "below", "equal", "same_text")),
+    Target("rulecheck/operations/bounds.py"),
+    Target("rulecheck/binding/comparing.py"),
+    Target("rulecheck/binding/conditions.py"),
+    Target("rulecheck/binding/rules.py"),
+    Target("rulecheck/binding/documents.py"),
+    Target("rulecheck/binding/dispensations.py"),
+    Target("rulecheck/binding/states.py"),
+    Target("rulecheck/binding/presence.py"),
+    Target("rulecheck/binding/tables.py"),
+    Target("rulecheck/model/ruleset.py", only=("Window.holds",)),
+)  # fmt: skip
