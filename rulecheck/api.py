@@ -347,7 +347,10 @@ def _reserves(house: House | None, share: Fraction | None) -> Reserves:
 def _reserve_text(house: House | None, share: Fraction | None) -> str:
     if share is not None:
         return f"{float(share * 100):g} % of every limit"
-    return f"{len(house.reserves)} of {house.file}" if house and house.reserves else ""
+    if house is None or not house.reserves:
+        return ""
+    count = len(house.reserves)
+    return f"{count} rule{'s' if count > 1 else ''}, in {house.file}"
 
 
 __all__ = ["Session", "check", "load_design", "load_ruleset", "whatif", "workings"]

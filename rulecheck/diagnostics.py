@@ -158,7 +158,6 @@ CODES: dict[str, str] = {
     "no-rules": "There is nothing to check the design against.",
     "bad-date": "This is not a date.",
     "bad-physics": "A physics module cannot be used.",
-    "not-in-force": "The ruleset is not in force on the evaluation date.",
     # the command line
     "usage": "The command line cannot be understood.",
     "cannot-write": "An output file cannot be written.",

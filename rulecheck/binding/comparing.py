@@ -152,6 +152,12 @@ def _side(scope: Scope, syntax: Syntax, other: Bound | None) -> Side:
 
 
 def _expressed(scope: Scope, syntax: Syntax, other: Bound | None) -> Bound:
+    if isinstance(other, Broken) and isinstance(syntax, Name) and len(syntax.path) == 1:
+        # It may be a choice of the other side, which is at fault already.
+        before = len(scope.shared.faults.found)
+        bound = scope.express(syntax)
+        del scope.shared.faults.found[before:]
+        return bound
     if isinstance(other, Words) and other.choices:
         if isinstance(syntax, Name) and len(syntax.path) == 1 and syntax.path[0] not in scope.variables:
             return _choice(scope, syntax, other)

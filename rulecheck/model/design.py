@@ -123,8 +123,11 @@ class Design:
         return replace(self, leaves=leaves, items=items, absent=frozenset(absent), keys=keys)
 
     def names(self, path: str) -> tuple[str, ...] | None:
-        """The names directly below a path, or None where nothing is stated there."""
-        return self.items.get(path)
+        """The names directly below a path without those stated `none`, or None where nothing is stated there."""
+        names = self.items.get(path)
+        if names is None or not self.absent:
+            return names
+        return tuple(name for name in names if f"{path}.{name}" not in self.absent)
 
     def states_none(self, path: str) -> bool:
         """True where the path, or what holds it, is stated `none`."""
@@ -134,19 +137,23 @@ class Design:
 def _lay(
     path: str, node: LeafNode, leaves: dict[str, LeafNode], items: dict[str, tuple[str, ...]], absent: set[str]
 ) -> None:
-    gone = isinstance(node, Located) and node.text == NONE
-    if gone and path in items:
-        _remove(path, leaves, items)
-        absent.add(path)
-        return
     for holder in holders(path):
         absent.discard(holder)
-    if gone:
+        if _is_none(leaves.get(holder)):
+            del leaves[holder]
+    point, _, last = path.rpartition(".")
+    if last == "at":
+        leaves.pop(point, None)  # a point that was written in one piece
+    if _is_none(node):
         absent.add(path)
-    elif path in items:
+    if path in items:
         _remove(path, leaves, items)
     leaves[path] = node
     _register(path, items)
+
+
+def _is_none(node: LeafNode | None) -> bool:
+    return isinstance(node, Located) and node.text == NONE
 
 
 def _remove(path: str, leaves: dict[str, LeafNode], items: dict[str, tuple[str, ...]]) -> None:

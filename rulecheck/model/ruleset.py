@@ -144,8 +144,18 @@ class Withdrawn:
 
 
 @dataclass(frozen=True, slots=True)
+class Book:
+    """One rule book file: a ruleset is made of those that it extends, and its own."""
+
+    name: str
+    edition: str
+    file: str
+
+
+@dataclass(frozen=True, slots=True)
 class Ruleset:
-    """A rule book with what it extends already merged in; `needed` are the states by axis, with the paths they set."""
+    """A rule book with what it extends already merged in; `needed` are the states by axis, with the paths they set;
+    `books` are the files that it is made of, the most general first."""
 
     file: str
     name: str
@@ -160,7 +170,7 @@ class Ruleset:
     needed: MappingOf[str, MappingOf[str, tuple[Located, ...]]]
     rules: MappingOf[str, Rule]
     withdrawn: tuple[Withdrawn, ...]
-    files: tuple[str, ...]
+    books: tuple[Book, ...]
     span: Span = field(compare=False)
 
 

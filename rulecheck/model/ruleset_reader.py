@@ -11,6 +11,7 @@ from rulecheck.model.edge import BranchShape, EvidenceShape, FigureShape, Rulese
 from rulecheck.model.names import check_name
 from rulecheck.model.ruleset import (
     Alternative,
+    Book,
     EvidenceWanted,
     Formula,
     Origin,
@@ -114,7 +115,7 @@ class _Reader:
             needed=needed_states(self.root.get("states_needed"), faults),
             rules=rules,
             withdrawn=(),
-            files=(self.file,),
+            books=(Book(shape.ruleset.text, text(shape.edition), self.file),),
             span=shape.ruleset.span,
         )
 
@@ -333,7 +334,7 @@ def _merged(base: Ruleset, top: Ruleset, root: Mapping, faults: Faults) -> Rules
     rules = dict(base.rules)
     withdrawn = list(base.withdrawn)
     for name, rule in top.rules.items():
-        old = rules.pop(name, None)
+        old = rules.get(name)
         if old is not None:
             before = Origin(old.ruleset, old.span, "replaced")
             rule = replace(rule, history=(*old.history, before))
@@ -371,5 +372,5 @@ def _merged(base: Ruleset, top: Ruleset, root: Mapping, faults: Faults) -> Rules
         },
         rules=rules,
         withdrawn=tuple(withdrawn),
-        files=(*base.files, *top.files),
+        books=(*base.books, *top.books),
     )

@@ -113,6 +113,7 @@ class RulesetInfo:
     file: str
     withdrawn: tuple[str, ...] = ()
     note: str = ""
+    extends: tuple[RulesetInfo, ...] = ()
 
 
 @dataclass(frozen=True, slots=True)

@@ -74,6 +74,7 @@ def _ruleset(item: RulesetInfo) -> Json:
         "file": item.file,
         "withdrawn": list(item.withdrawn),
         "note": item.note,
+        "extends": [{"name": book.name, "edition": book.edition, "file": book.file} for book in item.extends],
     }
 
 

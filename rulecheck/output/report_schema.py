@@ -139,6 +139,10 @@ def _ruleset() -> Schema:
         "file": _text(),
         "withdrawn": _list(_text(), "Rules that it withdraws, with the reason"),
         "note": _text("Such as that it is not in force on the evaluation date"),
+        "extends": _list(
+            {"type": "object", "properties": {"name": _text(), "edition": _text(), "file": _text()}},
+            "Rule books that it adds to",
+        ),
     }
 
 

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Iterable, Sequence
+from dataclasses import dataclass
 
 from rich.cells import cell_len
 from rich.console import RenderableType
@@ -45,8 +46,9 @@ def _head(report: Report) -> Iterable[RenderableType]:
     rows = Table.grid(padding=(0, 2))
     rows.add_row(words("design"), words(f"{report.design}{revision} ({report.file})", "bold"))
     for book in report.rulesets:
-        edition = f", edition {book.edition}" if book.edition else ""
-        rows.add_row(words("rules"), words(f"{book.name}{edition} ({book.file})"))
+        for part in (book, *book.extends):
+            edition = f", edition {part.edition}" if part.edition else ""
+            rows.add_row(words("rules" if part is book else "and"), words(f"{part.name}{edition} ({part.file})"))
     rows.add_row(words("on"), words(report.date))
     for change in report.changes:
         rows.add_row(words("with"), words(change))
@@ -63,20 +65,60 @@ def _books(report: Report) -> Iterable[tuple[str, Sequence[Finding]]]:
     yield from books.items()
 
 
-def _table(findings: Sequence[Finding], screen: Screen) -> Table:
+@dataclass(frozen=True, slots=True)
+class _Column:
+    """A column: its header, its width in cells, the side on which its text stands."""
+
+    header: str
+    width: int
+    right: bool = False
+
+
+def _columns(findings: Sequence[Finding], screen: Screen) -> list[_Column]:
     widest = max(cell_len(item.clause) for item in findings)
     margins = max(cell_len(short(item.margin)) for item in findings)
-    table = Table(box=None, padding=(0, 1, 0, 0), expand=True, pad_edge=False, header_style="underline")
-    table.add_column("", width=min(max(widest, 4), 10))
-    table.add_column("rule", ratio=1)
+    others = [
+        _Column("verdict", max(len(verdict) for verdict in VERDICTS)),
+        _Column("margin", min(max(margins, 6), 14), right=True),
+        _Column("share", 7, right=True),
+        _Column("rail", LENGTH),
+    ]
     if screen.width >= _NAMES_FROM:
-        table.add_column("name", no_wrap=True)
-    table.add_column("verdict", width=max(len(verdict) for verdict in VERDICTS))
-    table.add_column("margin", width=min(max(margins, 6), 14), justify="right")
-    table.add_column("share", width=7, justify="right")
-    table.add_column("rail", width=LENGTH, no_wrap=True)
-    for item in findings:
-        table.add_row(*_row(item, screen))
+        others.insert(0, _Column("name", max(cell_len(item.name) for item in findings)))
+    first = _Column("", min(max(widest, 4), 10))
+    taken = first.width + sum(column.width for column in others) + len(others) + 1
+    return [first, _Column("rule", max(screen.width - taken, 10)), *others]
+
+
+def _table(findings: Sequence[Finding], screen: Screen) -> RenderableType:
+    """One line a rule, written at once; where a cell needs several lines, the library lays the table out."""
+    columns = _columns(findings, screen)
+    rows = [tuple(_row(item, screen)) for item in findings]
+    if any(cell.cell_len > column.width for row in rows for cell, column in zip(row, columns, strict=True)):
+        return _laid_out(columns, rows)
+    whole = Text(no_wrap=True, overflow="ignore")
+    _append(whole, [Text(column.header, "underline") for column in columns], columns)
+    for row in rows:
+        whole.append("\n")
+        _append(whole, row, columns)
+    return whole
+
+
+def _append(whole: Text, row: Sequence[Text], columns: Sequence[_Column]) -> None:
+    for place, (cell, column) in enumerate(zip(row, columns, strict=True)):
+        blanks = " " * (column.width - cell.cell_len)
+        whole.append(" " * (place > 0) + (blanks if column.right else ""))
+        whole.append_text(cell)
+        whole.append("" if column.right else blanks)
+
+
+def _laid_out(columns: Sequence[_Column], rows: Sequence[Sequence[Text]]) -> Table:
+    table = Table(box=None, padding=(0, 1, 0, 0), pad_edge=False, header_style="underline")
+    for column in columns:
+        fixed = column.header in ("name", "rail")
+        table.add_column(column.header, width=column.width, justify="right" if column.right else "left", no_wrap=fixed)
+    for row in rows:
+        table.add_row(*row)
     return table
 
 
@@ -103,7 +145,8 @@ def _total(report: Report) -> Iterable[RenderableType]:
     tightest = next((item for item in report.rules if item.name == report.tightest), None)
     if tightest is not None:
         share = f" ({percent(tightest.relative_margin)})" if tightest.relative_margin is not None else ""
-        yield words(f"tightest: {tightest.clause} {tightest.title}, margin {short(tightest.margin)}{share}")
+        named = f"{tightest.clause} {tightest.title}".strip()
+        yield words(f"tightest: {named}, margin {short(tightest.margin)}{share}")
     for caution in report.cautions:
         yield Text()
         yield line(f"caution: {caution}")

@@ -26,7 +26,7 @@ def details(report: Report) -> Iterable[RenderableType]:
     for item in found:
         yield Text()
         yield Text.assemble(
-            words(item.verdict, STYLES[item.verdict]), words(f" {item.clause} {item.title} ({item.name})")
+            words(item.verdict, STYLES[item.verdict]), words(" ".join(filter(None, ("", item.clause, item.title, f"({item.name})"))))
         )
         yield from (line(told, 4) for told in _lines(item))
     yield Text()

@@ -36,10 +36,9 @@ def report(
 ) -> Report:
     """All findings in the order of the rule books."""
     books = {ruleset.file: ruleset for ruleset in rulesets}
-    findings = tuple(
-        checker.finding(rule, books[rule.ruleset].rules[rule.name], books[rule.ruleset].name)
-        for rule in checker.graph.rules
-    )
+    names = {book.file: book.name for ruleset in rulesets for book in ruleset.books}
+    rules = [(bound, books[bound.ruleset].rules[bound.name]) for bound in checker.graph.rules]
+    findings = tuple(checker.finding(bound, rule, names[rule.ruleset]) for bound, rule in rules)
     return Report(
         design=design.name,
         revision=design.revision,
@@ -80,7 +79,10 @@ def _is_measured(finding: Finding) -> bool:
 def _info(ruleset: Ruleset, day: date) -> RulesetInfo:
     note = "" if ruleset.valid.holds(day) else f"not in force on {day.isoformat()}"
     withdrawn = tuple(f"{item.rule.name}: {item.reason}" for item in ruleset.withdrawn)
-    return RulesetInfo(ruleset.name, ruleset.edition, ruleset.file, withdrawn, note)
+    extends = tuple(
+        RulesetInfo(book.name, book.edition, book.file) for book in ruleset.books if book.file != ruleset.file
+    )
+    return RulesetInfo(ruleset.name, ruleset.edition, ruleset.file, withdrawn, note, extends)
 
 
 def _decision(asked: Asked) -> Iterable[str]:

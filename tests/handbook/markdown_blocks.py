@@ -7,7 +7,7 @@ What a fenced block says behind its language:
   named one; the design is checked against it.
 - `console`: lines behind `$ ` are commands of ours, the others what they print; a line `…` stands for any lines.
   `exit=N` is the code of the last command.
-- `python`: an interactive session, run as a doctest.
+- `python`: interactive lines, run as a doctest.
 
 `python tests/handbook/markdown_blocks.py` writes what the commands print now into the pages; read the difference.
 """
@@ -140,7 +140,7 @@ def _part_of_a_ruleset(block: Block, folder: Path) -> None:
 def _python(block: Block, folder: Path) -> None:
     runner = doctest.DocTestRunner(verbose=False, optionflags=doctest.ELLIPSIS | doctest.NORMALIZE_WHITESPACE)
     test = doctest.DocTestParser().get_doctest(block.text, {}, "page", None, 0)
-    assert test.examples, "a python block is an interactive session"
+    assert test.examples, "a python block has interactive lines"
     said = io.StringIO()
     with standing_in(folder):
         runner.run(test, out=said.write)

@@ -50,14 +50,13 @@ _NAMES = {
     "all_of": "any_of", "any_of": "all_of", "AllOf": "AnyOf", "AnyOf": "AllOf",
     "_least": "_greatest", "_greatest": "_least", "both": "either", "either": "both",
     "below": "at_most", "at_most": "below", "low": "high", "high": "low",
-    "value": "limit", "limit": "value", "small": "large", "large": "small", "near": "far", "far": "near",
+    "small": "large", "large": "small", "near": "far", "far": "near",
     "x0": "x1", "x1": "x0", "y0": "y1", "y1": "y0", "add": "subtract", "subtract": "add",
     "multiply": "divide", "divide": "multiply", "maximum": "minimum",
 }  # fmt: skip
 
 _FIELDS = {
     "low": "high", "high": "low", "first": "last", "last": "first", "applies": "exempt", "exempt": "applies",
-    "value": "limit", "limit": "value",
 }  # fmt: skip
 
 _ORDERED = ("_do", "_ordinals", "compared")

@@ -52,8 +52,8 @@ def mutants_of(target: Target) -> Iterator[Mutant]:
     """The mutants of one file."""
     named: Counter[tuple[str, str]] = Counter()
     for path, function, node in sites(tree_of(target.file)):
-        if not target.takes(function):
-            continue
+        if not target.takes(function) or (isinstance(node, ast.stmt) and len(path) == 1):
+            continue  # without a definition of its own a module does not even load
         for index, (_, name) in enumerate(changes(node)):
             named[function, name] += 1
             yield Mutant(target.file, function, name, named[function, name], path, index)
