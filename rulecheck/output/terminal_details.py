@@ -25,9 +25,8 @@ def details(report: Report) -> Iterable[RenderableType]:
     yield words("what needs work", "bold")
     for item in found:
         yield Text()
-        yield Text.assemble(
-            words(item.verdict, STYLES[item.verdict]), words(" ".join(filter(None, ("", item.clause, item.title, f"({item.name})"))))
-        )
+        named = " ".join(filter(None, (item.clause, item.title, f"({item.name})")))
+        yield Text.assemble(words(item.verdict, STYLES[item.verdict]), words(f" {named}"))
         yield from (line(told, 4) for told in _lines(item))
     yield Text()
     yield line(f"how each came about: rulecheck workings {report.file} NAME")
