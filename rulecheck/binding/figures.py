@@ -72,7 +72,11 @@ def physics_figure(scope: Scope, path: tuple[str, ...], span: Span) -> Bound | N
     name = ".".join(path)
     entry = scope.shared.vocabulary.entry(name)
     if entry is not None and entry.computed and isinstance(bound, Number) and name in scope.view.design.leaves:
-        return declared_figure(scope, name, bound)
+        # What is declared is declared of the design as written, whatever the state that is judged.
+        written = scope.fresh(scope.shared.base, scope.owner)
+        as_written = figure(written, module, module.figures[path[1]], name, span)
+        if isinstance(as_written, Number):
+            return declared_figure(scope, name, bound, as_written)
     return bound
 
 

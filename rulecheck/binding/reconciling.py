@@ -24,16 +24,16 @@ def reconciled(scope: Scope, path: str, bound: Number, computed: Bound | None) -
     return replace(bound, term=_agreeing(scope, DECLARED[path], bound, computed, bound.term))
 
 
-def declared_figure(scope: Scope, name: str, computed: Number) -> Number:
-    """A computed figure beside its declared value."""
+def declared_figure(scope: Scope, name: str, bound: Number, computed: Number) -> Number:
+    """A computed figure in this state, unless its declared value contradicts what is computed as written."""
     entry = scope.shared.vocabulary.entry(name)
     assert entry is not None
     read = quantity(scope, entry, scope.view.design.leaves[name])
     if read is None:
-        return computed
+        return bound
     rational, _ = read.si()
     stated = Number(scope.bank.number(rational, computed.dimension), computed.unit)
-    return replace(computed, term=_agreeing(scope, DECLARED[name], stated, computed, computed.term))
+    return replace(bound, term=_agreeing(scope, DECLARED[name], stated, computed, bound.term))
 
 
 def _agreeing(scope: Scope, declared: Declared, stated: Number, computed: Number, kept: Term) -> Term:

@@ -277,7 +277,7 @@ def exact_root(value: Exact, degree: int) -> Exact | None:
 def _polynomial_root(value: PiNumber) -> Exact | None:
     try:
         root = quotient(value.numerator.sqrt(), value.denominator.sqrt())
-    except DomainError:
+    except (DomainError, ValueError):  # flint raises the one or the other
         return None
     return magnitude(root)
 

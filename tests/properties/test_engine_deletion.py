@@ -1,0 +1,392 @@
+"""Nothing missing is met: what is taken out of a design never makes a rule comply that did not.
+
+Taken out are single stated values, needed states and whole documents, out of the demonstration cars and out of a small
+car for a ruleset with every shape. So that rules stand in breach that a deletion could mend wrongly, each ruleset is
+also taken with its conditions turned into their opposites.
+"""
+
+from __future__ import annotations
+
+import random
+from collections.abc import Iterable, Iterator, Mapping
+from dataclasses import replace
+from datetime import date
+from itertools import combinations
+from pathlib import Path
+from tempfile import TemporaryDirectory
+
+import pytest
+
+from rulecheck.api import load_design, load_ruleset
+from rulecheck.binding.bind import bind
+from rulecheck.model.core_table import CORE
+from rulecheck.model.design import Design, holders
+from rulecheck.model.ruleset import Rule, Ruleset
+from rulecheck.model.vocabulary import Vocabulary
+from rulecheck.physics.modules import BUILT_IN, built_in
+from rulecheck.reading.nodes import Located, Mapping as MappingNode
+from rulecheck.studies.check import Checker
+
+ROOT = Path(__file__).resolve().parents[2]
+DAY = date(2027, 3, 1)
+MET = ("complies", "tight")
+NOT_MET = ("breach", "open", "unproven", "not followed")
+
+OPTIONAL = ("quantity", "mirror", "datum", "growth", "basis", "issued")
+"""Fields that may be left out: to leave them out is a change of the design, not a gap in it."""
+
+
+def verdicts(design: Design, ruleset: Ruleset) -> dict[str, str]:
+    """The verdict of every rule."""
+    graph = bind(design, [ruleset], day=DAY, physics=built_in, physics_names=BUILT_IN)
+    checker = Checker(graph)
+    return {bound.name: checker.finding(bound, ruleset.rules[bound.name]).verdict for bound in graph.rules}
+
+
+def opposed(ruleset: Ruleset) -> Ruleset:
+    """The ruleset with every condition turned into its opposite."""
+
+    def turned(rule: Rule) -> Rule:
+        own, require = rule.own, rule.own.require
+        if require is None:
+            return rule
+        return replace(rule, own=replace(own, require=Located(f"not ({require.text})", require.span)))
+
+    return replace(ruleset, rules={name: turned(rule) for name, rule in ruleset.rules.items()})
+
+
+# --- what is taken out -----------------------------------------------------------------------------------------------
+
+
+def without(design: Design, *gone: str) -> Design:
+    """The design without some leaves, items or needed states."""
+    leaves = {path: node for path, node in design.leaves.items() if not set(holders(path)) & set(gone)}
+    items = {
+        path: tuple(name for name in names if (f"{path}.{name}" if path else name) not in gone)
+        for path, names in design.items.items()
+        if not set(holders(path)) & set(gone)
+    }
+    states = {
+        axis: {name: state for name, state in named.items() if f"states.{axis}.{name}" not in gone}
+        for axis, named in design.states.items()
+    }
+    return replace(
+        design, leaves=leaves, items=items, states=states,
+        complete=frozenset(path for path in design.complete if f"{path}.complete" not in gone),
+        absent=frozenset(path for path in design.absent if path not in gone),
+    )  # fmt: skip
+
+
+def takeable(design: Design, ruleset: Ruleset) -> list[str]:
+    """Every value, needed state, document and required item; without what is optional."""
+    vocabulary = Vocabulary(CORE).extended(ruleset.inputs)
+    made = [path for path in design.leaves if _is_needed(vocabulary, path)]
+    made.extend(f"states.{axis}.{name}" for axis, named in ruleset.needed.items() for name in named)
+    made.extend(f"evidence.{name}" for name in design.items.get("evidence", ()))
+    made.extend(f"judgements.{name}" for name in design.items.get("judgements", ()))
+    made.extend(f"{path}.complete" for path in design.complete)
+    for entry in vocabulary:
+        if entry.kind == "collection" and entry.path in design.items:
+            made.append(entry.path)
+            made.extend(f"{entry.path}.{name}" for name in entry.items)
+    return list(dict.fromkeys(made))
+
+
+def _is_needed(vocabulary: Vocabulary, path: str) -> bool:
+    entry = vocabulary.entry(path)
+    if path.rpartition(".")[2] in OPTIONAL or path.partition(".")[0] in ("claims", "dispensations", "datums"):
+        return False
+    return entry is None or not (entry.default or entry.computed)
+
+
+def mended(design: Design, ruleset: Ruleset, gone: Iterable[str], before: Mapping[str, str]) -> list[str]:
+    """The rules that did not comply before, and do now that something is gone."""
+    after = verdicts(without(design, *gone), ruleset)
+    return [name for name, said in after.items() if said in MET and before[name] in NOT_MET]
+
+
+# --- a ruleset with every shape --------------------------------------------------------------------------------------
+
+SHAPES = """\
+ruleset: Dunmere Cup
+states_needed: {fuel: [empty, full], load: {low: {sets: ["tyres.*.loaded_radius"]}}}
+definitions: {track: [contact centres, wheel planes]}
+inputs:
+  dimensions.rear_track: {unit: mm, definition: contact centres, meaning: Track}
+  tub.approved: {kind: date, meaning: Day}
+  tub.material: {kind: text, meaning: Grade}
+  nose.tip: {kind: point, meaning: Foremost point}
+  options.traction_control: {kind: flag, meaning: Fitted}
+  bolt: {unit: mm, meaning: Bolt}
+  lamps:
+    kind: collection
+    meaning: Lamps
+    items: [left, right]
+    element:
+      at: {kind: point, meaning: Place}
+      area: {unit: cm^2, meaning: Area}
+      carrier: {kind: item, of: members, meaning: What holds it}
+      proof: {kind: text, meaning: Its paper}
+  anchors:
+    kind: collection
+    meaning: Anchors
+    at_least: 3
+    element: {strength: {unit: kN, meaning: Load}}
+tables:
+  least: {over: powertrain.displacement, steps: [{up_to: 2 L, value: 700 kg}, {below: 3 L, value: 800 kg}]}
+  share: {over: air.altitude, unit: "%", linear: [[0 m, 100 %], [1000 m, 95 %]]}
+  power: {over: recovery.axle, steps: [{is: front, value: 90 kW}, {is: rear, value: 115 kW}]}
+  two: {over: [powertrain.kind, powertrain.aspiration], steps: [{when: powertrain.kind == hybrid and powertrain.aspiration == forced, value: 70 L}, {otherwise: 80 L}]}
+lists: {steels: ["25CrMo4", "30CrMo4"]}
+derived:
+  room: {formula: dimensions.rear_track - tyres.rear.width, unit: mm}
+  section: {for: m in members, formula: "pi * m.wall * (m.outer_diameter - m.wall)", unit: mm^2}
+  thick: {for: m in members, formula: "m.wall >= 2 mm"}
+groups: {electric: {when: powertrain.kind == hybrid, rules: [grouped]}}
+rules:
+  least_length: {require: dimensions.wheelbase >= 1525 mm}
+  range: {require: 30 % <= brakes.distribution <= 55 %}
+  ratio: {require: "min(dimensions.front_track, dimensions.rear_track) >= 75 % * max(dimensions.front_track, dimensions.rear_track)"}
+  by_formula: {require: powertrain.fuel_flow <= (90 kg/h if powertrain.speed >= 9000 rpm else 0.01 kg/(h*rpm) * powertrain.speed)}
+  steps: {require: "sum(m.mass for m in masses) >= least"}
+  lines: {require: powertrain.power <= 400 kW * share}
+  choices: {require: recovery.power <= power}
+  two_keys: {require: powertrain.tank_volume <= two}
+  condition: {when: recovery.axle == rear, require: recovery.voltage <= 700 V}
+  grouped: {require: electrical.system_voltage <= 700 V}
+  each_tyre: {each: t in tyres, require: t.width <= 356 mm}
+  each_where: {each: "e in edges where e.exposed == yes", require: e.radius >= 1.5 mm}
+  each_pair: {each: "a, b in pairs(lamps)", require: "distance(a.at, b.at) >= 1 m"}
+  each_empty: {each: b in ballast, empty: complies, require: b.sealed == yes}
+  count_strong: {require: "count(for a in anchors where a.strength >= 13 kN) >= 3"}
+  count_at_most: {require: "count(for a in anchors where a.strength >= 13 kN) <= 3"}
+  count_lamps: {require: count(for l in lamps) == 2}
+  share_strong: {require: "share(for a in anchors where a.strength >= 13 kN) >= 60 %"}
+  every_lamp: {require: "every(l.area >= 20 cm^2 for l in lamps)"}
+  some_lamp: {require: "some(l.area >= 30 cm^2 for l in lamps)"}
+  mean_anchor: {require: "mean(a.strength for a in anchors) >= 13 kN"}
+  ballast_sum: {require: "sum(b.mass for b in ballast) <= 20 kg"}
+  greatest: {require: "max(b.mass for b in ballast) <= 12 kg"}
+  symmetry: {require: "abs(lamps.left.at.y + lamps.right.at.y) <= 3 mm"}
+  angle: {require: "angle(line(points.foot, points.top), vertical, side) <= 12 deg"}
+  below_line: {require: "below(nose.tip, line(points.foot, points.top)) >= 1 mm", scale: 1 m}
+  ground: {states: "{}", require: above_ground(points.foot) >= 20 mm}
+  in_states: {states: {fuel: every}, require: "sum(m.mass for m in masses) <= 880 kg"}
+  every_state: {states: every, each: t in tyres, require: "t.loaded_radius >= 300 mm and sum(m.mass for m in masses) >= 700 kg"}
+  steel: {require: members.hoop.material in steels}
+  present: {require: present(aero_surfaces.wing)}
+  banned: {require: not present(aero_surfaces.fan)}
+  closed: {require: not present(members.spare)}
+  no_control: {require: options.traction_control == no}
+  definition: {require: room >= 1200 mm}
+  with_argument: {each: m in members, require: section(m) >= 200 mm^2}
+  flag_argument: {each: m in members, require: thick(m)}
+  through_item: {each: l in lamps, require: l.carrier.wall >= 2 mm}
+  paper: {evidence: {kind: certificate, name: hoop}}
+  drawing: {evidence: {kind: drawing, name: layout}}
+  papers: {each: l in lamps, evidence: {kind: inspection, name: l.proof}}
+  due: {evidence: {kind: drawing, name: later, due: 2027-12-31}}
+  dates: {require: "on <= end_of_year(evidence.belt.made + 5 years)"}
+  judged: {judgement: Is it smooth?}
+  judged_each: {each: e in edges, judgement: Is it smooth?}
+  unless: {unless: {when: options.power_steering == yes, because: powered}, require: dimensions.steering_wheel_diameter >= 300 mm}
+  branches: {branches: {tube: {require: members.hoop.wall >= 2.5 mm}, equal: {evidence: {kind: certificate, name: hoop}}}}
+  refers: {require: rule(least_length) and rule(each_where)}
+  margin_of: {require: margin(least_length) >= 100 mm}
+  either: {require: bolt >= 6 mm or bolt >= 0.25 in or options.traction_control == no}
+  computed: {require: mass.total >= 700 kg and mass.front_share >= 30 %}
+  advice: {standing: should, require: dimensions.overall_height <= 1100 mm}
+""".replace("  ground: {states: \"{}\", require", "  ground: {require")
+
+GOOD = """\
+design: Heron 4
+dimensions: {wheelbase: 2800 mm, front_track: 1590 mm, overall_height: 1000 mm, steering_wheel_diameter: 320 mm,
+  front_ride_height: 40 mm, rear_ride_height: 60 mm, rear_track: {value: 1560 mm, definition: contact centres}}
+brakes: {distribution: 50 %}
+powertrain: {kind: hybrid, aspiration: forced, displacement: 2 L, power: 350 kW, speed: 8000 rpm, fuel_flow: 79 kg/h, tank_volume: 65 L}
+air: {altitude: 500 m}
+recovery: {axle: rear, power: 100 kW, voltage: 650 V}
+electrical: {system_voltage: 690 V}
+masses:
+  tub: {mass: 700 kg, at: 1000 0 300 mm}
+  fuel: {mass: 50 kg, at: 1600 0 270 mm}
+  driver: {mass: 75 kg, at: 1100 0 330 mm}
+tyres: {front: {width: 300 mm, loaded_radius: 331 mm}, rear: {width: 330 mm, loaded_radius: 343 mm}}
+edges: {sill: {radius: 3 mm, exposed: yes}, lip: {radius: 2 mm, exposed: yes}, vane: {radius: 0.2 mm, exposed: no}}
+lamps:
+  left: {at: 0 -600 700 mm, area: 31 cm^2, carrier: hoop, proof: p1}
+  right: {at: 0 601 700 mm, area: 32 cm^2, carrier: brace, proof: p2}
+anchors: {a: {strength: 15 kN}, b: {strength: 14 kN}, c: {strength: 13 kN}, d: {strength: 12 kN}}
+ballast: {front: {mass: 9 kg, sealed: yes}, rear: {mass: 4 kg, sealed: yes}}
+points: {foot: 1400 0 100 mm, top: 1480 0 990 mm}
+nose: {tip: -900 0 -3000 mm}
+members: {complete: yes, hoop: {material: "25CrMo4", wall: 2.5 mm, outer_diameter: 45 mm}, brace: {material: "E355", wall: 2 mm, outer_diameter: 40 mm}}
+aero_surfaces: {wing: {kind: wing}, fan: none}
+options: {traction_control: no, power_steering: no}
+bolt: 6 mm
+tub: {material: "25CrMo4"}
+evidence:
+  hoop: {kind: certificate, until: 2028-01-31}
+  layout: {kind: drawing, reference: D1}
+  later: {kind: drawing, reference: D2}
+  belt: {kind: declaration, made: 2024-05-05}
+  p1: {kind: inspection, reference: A}
+  p2: {kind: inspection, reference: B}
+judgements:
+  judged: {verdict: complies, role: scrutineer, date: 2027-02-01, reason: felt}
+  judged_each:
+    sill: {verdict: complies, role: scrutineer, date: 2027-02-01, reason: felt}
+    lip: {verdict: complies, role: scrutineer, date: 2027-02-01, reason: felt}
+    vane: {verdict: complies, role: scrutineer, date: 2027-02-01, reason: felt}
+states:
+  fuel: {empty: {masses.fuel.mass: 0 kg}, full: {}}
+  load: {low: {tyres.front.loaded_radius: 320 mm, tyres.rear.loaded_radius: 330 mm}}
+"""
+
+BAD = {
+    "wheelbase: 2800": "wheelbase: 1500", "front_track: 1590": "front_track: 900", "distribution: 50": "distribution: 60",
+    "displacement: 2 L": "displacement: 2.5 L", "power: 350": "power: 420", "fuel_flow: 79": "fuel_flow: 85",
+    "tank_volume: 65": "tank_volume: 90", "axle: rear, power: 100": "axle: rear, power: 120", "voltage: 650": "voltage: 800",
+    "system_voltage: 690": "system_voltage: 780", "mass: 700": "mass: 600", "width: 300": "width: 360",
+    "radius: 3 mm, exposed": "radius: 1 mm, exposed", "0 601 700": "0 300 700", "area: 31": "area: 11", "area: 32": "area: 12",
+    "strength: 14": "strength: 4", "mass: 9 kg": "mass: 19 kg", "sealed: yes}, rear": "sealed: no}, rear",
+    "foot: 1400 0 100": "foot: 1000 0 10", '"25CrMo4", wall: 2.5': '"E355", wall: 1.5', "wing: {kind: wing}, fan: none": "wing: none, fan: {kind: other}",
+    "traction_control: no": "traction_control: yes", "bolt: 6": "bolt: 5", "until: 2028": "until: 2027", "-3000 mm": "3000 mm",
+    "made: 2024": "made: 2019", "{verdict: complies, role: scrutineer, date: 2027-02-01, reason: felt}\n  judged_each": "{verdict: breach, role: scrutineer, date: 2027-02-01, reason: felt}\n  judged_each",
+    "sill: {verdict: complies": "sill: {verdict: breach", "diameter: 320": "diameter: 280", "height: 1000 mm, st": "height: 1200 mm, st",
+}  # fmt: skip
+
+
+def shapes(design: str) -> tuple[Design, Ruleset]:
+    with TemporaryDirectory() as folder:
+        place = Path(folder)
+        (place / "car.design.yaml").write_text(design, encoding="utf-8")
+        (place / "cup.ruleset.yaml").write_text(SHAPES, encoding="utf-8")
+        return load_design(place / "car.design.yaml"), load_ruleset(place / "cup.ruleset.yaml")
+
+
+def bad() -> str:
+    text = GOOD
+    for old, new in BAD.items():
+        assert old in text, old
+        text = text.replace(old, new, 1)
+    return text
+
+
+def cars() -> Iterator[tuple[str, Design, Ruleset]]:
+    """The small car well and badly made, against the rules and against their opposites."""
+    for name, text in (("good", GOOD), ("bad", bad())):
+        design, ruleset = shapes(text)
+        yield name, design, ruleset
+        yield f"{name}, opposed", design, opposed(ruleset)
+
+
+CARS = {name: (design, ruleset) for name, design, ruleset in cars()}
+
+
+def test_the_good_car_complies_and_the_bad_one_does_not() -> None:
+    good, worse = verdicts(*CARS["good"]), verdicts(*CARS["bad"])
+    assert {name: said for name, said in good.items() if said != "complies"} == {}
+    unmoved = {name for name, said in worse.items() if said in MET}
+    assert len(unmoved) <= 14, unmoved
+    assert sum(said in NOT_MET for said in verdicts(*CARS["good, opposed"]).values()) >= 35
+
+
+@pytest.mark.parametrize("name", CARS)
+def test_no_single_deletion_makes_a_rule_of_any_shape_comply(name: str) -> None:
+    design, ruleset = CARS[name]
+    before = verdicts(design, ruleset)
+    gaps = takeable(design, ruleset)
+    assert len(gaps) > 110
+    found = {gone: rules for gone in gaps if (rules := mended(design, ruleset, [gone], before))}
+    assert found == {}
+
+
+@pytest.mark.parametrize("name", CARS)
+def test_no_second_deletion_makes_a_rule_comply(name: str) -> None:
+    design, ruleset = CARS[name]
+    source = random.Random(len(name))
+    pairs = list(combinations(takeable(design, ruleset), 2))
+    for first, second in source.sample(pairs, 25):
+        _held_in_pairs(design, ruleset, first, second)
+
+
+def _held_in_pairs(design: Design, ruleset: Ruleset, first: str, second: str) -> None:
+    both = without(design, first, second)
+    after = verdicts(both, ruleset)
+    for alone in (first, second):
+        before = verdicts(without(design, alone), ruleset)
+        found = [rule for rule, said in after.items() if said in MET and before[rule] in NOT_MET]
+        assert found == [], (first, second)
+
+
+@pytest.mark.long
+@pytest.mark.parametrize("name", CARS)
+def test_no_second_deletion_makes_a_rule_comply_at_length(name: str) -> None:
+    design, ruleset = CARS[name]
+    pairs = list(combinations(takeable(design, ruleset), 2))
+    for first, second in random.Random(5).sample(pairs, 1500):
+        _held_in_pairs(design, ruleset, first, second)
+
+
+def test_every_deletion_is_felt_by_some_rule_of_the_good_car() -> None:
+    """The test above would see nothing if what is taken out were never read."""
+    design, ruleset = CARS["good"]
+    unfelt = []
+    for gone in takeable(design, ruleset):
+        said = verdicts(without(design, gone), ruleset)
+        if all(verdict == "complies" for verdict in said.values()):
+            unfelt.append(gone)
+    harmless = ("reference", "kind", "role", "material", "exposed", "displacement", "aero_surfaces.wing.kind")
+    assert [gone for gone in unfelt if not gone.endswith(harmless)] == []
+
+
+# --- the demonstration cars ------------------------------------------------------------------------------------------
+
+
+def demo(name: str) -> tuple[Design, Ruleset]:
+    design = load_design(ROOT / "designs_demo" / f"{name}.design.yaml")
+    return design, load_ruleset(ROOT / "rulesets_demo" / "saltmere.ruleset.yaml")
+
+
+def is_ledger(path: str) -> bool:
+    return path.startswith("masses.")
+
+
+@pytest.mark.parametrize("is_opposed", [False, True], ids=["rules", "opposites"])
+def test_no_deletion_of_the_demo_makes_a_rule_comply(is_opposed: bool) -> None:
+    design, ruleset = demo("marram-p2-breach")
+    ruleset = opposed(ruleset) if is_opposed else ruleset
+    before = verdicts(design, ruleset)
+    gaps = takeable(design, ruleset)
+    source = random.Random(3)
+    stated, ledger = [gone for gone in gaps if not is_ledger(gone)], [gone for gone in gaps if is_ledger(gone)]
+    for gone in (*source.sample(stated, 9), *source.sample(ledger, 2)):
+        assert mended(design, ruleset, [gone], before) == [], gone
+
+
+@pytest.mark.long
+@pytest.mark.parametrize("is_opposed", [False, True], ids=["rules", "opposites"])
+@pytest.mark.parametrize("name", ["marram-p2", "marram-p2-breach"])
+def test_no_deletion_of_any_value_of_the_demo_makes_a_rule_comply(name: str, is_opposed: bool) -> None:
+    design, ruleset = demo(name)
+    ruleset = opposed(ruleset) if is_opposed else ruleset
+    before = verdicts(design, ruleset)
+    gaps = takeable(design, ruleset)
+    found = {gone: rules for gone in gaps if (rules := mended(design, ruleset, [gone], before))}
+    assert found == {}
+
+
+@pytest.mark.long
+def test_no_two_deletions_of_the_demo_make_a_rule_comply() -> None:
+    design, ruleset = demo("marram-p2-breach")
+    stated = [gone for gone in takeable(design, ruleset) if not is_ledger(gone)]
+    source = random.Random(9)
+    for _ in range(300):
+        _held_in_pairs(design, opposed(ruleset), *source.sample(stated, 2))
+
+
+def test_a_value_in_the_long_form_is_one_value() -> None:
+    design, ruleset = CARS["good"]
+    assert isinstance(design.leaves["dimensions.rear_track"], MappingNode)
+    assert "dimensions.rear_track" in takeable(design, ruleset)
