@@ -12,6 +12,7 @@ from dataclasses import dataclass, field
 from datetime import date
 from fractions import Fraction
 from os import PathLike
+from os.path import relpath
 from pathlib import Path
 
 from rulecheck.binding.bind import bind
@@ -22,6 +23,7 @@ from rulecheck.model.design import Design, Overlay, State
 from rulecheck.model.design_reader import read_change, read_design
 from rulecheck.model.house import has_house, read_house
 from rulecheck.model.names import is_name
+from rulecheck.model.variant_writer import variant_text
 from rulecheck.model.ruleset import House, Ruleset
 from rulecheck.model.ruleset_reader import read_ruleset
 from rulecheck.outcome.changes import WhatIf
@@ -165,6 +167,7 @@ def whatif(
     columns: Sequence[Change],
     *,
     rules: Sequence[File] = (),
+    states: Mapping[str, str] | None = None,
     on: date | None = None,
     session: Session | None = None,
 ) -> WhatIf:
@@ -174,13 +177,32 @@ def whatif(
     """
     session = session or Session()
     day = on or date.today()
-    base = _load(session, design, rules, (), (), None)
-    made = [_column(session, design, rules, change, base, day) for change in columns]
+    base = _load(session, design, rules, (), (), states)
+    made = []
+    for change in columns:
+        loaded = _load(session, design, rules, change.settings, change.changes, states)
+        made.append(_column(loaded, base, change, day))
     return what_if(Checker(_bind(base, day, BUILT_IN)), made, base.design, base.rulesets, day)
 
 
-def _column(session: Session, design: File, rules: Sequence[File], change: Change, base: _Loaded, day: date) -> Column:
-    loaded = _load(session, design, rules, change.settings, change.changes, None)
+def kept_variant(design: File, columns: Sequence[Change], target: File, session: Session) -> str:
+    """One change as the text of a variant file that changes the design. Raises `Refused`."""
+    faults = Faults()
+    if len(columns) != 1:
+        faults.add(
+            "usage",
+            f"--keep writes one change, and there are {len(columns)}",
+            advice="give one --change, or --set alone",
+        )
+    overlay = Overlay()
+    for column in columns[:1]:
+        overlay, _ = _overlay(session, column.settings, column.changes, faults)
+    faults.settle()
+    reference = Path(relpath(Path(design).resolve(), Path(target).resolve().parent)).as_posix()
+    return variant_text(reference, overlay)
+
+
+def _column(loaded: _Loaded, base: _Loaded, change: Change, day: date) -> Column:
     checker = Checker(_bind(loaded, day, BUILT_IN))
     name = ", ".join(Path(path).name.removesuffix(".change.yaml") for path in change.changes)
     structural = _structure(loaded.design) != _structure(base.design)

@@ -25,7 +25,7 @@ if TYPE_CHECKING:
     from rulecheck.output.screen import Screen
 
 COMPLIES, BREACH, UNUSABLE, NOT_SETTLED, INTERRUPTED = 0, 1, 2, 3, 130
-SCHEMAS = ("design", "ruleset", "house", "change", "report", "workings", "diagnostics")
+SCHEMAS = ("design", "ruleset", "house", "change", "report", "workings", "whatif", "diagnostics")
 
 
 def main() -> NoReturn:
@@ -182,12 +182,46 @@ def workings(design: str, names: tuple[str, ...], closed_form: bool, solve_for: 
     return COMPLIES
 
 
-def _deliver(asked: Asked, session: Session, for_terminal: Callable[[Screen], str], as_json: Callable[[], str]) -> None:
+@rulecheck.command(cls=Question, short_help="Every margin and figure before and after changes.")
+@click.argument("design", metavar="DESIGN")
+@click.option("--keep", metavar="FILE", default="", help="Write the design with the change as a variant to this file.")
+@question
+def whatif(design: str, keep: str, **given: Any) -> int:
+    """Every margin and every physics figure before and after changes, most affected first.
+
+    What --set lays over the design is one change; each --change is a column of its own, and --set goes with each.
+    """
+    from rulecheck import api
+    from rulecheck.output.json_whatif import whatif_json
+    from rulecheck.output.terminal_whatif import whatif_text
+
+    asked, session = asked_from(design, given), api.Session()
+    try:
+        columns = [api.Change((path,), asked.settings) for path in asked.changes]
+        if asked.settings and not columns:
+            columns = [api.Change((), asked.settings)]
+        found = api.whatif(
+            asked.design, columns, rules=asked.rules, states=asked.states, on=asked.on, session=session
+        )  # fmt: skip
+        kept = api.kept_variant(asked.design, columns, Path(keep), session) if keep else ""
+        _deliver(asked, session, lambda screen: whatif_text(found, screen), lambda: whatif_json(found), (keep, kept))
+    except Refused as refused:
+        return _refuse(refused.diagnostics, session, as_json=asked.json_on_stream)
+    return COMPLIES
+
+
+def _deliver(
+    asked: Asked,
+    session: Session,
+    for_terminal: Callable[[Screen], str],
+    as_json: Callable[[], str],
+    kept: tuple[str, str] = ("", ""),
+) -> None:
     """Files first, so that nothing is said where one of them cannot be written."""
     from rulecheck.output.screen import PAPER, screen_of
     from rulecheck.output.writing import write_files
 
-    files: dict[Path, str] = {}
+    files: dict[Path, str] = {Path(kept[0]): kept[1]} if kept[0] else {}
     shown = ""
     for form, path in asked.deliveries:
         screen = PAPER if path is not None else screen_of(sys.stdout)
@@ -243,12 +277,13 @@ def _schema(what: str, rules: Sequence[str]) -> str:
         raise click.UsageError(f"WHAT is one of {', '.join(SCHEMAS)}", click.get_current_context())
     if rules and what not in ("design", "change"):
         raise click.UsageError("--rules goes with the schema of a design or a change", click.get_current_context())
-    if what in ("report", "workings", "diagnostics"):
+    if what in ("report", "workings", "whatif", "diagnostics"):
         from rulecheck.output import report_schema
 
         found = {
             "report": report_schema.report_schema,
             "workings": report_schema.workings_schema,
+            "whatif": report_schema.whatif_schema,
             "diagnostics": report_schema.diagnostics_schema,
         }[what]()
     else:

@@ -138,10 +138,7 @@ def _path(scope: Scope, path: str, span: Span) -> Bound | None:
         return coordinate
     if point is not None and point.kind == "collection":
         return Item(path)
-    if point is not None and point.kind == "item":
-        return None
-    through = _through_item(scope, path, span)
-    return through
+    return _through_item(scope, path, span)
 
 
 def _through_item(scope: Scope, path: str, span: Span) -> Bound | None:

@@ -147,7 +147,7 @@ def _lay(
     if _is_none(node):
         absent.add(path)
     if path in items:
-        _remove(path, leaves, items)
+        _remove(path, leaves, items, absent)
     leaves[path] = node
     _register(path, items)
 
@@ -156,11 +156,14 @@ def _is_none(node: LeafNode | None) -> bool:
     return isinstance(node, Located) and node.text == NONE
 
 
-def _remove(path: str, leaves: dict[str, LeafNode], items: dict[str, tuple[str, ...]]) -> None:
+def _remove(
+    path: str, leaves: dict[str, LeafNode], items: dict[str, tuple[str, ...]], absent: set[str]
+) -> None:
     for name in items.pop(path, ()):
         below = f"{path}.{name}"
         leaves.pop(below, None)
-        _remove(below, leaves, items)
+        absent.discard(below)
+        _remove(below, leaves, items, absent)
     holder, _, name = path.rpartition(".")
     if holder in items:
         items[holder] = tuple(item for item in items[holder] if item != name)

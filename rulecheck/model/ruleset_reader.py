@@ -7,23 +7,22 @@ from typing import Any
 
 from rulecheck.diagnostics import Faults, Refused, Related, Span
 from rulecheck.model.declarations import declared_entries, needed_states, own_units
-from rulecheck.model.edge import BranchShape, EvidenceShape, FigureShape, RulesetShape, RuleShape, TableShape, shaped
+from rulecheck.model.edge import BranchShape, EvidenceShape, FigureShape, RulesetShape, RuleShape, shaped
+from rulecheck.model.groups import group_conditions
+from rulecheck.model.layers import layered
 from rulecheck.model.names import check_name
 from rulecheck.model.ruleset import (
     Alternative,
     Book,
     EvidenceWanted,
     Formula,
-    Origin,
-    Row,
     Rule,
     Ruleset,
     Standing,
-    Table,
     Unless,
     Window,
-    Withdrawn,
 )
+from rulecheck.model.table_reader import read_table
 from rulecheck.quantity.reading_values import read_day
 from rulecheck.reading.nearest import nearest
 from rulecheck.reading.nodes import Located, Mapping, Node
@@ -33,7 +32,6 @@ from rulecheck.reading.yaml_reader import read_yaml
 EXPIRING = frozenset(("certificate", "homologation", "licence"))
 STANDINGS = ("shall", "should", "may", "note")
 EMPTY = ("open", "complies", "breach", "not applicable")
-_TESTS = ("up_to", "below", "is", "when", "otherwise")
 _MOST_LAYERS = 20
 
 
@@ -58,11 +56,9 @@ def _read(workspace: Workspace, file: str, asked: Span | None, above: tuple[str,
             faults.take(refused)
     faults.settle()
     assert shape is not None
-    ruleset = _Reader(file, root, shape, faults).ruleset()
-    for base in reversed(bases):
-        ruleset = _merged(base, ruleset, root, faults)
+    made = layered(bases, _Reader(file, root, shape, faults).ruleset(), root.get("withdrawn"), faults)
     faults.settle()
-    return ruleset
+    return made
 
 
 def _references(node: Node | None) -> tuple[Located, ...]:
@@ -96,7 +92,7 @@ class _Reader:
     def ruleset(self) -> Ruleset:
         shape, faults = self.shape, self.faults
         units = own_units(shape.units or {}, faults)
-        groups = self._group_conditions()
+        groups = group_conditions(self.root.get("groups"), shape.rules or {}, faults)
         rules = {name: self.rule(name, key, value, groups) for name, key, value in self.named("rules", shape.rules)}
         self._one_name_space()
         return Ruleset(
@@ -109,7 +105,7 @@ class _Reader:
             inputs=declared_entries(
                 self.root.get("inputs"), shape.inputs or {}, shape.definitions or {}, self.file, faults
             ),
-            tables={name: self.table(name, key, value) for name, key, value in self.named("tables", shape.tables)},
+            tables={n: read_table(n, key, value, faults) for n, key, value in self.named("tables", shape.tables)},
             lists={name: tuple(value) for name, _, value in self.named("lists", shape.lists)},
             derived={n: formula_of(n, key, value) for n, key, value in self.named("derived", shape.derived)},
             needed=needed_states(self.root.get("states_needed"), faults),
@@ -118,6 +114,11 @@ class _Reader:
             books=(Book(shape.ruleset.text, text(shape.edition), self.file),),
             span=shape.ruleset.span,
         )
+
+    def _said(self, where: Located | None, what: str) -> None:
+        """Note a fault where a leaf is there and empty."""
+        if where is not None and not where.text:
+            self.faults.add("bad-value", f"{what} is empty", where.span, advice="write it, or take the key out")
 
     def _one_name_space(self) -> None:
         """Rules, derived figures, tables and lists share one name space."""
@@ -135,40 +136,11 @@ class _Reader:
                         related=(Related("the other one is here", other.span),),
                     )
 
-    def _group_conditions(self) -> dict[str, tuple[Located, ...]]:
-        """Conditions that groups lay on rules, by rule."""
-        conditions: dict[str, tuple[Located, ...]] = {}
-        node = self.root.get("groups")
-        for entry in node if isinstance(node, Mapping) else ():
-            group = entry.value
-            when = group.get("when") if isinstance(group, Mapping) else None
-            rules = group.get("rules") if isinstance(group, Mapping) else None
-            if not isinstance(when, Located) or rules is None or isinstance(rules, Mapping):
-                self.faults.add(
-                    "bad-structure",
-                    f"group '{entry.key.text}' needs a condition and its rules",
-                    entry.key.span,
-                    expected="{when: condition, rules: [names]}",
-                )
-                continue
-            for rule in (rules,) if isinstance(rules, Located) else rules:
-                if not isinstance(rule, Located) or rule.text not in (self.shape.rules or {}):
-                    name = rule.text if isinstance(rule, Located) else ""
-                    self.faults.add(
-                        "unknown-name",
-                        f"there is no rule '{name}' in this file",
-                        rule.span,
-                        advice=nearest(name, self.shape.rules or ()),
-                    )
-                else:
-                    conditions[rule.text] = (*conditions.get(rule.text, ()), when)
-        return conditions
-
     def rule(self, name: str, key: Located, shape: RuleShape, groups: dict[str, tuple[Located, ...]]) -> Rule:
         node = self.root.get("rules")
         inner = node.get(name) if isinstance(node, Mapping) else None
         own = self.alternative("", shape)
-        branches = tuple(self.alternative(label, branch) for label, branch in (shape.branches or {}).items())
+        branches = tuple(self._branch(name, label, branch) for label, branch in (shape.branches or {}).items())
         standing: Standing = self._word(shape.standing, STANDINGS, "shall")  # type: ignore[assignment]
         if standing in ("shall", "should") and not branches and not (own.require or own.evidence or own.judgement):
             self.faults.add(
@@ -187,9 +159,9 @@ class _Reader:
             standing=standing,
             own=replace(own, when=None),
             branches=branches,
-            each=(shape.each,) if isinstance(shape.each, Located) else tuple(shape.each or ()),
+            each=self._each(shape.each, name, key),
             empty=self._word(shape.empty, EMPTY, "open"),  # type: ignore[arg-type]
-            states=self._states(shape.states),
+            states=self._states(shape.states, key),
             when=(*groups.get(name, ()), *((shape.when,) if shape.when else ())),
             unless=self._unless(shape.unless, inner),
             scale=shape.scale,
@@ -211,17 +183,38 @@ class _Reader:
         )
         return default
 
+    def _each(self, each: Any, rule: str, key: Located) -> tuple[Located, ...]:
+        if isinstance(each, list) and not each:
+            self.faults.add(
+                "bad-structure", f"'each' of rule '{rule}' names no collection", key.span, expected="each: t in tyres"
+            )
+        return (each,) if isinstance(each, Located) else tuple(each or ())
+
+    def _branch(self, rule: str, label: str, shape: BranchShape) -> Alternative:
+        if not (shape.require or shape.evidence or shape.judgement):
+            self.faults.add(
+                "missing-key",
+                f"branch '{label}' of rule '{rule}' asks for nothing",
+                self.key("rules", rule, "branches", label).span,
+                expected="require, evidence or judgement",
+            )
+        return self.alternative(label, shape)
+
     def alternative(self, name: str, shape: BranchShape) -> Alternative:
+        """The conditions of a rule or branch."""
+        self._said(shape.judgement, "the question")
         wanted = self._evidence(shape.evidence) if shape.evidence else None
         return Alternative(name, shape.require, wanted, shape.judgement, shape.when)
 
     def _evidence(self, shape: EvidenceShape) -> EvidenceWanted:
+        self._said(shape.kind, "the kind of document")
+        self._said(shape.name, "the name of the document")
         expires = shape.kind.text in EXPIRING
         if shape.expires is not None:
             expires = self._word(shape.expires, ("yes", "no"), "no") == "yes"
         return EvidenceWanted(shape.kind, shape.name, shape.due, expires)
 
-    def _states(self, node: Any) -> tuple[tuple[str, tuple[Located, ...]], ...] | None:
+    def _states(self, node: Any, key: Located) -> tuple[tuple[str, tuple[Located, ...]], ...] | None:
         if node is None:
             return None
         if isinstance(node, Located):
@@ -233,6 +226,12 @@ class _Reader:
                     expected="every, or {axis: every} or {axis: [names]}",
                 )
             return ()
+        if not node or not all(isinstance(names, Located) or names for names in node.values()):
+            # An empty choice must be read neither as every state nor as none.
+            self.faults.add(
+                "bad-structure", f"rule '{key.text}' does not say which states", key.span,
+                expected="every, or {axis: every} or {axis: [names]}",
+            )  # fmt: skip
         chosen = []
         for axis, names in node.items():
             if isinstance(names, Located):
@@ -249,49 +248,11 @@ class _Reader:
             self.faults.add(
                 "bad-structure",
                 "an exemption has a condition and a reason",
-                node.span if node else None,
+                node.span if node is not None else None,
                 expected="{when: condition, because: text}",
             )
             return None
         return Unless(shape["when"], text(shape.get("because")))
-
-    def table(self, name: str, key: Located, shape: TableShape) -> Table:
-        over = (shape.over,) if isinstance(shape.over, Located) else tuple(shape.over)
-        if (shape.steps is None) == (shape.linear is None):
-            self.faults.add(
-                "bad-structure",
-                f"table '{name}' has either steps or linear rows",
-                key.span,
-                expected="steps: [...] or linear: [...]",
-            )
-        rows = tuple(row for step in shape.steps or () if (row := self._row(name, key, step)) is not None)
-        linear = []
-        for pair in shape.linear or ():
-            if len(pair) == 2:
-                linear.append((pair[0], pair[1]))
-            else:
-                self.faults.add(
-                    "bad-structure",
-                    f"a linear row of table '{name}' is a key and a value",
-                    pair[0].span if pair else key.span,
-                    expected="[key, value]",
-                )
-        return Table(name, key.span, over, rows, tuple(linear), shape.unit, text(shape.meaning))
-
-    def _row(self, table: str, key: Located, step: dict[str, Located]) -> Row | None:
-        if set(step) == {"otherwise"}:
-            return Row("otherwise", None, step["otherwise"])
-        tests = [test for test in step if test in _TESTS]
-        if len(tests) != 1 or "value" not in step or len(step) != 2:
-            place = next(iter(step.values())).span if step else key.span
-            self.faults.add(
-                "bad-structure",
-                f"a row of table '{table}' has one test and a value",
-                place,
-                expected="{up_to: key, value: value}, or below, is, when; or {otherwise: value}",
-            )
-            return None
-        return Row(tests[0], step[tests[0]], step["value"])
 
 
 def _inside(node: Node | None, key: str) -> Node | None:
@@ -326,51 +287,8 @@ def window(shape: dict[str, Located] | None, faults: Faults) -> Window:
             faults.add("unknown-key", f"a window has no '{key}'", where.span, expected="from or until")
         else:
             days[key] = read_day(where, faults)
-    return Window(days.get("from"), days.get("until"))
-
-
-def _merged(base: Ruleset, top: Ruleset, root: Mapping, faults: Faults) -> Ruleset:
-    """What extends laid over what is extended; replaced and withdrawn rules keep their origin."""
-    rules = dict(base.rules)
-    withdrawn = list(base.withdrawn)
-    for name, rule in top.rules.items():
-        old = rules.get(name)
-        if old is not None:
-            before = Origin(old.ruleset, old.span, "replaced")
-            rule = replace(rule, history=(*old.history, before))
-        rules[name] = rule
-    node = root.get("withdrawn")
-    for entry in node if isinstance(node, Mapping) else ():
-        reason = entry.value.text if isinstance(entry.value, Located) else ""
-        if not reason:
-            faults.add(
-                "quote-this",
-                f"'{entry.key.text}' is withdrawn without a reason",
-                entry.key.span,
-                expected="rule: reason",
-                advice="quote a reason that has a comma in it",
-            )
-            continue
-        if entry.key.text in base.rules:
-            withdrawn.append(Withdrawn(rules.pop(entry.key.text), reason, entry.key.span))
-        elif entry.key.text not in {item.rule.name for item in withdrawn}:
-            faults.add(
-                "unknown-name",
-                f"there is no rule '{entry.key.text}' to withdraw",
-                entry.key.span,
-                advice=nearest(entry.key.text, base.rules),
-            )
-    return replace(
-        top,
-        units={**base.units, **top.units},
-        inputs=(*base.inputs, *top.inputs),
-        tables={**base.tables, **top.tables},
-        lists={**base.lists, **top.lists},
-        derived={**base.derived, **top.derived},
-        needed={
-            axis: {**base.needed.get(axis, {}), **top.needed.get(axis, {})} for axis in {**base.needed, **top.needed}
-        },
-        rules=rules,
-        withdrawn=tuple(withdrawn),
-        books=(*base.books, *top.books),
-    )
+    first, last = days.get("from"), days.get("until")
+    if first is not None and last is not None and last < first:
+        place = (shape or {})["until"].span
+        faults.add("bad-date", "this window ends before it begins", place, expected=f"{first} or a later day")
+    return Window(first, last)

@@ -13,7 +13,7 @@ Json = dict[str, object]
 
 def report_json(report: Report) -> str:
     """The outcome of `check` as JSON text; the same outcome gives the same bytes."""
-    return _text(
+    return json_text(
         {
             "form": "report",
             "version": report.version,
@@ -37,7 +37,7 @@ def report_json(report: Report) -> str:
 
 def workings_json(workings: Workings) -> str:
     """The outcome of `workings` as JSON text."""
-    return _text(
+    return json_text(
         {
             "form": "workings",
             "version": workings.version,
@@ -63,7 +63,7 @@ def workings_json(workings: Workings) -> str:
     )
 
 
-def _text(value: Json) -> str:
+def json_text(value: Json) -> str:
     return json.dumps(value, indent=2, ensure_ascii=False, allow_nan=False) + "\n"
 
 
@@ -90,8 +90,8 @@ def _finding(item: Finding) -> Json:
         "reason": item.reason,
         "margin": _margin(item.margin, item.strict),
         "relative_margin": _number(item.relative_margin),
-        "value": _amount(item.value),
-        "limit": _amount(item.limit),
+        "value": amount_json(item.value),
+        "limit": amount_json(item.limit),
         "sense": item.sense,
         "counted": item.counted,
         "binding": _binding(item.binding),
@@ -124,8 +124,8 @@ def _part(item: PartResult) -> Json:
         "reason": item.reason,
         "margin": _margin(item.margin, item.strict),
         "relative_margin": _number(item.relative_margin),
-        "value": _amount(item.value),
-        "limit": _amount(item.limit),
+        "value": amount_json(item.value),
+        "limit": amount_json(item.limit),
         "sense": item.sense,
         "element": item.element,
         "branch": item.branch,
@@ -135,11 +135,11 @@ def _part(item: PartResult) -> Json:
 
 
 def _margin(amount: Amount | None, strict: bool) -> Json | None:
-    shown = _amount(amount)
+    shown = amount_json(amount)
     return {**shown, "strict": strict} if shown is not None else None
 
 
-def _amount(amount: Amount | None) -> Json | None:
+def amount_json(amount: Amount | None) -> Json | None:
     if amount is None:
         return None
     return {

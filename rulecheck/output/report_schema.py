@@ -45,6 +45,41 @@ def workings_schema() -> Schema:
     return {"$schema": DRAFT, "title": "Workings", **_object(properties), "$defs": _shared()}
 
 
+def whatif_schema() -> Schema:
+    """The schema of what `whatif --form json` prints."""
+    change = {"name": _text("Name of the change"), "settings": _list(_text(), "What it sets")}
+    moved = {
+        "verdict": _or_null(_verdict("Verdict of the rule afterwards; null for figures")),
+        "after": _or_null({"$ref": "#/$defs/amount"}),
+        "difference": _or_null({"$ref": "#/$defs/amount"}),
+        "foretold": _or_null({"$ref": "#/$defs/amount"}),
+        "binding": _text("The part that decides afterwards"),
+    }
+    shared = {
+        "name": _text(),
+        "before": _or_null({"$ref": "#/$defs/amount"}),
+        "moved": _list(_object(moved), "One for each change, in order"),
+    }
+    rule = {
+        **shared,
+        "clause": _text(),
+        "title": _text(),
+        "verdict": _verdict("Verdict before"),
+        "binding": _text("The part that decides before"),
+    }
+    properties = {
+        **_heading("whatif"),
+        "changes": _list(_object(change), "The changes, side by side"),
+        "verdict": _verdict("The total before"),
+        "verdicts": _list(_verdict("The total with the change"), "One for each change"),
+        "unchanged": {"description": "Rules that do not move", "type": "integer", "minimum": 0},
+        "rules": _list(_object(rule), "Rules that move, most affected first"),
+        "figures": _list(_object({**shared, "meaning": _text()}), "Figures that move, most affected first"),
+        "cautions": _list(_text(), "What the answer cannot decide"),
+    }
+    return {"$schema": DRAFT, "title": "What if", **_object(properties), "$defs": _shared()}
+
+
 def diagnostics_schema() -> Schema:
     """The schema of the array that `--form json` prints where the input cannot be used."""
     properties: Schema = {

@@ -105,12 +105,20 @@ def sites(
         function = f"{function}.{node.name}" if function else node.name
     for step, part in _parts(node):
         inside = function
-        if not function and isinstance(part, ast.Assign) and isinstance(part.targets[0], ast.Name):
-            # What stands in a module's constant goes by the constant's name.
-            inside = part.targets[0].id
+        if not function:
+            inside = _constant(part)
         if isinstance(part, ast.expr | ast.stmt | ast.comprehension):
             yield (*path, step), inside, part
         yield from sites(part, (*path, step), inside)
+
+
+def _constant(node: ast.AST) -> str:
+    """What stands in a module's constant goes by the constant's name."""
+    if isinstance(node, ast.Assign):
+        node = node.targets[0]
+    elif isinstance(node, ast.AnnAssign):
+        node = node.target
+    return node.id if isinstance(node, ast.Name) else ""
 
 
 def _parts(node: ast.AST) -> Iterator[tuple[Step, ast.AST]]:
