@@ -16,6 +16,7 @@ from os.path import relpath
 from pathlib import Path
 
 from rulecheck.binding.bind import bind
+from rulecheck.binding.conditions import numeric_parts
 from rulecheck.diagnostics import Faults, Refused, Span
 from rulecheck.graph.figures import Graph
 from rulecheck.graph.terms import Term
@@ -23,12 +24,13 @@ from rulecheck.model.design import Design, Overlay, State
 from rulecheck.model.design_reader import read_change, read_design
 from rulecheck.model.house import has_house, read_house
 from rulecheck.model.names import is_name
-from rulecheck.model.variant_writer import variant_text
 from rulecheck.model.ruleset import House, Ruleset
 from rulecheck.model.ruleset_reader import read_ruleset
+from rulecheck.model.variant_writer import variant_text
 from rulecheck.outcome.changes import WhatIf
 from rulecheck.outcome.results import ClosedFormResult, Report, Workings
 from rulecheck.physics.modules import BUILT_IN, built_in
+from rulecheck.quantity.dimension_names import name_of
 from rulecheck.quantity.quantity import Quantity
 from rulecheck.quantity.reading_values import read_quantity
 from rulecheck.reading.nearest import nearest
@@ -114,7 +116,7 @@ def check(
     day = on or date.today()
     loaded = _load(session, design, rules, settings, changes, states)
     graph = _bind(loaded, day)
-    checker = Checker(graph, _reserves(loaded.house, reserve))
+    checker = Checker(graph, _reserves(loaded, graph, reserve))
     decision = loaded.house.decision if loaded.house else "simple"
     asked = Asked(day, loaded.changes, _reserve_text(loaded.house, reserve), decision)
     return report(checker, loaded.design, loaded.rulesets, asked, session.digests)
@@ -142,7 +144,7 @@ def workings(
     day = on or date.today()
     loaded = _load(session, design, rules, settings, changes, states, needs_rules=False)
     graph = _bind(loaded, day, [name for name in names if name.partition(".")[0] in BUILT_IN])
-    checker = Checker(graph, _reserves(loaded.house, None))
+    checker = Checker(graph, _reserves(loaded, graph, None))
     describe = None
     if closed_form or solve_for:
         # sympy takes longer to load than all the rest: only where a closed form is asked for.
@@ -249,6 +251,8 @@ def _load(
             f"{design.file} names no ruleset",
             expected="rulesets: [name.ruleset.yaml] in the design, or --rules FILE",
         )
+    elif needs_rules and not any(book.rules for book in rulesets):
+        faults.add("no-rules", f"{rulesets[0].file} has no rules", rulesets[0].span, expected="rules: {name: {…}}")
     design = design.with_overlay(overlay)
     design, said = _in_states(design, states or {}, faults)
     faults.settle()
@@ -353,17 +357,30 @@ def _bind(loaded: _Loaded, day: date, figures: Sequence[str] = ()) -> Graph:
     )
 
 
-def _reserves(house: House | None, share: Fraction | None) -> Reserves:
+def _reserves(loaded: _Loaded, graph: Graph, share: Fraction | None) -> Reserves:
     if share is not None:
         return Reserves({}, share)
     by_rule: dict[str, Quantity] = {}
     faults = Faults()
-    for name, where in (house.reserves if house else {}).items():
-        read = read_quantity(where, None, faults=faults)
+    own = {symbol: unit for book in loaded.rulesets for symbol, unit in book.units.items()}
+    for name, where in (loaded.house.reserves if loaded.house else {}).items():
+        read = read_quantity(where, None, own=own, faults=faults)
         if read is not None:
             by_rule[name] = read
+            _check_reserve(name, where, read, graph, faults)
     faults.settle()
     return Reserves(by_rule)
+
+
+def _check_reserve(name: str, where: Located, read: Quantity, graph: Graph, faults: Faults) -> None:
+    """A reserve that no margin of its rule can be held against is a mistake."""
+    cases = [case for rule in graph.rules if rule.name == name for case in rule.cases]
+    margins = [part.margin for case in cases for part in numeric_parts(case.condition)]
+    dimensions = {margin.dimension for margin in margins if margin is not None}
+    if dimensions and read.unit.dimension not in dimensions:
+        told = f"the reserve of rule '{name}' is {name_of(read.unit.dimension)}, and its margin is not"
+        expected = " or ".join(sorted(name_of(dimension) for dimension in dimensions))
+        faults.add("wrong-dimension", told, where.span, expected=expected)
 
 
 def _reserve_text(house: House | None, share: Fraction | None) -> str:

@@ -2,24 +2,30 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Sequence
+import sys
+from collections.abc import Callable, Iterator, Sequence
+from contextlib import contextmanager
 from datetime import date
 
-from rulecheck.binding.bound import Item
+from rulecheck.binding.bound import Broken, Item, Items, kind_of
+from rulecheck.binding.declarations import check_declarations
 from rulecheck.binding.express import express
 from rulecheck.binding.figures import figure, physics_figure, physics_module
 from rulecheck.binding.parsing import parsed, parsed_each
+from rulecheck.binding.points import zero_place
 from rulecheck.binding.rules import bind_rule
 from rulecheck.binding.scope import Scope, Shared, View
-from rulecheck.binding.tables import table_value
+from rulecheck.binding.tables import list_of, table_value
 from rulecheck.binding.validate import validate
 from rulecheck.diagnostics import Faults
+from rulecheck.formula.syntax import Each
 from rulecheck.graph.figures import Graph
 from rulecheck.model.core_table import CORE
 from rulecheck.model.design import Design
 from rulecheck.model.ruleset import Formula, PhysicsModule, Ruleset
 from rulecheck.model.vocabulary import Vocabulary
 
+MOST_FRAMES = 40_000
 Loader = Callable[[str], PhysicsModule | None]
 
 
@@ -38,8 +44,25 @@ def bind(
     `also_known` are rulesets whose inputs the design may state though they are not checked; `figures` are physics
     figures, or whole modules, that are wanted beside what the rules use.
     """
-    shared = _shared(design, rulesets, day, physics, physics_names, also_known)
+    with deep_formulas():
+        return _bound(_shared(design, rulesets, day, physics, physics_names, also_known), figures)
+
+
+@contextmanager
+def deep_formulas() -> Iterator[None]:
+    """Room on the stack for a chain of the longest formulas that may rest one on the other."""
+    before = sys.getrecursionlimit()
+    sys.setrecursionlimit(max(before, MOST_FRAMES))
+    try:
+        yield
+    finally:
+        sys.setrecursionlimit(before)
+
+
+def _bound(shared: Shared, figures: Sequence[str]) -> Graph:
+    rulesets = shared.rulesets
     base = Scope(shared, shared.base, rulesets[0] if rulesets else _NO_RULES)
+    check_declarations(base, rulesets)
     validate(base)
     for ruleset in rulesets:
         _unused_formulas(Scope(shared, shared.base, ruleset), ruleset)
@@ -49,8 +72,15 @@ def bind(
         _wanted(base, name)
     shared.faults.settle()
     rules = [rule for book in rulesets for name in book.rules if (rule := bind_rule(shared, book, name)) is not None]
+    assert all(rule.cases for rule in rules), "a rule without cases would pass unseen"
     return Graph(
-        shared.bank, shared.inputs, shared.facts, shared.figures, tuple(rules), day, tuple(shared.declared.values())
+        shared.bank,
+        shared.inputs,
+        shared.facts,
+        shared.figures,
+        tuple(rules),
+        shared.day,
+        tuple(shared.declared.values()),
     )
 
 
@@ -62,7 +92,9 @@ def _shared(
     physics_names: Sequence[str],
     also_known: Sequence[Ruleset],
 ) -> Shared:
-    entries = [entry for ruleset in (*also_known, *rulesets) for entry in ruleset.inputs]
+    books = (*also_known, *rulesets)
+    entries = [entry for ruleset in books for entry in ruleset.inputs]
+    units = {symbol: unit for ruleset in books for symbol, unit in ruleset.units.items()}
     return Shared(
         base=View(design),
         vocabulary=Vocabulary(CORE).extended(entries),
@@ -73,6 +105,7 @@ def _shared(
         faults=Faults(),
         express=express,
         bind_rule=bind_rule,
+        units=units,
     )
 
 
@@ -82,23 +115,35 @@ def _unused_formulas(scope: Scope, ruleset: Ruleset) -> None:
         _formula(scope, formula, formula.name)
     for table in ruleset.tables.values():
         table_value(scope.fresh(scope.view, ruleset), table, None, parsed)
+    for name, members in ruleset.lists.items():
+        list_of(scope.fresh(scope.view, ruleset), members, name, parsed)
 
 
 def _formula(scope: Scope, formula: Formula, name: str) -> None:
     owner = scope.owner
     if formula.loop is None and formula.of is None:
         figure(scope.fresh(scope.view, owner), owner, formula, name, formula.span)
+    elif formula.of is not None:
+        place = zero_place(scope)
+        figure(scope.fresh(scope.view, owner), owner, formula, f"{name}(0)", formula.span, {formula.of.text: place})
     elif formula.loop is not None and (head := parsed_each(scope, formula.loop)) is not None:
-        collection = head.collection.path if hasattr(head.collection, "path") else ()
-        stand_in = Item(f"{'.'.join(collection)}.*")
-        figure(
-            scope.fresh(scope.view, owner),
-            owner,
-            formula,
-            f"{name}({stand_in.path})",
-            formula.span,
-            {head.variables[0]: stand_in},
-        )
+        _of_items(scope, formula, name, head)
+
+
+def _of_items(scope: Scope, formula: Formula, name: str, head: Each) -> None:
+    """A figure of any item, bound for one that is not there."""
+    if len(head.variables) != 1:
+        told = f"'{name}' is a figure of one item, and this loop has two variables"
+        scope.fault("wrong-arguments", told, head.span, expected="x in collection")
+        return
+    items = scope.express(head.collection)
+    if isinstance(items, Items):
+        stand_in = Item(f"{items.path}.*")
+        variables = {head.variables[0]: stand_in}
+        inner = scope.fresh(scope.view, scope.owner)
+        figure(inner, scope.owner, formula, f"{name}({stand_in.path})", formula.span, variables)
+    elif not isinstance(items, Broken):
+        scope.fault("kind-mismatch", f"this is {kind_of(items)}, not a collection", head.collection.span)
 
 
 def _wanted(scope: Scope, name: str) -> None:

@@ -333,6 +333,9 @@ def _same(scope: Scope, a: Bound, b: Bound) -> Term | None:
         return any_of(scope, [together, neither])
     if isinstance(a, Item) and isinstance(b, Item):
         return scope.bank.flag(a.path == b.path)
+    if isinstance(a, Date) and isinstance(b, Date):
+        days = [scope.apply(ordinal, [day.term], None) for day in (a, b)]
+        return scope.apply(equal, [day for day in days if day is not None], None)
     return None
 
 

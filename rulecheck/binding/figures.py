@@ -7,7 +7,7 @@ from dataclasses import dataclass, replace
 
 from rulecheck.binding.bound import BROKEN, Bound, Broken, Date, Item, Number, Place, Truth, Words, kind_of
 from rulecheck.binding.parsing import parsed, parsed_each
-from rulecheck.binding.reconciling import declared_figure
+from rulecheck.binding.reconciling import declared_figure, states_value
 from rulecheck.binding.scope import Owner, Scope
 from rulecheck.binding.tables import list_of, table_value
 from rulecheck.diagnostics import Refused, Span
@@ -45,7 +45,7 @@ def own_figure(scope: Scope, name: str, span: Span) -> Bound | None:
         return table_value(scope, owner.tables[name], None, parsed)
     if name in owner.lists:
         return list_of(scope, owner.lists[name], name, parsed)
-    if name in owner.rules:
+    if name in owner.rules and scope.shared.vocabulary.entry(name) is None:
         return scope.fault("kind-mismatch", f"'{name}' is a rule", span, advice=f"write rule({name}) or margin({name})")
     return None
 
@@ -71,7 +71,7 @@ def physics_figure(scope: Scope, path: tuple[str, ...], span: Span) -> Bound | N
     bound = figure(scope, module, module.figures[path[1]], ".".join(path), span)
     name = ".".join(path)
     entry = scope.shared.vocabulary.entry(name)
-    if entry is not None and entry.computed and isinstance(bound, Number) and name in scope.view.design.leaves:
+    if entry is not None and entry.computed and isinstance(bound, Number) and states_value(scope, name):
         # What is declared is declared of the design as written, whatever the state that is judged.
         written = scope.fresh(scope.shared.base, scope.owner)
         as_written = figure(written, module, module.figures[path[1]], name, span)
@@ -186,15 +186,10 @@ def _made(
         if not scope.view.changes_any(base.touched):
             shared.memo[key] = base
             return base
-    if name in shared.stack:
-        chain = " -> ".join((*shared.stack[shared.stack.index(name) :], name))
-        scope.fault(
-            "cycle", f"'{name}' is defined by itself: {chain}", formula.span, advice="break the circle at one of them"
-        )
+    if not shared.enter(name, formula.span, f"'{name}' is defined by itself"):
         return Made(BROKEN, frozenset(), frozenset())
-    shared.stack.append(name)
     made = _bind(scope.fresh(scope.view, owner, variables), owner, formula, name)
-    shared.stack.pop()
+    shared.leave()
     shared.memo[key] = made
     return made
 

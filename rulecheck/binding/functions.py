@@ -45,6 +45,13 @@ _ROUND: dict[str, tuple[Operation, Operation]] = {
 _AGGREGATES = ("sum", "mean", "deviation", "count", "share", "every", "some")
 
 
+NAMES = (
+    "present", "rule", "margin", "end_of_year", "years_between", "atan2", "min", "max", "pairs", *_ONE, *_ROUND,
+    *GEOMETRY, *_AGGREGATES,
+)  # fmt: skip
+"""The names of all functions of the language."""
+
+
 def call(scope: Scope, syntax: Call) -> Bound:
     """Bind a call."""
     name = syntax.function

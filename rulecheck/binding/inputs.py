@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Mapping as MappingOf
 from dataclasses import replace
 from datetime import date
 from typing import Any
@@ -13,7 +14,7 @@ from rulecheck.graph.figures import InputFact
 from rulecheck.model.design import NONE, LeafNode
 from rulecheck.model.vocabulary import Entry
 from rulecheck.operations.values import Monomial
-from rulecheck.quantity.dimension import PURE
+from rulecheck.quantity.dimension import PURE, Dimension
 from rulecheck.quantity.quantity import Quantity
 from rulecheck.quantity.reading_records import read_stated
 from rulecheck.quantity.reading_values import read_day, read_point
@@ -33,13 +34,9 @@ def unit_of(entry: Entry, scope: Scope) -> Unit:
         return find_unit("1")
 
 
-def scope_units(scope: Scope) -> dict[str, Any]:
-    """Base units that any ruleset in use declares."""
-    key = ("units",)
-    if key not in scope.shared.memo:
-        scope.shared.memo[key] = {name: unit for book in scope.shared.rulesets for name, unit in book.units.items()}
-    units: dict[str, Any] = scope.shared.memo[key]
-    return units
+def scope_units(scope: Scope) -> MappingOf[str, Dimension]:
+    """Base units that any ruleset in use, or named by the design, declares."""
+    return scope.shared.units
 
 
 def bind_input(scope: Scope, path: str, entry: Entry, span: Span) -> Bound:
@@ -89,11 +86,13 @@ def beside(node: LeafNode | None, key: str) -> str:
 
 def quantity(scope: Scope, entry: Entry, node: LeafNode) -> Quantity | None:
     """A leaf as a quantity; read once."""
-    known = scope.shared.parsed.get(id(node))
+    # An alias lets one value stand in several places, which may ask for several units.
+    key = (id(node), entry.unit)
+    known = scope.shared.parsed.get(key)
     if known is not None:
         return known[1]  # type: ignore[no-any-return]
     value = _read(scope, entry, node)
-    scope.shared.parsed[id(node)] = (node, value)
+    scope.shared.parsed[key] = (node, value)
     return value
 
 
@@ -286,7 +285,7 @@ def _coordinates(scope: Scope, node: LeafNode | None) -> tuple[Quantity | None, 
     where = scalar(node)
     if node is None or (where and where.text == NONE):
         return (None, None, None)
-    known = scope.shared.parsed.get(id(node))
+    known = scope.shared.parsed.get((id(node), "point"))
     if known is None:
         if where is None or isinstance(node, Sequence):
             scope.fault("bad-value", "this is a point", node.span, expected="three lengths, such as '1250 0 310 mm'")
@@ -294,5 +293,5 @@ def _coordinates(scope: Scope, node: LeafNode | None) -> tuple[Quantity | None, 
         else:
             read = read_point(where, scope_units(scope), scope.shared.faults)
         known = (node, read)
-        scope.shared.parsed[id(node)] = known
+        scope.shared.parsed[(id(node), "point")] = known
     return known[1] or (None, None, None)

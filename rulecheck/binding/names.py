@@ -8,7 +8,7 @@ from rulecheck.binding import figures
 from rulecheck.binding.bound import BROKEN, Bound, Date, Item, Items, Number, Place, Truth, Words
 from rulecheck.binding.inputs import bind_input
 from rulecheck.binding.points import direction, place_of
-from rulecheck.binding.reconciling import reconciled
+from rulecheck.binding.reconciling import reconciled, states_value
 from rulecheck.binding.scope import Scope
 from rulecheck.diagnostics import Span
 from rulecheck.formula.syntax import Member, Name
@@ -165,7 +165,7 @@ def _guarded(scope: Scope, path: str, entry: Entry, span: Span) -> Bound:
 def _checked(scope: Scope, path: str, bound: Number, span: Span) -> Number:
     """A declared input beside what the car's own parts give."""
     declared = DECLARED.get(path)
-    if declared is None or path not in scope.view.design.leaves:
+    if declared is None or not states_value(scope, path):
         return bound
     apart = scope.fresh(scope.view, scope.owner)
     return reconciled(scope, path, bound, figures.physics_figure(apart, (declared.module, declared.figure), span))

@@ -21,6 +21,8 @@ from rulecheck.reading.nearest import nearest
 
 BUILT_IN_DATUMS = ("front_axle", "rear_axle", "ground")
 VIEWS = {"side": "xz", "plan": "xy", "front": "yz"}
+MOST_DATUMS = 50
+"""So many datums may be counted one from the other."""
 Vector = tuple[Term, ...]
 
 
@@ -51,6 +53,9 @@ def _datum_of(scope: Scope, path: str) -> str | None:
     """The datum stated for a point: below it, or beside it in the same item."""
     holder = path.rpartition(".")[0]
     for candidate in (f"{path}.datum", f"{holder}.datum"):
+        entry = scope.shared.vocabulary.entry(candidate)
+        if entry is None or entry.kind != "datum":
+            continue  # a point may be called 'datum' too
         scope.touched.add(candidate)
         where = scalar(stated(scope, candidate))
         if where is not None:
@@ -76,7 +81,7 @@ def _origin(scope: Scope, datum: str, span: Span, above: tuple[str, ...]) -> tup
     path = f"datums.{datum}"
     entry = scope.shared.vocabulary.entry(f"{path}.at")
     where = stated(scope, f"{path}.at")
-    if datum in above:
+    if datum in above or len(above) >= MOST_DATUMS:
         scope.fault("cycle", f"datums are counted from each other: {' from '.join((*above, datum))}", span)
         return zero, zero, zero
     if entry is None or (where is None and scope.view.design.names(path) is None):
@@ -92,9 +97,16 @@ def _origin(scope: Scope, datum: str, span: Span, above: tuple[str, ...]) -> tup
             )
         return (Number(gone, unit),) * 3
     x, y, z = bind_point(scope, f"{path}.at", entry, span)
+    scope.touched.add(f"{path}.from")
     held = scalar(stated(scope, f"{path}.from"))
     place = from_datum(scope, Place(x, y, z), held.text if held else "front_axle", span, (*above, datum))
     return place.x, place.y, place.z
+
+
+def zero_place(scope: Scope) -> Place:
+    """The origin of a datum."""
+    zero = Number(scope.bank.number(0, LENGTH), find_unit("mm"))
+    return Place(zero, zero, zero)
 
 
 def _from_ground(scope: Scope, place: Place, span: Span) -> Place:

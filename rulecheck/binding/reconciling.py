@@ -17,6 +17,11 @@ from rulecheck.physics.declared import DECLARED, Declared
 from rulecheck.quantity.quantity import Tolerance, Uncertainty
 
 
+def states_value(scope: Scope, path: str) -> bool:
+    """True where the design states a value, and not `none`."""
+    return path in scope.view.design.leaves and not scope.view.design.states_none(path)
+
+
 def reconciled(scope: Scope, path: str, bound: Number, computed: Bound | None) -> Number:
     """A declared input, unless the car's own parts are known to contradict it."""
     if not isinstance(computed, Number) or computed.dimension != bound.dimension:

@@ -38,14 +38,7 @@ def _referred(scope: Scope, syntax: Call) -> BoundRule | None:
     if name not in owner.rules:
         scope.fault("unknown-name", f"there is no rule '{name}'", argument.span, advice=nearest(name, owner.rules))
         return None
-    marker = f"rule({name})"
-    if marker in scope.shared.stack:
-        chain = " -> ".join((*scope.shared.stack[scope.shared.stack.index(marker) :], marker))
-        scope.fault(
-            "cycle", f"rules refer to each other: {chain}", syntax.span, advice="break the circle at one of them"
-        )
-        return None
-    rule = scope.shared.bind_rule(scope.shared, owner, name)
+    rule = scope.shared.bind_rule(scope.shared, owner, name, syntax.span)
     if rule is not None:
         scope.touched.update(rule.inputs)
     return rule

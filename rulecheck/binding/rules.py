@@ -9,28 +9,34 @@ from itertools import product
 from rulecheck.binding.aggregates import Loop, loop
 from rulecheck.binding.bound import Broken, Element, Number, Truth, kind_of
 from rulecheck.binding.comparing import all_of, any_of, opposite
-from rulecheck.binding.conditions import Builder, certain, holds, open_part, scales_agree
+from rulecheck.binding.conditions import Builder, certain, holds, numeric_parts, open_part, scales_agree
 from rulecheck.binding.dispensations import dispensation
 from rulecheck.binding.documents import evidence, judgement
 from rulecheck.binding.parsing import parsed, parsed_each
 from rulecheck.binding.scope import Scope, Shared
 from rulecheck.binding.states import Stance, stances
+from rulecheck.diagnostics import Span
+from rulecheck.formula.syntax import Each
+from rulecheck.formula.walk import names
 from rulecheck.graph.conditions import AllOf, AnyOf, BoundRule, Case, Condition
 from rulecheck.graph.terms import Term
 from rulecheck.model.ruleset import Alternative, Rule, Ruleset
+from rulecheck.operations.values import Monomial
+from rulecheck.quantity.dimension_names import name_of
 from rulecheck.reading.nearest import nearest
 from rulecheck.reading.nodes import Located
 
 MOST_CASES = 20_000
 
 
-def bind_rule(shared: Shared, ruleset: Ruleset, name: str) -> BoundRule | None:
-    """Bind a rule once; None where it is at fault."""
+def bind_rule(shared: Shared, ruleset: Ruleset, name: str, span: Span | None = None) -> BoundRule | None:
+    """Bind a rule once; None where it is at fault. `span` is where another rule refers to it."""
     key = ("rule", ruleset.file, name)
     if key not in shared.memo:
-        shared.stack.append(f"rule({name})")
+        if not shared.enter(f"rule({name})", span, "rules refer to each other"):
+            return None
         shared.memo[key] = _Binding(shared, ruleset, ruleset.rules[name], Scope(shared, shared.base, ruleset)).bound()
-        shared.stack.pop()
+        shared.leave()
     rule: BoundRule | None = shared.memo[key]
     return rule
 
@@ -57,6 +63,8 @@ class _Binding:
                 expected="scale: a value that margins are measured by",
             )
             return None
+        if not any(numeric_parts(case.condition) for case in cases):
+            self._note_shape()
         touched = sorted(self.record.touched)
         permit = dispensation(self.record, self.rule.name)
         met = self.record.bank.flag(True) if permit is not None else self._met(cases)
@@ -65,14 +73,23 @@ class _Binding:
         )
         return BoundRule(
             self.rule.name, self.ruleset.file, met, tuple(cases), self.rule.empty, estimated, tuple(touched),
-            tuple(sorted(self.record.figures)), permit,
+            tuple(sorted(self.record.figures)), permit, self.rule.standing == "shall",
         )  # fmt: skip
 
+    def _note_shape(self) -> None:
+        """What the rule asks of an element and state that are not there: the kind of margin that it would have."""
+        scope = replace(self.record, touched=set(), figures=set())
+        pairs = [pair for head in self._heads(scope) if (item := self._loop(scope, head)) for pair in item.empty_name]
+        case = self._case(scope.inside(pairs, loop=False), "", None)
+        if case is not None:
+            self.shared.memo[("shape", self.ruleset.file, self.rule.name)] = case.condition
+
     def _met(self, cases: Sequence[Case]) -> Term:
-        scope = self.record
-        flags = [
-            any_of(scope, [opposite(scope, case.applies), case.exempt, holds(scope, case.condition)]) for case in cases
-        ]
+        scope, flags = self.record, []
+        for case in cases:
+            asked = any_of(scope, [case.exempt, holds(scope, case.condition)])
+            # Where it is unknown whether a rule applies it is open, whatever it would come to (a branch says so).
+            flags.append(scope.bank.branch(case.applies, asked, scope.bank.flag(True)))
         return all_of(scope, flags)
 
     def _in_stance(self, stance: Stance) -> list[Case]:
@@ -97,9 +114,10 @@ class _Binding:
     # --- each --------------------------------------------------------------------------------------------------------
 
     def _for_each(self, scope: Scope) -> list[Case]:
-        loops = [self._loop(scope, where) for where in self.rule.each]
+        heads = self._heads(scope)
+        loops = [self._loop(scope, head) for head in heads]
         whole = [item for item in loops if item is not None]
-        if len(whole) < len(loops):
+        if len(whole) < len(self.rule.each):
             return []
         count = 1
         for item in whole:
@@ -112,7 +130,12 @@ class _Binding:
                 expected=f"at most {MOST_CASES}",
             )
             return []
-        cases = [self._lacking(scope, item) for item in whole if item.lacking]
+        variables = frozenset(name for head in heads for name in head.variables)
+        cases = [
+            self._case_of(scope, variables, open_part(scope, item.lacking, self.rule.span))
+            for item in whole
+            if item.lacking
+        ]
         for elements in product(*(item.elements for item in whole)):
             inner = scope.inside([pair for element in elements for pair in element.variables], loop=False)
             label = " with ".join(element.label for element in elements)
@@ -120,35 +143,59 @@ class _Binding:
             cases.extend([case] if case is not None else [])
         if not cases:
             self._check_stand_in(scope, whole)
-            cases.append(self._empty(scope))
-        return cases
+        nobody = any_of(scope, [self._nobody(scope, item) for item in whole])
+        lacks = any(item.lacking for item in whole)
+        if not lacks and self.rule.empty != "not applicable" and not (nobody.kind == "constant" and not nobody.value):
+            cases.append(self._case_of(scope, variables, self._empty(scope), nobody))
+        return cases or [self._idle(scope, "there is no element that it is about")]
 
-    def _loop(self, scope: Scope, where: Located) -> Loop | None:
-        head = parsed_each(scope, where)
-        if head is None:
-            return None
+    def _heads(self, scope: Scope) -> list[Each]:
+        """The loop heads; a variable must be used once."""
+        heads = [head for where in self.rule.each if (head := parsed_each(scope, where)) is not None]
+        seen: set[str] = set()
+        for head in heads:
+            for name in head.variables:
+                if name in seen:
+                    scope.fault("name-taken", f"two loops have a variable '{name}'", head.span, advice="rename one")
+                seen.add(name)
+        return heads
+
+    def _loop(self, scope: Scope, head: Each) -> Loop | None:
         made = loop(scope, head.variables, head.collection, head.where, head.span)
         return None if isinstance(made, Broken) else made
 
+    def _nobody(self, scope: Scope, item: Loop) -> Term:
+        """Whether no element of a loop takes part."""
+        if any(element.condition is None for element in item.elements):
+            return scope.bank.flag(False)
+        conditions = [element.condition for element in item.elements if element.condition is not None]
+        return opposite(scope, any_of(scope, conditions))
+
     def _takes_part(self, scope: Scope, elements: tuple[Element, ...]) -> Term:
         return all_of(scope, [element.condition for element in elements if element.condition is not None])
-
-    def _lacking(self, scope: Scope, item: Loop) -> Case:
-        part = open_part(scope, item.lacking, self.rule.span)
-        return Case("", scope.view.states, scope.bank.flag(True), scope.bank.flag(False), part)
 
     def _check_stand_in(self, scope: Scope, loops: list[Loop]) -> None:
         """Bind the rule once for an element that is not there, so that its faults are found."""
         self._case(scope.inside([pair for item in loops for pair in item.empty_name], loop=False), "", None)
 
-    def _empty(self, scope: Scope) -> Case:
-        if self.rule.empty == "not applicable":
-            return self._idle(scope, "there is no element that it is about")
+    def _empty(self, scope: Scope) -> Condition:
         if self.rule.empty == "open":
-            part = open_part(scope, "an element that the rule is about", self.rule.span)
-        else:
-            part = certain(scope, self.rule.empty == "complies", "there is no element that it is about", self.rule.span)
-        return Case("", scope.view.states, scope.bank.flag(True), scope.bank.flag(False), part)
+            return open_part(scope, "an element that the rule is about", self.rule.span)
+        return certain(scope, self.rule.empty == "complies", "there is no element that it is about", self.rule.span)
+
+    def _case_of(
+        self, scope: Scope, variables: frozenset[str], condition: Condition, takes_part: Term | None = None
+    ) -> Case:
+        """A case that no element stands for; of the conditions of the rule, those count that speak of no element."""
+        gates = []
+        for where in self.rule.when:
+            syntax = parsed(scope, where)
+            if syntax is not None and not any(name.path[0] in variables for name in names(syntax)):
+                made = self._gate(scope, where)
+                gates.extend([made] if not isinstance(made, Broken) else [])
+        flags = [holds(scope, gate) for gate in gates]
+        applies = all_of(scope, [*flags, *([takes_part] if takes_part is not None else [])])
+        return Case("", scope.view.states, applies, scope.bank.flag(False), condition, gates=tuple(gates))
 
     # --- one case ----------------------------------------------------------------------------------------------------
 
@@ -188,7 +235,19 @@ class _Binding:
         if any(isinstance(part, Broken) for part in parts):
             return Broken()
         whole = tuple(part for part in parts if not isinstance(part, Broken))
-        return whole[0] if len(whole) == 1 else AllOf(whole)
+        condition = whole[0] if len(whole) == 1 else AllOf(whole)
+        self._check_scale(scope, condition)
+        return condition
+
+    def _check_scale(self, scope: Scope, condition: Condition) -> None:
+        """A scale that measures no margin of the rule is a mistake."""
+        scale = self._scale(scope)
+        if scale is None or self.rule.scale is None:
+            return
+        dimensions = {part.margin.dimension for part in numeric_parts(condition) if part.margin is not None}
+        if dimensions and scale.dimension not in dimensions:
+            told = f"'scale' is {name_of(scale.dimension)}, and no margin of rule '{self.rule.name}' is"
+            scope.fault("wrong-dimension", told, self.rule.scale.span, advice="give it the unit of the limit")
 
     def _alternative(self, scope: Scope, alternative: Alternative, element: str) -> list[Condition | Broken]:
         parts: list[Condition | Broken] = []
@@ -216,6 +275,12 @@ class _Binding:
         syntax = parsed(scope, self.rule.scale)
         bound = scope.express(syntax) if syntax is not None else Broken()
         if isinstance(bound, Number):
+            value = bound.term.value
+            if isinstance(value, Monomial) and value.rational <= 0:
+                scope.fault(
+                    "bad-value", "'scale' is above zero", self.rule.scale.span, expected="a value such as 10 mm"
+                )
+                return None
             return bound
         if not isinstance(bound, Broken):
             scope.fault(
@@ -238,14 +303,20 @@ class _Binding:
                     advice=nearest(claim.text, names),
                 )
             branches = tuple(branch for branch in branches if branch.name == claim.text)
+        if claim is None and all(_rests_on_papers(branch) for branch in branches):
+            return open_part(scope, f"claims.{self.rule.name}, which says the branch that is used", self.rule.span)
         made: list[Condition] = []
         for branch in branches:
             parts = self._alternative(scope, branch, element)
             if any(isinstance(part, Broken) for part in parts):
                 return Broken()
             whole = tuple(part for part in parts if not isinstance(part, Broken))
-            unused = claim is None and (branch.evidence is not None or branch.judgement is not None)
-            if unused:
+            if claim is None and _rests_on_papers(branch):
                 whole = (certain(scope, False, f"branch '{branch.name}' is not claimed", self.rule.span),)
             made.append(whole[0] if len(whole) == 1 else AllOf(whole))
         return AnyOf(tuple(made), tuple(branch.name for branch in branches))
+
+
+def _rests_on_papers(branch: Alternative) -> bool:
+    """True for a branch that counts only where the design claims it."""
+    return branch.evidence is not None or branch.judgement is not None

@@ -55,6 +55,8 @@ class View:
 
 
 Owner = Ruleset | PhysicsModule
+MOST_DEEP = 200
+"""So many figures and rules may rest one on the other."""
 
 
 @dataclass(slots=True)
@@ -69,15 +71,33 @@ class Shared:
     day: date
     faults: Faults
     express: Callable[[Scope, Syntax], Bound]
-    bind_rule: Callable[[Shared, Ruleset, str], BoundRule | None]
+    bind_rule: Callable[[Shared, Ruleset, str, Span | None], BoundRule | None]
+    units: Mapping[str, Dimension]
     bank: Bank = field(default_factory=Bank)
     inputs: dict[str, Constant] = field(default_factory=dict)
     facts: dict[str, InputFact] = field(default_factory=dict)
     figures: dict[str, Figure] = field(default_factory=dict)
     memo: dict[tuple[object, ...], Any] = field(default_factory=dict)
-    parsed: dict[int, tuple[LeafNode, Any]] = field(default_factory=dict)
+    parsed: dict[tuple[int, str], tuple[LeafNode, Any]] = field(default_factory=dict)
     stack: list[str] = field(default_factory=list)
     declared: dict[str, DeclaredCheck] = field(default_factory=dict)
+
+    def enter(self, name: str, span: Span | None, what: str) -> bool:
+        """Begin to bind a named thing; False, with the fault noted, where that would go round in a circle or too deep."""
+        if name in self.stack:
+            chain = " -> ".join((*self.stack[self.stack.index(name) :], name))
+            self.faults.add("cycle", f"{what}: {chain}", span, advice="break the circle at one of them")
+            return False
+        if len(self.stack) >= MOST_DEEP:
+            told = f"'{name}' rests on a chain of more than {MOST_DEEP} formulas and rules"
+            self.faults.add("too-large", told, span, expected=f"at most {MOST_DEEP}, one resting on the other")
+            return False
+        self.stack.append(name)
+        return True
+
+    def leave(self) -> None:
+        """What was begun last is bound."""
+        self.stack.pop()
 
 
 @dataclass(frozen=True, slots=True)

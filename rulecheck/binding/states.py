@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
-from itertools import product
+from itertools import chain, product
 
 from rulecheck.binding.scope import Shared, View
 from rulecheck.diagnostics import Related, Span
@@ -108,7 +108,7 @@ def combined_view(shared: Shared, chosen: list[State]) -> View:
     overlay = Overlay()
     for state in chosen:
         for path in state.overlay.paths:
-            other = next((owners[holder] for holder in holders(path) if holder in owners), None)
+            other = _owner(owners, path)
             if other is not None:
                 _clash(shared, path, state.span, other)
         owners.update((path, state) for path in state.overlay.paths)
@@ -117,6 +117,13 @@ def combined_view(shared: Shared, chosen: list[State]) -> View:
     if not overlay:
         return View(shared.base.design, states, frozenset())
     return View(shared.base.design.with_overlay(overlay), states, frozenset(overlay.paths), shared.base.design)
+
+
+def _owner(owners: dict[str, State], path: str) -> State | None:
+    """The state that sets a path already, or what holds it, or what it holds."""
+    held = (owners[holder] for holder in holders(path) if holder in owners)
+    inside = (state for known, state in owners.items() if known.startswith(f"{path}."))
+    return next(chain(held, inside), None)
 
 
 def _clash(shared: Shared, path: str, span: Span, other: State) -> None:
@@ -142,5 +149,7 @@ def _spelled_out(shared: Shared, pattern: str) -> list[str]:
     before, star, after = pattern.partition(".*")
     if not star:
         return [pattern]
-    names = shared.base.design.names(before) or ("*",)
+    names = shared.base.design.names(before)
+    if not names:
+        return [pattern]  # no item is there yet: nothing that a state sets can meet it
     return [path for name in names for path in _spelled_out(shared, f"{before}.{name}{after}")]

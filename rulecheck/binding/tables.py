@@ -9,14 +9,16 @@ from itertools import pairwise
 from rulecheck.binding.bound import BROKEN, Bound, Broken, Choices, Number, Truth, Words, kind_of
 from rulecheck.binding.comparing import compare
 from rulecheck.binding.scope import Scope
+from rulecheck.diagnostics import Span
+from rulecheck.formula.printing import show
 from rulecheck.formula.syntax import Comparison, Name, Syntax
 from rulecheck.graph.terms import Term
 from rulecheck.model.ruleset import Row, Table
 from rulecheck.operations.arithmetic import add, divide, multiply, subtract
 from rulecheck.operations.comparison import at_most, below
 from rulecheck.operations.operation import Operation, Sort
-from rulecheck.operations.values import Reason
-from rulecheck.quantity.dimension import PURE
+from rulecheck.operations.values import Monomial, Reason
+from rulecheck.quantity.dimension import PURE, Dimension
 from rulecheck.quantity.dimension_names import name_of
 from rulecheck.quantity.units import Unit, UnitFault, find_unit
 from rulecheck.reading.nodes import Located
@@ -26,6 +28,15 @@ Parse = Callable[[Scope, Located], Syntax | None]
 
 def table_value(scope: Scope, table: Table, key: Syntax | None, parse: Parse) -> Bound:
     """The value of a table for its own key, or for another one."""
+    marker = table.name if key is None else f"{table.name}({show(key)})"
+    if not scope.shared.enter(marker, table.span, f"table '{table.name}' rests on itself"):
+        return BROKEN
+    made = _looked_up(scope, table, key, parse)
+    scope.shared.leave()
+    return made
+
+
+def _looked_up(scope: Scope, table: Table, key: Syntax | None, parse: Parse) -> Bound:
     if key is None and len(table.over) == 1:
         key = parse(scope, table.over[0])
         if key is None:
@@ -50,7 +61,28 @@ def _steps(scope: Scope, table: Table, key: Syntax | None, parse: Parse) -> Boun
         if isinstance(test, Broken) or isinstance(value, Broken):
             return BROKEN
         rows.append((test, value))
+    _in_order(scope, table, parse)
     return _chain(scope, table, rows)
+
+
+def _in_order(scope: Scope, table: Table, parse: Parse) -> None:
+    """Steps rise, and no key stands twice: a row behind one that takes in its keys would never be reached."""
+    keys: list[tuple[Span, Number]] = []
+    for row, later in pairwise((None, *table.steps)):
+        if later is None or later.key is None or later.test not in ("up_to", "below"):
+            continue
+        syntax = parse(scope, later.key)
+        bound = scope.express(syntax) if syntax is not None else None
+        if isinstance(bound, Number):
+            keys.append((later.key.span, bound))
+        touches = row is not None and row.test == "below" and later.test == "up_to"
+        # `below 3 m` and then `up_to 3 m` leaves just 3 m to the second row, which is in order.
+        _rising(scope, table, keys[-2:], repeated=touches)
+    words = [row.key for row in table.steps if row.test == "is" and row.key is not None]
+    for index, key in enumerate(words):
+        if key in words[:index]:
+            told = f"'{key.text}' stands twice in table '{table.name}'"
+            scope.fault("bad-structure", told, key.span, advice="take one of the rows out")
 
 
 def _value(scope: Scope, where: Located, parse: Parse) -> Bound:
@@ -112,18 +144,22 @@ def _chain(scope: Scope, table: Table, rows: list[tuple[Term | None, Bound]]) ->
     if isinstance(first, Words):
         texts = tuple(str(v.term.value) for _, v in rows if isinstance(v, Words) and v.term.kind == "constant")
         return Words(term, texts)
-    unit = _unit(scope, table) or next((v.unit for _, v in rows if isinstance(v, Number) and v.unit), None)
+    unit = _unit(scope, table, dimension) or next((v.unit for _, v in rows if isinstance(v, Number) and v.unit), None)
     return replace(first, term=term, unit=unit, bare=False)
 
 
-def _unit(scope: Scope, table: Table) -> Unit | None:
+def _unit(scope: Scope, table: Table, dimension: Dimension) -> Unit | None:
     if table.unit is None:
         return None
     try:
-        return find_unit(table.unit.text, scope.units)
+        unit = find_unit(table.unit.text, scope.units)
     except UnitFault as fault:
         scope.fault("unknown-unit", str(fault), table.unit.span, advice=fault.advice)
         return None
+    if unit.dimension != dimension:
+        told = f"table '{table.name}' is declared in {unit.symbol}, and its values are {name_of(dimension)}"
+        scope.fault("wrong-dimension", told, table.unit.span, advice="mend the values or the unit")
+    return unit
 
 
 def _linear(scope: Scope, table: Table, key: Syntax | None, parse: Parse) -> Bound:
@@ -153,7 +189,27 @@ def _linear(scope: Scope, table: Table, key: Syntax | None, parse: Parse) -> Bou
                 f"table '{table.name}' has a row of {name_of(x.dimension)} and {name_of(y.dimension)}",
                 table.span,
             )
+    _rising(scope, table, [(pair[0].span, number) for pair, (number, _) in zip(table.linear, rows, strict=True)])
     return _lines(scope, table, at, rows)
+
+
+def _rising(scope: Scope, table: Table, keys: list[tuple[Span, Number]], *, repeated: bool = False) -> None:
+    """Note a row whose written key does not lie above the one before: it would never be reached."""
+    before: Number | None = None
+    for span, key in keys:
+        if key.term.kind != "constant":
+            continue
+        if before is not None and not _lies_above(before, key, repeated=repeated):
+            told = f"the keys of table '{table.name}' do not rise"
+            scope.fault("bad-structure", told, span, advice="put the rows in order; each is read from the one before")
+        before = key
+
+
+def _lies_above(before: Number, key: Number, *, repeated: bool) -> bool:
+    low, high = before.term.value, key.term.value
+    if not isinstance(low, Monomial) or not isinstance(high, Monomial) or low.power != high.power:
+        return True
+    return low.rational <= high.rational if repeated else low.rational < high.rational
 
 
 def _lines(scope: Scope, table: Table, at: Number, rows: list[tuple[Number, Number]]) -> Bound:
@@ -166,7 +222,7 @@ def _lines(scope: Scope, table: Table, at: Number, rows: list[tuple[Number, Numb
         term = scope.bank.branch(_do(scope, at_most, at.term, x1.term), height, term, table.span)
     before = scope.bank.unknown(_no_row(table, "a key left of its first row"), "number", dimension)
     term = scope.bank.branch(_do(scope, below, at.term, rows[0][0].term), before, term, table.span)
-    return Number(term, _unit(scope, table) or rows[0][1].unit)
+    return Number(term, _unit(scope, table, dimension) or rows[0][1].unit)
 
 
 def _do(scope: Scope, operation: Operation, *terms: Term) -> Term:
@@ -179,7 +235,7 @@ def list_of(scope: Scope, members: tuple[Located, ...], name: str, parse: Parse)
     """A list: numbers with units are numbers, everything else is text."""
     bound: list[Bound] = []
     for member in members:
-        if member.text[:1].isdigit() and not member.quoted:
+        if member.text.lstrip("-")[:1].isdigit() and not member.quoted:
             syntax = parse(scope, member)
             bound.append(scope.express(syntax) if syntax is not None else BROKEN)
         else:

@@ -105,3 +105,4 @@ class BoundRule:
     inputs: tuple[str, ...]
     figures: tuple[str, ...]
     permit: Permit | None = None
+    binds: bool = True

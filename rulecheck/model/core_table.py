@@ -6,6 +6,7 @@ numbers are left out, since they differ between editions).
 
 from __future__ import annotations
 
+from rulecheck.model.operating_table import BALLASTING, CONDITIONS, WEIGHING
 from rulecheck.model.vocabulary import Entry
 
 
@@ -106,7 +107,18 @@ def _tyre_rows(collection: str) -> tuple[Entry, ...]:
             rim_width="Width of the rim between its flanges",
             rim_diameter="Diameter of the rim at the bead seat",
             tread_depth="Depth of the tread",
+            growth="Growth of the radius at speed",
         ),
+        *_numbers(
+            f"{collection}.*",
+            "1",
+            grip="Coefficient of friction at the load of the data",
+            grip_fade="Share of the grip lost while the load doubles from that of the data",
+            cornering_factor="Greatest cornering stiffness (per radian) over the load of the data",
+            cornering_load_factor="Load of the greatest cornering stiffness over the load of the data",
+        ),
+        *_numbers(f"{collection}.*", "kN", grip_load="Load of the data", load_rating="Load that the maker allows"),
+        *_numbers(f"{collection}.*", "km/h", speed_rating="Speed that the maker allows"),
         Entry(f"{collection}.*.stiffness", "number", "Vertical stiffness", unit="N/mm"),
         Entry(f"{collection}.*.axle", "choice", "Axle that it stands on", choices=("front", "rear")),
     )
@@ -196,6 +208,13 @@ SYSTEMS = (
     Entry("brakes.circuits", "number", "Independent hydraulic circuits", unit="1"),
     Entry("brakes.distribution", "number", "Share of the brake force at the front axle", unit="%"),
     Entry("brakes.deceleration", "number", "Mean deceleration reached", unit="m/s^2"),
+    *_numbers(
+        "brakes",
+        "1",
+        adhesion_coefficient="Slope of the rule's limit of deceleration against utilisation",
+        adhesion_offset="What the rule adds to the deceleration in that limit",
+    ),
+    *_by_axle("brakes.*.pressure", "bar", "Line pressure of the brakes"),
     *_by_axle("brakes.*.piston_area", "cm^2", "Piston area of one side of the caliper"),
     *_by_axle("brakes.*.pad_friction", "1", "Friction of the pads"),
     *_by_axle("brakes.*.effective_radius", "mm", "Radius at which the pads act"),
@@ -216,6 +235,23 @@ SYSTEMS = (
     Entry("recovery.store", "number", "Usable energy of the store", unit="MJ"),
     Entry("recovery.allowance", "number", "Energy that may be used in one lap", unit="MJ"),
     Entry("recovery.efficiency", "number", "Efficiency from wheel to store", unit="%"),
+    *_numbers(
+        "recovery",
+        "%",
+        gear_efficiency="Efficiency from wheel to shaft of the machine",
+        machine_efficiency="Efficiency from shaft of the machine to DC bus",
+        store_efficiency="Efficiency from DC bus to store",
+        front_share="Share of the machines' brake force at the front axle, where both axles have one",
+    ),
+    *_numbers(
+        "recovery",
+        "kW",
+        power_allowed="Power that the rule allows at its measuring point",
+        charging_power="Power that the store takes",
+    ),
+    Entry("recovery.ratio", "number", "Turns of the machine for one turn of the wheel", unit="1"),
+    Entry("recovery.braking_force", "number", "Brake force of the machine at its wheels", unit="kN"),
+    Entry("recovery.store_room", "number", "Energy that the store can still take", unit="MJ"),
     Entry("recovery.measuring_point", "choice", "Where power is measured", choices=("wheel", "shaft", "bus")),
     Entry("recovery.voltage", "number", "Greatest voltage of the store", unit="V"),
     Entry("diffuser.width_held", "choice", "What stays when tyres change", choices=("track", "outer")),
@@ -226,19 +262,16 @@ SYSTEMS = (
         length="Length along the floor",
         inlet_height="Height of the throat",
         width="Width between its side plates",
+        width_over_tyres="Width over the rear tyres, where that is held",
     ),
     Entry("diffuser.angle", "number", "Slope of the roof", unit="deg"),
-    Entry("diffuser.flare", "number", "Outlet width over inlet width", unit="1"),
-)
-
-CONDITIONS = (
-    Entry("vehicle.speed", "number", "Speed over ground", unit="km/h"),
-    Entry("vehicle.deceleration", "number", "Deceleration, positive while braking", unit="m/s^2"),
-    Entry("vehicle.lateral_acceleration", "number", "Lateral acceleration", unit="m/s^2"),
-    Entry("air.altitude", "number", "Geopotential altitude", unit="m"),
-    Entry("air.temperature", "number", "Temperature of the air", unit="degC"),
-    Entry("air.humidity", "number", "Relative humidity", unit="%"),
-    Entry("air.wind", "number", "Wind against the direction of travel, positive ahead", unit="m/s"),
+    *_numbers(
+        "diffuser",
+        "1",
+        flare="Outlet width over inlet width",
+        efficiency="Pressure recovery over the ideal one",
+        base_pressure="Pressure coefficient behind the car",
+    ),
 )
 
 SAFETY = (
@@ -302,6 +335,8 @@ CORE: tuple[Entry, ...] = (
     *PLACES,
     *SYSTEMS,
     *CONDITIONS,
+    *WEIGHING,
+    *BALLASTING,
     *SAFETY,
     *RECORDS,
     Entry("mass.total", "number", "Declared total mass, beside the ledger", unit="kg", computed=True),

@@ -7,9 +7,10 @@ from typing import Any
 
 from rulecheck.diagnostics import Faults, Span
 from rulecheck.model.edge import InputShape
-from rulecheck.model.names import check_name, is_name
+from rulecheck.model.names import RESERVED_KEYS, check_name, is_name
 from rulecheck.model.vocabulary import Entry
 from rulecheck.quantity.dimension import Dimension
+from rulecheck.quantity.units import is_unit
 from rulecheck.reading.nearest import nearest
 from rulecheck.reading.nodes import Located, Mapping, Node, Sequence
 
@@ -22,7 +23,10 @@ def own_units(declared: dict[str, Located], faults: Faults) -> dict[str, Dimensi
     for symbol, what in declared.items():
         if not symbol.isalpha():
             faults.add("bad-name", f"'{symbol}' cannot be a unit", what.span, expected="letters alone")
-        units[symbol] = Dimension.of(**{symbol: 1})
+        elif is_unit(symbol):
+            faults.add("name-taken", f"there is a unit '{symbol}' already", what.span, advice="give yours another name")
+        else:
+            units[symbol] = Dimension.of(**{symbol: 1})
     return units
 
 
@@ -39,7 +43,9 @@ def declared_entries(
     for path, shape in inputs.items():
         key = node.key(path) if isinstance(node, Mapping) else None
         span = key.span if key else None
-        if not all(part == "*" or is_name(part) for part in path.split(".")):
+        if path.partition(".")[0] in (*RESERVED_KEYS, "*") or not all(
+            part == "*" or is_name(part) for part in path.split(".")
+        ):
             faults.add(
                 "bad-name",
                 f"'{path}' cannot be the path of an input",
@@ -71,6 +77,7 @@ def _rows(
     )
     word = path.rpartition("_")[2].rpartition(".")[2]
     rows = [replace(entry, definitions=rivals.get(word, ()))]
+    _whole(rows[0], shape, span, faults)
     for name, inner in (shape.element or {}).items():
         rows.extend(_rows(f"{path}.*.{name}", inner, rivals, file, span, faults))
         if inner.kind is not None and inner.kind.text == "point":
@@ -113,6 +120,20 @@ def _kind(path: str, shape: InputShape, span: Span | None, faults: Faults) -> An
     return "number"
 
 
+def _whole(entry: Entry, shape: InputShape, span: Span | None, faults: Faults) -> None:
+    """Note what a declaration of its kind lacks."""
+    if entry.kind == "choice" and not entry.choices:
+        faults.add("missing-key", f"the choice '{entry.path}' has no choices", span, expected="choices: [open, closed]")
+    if entry.kind == "item" and not entry.of:
+        faults.add("missing-key", f"'{entry.path}' is an item of nothing", span, expected="of: the collection")
+    said = shape.definition
+    if said is not None and entry.definitions and said.text not in entry.definitions:
+        faults.add(
+            "unknown-choice", f"'definitions' of this file have no '{said.text}' for '{entry.path}'", said.span,
+            expected=" or ".join(entry.definitions), advice=nearest(said.text, entry.definitions),
+        )  # fmt: skip
+
+
 def _count(where: Located | None, faults: Faults) -> int:
     if where is None:
         return 0
@@ -131,15 +152,25 @@ def needed_states(node: Node | None, faults: Faults) -> dict[str, dict[str, tupl
     needed: dict[str, dict[str, tuple[Located, ...]]] = {}
     for axis in node if isinstance(node, Mapping) else ():
         check_name(axis.key, faults)
-        states = needed.setdefault(axis.key.text, {})
-        if isinstance(axis.value, Mapping):
-            for state in axis.value:
-                states[state.key.text] = _sets(state.value, faults)
-        else:
-            for item in axis.value if isinstance(axis.value, Sequence) else (axis.value,):
-                if isinstance(item, Located):
-                    states[item.text] = ()
+        needed.setdefault(axis.key.text, {}).update(_axis(axis.value, faults))
+        if not needed[axis.key.text]:
+            faults.add(
+                "bad-structure", f"axis '{axis.key.text}' has no states", axis.key.span, expected="[empty, full]"
+            )
     return needed
+
+
+def _axis(node: Node, faults: Faults) -> dict[str, tuple[Located, ...]]:
+    """The states of an axis: names alone, or names with the paths that each must set."""
+    if isinstance(node, Mapping):
+        return {state.key.text: _sets(state.value, faults) for state in node if check_name(state.key, faults)}
+    states: dict[str, tuple[Located, ...]] = {}
+    for item in node if isinstance(node, Sequence) else (node,):
+        if not isinstance(item, Located):
+            faults.add("bad-structure", "a state is a name", item.span, expected="[empty, full]")
+        elif check_name(item, faults):
+            states[item.text] = ()
+    return states
 
 
 def _sets(node: Node, faults: Faults) -> tuple[Located, ...]:
@@ -147,6 +178,12 @@ def _sets(node: Node, faults: Faults) -> tuple[Located, ...]:
     if paths is None and not (isinstance(node, Mapping) and not len(node)):
         faults.add("bad-structure", "a needed state may say which paths it sets", node.span, expected="{sets: [paths]}")
         return ()
-    if isinstance(paths, Located):
-        return (paths,)
-    return tuple(item for item in paths if isinstance(item, Located)) if isinstance(paths, Sequence) else ()
+    if paths is None:
+        return ()
+    items = (paths,) if isinstance(paths, (Located, Mapping)) else tuple(paths)
+    for item in items:
+        if not isinstance(item, Located) or not all(part == "*" or is_name(part) for part in item.text.split(".")):
+            faults.add(
+                "bad-structure", "this is not a path that a state can set", item.span, expected="{sets: [paths]}"
+            )
+    return tuple(item for item in items if isinstance(item, Located))

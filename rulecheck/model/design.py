@@ -156,9 +156,7 @@ def _is_none(node: LeafNode | None) -> bool:
     return isinstance(node, Located) and node.text == NONE
 
 
-def _remove(
-    path: str, leaves: dict[str, LeafNode], items: dict[str, tuple[str, ...]], absent: set[str]
-) -> None:
+def _remove(path: str, leaves: dict[str, LeafNode], items: dict[str, tuple[str, ...]], absent: set[str]) -> None:
     for name in items.pop(path, ()):
         below = f"{path}.{name}"
         leaves.pop(below, None)

@@ -6,14 +6,13 @@ from dataclasses import dataclass, field, replace
 
 from rulecheck.diagnostics import Faults, Refused, Related, Span
 from rulecheck.model.design import NONE, Design, LeafNode, Overlay, State, is_leaf
-from rulecheck.model.names import check_name, check_path
+from rulecheck.model.names import RESERVED_KEYS, check_name, check_path
 from rulecheck.reading.ledger import LedgerRow, read_ledger
 from rulecheck.reading.nearest import nearest
 from rulecheck.reading.nodes import Located, Mapping, Node, Sequence
 from rulecheck.reading.workspace import Workspace
 from rulecheck.reading.yaml_reader import read_yaml
 
-HEADER = ("design", "revision", "note", "rulesets", "ledger", "states", "changes", "set")
 _MOST_VARIANTS = 20
 
 
@@ -100,6 +99,9 @@ def _read_design(workspace: Workspace, file: str, asked: Span | None, above: tup
     base = root.get("changes")
     if isinstance(base, Located):
         return _variant(workspace, file, root, base, above, faults)
+    if base is not None:
+        faults.add("bad-structure", "'changes' names one design", base.span, expected="changes: base.design.yaml")
+        faults.settle()
     if root.get("design") is None and root.get("set") is not None:
         faults.add(
             "missing-key", "this is a change file, not a design", root.span, advice="lay it over a design with --change"
@@ -110,7 +112,7 @@ def _read_design(workspace: Workspace, file: str, asked: Span | None, above: tup
 
 def _plain_design(workspace: Workspace, file: str, root: Mapping, faults: Faults) -> Design:
     draft = _Draft(faults)
-    draft.walk("", Mapping(tuple(entry for entry in root if entry.key.text not in HEADER), root.span))
+    draft.walk("", Mapping(tuple(entry for entry in root if entry.key.text not in RESERVED_KEYS), root.span))
     for row in _ledger_rows(workspace, file, root.get("ledger"), faults):
         draft.row(row)
     changes = root.key("set")
@@ -269,6 +271,8 @@ def _text(root: Mapping, key: str, faults: Faults, *, needed: bool = False) -> s
             faults.add("missing-key", f"the file has no '{key}:'", root.span, expected=f"{key}: the name of the {key}")
         return ""
     if isinstance(node, Located):
+        if needed and not node.text:
+            faults.add("missing-key", f"'{key}:' is empty", node.span, expected=f"{key}: the name of the {key}")
         return node.text
     faults.add("bad-structure", f"'{key}' is a single text", node.span)
     return ""

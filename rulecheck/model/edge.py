@@ -164,8 +164,16 @@ def shaped(shape: type[S], root: Node, faults: Faults) -> S | None:
     try:
         return TypeAdapter(shape).validate_python(plain(root))
     except ValidationError as error:
-        for item in error.errors(include_url=False, include_context=False, include_input=False):
+        before = len(faults.found)
+        items = error.errors(include_url=False, include_context=False, include_input=False)
+        for item in items:
             _note(item, shape, root, faults)
+        if len(faults.found) == before:
+            # Only alternatives were refused, each for a reason of its own: say what may stand here.
+            location = tuple(items[0]["loc"])
+            place = _deepest(root, location)[0]
+            told = f"this is not what '{_last_name(location)}' takes"
+            faults.add("bad-structure", told, place, expected="a single value, or a list or mapping of them")
         return None
 
 

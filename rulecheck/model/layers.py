@@ -63,16 +63,21 @@ def _is_older(rule: Rule, old: Rule) -> bool:
 
 def _one_name_space(made: Ruleset, faults: Faults) -> None:
     """A name must not mean a rule in one layer and a figure in another."""
-    kinds = {"derived figure": made.derived, "table": made.tables, "rule": made.rules}
+    kinds = {
+        "derived figure": {name: figure.span for name, figure in made.derived.items()},
+        "table": {name: table.span for name, table in made.tables.items()},
+        "list": {name: members[0].span for name, members in made.lists.items() if members},
+        "rule": {name: rule.span for name, rule in made.rules.items()},
+    }
     seen: dict[str, str] = {}
     for kind, named in kinds.items():
-        for name, thing in named.items():
+        for name, span in named.items():
             other = seen.setdefault(name, kind)
             if other != kind:
-                first = kinds[other][name]
                 faults.add(
-                    "name-taken", f"'{name}' is a {other} and a {kind}: they share one name space", thing.span,
-                    advice="give one of them another name", related=(Related("the other one is here", first.span),),
+                    "name-taken", f"'{name}' is a {other} and a {kind}: they share one name space", span,
+                    advice="give one of them another name",
+                    related=(Related("the other one is here", kinds[other][name]),),
                 )  # fmt: skip
 
 

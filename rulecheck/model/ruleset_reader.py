@@ -95,6 +95,7 @@ class _Reader:
         groups = group_conditions(self.root.get("groups"), shape.rules or {}, faults)
         rules = {name: self.rule(name, key, value, groups) for name, key, value in self.named("rules", shape.rules)}
         self._one_name_space()
+        self._said(shape.ruleset, "the name of the rule book")
         return Ruleset(
             file=self.file,
             name=shape.ruleset.text,
@@ -106,7 +107,7 @@ class _Reader:
                 self.root.get("inputs"), shape.inputs or {}, shape.definitions or {}, self.file, faults
             ),
             tables={n: read_table(n, key, value, faults) for n, key, value in self.named("tables", shape.tables)},
-            lists={name: tuple(value) for name, _, value in self.named("lists", shape.lists)},
+            lists={name: self._list(name, key, value) for name, key, value in self.named("lists", shape.lists)},
             derived={n: formula_of(n, key, value) for n, key, value in self.named("derived", shape.derived)},
             needed=needed_states(self.root.get("states_needed"), faults),
             rules=rules,
@@ -114,6 +115,11 @@ class _Reader:
             books=(Book(shape.ruleset.text, text(shape.edition), self.file),),
             span=shape.ruleset.span,
         )
+
+    def _list(self, name: str, key: Located, members: list[Located]) -> tuple[Located, ...]:
+        if not members:
+            self.faults.add("bad-structure", f"list '{name}' has no members", key.span, expected="[a, b]")
+        return tuple(members)
 
     def _said(self, where: Located | None, what: str) -> None:
         """Note a fault where a leaf is there and empty."""

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from itertools import pairwise
+
 from rulecheck.diagnostics import Faults
 from rulecheck.model.edge import TableShape
 from rulecheck.model.ruleset import Row, Table
@@ -25,7 +27,7 @@ def read_table(name: str, key: Located, shape: TableShape, faults: Faults) -> Ta
     elif not shape.steps and not shape.linear:
         faults.add("bad-structure", f"table '{name}' has no rows", key.span, expected="at least one row with a value")
     rows = tuple(row for step in shape.steps or () if (row := _row(name, key, step, faults)) is not None)
-    for row, later in zip(rows, rows[1:], strict=False):
+    for row, later in pairwise(rows):
         if row.test == "otherwise":
             faults.add(
                 "bad-structure", f"a row of table '{name}' stands behind 'otherwise' and is never reached",

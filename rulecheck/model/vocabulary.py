@@ -109,4 +109,5 @@ def _merged(known: Entry, entry: Entry) -> Entry:
         for name in ("unit", "choices", "items", "at_least", "definition", "definitions", "meaning", "of", "default")
         if getattr(entry, name)
     }
-    return replace(known, **told, kind=entry.kind, origin=entry.origin, span=entry.span)
+    required = known.datum_required or entry.datum_required
+    return replace(known, **told, datum_required=required, kind=entry.kind, origin=entry.origin, span=entry.span)

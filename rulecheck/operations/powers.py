@@ -48,7 +48,22 @@ def rational_power_of_ball(base: Ball, exponent: Fraction) -> Any:
         return BY_ZERO if base.is_zero() else UNDECIDED
     if not whole and not base >= 0:
         return FRACTIONAL if base < 0 else UNDECIDED
-    return base**exponent.numerator if whole else base ** from_fraction(exponent)
+    if whole or base.contains(0):
+        return _whole_power_of_ball(base if whole else base.root(exponent.denominator), exponent.numerator)
+    return base ** from_fraction(exponent)
+
+
+def _whole_power_of_ball(base: Ball, exponent: int) -> Ball:
+    """By products: flint's own power goes through the logarithm and is lost on a ball that holds zero."""
+    rest = abs(exponent)
+    square = base if rest % 2 else abs(base)
+    found = Ball(1)
+    while rest:
+        if rest % 2:
+            found *= square
+        square *= square
+        rest //= 2
+    return found if exponent >= 0 else 1 / found
 
 
 def power_of_exact(values: Sequence[Any]) -> Any:

@@ -47,27 +47,27 @@ def workings_schema() -> Schema:
 
 def whatif_schema() -> Schema:
     """The schema of what `whatif --form json` prints."""
-    change = {"name": _text("Name of the change"), "settings": _list(_text(), "What it sets")}
-    moved = {
+    change: Schema = {"name": _text("Name of the change"), "settings": _list(_text(), "What it sets")}
+    moved: Schema = {
         "verdict": _or_null(_verdict("Verdict of the rule afterwards; null for figures")),
         "after": _or_null({"$ref": "#/$defs/amount"}),
         "difference": _or_null({"$ref": "#/$defs/amount"}),
         "foretold": _or_null({"$ref": "#/$defs/amount"}),
         "binding": _text("The part that decides afterwards"),
     }
-    shared = {
+    shared: Schema = {
         "name": _text(),
         "before": _or_null({"$ref": "#/$defs/amount"}),
         "moved": _list(_object(moved), "One for each change, in order"),
     }
-    rule = {
+    rule: Schema = {
         **shared,
         "clause": _text(),
         "title": _text(),
         "verdict": _verdict("Verdict before"),
         "binding": _text("The part that decides before"),
     }
-    properties = {
+    properties: Schema = {
         **_heading("whatif"),
         "changes": _list(_object(change), "The changes, side by side"),
         "verdict": _verdict("The total before"),

@@ -71,6 +71,17 @@ class ExactReader:
         """Take over values that were found exactly by other means, by the index of their term."""
         self._exact.update(found)
 
+    def forget(self, indices: Iterable[int]) -> None:
+        """Forget what was found for some terms: an input that they rest on has changed."""
+        tables = [self._exact, *self._levels.values()]
+        for index in indices:
+            for table in tables:
+                table.pop(index, None)
+
+    def known(self) -> Iterable[tuple[int, Any]]:
+        """All values that were found exactly, by the index of their term."""
+        return self._exact.items()
+
     def value(self, term: Term) -> Value:
         """The value: exact where it can be, else a ball at the first precision that decides it."""
         for bits in self._precisions():

@@ -126,14 +126,24 @@ class Checker:
             return "dispensed", f"dispensation {permit}", permit
         if verdict == "breach" and rule.standing == "should":
             return "not followed", reason, permit
-        if (
-            verdict == "complies"
-            and binding is not None
-            and binding.part is not None
-            and self._is_tight(rule, binding.part)
-        ):
-            return "tight", "inside the house reserve", permit
+        tight = [case for case in bound.cases if not self._is_roomy(rule, case)] if verdict == "complies" else []
+        if tight:
+            return "tight", _inside_reserve(tight, binding), permit
         return verdict, reason, permit
+
+    def _is_roomy(self, rule: Rule, case: Case) -> bool:
+        """True where a case that complies would still comply with the reserve taken off every margin."""
+        if self.reserves.share is None and rule.name not in self.reserves.by_rule:
+            return True
+        if self.reader.truth(case.applies) is False or self.reader.truth(case.exempt) is True:
+            return True
+        return self._keeps_reserve(rule, case.condition)
+
+    def _keeps_reserve(self, rule: Rule, condition: Condition) -> bool:
+        if isinstance(condition, Part):
+            return self.reader.truth(condition.holds) is True and not self._is_tight(rule, condition)
+        kept = (self._keeps_reserve(rule, part) for part in condition.parts)
+        return any(kept) if isinstance(condition, AnyOf) else all(kept)
 
     def _is_tight(self, rule: Rule, part: Part) -> bool:
         if part.margin is None:
@@ -226,6 +236,13 @@ class Checker:
                     room = self.judge.room(part)
                     if room is not None and -NEAR <= room <= NEAR:
                         yield f"its condition '{part.text}' is within 1 % of turning"
+
+
+def _inside_reserve(tight: Sequence[Case], binding: Judged | None) -> str:
+    """The reason, with the element where it is another one than that which binds."""
+    elements = [case.element for case in tight]
+    bound = binding.case.element if binding is not None and binding.case is not None else ""
+    return "inside the house reserve" + ("" if bound in elements else f": {', '.join(elements[:4])}")
 
 
 def _leaves(condition: Condition, branch: str = "") -> Iterable[tuple[Part, str]]:

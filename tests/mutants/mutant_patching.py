@@ -8,6 +8,7 @@ import importlib.machinery
 import importlib.util
 import sys
 from collections.abc import Callable, Iterator, Mapping, Sequence
+from functools import lru_cache
 from types import CodeType, FunctionType, ModuleType
 
 from mutant_making import Mutant, mutated, tree_of
@@ -31,6 +32,7 @@ def nested(code: CodeType) -> Iterator[CodeType]:
             yield from nested(constant)
 
 
+@lru_cache(maxsize=None)
 def original(file: str) -> CodeType:
     """The code of a file as it stands."""
     return compile(tree_of(file), str(ROOT / file), "exec", dont_inherit=True)

@@ -9,8 +9,10 @@ import sys
 from collections import Counter
 from collections.abc import Callable, Mapping, Sequence
 from dataclasses import dataclass, field
+from functools import cache
 from pathlib import Path
 
+import pydantic
 import pytest
 from mutant_making import Mutant
 from mutant_patching import CodeKey, exchanged, install, needs_import, patch, watched
@@ -98,17 +100,16 @@ class _Mutating:
 
     def pytest_runtestloop(self, session: pytest.Session) -> bool:
         self.fault = ""
+        for item in {item.path: item for item in session.items}.values():
+            _run_item(item)  # what is built once is built before the first fork
         reached = _in_child(lambda: _reached(session))
         if isinstance(reached, str):
             self.fault = f"the tests fail without any change: {reached}"
             return True
         self.told(f"{len(session.items)} tests, {len(self.mutants)} mutants")
         deadly: Counter[int] = Counter()
-        fit: list[Mutant] = []
-        for mutant in self.mutants:
-            (self.outcome.left if needs_import(exchanged(mutant), self.import_time) else fit).append(mutant)
-        pool = Pool(lambda mutant: _hunt(session, mutant, reached, deadly), self.told, deadly)
-        for mutant, status in pool.run(fit).items():
+        pool = Pool(lambda mutant: _hunt(session, mutant, reached, deadly, self.import_time), self.told, deadly)
+        for mutant, status in pool.run(self.mutants).items():
             if status == UNFIT:
                 self.outcome.left.append(mutant)
             elif status == SURVIVED:
@@ -133,11 +134,15 @@ def _run_item(item: pytest.Item) -> None:
 
 
 def _hunt(
-    session: pytest.Session, mutant: Mutant, reached: Sequence[frozenset[CodeKey]], deadly: Mapping[int, int]
+    session: pytest.Session,
+    mutant: Mutant,
+    reached: Sequence[frozenset[CodeKey]],
+    deadly: Mapping[int, int],
+    import_time: frozenset[CodeKey],
 ) -> int | tuple[int, int]:
     """Run the tests that reach the change, those that killed most so far first."""
     changed = exchanged(mutant)
-    if not patch(changed):
+    if needs_import(changed, import_time) or not patch(changed):
         return UNFIT
     able = [index for index, keys in enumerate(reached) if not keys.isdisjoint(changed)]
     for index in sorted(able, key=lambda index: -deadly.get(index, 0)):
@@ -230,8 +235,10 @@ def prepare() -> None:
     """Load what is heavy and not ours, so that every process has it from the start."""
     import importlib
 
-    for name in ("flint", "yaml", "click", "pydantic", "jsonschema", "_pytest.assertion.rewrite"):
+    for name in ("flint", "yaml", "click", "jsonschema", "_pytest.assertion.rewrite"):
         importlib.import_module(name)
+    # An adapter takes longer to build than a small check takes in all: each is built once for all processes.
+    pydantic.TypeAdapter = cache(pydantic.TypeAdapter)  # type: ignore[assignment,misc]
     for place in (ROOT, ROOT / "tests"):
         if str(place) not in sys.path:
             sys.path.insert(0, str(place))

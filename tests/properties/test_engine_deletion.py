@@ -19,6 +19,7 @@ import pytest
 
 from rulecheck.api import load_design, load_ruleset
 from rulecheck.binding.bind import bind
+from rulecheck.diagnostics import Refused
 from rulecheck.model.core_table import CORE
 from rulecheck.model.design import Design, holders
 from rulecheck.model.ruleset import Rule, Ruleset
@@ -101,7 +102,10 @@ def _is_needed(vocabulary: Vocabulary, path: str) -> bool:
 
 def mended(design: Design, ruleset: Ruleset, gone: Iterable[str], before: Mapping[str, str]) -> list[str]:
     """The rules that did not comply before, and do now that something is gone."""
-    after = verdicts(without(design, *gone), ruleset)
+    try:
+        after = verdicts(without(design, *gone), ruleset)
+    except Refused:  # something else names what is gone
+        return []
     return [name for name, said in after.items() if said in MET and before[name] in NOT_MET]
 
 
@@ -134,7 +138,7 @@ inputs:
     element: {strength: {unit: kN, meaning: Load}}
 tables:
   least: {over: powertrain.displacement, steps: [{up_to: 2 L, value: 700 kg}, {below: 3 L, value: 800 kg}]}
-  share: {over: air.altitude, unit: "%", linear: [[0 m, 100 %], [1000 m, 95 %]]}
+  thin_air: {over: air.altitude, unit: "%", linear: [[0 m, 100 %], [1000 m, 95 %]]}
   power: {over: recovery.axle, steps: [{is: front, value: 90 kW}, {is: rear, value: 115 kW}]}
   two: {over: [powertrain.kind, powertrain.aspiration], steps: [{when: powertrain.kind == hybrid and powertrain.aspiration == forced, value: 70 L}, {otherwise: 80 L}]}
 lists: {steels: ["25CrMo4", "30CrMo4"]}
@@ -149,7 +153,7 @@ rules:
   ratio: {require: "min(dimensions.front_track, dimensions.rear_track) >= 75 % * max(dimensions.front_track, dimensions.rear_track)"}
   by_formula: {require: powertrain.fuel_flow <= (90 kg/h if powertrain.speed >= 9000 rpm else 0.01 kg/(h*rpm) * powertrain.speed)}
   steps: {require: "sum(m.mass for m in masses) >= least"}
-  lines: {require: powertrain.power <= 400 kW * share}
+  lines: {require: powertrain.power <= 400 kW * thin_air}
   choices: {require: recovery.power <= power}
   two_keys: {require: powertrain.tank_volume <= two}
   condition: {when: recovery.axle == rear, require: recovery.voltage <= 700 V}
@@ -169,7 +173,7 @@ rules:
   greatest: {require: "max(b.mass for b in ballast) <= 12 kg"}
   symmetry: {require: "abs(lamps.left.at.y + lamps.right.at.y) <= 3 mm"}
   angle: {require: "angle(line(points.foot, points.top), vertical, side) <= 12 deg"}
-  below_line: {require: "below(nose.tip, line(points.foot, points.top)) >= 1 mm", scale: 1 m}
+  below_line: {require: "above(nose.tip, line(points.foot, points.top)) >= 1 mm", scale: 1 m}
   ground: {states: "{}", require: above_ground(points.foot) >= 20 mm}
   in_states: {states: {fuel: every}, require: "sum(m.mass for m in masses) <= 880 kg"}
   every_state: {states: every, each: t in tyres, require: "t.loaded_radius >= 300 mm and sum(m.mass for m in masses) >= 700 kg"}
@@ -219,7 +223,7 @@ lamps:
 anchors: {a: {strength: 15 kN}, b: {strength: 14 kN}, c: {strength: 13 kN}, d: {strength: 12 kN}}
 ballast: {front: {mass: 9 kg, sealed: yes}, rear: {mass: 4 kg, sealed: yes}}
 points: {foot: 1400 0 100 mm, top: 1480 0 990 mm}
-nose: {tip: -900 0 -3000 mm}
+nose: {tip: -900 0 200 mm}
 members: {complete: yes, hoop: {material: "25CrMo4", wall: 2.5 mm, outer_diameter: 45 mm}, brace: {material: "E355", wall: 2 mm, outer_diameter: 40 mm}}
 aero_surfaces: {wing: {kind: wing}, fan: none}
 options: {traction_control: no, power_steering: no}
@@ -251,7 +255,7 @@ BAD = {
     "radius: 3 mm, exposed": "radius: 1 mm, exposed", "0 601 700": "0 300 700", "area: 31": "area: 11", "area: 32": "area: 12",
     "strength: 14": "strength: 4", "mass: 9 kg": "mass: 19 kg", "sealed: yes}, rear": "sealed: no}, rear",
     "foot: 1400 0 100": "foot: 1000 0 10", '"25CrMo4", wall: 2.5': '"E355", wall: 1.5', "wing: {kind: wing}, fan: none": "wing: none, fan: {kind: other}",
-    "traction_control: no": "traction_control: yes", "bolt: 6": "bolt: 5", "until: 2028": "until: 2027", "-3000 mm": "3000 mm",
+    "traction_control: no": "traction_control: yes", "bolt: 6": "bolt: 5", "until: 2028": "until: 2027", "-900 0 200": "-900 0 -90000",
     "made: 2024": "made: 2019", "{verdict: complies, role: scrutineer, date: 2027-02-01, reason: felt}\n  judged_each": "{verdict: breach, role: scrutineer, date: 2027-02-01, reason: felt}\n  judged_each",
     "sill: {verdict: complies": "sill: {verdict: breach", "diameter: 320": "diameter: 280", "height: 1000 mm, st": "height: 1200 mm, st",
 }  # fmt: skip
@@ -293,11 +297,13 @@ def test_the_good_car_complies_and_the_bad_one_does_not() -> None:
 
 
 @pytest.mark.parametrize("name", CARS)
-def test_no_single_deletion_makes_a_rule_of_any_shape_comply(name: str) -> None:
+@pytest.mark.parametrize("share", [pytest.param(3, id="a third"), pytest.param(1, id="all", marks=pytest.mark.long)])
+def test_no_single_deletion_makes_a_rule_of_any_shape_comply(name: str, share: int) -> None:
     design, ruleset = CARS[name]
     before = verdicts(design, ruleset)
-    gaps = takeable(design, ruleset)
-    assert len(gaps) > 110
+    whole = takeable(design, ruleset)
+    assert len(whole) > 110
+    gaps = random.Random(name).sample(whole, len(whole) // share)
     found = {gone: rules for gone in gaps if (rules := mended(design, ruleset, [gone], before))}
     assert found == {}
 
@@ -307,17 +313,17 @@ def test_no_second_deletion_makes_a_rule_comply(name: str) -> None:
     design, ruleset = CARS[name]
     source = random.Random(len(name))
     pairs = list(combinations(takeable(design, ruleset), 2))
-    for first, second in source.sample(pairs, 25):
+    for first, second in source.sample(pairs, 10):
         _held_in_pairs(design, ruleset, first, second)
 
 
 def _held_in_pairs(design: Design, ruleset: Ruleset, first: str, second: str) -> None:
-    both = without(design, first, second)
-    after = verdicts(both, ruleset)
     for alone in (first, second):
-        before = verdicts(without(design, alone), ruleset)
-        found = [rule for rule, said in after.items() if said in MET and before[rule] in NOT_MET]
-        assert found == [], (first, second)
+        try:
+            before = verdicts(without(design, alone), ruleset)
+        except Refused:
+            continue
+        assert mended(design, ruleset, [first, second], before) == [], (first, second)
 
 
 @pytest.mark.long
@@ -334,9 +340,13 @@ def test_every_deletion_is_felt_by_some_rule_of_the_good_car() -> None:
     design, ruleset = CARS["good"]
     unfelt = []
     for gone in takeable(design, ruleset):
-        said = verdicts(without(design, gone), ruleset)
+        try:
+            said = verdicts(without(design, gone), ruleset)
+        except Refused:
+            continue
         if all(verdict == "complies" for verdict in said.values()):
             unfelt.append(gone)
+    # What is shown and not judged, what decides only beside other values, what a state sets anyway.
     harmless = ("reference", "kind", "role", "material", "exposed", "displacement", "aero_surfaces.wing.kind")
     assert [gone for gone in unfelt if not gone.endswith(harmless)] == []
 

@@ -59,7 +59,7 @@ def test_a_table_for_another_key() -> None:
 
 LINES = """\
 tables:
-  share:
+  thin_air:
     over: air.altitude
     unit: "%"
     linear: [[0 m, 100 %], [800 m, 98 %], [1600 m, 95 %]]
@@ -72,15 +72,15 @@ tables:
 )
 def test_straight_lines_between_rows(altitude: str, room: Fraction | int) -> None:
     # At 1000 m: 98 % - 3 % * 200/800 = 97.25 %.
-    found = require("share >= 90 %", f"air: {{altitude: {altitude}}}\n", LINES)
+    found = require("thin_air >= 90 %", f"air: {{altitude: {altitude}}}\n", LINES)
     assert (found.verdict, margin(found)) == ("complies", room)
 
 
 @pytest.mark.parametrize("altitude", ["-0.001 m", "1600.001 m"])
 def test_left_of_the_first_row_and_right_of_the_last_there_is_nothing(altitude: str) -> None:
-    found = require("share >= 90 %", f"air: {{altitude: {altitude}}}\n", LINES)
+    found = require("thin_air >= 90 %", f"air: {{altitude: {altitude}}}\n", LINES)
     assert found.verdict == "open"
-    assert "share" in found.reason
+    assert "thin_air" in found.reason
 
 
 CHOICES = """\

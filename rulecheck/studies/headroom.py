@@ -1,0 +1,203 @@
+"""`headroom`: how far one input can move each way before the first rule breaks, and which.
+
+The stretch from the value to the answer is covered without a gap by intervals on each of which every rule is certainly
+met, so that no earlier breach is jumped over (interval exclusion by bisection). Where a margin is linear in the input
+the end itself is found exactly; else it is known to one part in a billion of the stretch that was looked at.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Sequence
+from dataclasses import dataclass
+from datetime import date
+from fractions import Fraction
+
+from rulecheck import __version__
+from rulecheck.diagnostics import Faults
+from rulecheck.graph.conditions import BoundRule
+from rulecheck.graph.figures import InputFact
+from rulecheck.graph.terms import Term
+from rulecheck.model.design import Design
+from rulecheck.operations.values import Monomial
+from rulecheck.outcome.results import Amount
+from rulecheck.outcome.travel import Headroom, HeadroomReport, Travel
+from rulecheck.quantity.numbers import show_exact, show_number
+from rulecheck.quantity.units import Unit
+from rulecheck.readers.segment import SegmentReader
+from rulecheck.reading.nearest import nearest
+from rulecheck.studies.check import Checker
+from rulecheck.studies.reporting import CAUTION
+
+REACH = 100
+FINENESS = Fraction(1, 10**9)
+MOST_STEPS = 2000
+_PI = Fraction("3.14159265358979323846264338328")
+
+
+def headroom(checker: Checker, design: Design, names: Sequence[str], day: date) -> HeadroomReport:
+    """The headroom of the inputs named, or of all that a rule reads. Raises `Refused` where a name is no input."""
+    graph = checker.graph
+    numbers = {path: value for path, value in graph.inputs.items() if isinstance(value, Monomial)}
+    faults = Faults()
+    for name in names:
+        if name not in numbers:
+            faults.add("unknown-name", f"the design gives no number under '{name}'", advice=nearest(name, numbers))
+    faults.settle()
+    rows, unread = [], []
+    for path in names or numbers:
+        found = _Input(checker, path).headroom()
+        if found is None:
+            unread.append(path)
+        else:
+            rows.append(found)
+    breached = tuple(rule.name for rule in graph.rules if rule.binds and checker.reader.truth(rule.met) is False)
+    return HeadroomReport(
+        design.name, design.file, day.isoformat(), tuple(sorted(rows, key=_least)), tuple(unread), breached,
+        (CAUTION,), __version__,
+    )  # fmt: skip
+
+
+def _least(row: Headroom) -> float:
+    """Inputs with the least travel against their own size first."""
+    size = abs(row.value.value or 0.0) or 1.0
+    travels = [
+        abs(side.travel.value)
+        for side in (row.down, row.up)
+        if side.travel is not None and side.travel.value is not None
+    ]
+    return min(travels, default=float("inf")) / size
+
+
+@dataclass(frozen=True, slots=True)
+class _Found:
+    """Where the search ended: the last certain point, a point beyond, and the rules that turn between them."""
+
+    inner: Fraction
+    outer: Fraction
+    turned: tuple[int, ...]
+
+
+class _Input:
+    """The search along one input."""
+
+    def __init__(self, checker: Checker, path: str) -> None:
+        graph = checker.graph
+        self.checker, self.path = checker, path
+        self.fact: InputFact = graph.facts[path]
+        value = graph.inputs[path]
+        assert isinstance(value, Monomial)
+        self.start = value.rational
+        self.along = SegmentReader(graph.bank, graph.inputs, checker.reader, path)
+        rules = [rule for rule in graph.rules if rule.binds and self.along.moves(rule.met)]
+        self.met = [rule for rule in rules if checker.reader.truth(rule.met) is True]
+        self.broken = [rule for rule in rules if checker.reader.truth(rule.met) is False]
+
+    def headroom(self) -> Headroom | None:
+        """The travel both ways; None where no rule reads the input."""
+        if not self.met and not self.broken:
+            return None
+        value = self._amount(self.start, width=False)
+        down, up = (self._travel(direction) for direction in (-1, 1))
+        return Headroom(self.path, value, self.fact.basis, down, up, len(self.met) + len(self.broken))
+
+    def _travel(self, direction: int) -> Travel:
+        if self.broken:
+            return self._search(self.broken, direction, holds=False)
+        return self._search(self.met, direction, holds=True)
+
+    def _search(self, rules: Sequence[BoundRule], direction: int, *, holds: bool) -> Travel:
+        """Go outwards while every rule certainly stays as it is."""
+        flags = [rule.met for rule in rules]
+        reach = REACH * (abs(self.start) or self._one())
+        inner, width, steps = Fraction(0), reach / 1024, 0
+        while inner < reach:
+            steps += 1
+            outer = min(inner + width, reach)
+            truths = self._over(flags, direction, inner, outer)
+            if all(truth is holds for truth in truths):
+                inner, width = outer, width * 2
+            elif width <= reach * FINENESS or steps > MOST_STEPS:
+                turned = tuple(index for index, truth in enumerate(truths) if truth is not holds)
+                return self._ended(rules, direction, _Found(inner, outer, turned), holds=holds)
+            else:
+                width /= 2
+        return Travel("free", None, None, (), False)
+
+    def _over(self, flags: Iterable[Term], direction: int, inner: Fraction, outer: Fraction) -> list[bool | None]:
+        ends = sorted((self.start + direction * inner, self.start + direction * outer))
+        return self.along.truths(flags, ends[0], ends[1])
+
+    def _one(self) -> Fraction:
+        """One of the input's unit, in SI: what an input of zero is measured by."""
+        return self.fact.unit.factor if self.fact.unit is not None else Fraction(1)
+
+    def _ended(self, rules: Sequence[BoundRule], direction: int, found: _Found, *, holds: bool) -> Travel:
+        """Name what turns: a little beyond the last certain point, since balls are wider than what they hold."""
+        names = tuple(rules[index].name for index in found.turned)
+        chosen = [rules[index] for index in found.turned]
+        for factor in (1, 8, 64, 512):
+            wider = _Found(found.inner, found.inner + factor * (found.outer - found.inner), found.turned)
+            exact = self._exact_end(chosen, direction, wider, holds=holds)
+            if exact is not None:
+                return self._made("stops" if holds else "mends", exact, names, is_exact=True)
+            beyond = self.along.at([rule.met for rule in chosen], self.start + direction * wider.outer)
+            for ending, truth in (("stops" if holds else "mends", not holds), ("opens", None)):
+                kept = tuple(name for name, found_there in zip(names, beyond, strict=True) if found_there is truth)
+                if kept:
+                    return self._made(ending, direction * found.inner, kept, is_exact=False)
+        return self._made("unsure", direction * found.inner, names, is_exact=False)
+
+    def _exact_end(self, rules: Sequence[BoundRule], direction: int, found: _Found, *, holds: bool) -> Fraction | None:
+        """The end itself, where the margin that turns is linear between two points: it is zero there, exactly."""
+        ends = [
+            end for rule in rules for term in _margins(rule) if (end := self._zero(term, direction, found)) is not None
+        ]
+        flags = [rule.met for rule in rules]
+        for end in sorted(ends, key=abs):
+            step = direction * max(found.outer - found.inner, FINENESS) / 1024
+            here = self.along.at(flags, self.start + end)
+            past = self.along.at(flags, self.start + end + step)
+            before = self.along.at(flags, self.start + end - step)
+            if all(truth is holds for truth in before) and (
+                any(t is not holds for t in past) or any(t is not holds for t in here)
+            ):
+                return end
+        return None
+
+    def _zero(self, term: Term, direction: int, found: _Found) -> Fraction | None:
+        if not self.along.moves(term):
+            return None
+        first, second = self.start + direction * found.inner, self.start + direction * found.outer
+        a, b = self.along.number(term, first), self.along.number(term, second)
+        if a is None or b is None or a == b:
+            return None
+        end = first - a * (second - first) / (b - a)
+        inside = min(first, second) <= end <= max(first, second)
+        return end - self.start if inside and self.along.number(term, end) == 0 else None
+
+    def _made(self, ending: str, travel: Fraction, rules: tuple[str, ...], *, is_exact: bool) -> Travel:
+        shown = self._amount(travel, width=True, is_exact=is_exact)
+        at = self._amount(self.start + travel, width=False, is_exact=is_exact)
+        return Travel(ending, shown, at, rules, is_exact)  # type: ignore[arg-type]
+
+    def _amount(self, value: Fraction, *, width: bool, is_exact: bool = True) -> Amount:
+        unit: Unit | None = self.fact.unit
+        if unit is None:
+            return Amount(show_number(value), "", float(value), show_exact(value))
+        power = self.checker.graph.inputs[self.path].power  # type: ignore[union-attr]
+        rational, rest = unit.width_of_si(value, power) if width else unit.of_si(value, power)
+        shown = rational * _PI**rest
+        exact = show_exact(rational) if is_exact and not rest else ""
+        return Amount(show_number(shown), unit.symbol, float(shown), exact)
+
+
+def _margins(rule: BoundRule) -> Iterable[Term]:
+    """The margins of all parts of a rule."""
+    waiting = [case.condition for case in rule.cases]
+    while waiting:
+        condition = waiting.pop()
+        parts = getattr(condition, "parts", None)
+        if parts is not None:
+            waiting.extend(parts)
+        elif condition.margin is not None:  # type: ignore[union-attr]
+            yield condition.margin  # type: ignore[union-attr]
