@@ -29,6 +29,7 @@ from rulecheck.model.ruleset_reader import read_ruleset
 from rulecheck.model.variant_writer import variant_text
 from rulecheck.outcome.changes import WhatIf
 from rulecheck.outcome.results import ClosedFormResult, Report, Workings
+from rulecheck.outcome.travel import HeadroomReport
 from rulecheck.physics.modules import BUILT_IN, built_in
 from rulecheck.quantity.dimension_names import name_of
 from rulecheck.quantity.quantity import Quantity
@@ -38,6 +39,7 @@ from rulecheck.reading.nodes import Located
 from rulecheck.reading.workspace import Workspace
 from rulecheck.reading.yaml_reader import parse_yaml
 from rulecheck.studies.check import Checker, Reserves
+from rulecheck.studies.headroom import headroom as travels
 from rulecheck.studies.reporting import Asked, report
 from rulecheck.studies.whatif import Column, what_if
 from rulecheck.studies.workings import workings_of
@@ -185,6 +187,29 @@ def whatif(
         loaded = _load(session, design, rules, change.settings, change.changes, states)
         made.append(_column(loaded, base, change, day))
     return what_if(Checker(_bind(base, day, BUILT_IN)), made, base.design, base.rulesets, day)
+
+
+def headroom(
+    design: File,
+    names: Sequence[str] = (),
+    *,
+    rules: Sequence[File] = (),
+    settings: Mapping[str, str] | Iterable[tuple[str, str]] = (),
+    changes: Sequence[File] = (),
+    states: Mapping[str, str] | None = None,
+    on: date | None = None,
+    session: Session | None = None,
+) -> HeadroomReport:
+    """How far each input may move, alone, before the first rule breaks. Raises `Refused` with every fault.
+
+    `names` are paths of numbers; without them every number that a rule reads is tried.
+    """
+    session = session or Session()
+    day = on or date.today()
+    loaded = _load(session, design, rules, settings, changes, states)
+    checker = Checker(_bind(loaded, day))
+    checker.read_all()
+    return travels(checker, loaded.design, names, day)
 
 
 def kept_variant(design: File, columns: Sequence[Change], target: File, session: Session) -> str:
@@ -392,4 +417,4 @@ def _reserve_text(house: House | None, share: Fraction | None) -> str:
     return f"{count} rule{'s' if count > 1 else ''}, in {house.file}"
 
 
-__all__ = ["Session", "check", "load_design", "load_ruleset", "whatif", "workings"]
+__all__ = ["Session", "check", "headroom", "load_design", "load_ruleset", "whatif", "workings"]

@@ -210,6 +210,34 @@ def whatif(design: str, keep: str, **given: Any) -> int:
     return COMPLIES
 
 
+@rulecheck.command(cls=Question, short_help="How far each input may move before the first rule breaks.")
+@click.argument("design", metavar="DESIGN")
+@click.argument("names", metavar="[PATH]...", nargs=-1)
+@question
+def headroom(design: str, names: tuple[str, ...], **given: Any) -> int:
+    """How far each input, or those named, may move down and up before the first rule breaks, and which rule."""
+    from rulecheck import api
+    from rulecheck.output.json_whatif import headroom_json
+    from rulecheck.output.terminal_headroom import headroom_text
+
+    asked, session = asked_from(design, given), api.Session()
+    try:
+        found = api.headroom(
+            asked.design,
+            names,
+            rules=asked.rules,
+            settings=asked.settings,
+            changes=asked.changes,
+            states=asked.states,
+            on=asked.on,
+            session=session,
+        )
+        _deliver(asked, session, lambda screen: headroom_text(found, screen), lambda: headroom_json(found))
+    except Refused as refused:
+        return _refuse(refused.diagnostics, session, as_json=asked.json_on_stream)
+    return COMPLIES
+
+
 def _deliver(
     asked: Asked,
     session: Session,

@@ -77,8 +77,9 @@ def loop(scope: Scope, variables: Sequence[str], collection: Syntax, where: Synt
     elements: list[Element] = []
     for pairs in turns:
         label = ", ".join(bound.name for _, bound in pairs if isinstance(bound, Item))
+        there = _there(scope, pairs, items, span)
         if where is None:
-            elements.append(Element(label, pairs))
+            elements.append(Element(label, pairs, there))
             continue
         condition = _turn(scope, pairs, where)
         if isinstance(condition, Broken):
@@ -88,10 +89,16 @@ def loop(scope: Scope, variables: Sequence[str], collection: Syntax, where: Synt
                 "kind-mismatch", f"'where' takes a condition, and this is {kind_of(condition)}", where.span
             )
         if condition.term.kind != "constant":
-            elements.append(Element(label, pairs, condition.term))
+            elements.append(Element(label, pairs, all_of(scope, [there, condition.term]) if there else condition.term))
         elif condition.term.value:
-            elements.append(Element(label, pairs))
+            elements.append(Element(label, pairs, there))
     return Loop(tuple(elements), items.lacking, items.missing, items.items is None, stand_in)
+
+
+def _there(scope: Scope, pairs: tuple[tuple[str, Bound], ...], items: Items, span: Span) -> Term | None:
+    """None where the design states the items; a required item that it does not state may or may not be there."""
+    gone = [bound.path for _, bound in pairs if isinstance(bound, Item) and bound.path in items.gone]
+    return scope.missing(" and ".join(gone), "flag", PURE, span) if gone else None
 
 
 def _turn(scope: Scope, pairs: tuple[tuple[str, Bound], ...], expression: Syntax) -> Bound:

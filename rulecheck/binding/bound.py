@@ -98,12 +98,14 @@ class Item:
 
 @dataclass(frozen=True, slots=True)
 class Items:
-    """A collection. `items` is None where the design says nothing of it; `lacking` says what is required and not there."""
+    """A collection. `items` is None where the design says nothing of it; `lacking` says what is required and not there,
+    `gone` which required items stand in it though the design does not state them."""
 
     path: str
     items: tuple[Item, ...] | None
     lacking: str = ""
     missing: int = 0
+    gone: frozenset[str] = frozenset()
 
 
 @dataclass(frozen=True, slots=True)

@@ -129,10 +129,8 @@ def judgement(scope: Scope, rule: str, element: str, question: Located) -> Part:
     """A slot for a person: verdict, role, date and reason; what is not filled in is open."""
     design = scope.view.design
     key = element.replace(", ", "_")
-    base = next(
-        (path for path in (f"judgements.{rule}.{key}", f"judgements.{rule}") if f"{path}.verdict" in design.leaves),
-        f"judgements.{rule}",
-    )
+    own = f"judgements.{rule}.{key}"
+    base = own if key and design.names(own) is not None else f"judgements.{rule}"
     scope.touched.add(base)
     missing = [name for name in ("verdict", "role", "reason") if _words(scope, f"{base}.{name}", question.span) is None]
     day = _date(scope, f"{base}.date", question.span)

@@ -245,10 +245,11 @@ def collection(scope: Scope, path: str, entry: Entry) -> Items:
         return Items(path, None, lacking=path, missing=max(entry.at_least, len(entry.items), 1))
     gone = [name for name in entry.items if name not in names]
     items = tuple(Item(f"{path}.{name}") for name in (*names, *gone))
+    absent = frozenset(f"{path}.{name}" for name in gone)
     short = entry.at_least - len(items)
     if short > 0:
-        return Items(path, items, lacking=f"{path} (at least {entry.at_least} are needed)", missing=short)
-    return Items(path, items)
+        return Items(path, items, lacking=f"{path} (at least {entry.at_least} are needed)", missing=short, gone=absent)
+    return Items(path, items, gone=absent)
 
 
 def bind_point(scope: Scope, path: str, entry: Entry, span: Span) -> tuple[Number, Number, Number]:

@@ -64,6 +64,7 @@ def workings_json(workings: Workings) -> str:
 
 
 def json_text(value: Json) -> str:
+    """A JSON object as text, with a line end."""
     return json.dumps(value, indent=2, ensure_ascii=False, allow_nan=False) + "\n"
 
 
@@ -140,6 +141,7 @@ def _margin(amount: Amount | None, strict: bool) -> Json | None:
 
 
 def amount_json(amount: Amount | None) -> Json | None:
+    """An amount, null where there is none."""
     if amount is None:
         return None
     return {

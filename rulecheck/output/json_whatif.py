@@ -1,10 +1,11 @@
-"""`whatif` as JSON."""
+"""`whatif` and `headroom` as JSON."""
 
 from __future__ import annotations
 
 from typing import Any
 
 from rulecheck.outcome.changes import FigureChange, Moved, RuleChange, WhatIf
+from rulecheck.outcome.travel import HeadroomReport, Travel
 from rulecheck.output.json_report import amount_json, json_text
 
 
@@ -56,4 +57,41 @@ def _moved(item: Moved) -> dict[str, Any]:
         "difference": amount_json(item.difference),
         "foretold": amount_json(item.foretold),
         "binding": item.binding,
+    }
+
+
+def headroom_json(report: HeadroomReport) -> str:
+    """The whole JSON form of `headroom`."""
+    return json_text(
+        {
+            "form": "headroom",
+            "version": report.version,
+            "design": report.design,
+            "file": report.file,
+            "date": report.date,
+            "breached": list(report.breached),
+            "inputs": [
+                {
+                    "path": row.path,
+                    "value": amount_json(row.value),
+                    "basis": row.basis,
+                    "restrained_by": row.restrained_by,
+                    "down": _travel(row.down),
+                    "up": _travel(row.up),
+                }
+                for row in report.inputs
+            ],
+            "unrestrained": list(report.unread),
+            "cautions": list(report.cautions),
+        }
+    )
+
+
+def _travel(travel: Travel) -> dict[str, Any]:
+    return {
+        "ending": travel.ending,
+        "travel": amount_json(travel.travel),
+        "at": amount_json(travel.at),
+        "rules": list(travel.rules),
+        "exact": travel.is_exact,
     }

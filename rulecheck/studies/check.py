@@ -77,6 +77,11 @@ class Checker:
             counted=bool(part and part.counted),
         )
 
+    def read_all(self) -> None:
+        """Evaluate what every rule rests on, so that studies start from what is known."""
+        for rule in self.graph.rules:
+            self.reader.truth(rule.met)
+
     def binding(self, bound: BoundRule) -> Judged | None:
         """What decides a rule."""
         return self._rule([(case, *self._case(case)) for case in bound.cases])[1]

@@ -118,7 +118,6 @@ def _constants(node: ast.Constant) -> Iterator[tuple[ast.AST, str]]:
         yield ast.Constant(not value), ""
     elif isinstance(value, int):
         yield ast.Constant(value + 1), ""
-        yield ast.Constant(value - 1), ""
     elif isinstance(value, str) and value in _WORDS:
         yield ast.Constant(_WORDS[value]), ""
 

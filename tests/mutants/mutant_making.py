@@ -95,6 +95,8 @@ def _put(node: ast.AST, step: Step, new: ast.AST) -> None:
 _NO_LOGIC = (ast.Assert, ast.JoinedStr, ast.Import, ast.ImportFrom)
 _TOLD = ("fault", "add", "nearest", "Related")
 """Calls whose arguments are words for people, or are named nowhere else."""
+_FAULTS = ("Broken", "BROKEN", "fault", "faults")
+"""Names that speak of files at fault: those get no verdict at all, and the tests of diagnostics hold them."""
 
 
 def sites(
@@ -104,12 +106,20 @@ def sites(
     if isinstance(node, (ast.FunctionDef, ast.ClassDef)):
         function = f"{function}.{node.name}" if function else node.name
     for step, part in _parts(node):
-        inside = function
-        if not function:
-            inside = _constant(part)
-        if isinstance(part, ast.expr | ast.stmt | ast.comprehension):
+        inside = function or _constant(part)
+        if isinstance(part, ast.expr | ast.stmt | ast.comprehension) and not _about_faults(part):
             yield (*path, step), inside, part
         yield from sites(part, (*path, step), inside)
+
+
+def _about_faults(node: ast.AST) -> bool:
+    if isinstance(node, ast.If):
+        return _names_faults(node.test) or all(_names_faults(part) for part in node.body)
+    return not isinstance(node, (ast.FunctionDef, ast.ClassDef, ast.For)) and _names_faults(node)
+
+
+def _names_faults(node: ast.AST) -> bool:
+    return any(getattr(part, "id", getattr(part, "attr", "")) in _FAULTS for part in ast.walk(node))
 
 
 def _constant(node: ast.AST) -> str:
@@ -123,6 +133,8 @@ def _constant(node: ast.AST) -> str:
 
 def _parts(node: ast.AST) -> Iterator[tuple[Step, ast.AST]]:
     for field, value in ast.iter_fields(node):
+        if field == "test" and isinstance(node, ast.If) and _about_faults(node):
+            continue
         if field in ("annotation", "returns", "decorator_list", "func_name", "bases", "targets", "target"):
             continue
         if isinstance(node, ast.Call) and field in ("args", "keywords") and _called(node) in _TOLD:
@@ -138,4 +150,8 @@ def _called(call: ast.Call) -> str:
 
 
 def _is_words(node: ast.AST) -> bool:
+    """Docstrings, and what is put together as text for people."""
+    if isinstance(node, (ast.Assign, ast.AugAssign)):
+        target = node.targets[0] if isinstance(node, ast.Assign) else node.target
+        return isinstance(target, ast.Name) and target.id in ("text", "shown", "told", "label")
     return isinstance(node, ast.Expr) and isinstance(node.value, ast.Constant)

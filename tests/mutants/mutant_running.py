@@ -107,7 +107,7 @@ class _Mutating:
             self.fault = f"the tests fail without any change: {reached}"
             return True
         self.told(f"{len(session.items)} tests, {len(self.mutants)} mutants")
-        deadly: Counter[int] = Counter()
+        deadly: Counter[tuple[str, int]] = Counter()
         pool = Pool(lambda mutant: _hunt(session, mutant, reached, deadly, self.import_time), self.told, deadly)
         for mutant, status in pool.run(self.mutants).items():
             if status == UNFIT:
@@ -137,7 +137,7 @@ def _hunt(
     session: pytest.Session,
     mutant: Mutant,
     reached: Sequence[frozenset[CodeKey]],
-    deadly: Mapping[int, int],
+    deadly: Mapping[tuple[str, int], int],
     import_time: frozenset[CodeKey],
 ) -> int | tuple[int, int]:
     """Run the tests that reach the change, those that killed most so far first."""
@@ -145,7 +145,9 @@ def _hunt(
     if needs_import(changed, import_time) or not patch(changed):
         return UNFIT
     able = [index for index, keys in enumerate(reached) if not keys.isdisjoint(changed)]
-    for index in sorted(able, key=lambda index: -deadly.get(index, 0)):
+    # Those first that killed most of this function's mutants, then of all.
+    able.sort(key=lambda index: (deadly.get((mutant.function, index), 0), deadly.get(("", index), 0)), reverse=True)
+    for index in able:
         _run_item(session.items[index])
         if session.testsfailed:
             return KILLED, index
@@ -179,7 +181,7 @@ class Pool:
 
     work: Callable[[Mutant], int | tuple[int, int]]
     told: Callable[[str], None]
-    deadly: Counter[int] = field(default_factory=Counter)
+    deadly: Counter[tuple[str, int]] = field(default_factory=Counter)
     said: dict[Mutant, str] = field(default_factory=dict)
     _running: dict[int, tuple[Mutant, int]] = field(default_factory=dict)
     _done: dict[Mutant, int] = field(default_factory=dict)
@@ -227,7 +229,8 @@ class Pool:
             killer = file.read().decode()
         self._done[mutant] = os.waitstatus_to_exitcode(status) if os.WIFEXITED(status) else KILLED
         if killer not in ("", "-1"):
-            self.deadly[int(killer)] += 1
+            self.deadly[mutant.function, int(killer)] += 1
+            self.deadly["", int(killer)] += 1
             self.said[mutant] = killer
 
 

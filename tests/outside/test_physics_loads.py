@@ -7,7 +7,6 @@ the balance of forces, of moments and of springs.
 from __future__ import annotations
 
 from functools import cache
-from pathlib import Path
 
 import numpy as np
 import pytest

@@ -147,6 +147,17 @@ def test_a_judgement_for_each_element() -> None:
     assert only(edges, rule).verdict == "open"
 
 
+def test_a_judgement_of_an_element_that_is_not_whole_is_not_made_up_by_that_of_the_rule() -> None:
+    rule = "rules:\n  it:\n    each: e in edges\n    judgement: Is it smooth?\n"
+    whole = ", ".join(f"{key}: {value}" for key, value in SLOT.items())
+    breach = whole.replace("complies", "breach")
+    design = "edges: {sill: {radius: 1 mm}}\njudgements:\n  it:\n    "
+    general = "\n    ".join(f"{key}: {value}" for key, value in SLOT.items())
+    assert only(f"{design}{general}\n    sill: {{{breach}}}\n", rule).verdict == "breach"
+    short = breach.replace("verdict: breach, ", "")
+    assert only(f"{design}{general}\n    sill: {{{short}}}\n", rule).verdict == "open"
+
+
 # --- branches --------------------------------------------------------------------------------------------------------
 
 TUBE = """\

@@ -107,6 +107,25 @@ def test_a_required_item_that_is_not_there_is_open() -> None:
     assert only("tyres:\n  front: {width: 360 mm}\n", rule).verdict == "breach"
 
 
+LAMPS = "inputs: {lamps: {kind: collection, meaning: Lamps, items: [left, right], element: {area: {unit: cm^2, meaning: a}}}}\n"
+
+
+@pytest.mark.parametrize(
+    ("lamps", "least", "most"),
+    [
+        ("{left: {area: 3 cm^2}, right: {area: 3 cm^2}}", "complies", "breach"),
+        ("{left: {area: 3 cm^2}}", "open", "open"),
+        ("{left: {area: 3 cm^2}, right: none}", "open", "open"),
+        ("{left: {area: 3 cm^2}, middle: {area: 3 cm^2}}", "complies", "breach"),
+        ("{}", "open", "open"),
+        ("none", "open", "open"),
+    ],
+)
+def test_a_required_item_that_is_not_there_is_not_counted_as_there(lamps: str, least: str, most: str) -> None:
+    assert require("count(for l in lamps) >= 2", f"lamps: {lamps}\n", LAMPS).verdict == least
+    assert require("count(for l in lamps) <= 1", f"lamps: {lamps}\n", LAMPS).verdict == most
+
+
 def test_at_least_so_many_items() -> None:
     declared = ANCHORS.replace("    element:", "    at_least: 3\n    element:")
     rule = "rules:\n  it: {each: a in anchors, require: a.strength >= 10 kN}\n"
