@@ -154,7 +154,6 @@ CODES: dict[str, str] = {
     "scale-needed": "Margins without a common measure are compared, and the rule gives no scale.",
     "state-clash": "Two states set the same path.",
     "unknown-state": "No state has this name.",
-    "bad-overlay": "A change cannot be laid over the design.",
     "no-rules": "There is nothing to check the design against.",
     "bad-date": "This is not a date.",
     "bad-physics": "A physics module cannot be used.",

@@ -27,13 +27,20 @@ rulesets: [cup.ruleset.yaml]
 """
 
 
-def check_files(files: Mapping[str, str], *, on: date = DAY, design: str = "car.design.yaml", **options: Any) -> Report:
+def write_files(folder: Path, files: Mapping[str, str | bytes]) -> None:
+    """Write files below a folder."""
+    for name, content in files.items():
+        place = folder / name
+        place.parent.mkdir(parents=True, exist_ok=True)
+        place.write_bytes(content if isinstance(content, bytes) else content.encode("utf-8"))
+
+
+def check_files(
+    files: Mapping[str, str | bytes], *, on: date = DAY, design: str = "car.design.yaml", **options: Any
+) -> Report:
     """Check a design among files that are written for this one call."""
     with tempfile.TemporaryDirectory() as folder:
-        for name, text in files.items():
-            place = Path(folder, name)
-            place.parent.mkdir(parents=True, exist_ok=True)
-            place.write_text(text, encoding="utf-8")
+        write_files(Path(folder), files)
         options["rules"] = [Path(folder, name) for name in options.get("rules", ())]
         options["changes"] = [Path(folder, name) for name in options.get("changes", ())]
         return check(Path(folder, design), on=on, **options)

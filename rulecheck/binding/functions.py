@@ -91,8 +91,9 @@ def arguments(scope: Scope, syntax: Call, least: int, most: int) -> list[Bound] 
     """The arguments bound, or None with the fault noted."""
     if not least <= len(syntax.arguments) <= most:
         count = str(least) if least == most else f"{least} to {most}"
+        word = "argument" if most == 1 else "arguments"
         scope.fault(
-            "wrong-arguments", f"'{syntax.function}' takes {count} arguments, not {len(syntax.arguments)}", syntax.span
+            "wrong-arguments", f"'{syntax.function}' takes {count} {word}, not {len(syntax.arguments)}", syntax.span
         )
         return None
     bound = [scope.express(argument) for argument in syntax.arguments]

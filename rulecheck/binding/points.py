@@ -18,6 +18,7 @@ from rulecheck.operations.trigonometry import atan2
 from rulecheck.quantity.dimension import LENGTH
 from rulecheck.quantity.units import find_unit
 from rulecheck.reading.nearest import nearest
+from rulecheck.reading.nodes import Located
 
 BUILT_IN_DATUMS = ("front_axle", "rear_axle", "ground")
 VIEWS = {"side": "xz", "plan": "xy", "front": "yz"}
@@ -46,10 +47,12 @@ def _place(scope: Scope, path: str, entry: Entry, span: Span) -> Place:
     if datum is None and entry.datum_required and (stated(scope, path) or stated(scope, f"{path}.at")):
         gone = scope.missing(f"{path}.datum", "number", LENGTH, span)
         return Place(*(Number(gone, x.unit) for _ in range(3)))
-    return from_datum(scope, Place(x, y, z), datum or "front_axle", span, ())
+    if datum is None:
+        return Place(x, y, z)
+    return from_datum(scope, Place(x, y, z), datum.text, datum.span, ())
 
 
-def _datum_of(scope: Scope, path: str) -> str | None:
+def _datum_of(scope: Scope, path: str) -> Located | None:
     """The datum stated for a point: below it, or beside it in the same item."""
     holder = path.rpartition(".")[0]
     for candidate in (f"{path}.datum", f"{holder}.datum"):
@@ -59,7 +62,7 @@ def _datum_of(scope: Scope, path: str) -> str | None:
         scope.touched.add(candidate)
         where = scalar(stated(scope, candidate))
         if where is not None:
-            return where.text
+            return where
     return None
 
 

@@ -69,7 +69,7 @@ def _axis(shared: Shared, ruleset: Ruleset, rule: Rule, axis: str, names: tuple[
         return [(axis, name) for name in needed]
     for name in names:
         if name.text not in needed and name.text not in defined:
-            known = (*needed, *defined)
+            known = tuple(dict.fromkeys((*needed, *defined)))
             if nearest(name.text, known) or not known:
                 shared.faults.add(
                     "unknown-state",

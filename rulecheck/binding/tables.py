@@ -13,7 +13,7 @@ from rulecheck.diagnostics import Span
 from rulecheck.formula.printing import show
 from rulecheck.formula.syntax import Comparison, Name, Syntax
 from rulecheck.graph.terms import Term
-from rulecheck.model.ruleset import Row, Table
+from rulecheck.model.ruleset import Row, Ruleset, Table
 from rulecheck.operations.arithmetic import add, divide, multiply, subtract
 from rulecheck.operations.comparison import at_most, below
 from rulecheck.operations.operation import Operation, Sort
@@ -39,7 +39,7 @@ def table_value(scope: Scope, table: Table, key: Syntax | None, parse: Parse) ->
 def _looked_up(scope: Scope, table: Table, key: Syntax | None, parse: Parse) -> Bound:
     if key is None and len(table.over) == 1:
         key = parse(scope, table.over[0])
-        if key is None:
+        if key is None or isinstance(scope.express(key), Broken):
             return BROKEN
     if len(table.over) > 1:
         for over in table.over:
@@ -90,7 +90,7 @@ def _value(scope: Scope, where: Located, parse: Parse) -> Bound:
     syntax = parse(scope, where)
     if syntax is None:
         return BROKEN
-    if isinstance(syntax, Name) and len(syntax.path) == 1:
+    if isinstance(syntax, Name) and len(syntax.path) == 1 and not _is_own(scope, syntax.path[0]):
         before = list(scope.shared.faults.found)
         bound = scope.express(syntax)
         if isinstance(bound, Broken):
@@ -98,6 +98,13 @@ def _value(scope: Scope, where: Located, parse: Parse) -> Bound:
             return Words(scope.bank.text(syntax.path[0]))
         return bound
     return scope.express(syntax)
+
+
+def _is_own(scope: Scope, name: str) -> bool:
+    owner = scope.owner
+    return isinstance(owner, Ruleset) and any(
+        name in named for named in (owner.derived, owner.tables, owner.lists, owner.rules)
+    )
 
 
 def _test(scope: Scope, row: Row, key: Syntax | None, parse: Parse) -> Term | Broken | None:

@@ -162,6 +162,8 @@ def _steps(before: Inputs, after: Inputs) -> Mapping[str, Fraction]:
 
 
 def _same(before: Finding, after: Finding) -> bool:
+    if before.verdict == after.verdict == "not applicable":
+        return True
     return before.verdict == after.verdict and before.margin == after.margin and before.reason == after.reason
 
 

@@ -137,13 +137,13 @@ class Car:
         tree: dict[str, object] = {}
         for path, number in self.numbers.items():
             unit = UNITS[path]
-            _put(tree, path, f"{number!r} {unit}")
+            _put(tree, path, f"{float(number)!r} {unit}")
         for path, word in self.choices.items():
             _put(tree, path, word)
         tree["masses"] = {
             f"piece{index}": {
-                "mass": f"{piece.mass!r} kg",
-                "at": f"{piece.x!r} {piece.y!r} {piece.z!r} m",
+                "mass": f"{float(piece.mass)!r} kg",
+                "at": f"{float(piece.x)!r} {float(piece.y)!r} {float(piece.z)!r} m",
                 "unsprung": piece.unsprung,
             }
             for index, piece in enumerate(self.masses)

@@ -46,15 +46,6 @@ def test_balls_that_overlap_are_not_decided() -> None:
     assert [operation.ball(turned) for operation in (at_most, below, equal)] == [False, False, False]
 
 
-def test_balls_that_touch_are_at_most_and_not_below() -> None:
-    touching = [ball(1, 0.5), ball(2, 0.5)]
-    assert at_most.ball(touching) is True
-    assert below.ball(touching) is UNDECIDED
-    turned = touching[::-1]
-    assert below.ball(turned) is False
-    assert at_most.ball(turned) is UNDECIDED
-
-
 def test_texts_are_compared() -> None:
     assert same_text.exact(["rear", "rear"]) is True
     assert same_text.exact(["rear", "front"]) is False
