@@ -51,7 +51,8 @@ def _names(scope: Scope, ruleset: Ruleset) -> None:
     spans = {name: figure.span for name, figure in ruleset.derived.items()}
     spans.update((name, table.span) for name, table in ruleset.tables.items())
     for name, span in spans.items():
-        taken = name in WORDS or name in NAMES or scope.shared.vocabulary.entry(name) is not None
+        called = name in ruleset.tables or ruleset.derived[name].loop or ruleset.derived[name].of
+        taken = name in WORDS or (called and name in NAMES) or scope.shared.vocabulary.entry(name) is not None
         if taken:
             scope.fault(
                 "name-taken", f"'{name}' has a meaning already, and cannot name a figure or table", span,

@@ -153,7 +153,7 @@ def needed_states(node: Node | None, faults: Faults) -> dict[str, dict[str, tupl
     for axis in node if isinstance(node, Mapping) else ():
         check_name(axis.key, faults)
         needed.setdefault(axis.key.text, {}).update(_axis(axis.value, faults))
-        if not needed[axis.key.text]:
+        if not isinstance(axis.value, Located) and not len(axis.value):
             faults.add(
                 "bad-structure", f"axis '{axis.key.text}' has no states", axis.key.span, expected="[empty, full]"
             )

@@ -13,6 +13,7 @@ from pathlib import Path
 from typing import Any
 
 from rulecheck import api
+from rulecheck.loading import load
 from rulecheck.readers.exact import ExactReader
 from rulecheck.readers.program import Program
 from tests.benchmark.reference_work import Work, write
@@ -88,7 +89,7 @@ def certified_verdicts(work: Work) -> None:
 
 def _graph(work: Work) -> Any:
     session = api.Session()
-    loaded = api._load(session, work.design, (), (), (), None)
+    loaded = load(session, work.design, (), (), (), None)
     return api._bind(loaded, date(2027, 3, 1))
 
 

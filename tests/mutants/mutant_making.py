@@ -6,7 +6,7 @@ import ast
 from collections import Counter
 from collections.abc import Iterator
 from dataclasses import dataclass
-from functools import lru_cache
+from functools import cache
 from types import CodeType
 
 from mutant_changes import changes
@@ -37,7 +37,7 @@ class Mutant:
         return f"{self.file}: {self.function}: {self.name}{again}"
 
 
-@lru_cache(maxsize=None)
+@cache
 def tree_of(file: str) -> ast.Module:
     """The syntax tree of a file; whoever changes it puts it back."""
     return ast.parse((ROOT / file).read_text(encoding="utf-8"), filename=str(ROOT / file))

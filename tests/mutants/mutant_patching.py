@@ -8,7 +8,7 @@ import importlib.machinery
 import importlib.util
 import sys
 from collections.abc import Callable, Iterator, Mapping, Sequence
-from functools import lru_cache
+from functools import cache
 from types import CodeType, FunctionType, ModuleType
 
 from mutant_making import Mutant, mutated, tree_of
@@ -32,7 +32,7 @@ def nested(code: CodeType) -> Iterator[CodeType]:
             yield from nested(constant)
 
 
-@lru_cache(maxsize=None)
+@cache
 def original(file: str) -> CodeType:
     """The code of a file as it stands."""
     return compile(tree_of(file), str(ROOT / file), "exec", dont_inherit=True)
@@ -51,7 +51,8 @@ def exchanged(mutant: Mutant) -> Mapping[CodeKey, CodeType]:
 def needs_import(changed: Mapping[CodeKey, CodeType], run_at_import: frozenset[CodeKey]) -> bool:
     """Whether the change is in code that runs while modules load: then it must be there from the start."""
     return any(
-        (key[1] == "<module>" or key in run_at_import) and not _alike_outside(key, code) for key, code in changed.items()
+        (key[1] == "<module>" or key in run_at_import) and not _alike_outside(key, code)
+        for key, code in changed.items()
     )
 
 
@@ -63,9 +64,7 @@ def _alike_outside(key: CodeKey, new: CodeType) -> bool:
 
 
 def _own(code: CodeType) -> tuple[object, ...]:
-    constants = tuple(
-        "a function" if isinstance(value, CodeType) else (type(value), value) for value in code.co_consts
-    )
+    constants = tuple("a function" if isinstance(value, CodeType) else (type(value), value) for value in code.co_consts)
     return (code.co_code, code.co_names, code.co_varnames, code.co_freevars, code.co_cellvars, constants)
 
 

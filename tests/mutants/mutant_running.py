@@ -33,7 +33,9 @@ class Outcome:
     left: list[Mutant] = field(default_factory=list)
 
 
-def run(mutants: Sequence[Mutant], suite: Sequence[str] = SUITE, told: Callable[[str], None] = lambda line: None) -> Outcome:
+def run(
+    mutants: Sequence[Mutant], suite: Sequence[str] = SUITE, told: Callable[[str], None] = lambda line: None
+) -> Outcome:
     """Run all mutants. Raises `RuntimeError` where the tests fail without any change."""
     import_time = _in_child(_import_time)
     first = _in_child(lambda: _session(mutants, suite, import_time, told))
@@ -61,7 +63,10 @@ def _paths(suite: Sequence[str]) -> list[str]:
 
 
 def _arguments(suite: Sequence[str]) -> list[str]:
-    return ["-q", "-x", "-p", "no:cacheprovider", "--rootdir", str(ROOT), "-c", str(ROOT / "pyproject.toml"), *_paths(suite)]
+    """Without what only helps to read a failure: nobody reads these."""
+    unused = [word for name in ("cacheprovider", "logging", "unraisableexception") for word in ("-p", f"no:{name}")]
+    where = ["--rootdir", str(ROOT), "-c", str(ROOT / "pyproject.toml")]
+    return ["-q", "-x", "-s", "--assert=plain", *unused, *where, *_paths(suite)]
 
 
 def _silent() -> None:

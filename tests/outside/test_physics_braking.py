@@ -244,17 +244,20 @@ PLENTY = {"recovery.power": 9e5, "recovery.torque": 9e3, "recovery.power_allowed
 
 
 @pytest.mark.parametrize(
-    ("binds", "numbers"),
+    ("binds", "axle", "point", "numbers"),
     [
-        ("grip", {"vehicle.grip": 0.3, "vehicle.deceleration": 12.0, "recovery.power": 4e6}),
-        ("machine power", {"recovery.power": 9e4}),
-        ("machine torque", {"recovery.torque": 40.0}),
-        ("demand", {"vehicle.deceleration": 3.0}),
-        ("rule", {"recovery.power_allowed": 8e4}),
-        ("store", {"recovery.charging_power": 5e4}),
+        ("grip", "front", "bus", {"vehicle.grip": 0.3, "vehicle.deceleration": 12.0, "recovery.power": 4e6}),
+        ("grip", "rear", "bus", {"vehicle.grip": 0.3, "vehicle.deceleration": 12.0, "recovery.power": 4e6}),
+        ("machine power", "rear", "wheel", {"recovery.power": 9e4}),
+        ("machine torque", "front", "shaft", {"recovery.torque": 40.0}),
+        ("machine torque", "rear", "shaft", {"recovery.torque": 40.0}),
+        ("demand", "front", "bus", {"vehicle.deceleration": 3.0}),
+        ("rule", "front", "wheel", {"recovery.power_allowed": 8e4}),
+        ("rule", "rear", "shaft", {"recovery.power_allowed": 8e4}),
+        ("rule", "rear", "bus", {"recovery.power_allowed": 8e4}),
+        ("store", "front", "wheel", {"recovery.charging_power": 5e4}),
     ],
 )
-@pytest.mark.parametrize(("axle", "point"), [("front", "wheel"), ("rear", "shaft"), ("rear", "bus")])
 def test_the_limit_that_binds_is_named(tmp_path, binds, numbers, axle, point):
     """Trap: one efficiency over all terms. The least limit at the DC bus, and its name, against a list of all."""
     car = still(11).but({**PLENTY, **numbers}, {"recovery.axle": axle, "recovery.measuring_point": point})

@@ -201,7 +201,7 @@ rules:
   either: {require: bolt >= 6 mm or bolt >= 0.25 in or options.traction_control == no}
   computed: {require: mass.total >= 700 kg and mass.front_share >= 30 %}
   advice: {standing: should, require: dimensions.overall_height <= 1100 mm}
-""".replace("  ground: {states: \"{}\", require", "  ground: {require")
+""".replace('  ground: {states: "{}", require', "  ground: {require")
 
 GOOD = """\
 design: Heron 4

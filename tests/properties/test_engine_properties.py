@@ -224,7 +224,9 @@ def test_many_rational_margins_are_those_of_fractions() -> None:
 
 # --- overlays --------------------------------------------------------------------------------------------------------
 
-WORDS = st.sampled_from(("1 mm", "2 kg", "none", "yes", "{u: 1 mm}", "{u: 1 mm, v: {w: 2 mm}}", "{value: 3 mm, basis: drawing}"))
+WORDS = st.sampled_from(
+    ("1 mm", "2 kg", "none", "yes", "{u: 1 mm}", "{u: 1 mm, v: {w: 2 mm}}", "{value: 3 mm, basis: drawing}")
+)
 PATHS = st.lists(st.sampled_from("abc"), min_size=1, max_size=3).map(".".join)
 OVERLAYS = st.lists(st.tuples(PATHS, WORDS), max_size=4).map(
     lambda pairs: Overlay.of([(path, parse_yaml(text, "x.yaml")) for path, text in pairs])
@@ -233,7 +235,9 @@ OVERLAYS = st.lists(st.tuples(PATHS, WORDS), max_size=4).map(
 
 @given(OVERLAYS, OVERLAYS, OVERLAYS)
 @settings(max_examples=300, deadline=None)
-def test_overlays_are_associative_with_the_empty_one_as_identity(first: Overlay, second: Overlay, third: Overlay) -> None:
+def test_overlays_are_associative_with_the_empty_one_as_identity(
+    first: Overlay, second: Overlay, third: Overlay
+) -> None:
     assert first.then(second).then(third) == first.then(second.then(third))
     assert first.then(Overlay()) == first == Overlay().then(first)
 

@@ -127,12 +127,15 @@ def bomb(levels: int) -> str:
     ],
     ids=["tower", "tall tower", "great power", "great exponent", "exponentials", "sine", "brackets", "signs", "joined"],
 )
-def test_a_hostile_formula_ends_in_a_diagnostic_or_unproven(tmp_path: Path, condition: str, said: tuple[str, ...]) -> None:
+def test_a_hostile_formula_ends_in_a_diagnostic_or_unproven(
+    tmp_path: Path, condition: str, said: tuple[str, ...]
+) -> None:
     assert run(tmp_path, "a: 1.5 m\n", rule(condition))[0] in said
 
 
 @pytest.mark.parametrize(
-    ("condition", "said"), [("d64 <= 10", ("it: breach", "it: unproven")), ("d64 - d64 * d0 / d0 <= 1", ("it: unproven",))]
+    ("condition", "said"),
+    [("d64 <= 10", ("it: breach", "it: unproven")), ("d64 - d64 * d0 / d0 <= 1", ("it: unproven",))],
 )
 def test_sixty_four_squarings_end_at_once(tmp_path: Path, condition: str, said: tuple[str, ...]) -> None:
     # (1501)^(2^64) has more than 10^19 digits: it is above 10 without doubt, and cannot be held against its like.

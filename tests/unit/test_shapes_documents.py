@@ -75,9 +75,7 @@ def test_kinds_that_need_no_last_day(expires: str, design: str, said: str) -> No
     assert only(design, rule).verdict == said
 
 
-@pytest.mark.parametrize(
-    ("day", "absent"), [(date(2027, 6, 29), "open"), (LAST, "open"), (date(2027, 7, 1), "breach")]
-)
+@pytest.mark.parametrize(("day", "absent"), [(date(2027, 6, 29), "open"), (LAST, "open"), (date(2027, 7, 1), "breach")])
 def test_a_document_that_is_due(day: date, absent: str) -> None:
     rule = "rules:\n  it:\n    evidence: {kind: drawing, name: hoop, due: 2027-06-30}\n"
     assert only("", rule, on=day).verdict == absent

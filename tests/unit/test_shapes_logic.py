@@ -137,7 +137,8 @@ def test_margins_without_a_common_measure_are_refused() -> None:
 
 
 @pytest.mark.parametrize(
-    ("room", "said", "share"), [("8 mm", "complies", "1/10"), ("9.5 mm", "tight", "1/10"), ("9.5 mm", "complies", "1/20")]
+    ("room", "said", "share"),
+    [("8 mm", "complies", "1/10"), ("9.5 mm", "tight", "1/10"), ("9.5 mm", "complies", "1/20")],
 )
 def test_the_reserve_of_the_house(room: str, said: str, share: str) -> None:
     found = only(f"a: {room}\n", f"{INPUTS}rules:\n  it: {{require: a <= 10 mm}}\n", reserve=Fraction(share))
@@ -180,10 +181,7 @@ def test_the_margin_of_another_rule() -> None:
 
 
 def test_the_margin_of_a_rule_for_each_element_is_that_of_its_worst() -> None:
-    rules = (
-        "rules:\n  radii: {each: e in edges, require: e.radius >= 2 mm}\n"
-        "  it: {require: margin(radii) >= 0.5 mm}\n"
-    )
+    rules = "rules:\n  radii: {each: e in edges, require: e.radius >= 2 mm}\n  it: {require: margin(radii) >= 0.5 mm}\n"
     found = findings(check_texts("edges: {sill: {radius: 4 mm}, lip: {radius: 2.7 mm}}\n", rules))
     assert margin(found["radii"]) == Fraction(7, 10)
     assert (found["it"].verdict, margin(found["it"])) == ("complies", Fraction(2, 10))

@@ -92,7 +92,8 @@ tables:
 
 
 @pytest.mark.parametrize(
-    ("axle", "said"), [("axle: rear, ", "complies"), ("axle: front, ", "breach"), ("axle: both, ", "open"), ("", "open")]
+    ("axle", "said"),
+    [("axle: rear, ", "complies"), ("axle: front, ", "breach"), ("axle: both, ", "open"), ("", "open")],
 )
 def test_a_table_over_a_choice(axle: str, said: str) -> None:
     assert require("recovery.power <= most_power", f"recovery: {{{axle}power: 100 kW}}\n", CHOICES).verdict == said
@@ -223,5 +224,7 @@ def test_a_definition_that_nobody_declares_is_refused() -> None:
     [("", "complies"), ("mass: {total: 100 kg}\n", "complies"), ("mass: {total: 103 kg}\n", "open")],
 )
 def test_a_declared_value_that_the_parts_contradict_is_open(declared: str, said: str) -> None:
-    parts = "masses:\n  tub: {mass: 60 kg, at: 0 0 0 mm}\n  wheel: {mass: 10 kg, quantity: 2, mirror: yes, at: 0 1 0 m}\n"
+    parts = (
+        "masses:\n  tub: {mass: 60 kg, at: 0 0 0 mm}\n  wheel: {mass: 10 kg, quantity: 2, mirror: yes, at: 0 1 0 m}\n"
+    )
     assert require("mass.total >= 90 kg", parts + declared).verdict == said

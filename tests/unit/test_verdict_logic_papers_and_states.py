@@ -86,7 +86,9 @@ def test_a_due_day_may_rest_on_the_design() -> None:
     ],
 )
 def test_documents_named_by_an_element(papers: str, verdict: str) -> None:
-    declared = "inputs: {lamps: {kind: collection, meaning: Lamps, element: {proof: {kind: text, meaning: Its paper}}}}\n"
+    declared = (
+        "inputs: {lamps: {kind: collection, meaning: Lamps, element: {proof: {kind: text, meaning: Its paper}}}}\n"
+    )
     rule = f"{declared}rules:\n  it: {{each: l in lamps, evidence: {{kind: inspection, name: l.proof}}}}\n"
     assert only(f"lamps:\n  {papers}\n", rule).verdict == verdict
     by_name = rule.replace("l.proof", "l")
@@ -311,7 +313,9 @@ def table(text: str) -> str:
     return f"{DECLARED}tables:\n  least: {{{text}}}\n"
 
 
-STEPS = table("over: a, steps: [{up_to: 10 mm, value: 1 kg}, {below: 20 mm, value: 2 kg}, {up_to: 20 mm, value: 3 kg}, {otherwise: 4 kg}]")
+STEPS = table(
+    "over: a, steps: [{up_to: 10 mm, value: 1 kg}, {below: 20 mm, value: 2 kg}, {up_to: 20 mm, value: 3 kg}, {otherwise: 4 kg}]"
+)
 
 
 @pytest.mark.parametrize(
@@ -337,12 +341,17 @@ def test_a_key_without_a_row() -> None:
     assert require("m >= least", "m: 10 kg\n", STEPS).verdict == "open"
 
 
-WORDS = table('over: k, steps: [{is: front, value: soft}, {is: rear, value: hard}]')
+WORDS = table("over: k, steps: [{is: front, value: soft}, {is: rear, value: hard}]")
 
 
 @pytest.mark.parametrize(
     ("design", "verdict"),
-    [("k: front\nw: soft\n", "complies"), ("k: rear\nw: soft\n", "breach"), ("k: rear\nw: hard\n", "complies"), ("w: hard\n", "open")],
+    [
+        ("k: front\nw: soft\n", "complies"),
+        ("k: rear\nw: soft\n", "breach"),
+        ("k: rear\nw: hard\n", "complies"),
+        ("w: hard\n", "open"),
+    ],
 )
 def test_tables_of_words(design: str, verdict: str) -> None:
     assert require("w == least", design, WORDS).verdict == verdict
@@ -353,7 +362,9 @@ def test_a_word_of_a_table_stands_opposite_it() -> None:
     assert require("least == hard", "k: front\n", WORDS).verdict == "breach"
 
 
-GATED = table("over: [a, k], steps: [{when: a <= 10 mm and k == front, value: 1 kg}, {when: f, value: 2 kg}, {otherwise: 3 kg}]")
+GATED = table(
+    "over: [a, k], steps: [{when: a <= 10 mm and k == front, value: 1 kg}, {when: f, value: 2 kg}, {otherwise: 3 kg}]"
+)
 
 
 @pytest.mark.parametrize(

@@ -62,7 +62,7 @@ def test_when(design: str, when: str, verdict: str, room: int | None) -> None:
         assert bool(found.reason) == (verdict in ("open", "unproven"))
 
 
-UNLESS = 'require: a <= 10 mm, unless: {when: f, because: It is a show car}'
+UNLESS = "require: a <= 10 mm, unless: {when: f, because: It is a show car}"
 
 
 @pytest.mark.parametrize(
@@ -107,7 +107,7 @@ def each(text: str) -> str:
 
 
 def test_exemptions_are_judged_for_each_element() -> None:
-    exempt = 'require: e.radius >= 1.5 mm, unless: {when: e.exposed == yes, because: It is taped}'
+    exempt = "require: e.radius >= 1.5 mm, unless: {when: e.exposed == yes, because: It is taped}"
     assert said(only(EDGES, each(exempt))) == ("complies", Fraction(1, 2))
     # The vane fails now, and it is unknown whether it is exempt; the sill complies.
     found = only(EDGES, each(exempt.replace("1.5 mm", "2.5 mm")))
@@ -253,7 +253,12 @@ def test_a_reserve_in_the_unit_of_the_margin(reserve: str, verdict: str) -> None
     assert said(found) == (verdict, 2)
     assert (found.reason == "inside the house reserve") == (verdict == "tight")
     assert with_house("a: 12 mm\n", rule("require: a <= 10 mm"), f"it: {reserve}").verdict == "breach"
-    assert with_house("a: 8 mm\n", rule("require: a <= 10 mm") + "  that: {require: a <= 8 mm}\n", f"that: {reserve}").verdict == "complies"
+    assert (
+        with_house(
+            "a: 8 mm\n", rule("require: a <= 10 mm") + "  that: {require: a <= 8 mm}\n", f"that: {reserve}"
+        ).verdict
+        == "complies"
+    )
 
 
 @pytest.mark.parametrize(
@@ -335,8 +340,16 @@ def test_a_reserve_is_no_matter_for_advice_that_is_not_followed() -> None:
         ("a: 12 mm\nb: 3 mm\n", "require: a <= 10 mm or b <= 2 mm", "breach"),
         ("a: 8 mm\nb: 3 mm\n", "require: a <= 10 mm and b <= 2 mm", "breach"),
         ("a: 8 mm\nb: 1 mm\n", "require: a <= 10 mm and b <= 2 mm", "complies"),
-        ("a: 8 mm\nb: 1 mm\n", "require: a <= 10 mm, branches: {p: {require: b <= 0 mm}, q: {require: b <= 2 mm}}", "complies"),
-        ("a: 8 mm\nb: 3 mm\n", "require: a <= 10 mm, branches: {p: {require: b <= 0 mm}, q: {require: b <= 2 mm}}", "breach"),
+        (
+            "a: 8 mm\nb: 1 mm\n",
+            "require: a <= 10 mm, branches: {p: {require: b <= 0 mm}, q: {require: b <= 2 mm}}",
+            "complies",
+        ),
+        (
+            "a: 8 mm\nb: 3 mm\n",
+            "require: a <= 10 mm, branches: {p: {require: b <= 0 mm}, q: {require: b <= 2 mm}}",
+            "breach",
+        ),
     ],
 )
 def test_a_rule_that_is_referred_to(design: str, other: str, verdict: str) -> None:
@@ -368,7 +381,7 @@ def test_rules_that_share_a_name_stem_are_bound_once_each() -> None:
     [("open", "open"), ("complies", "complies"), ("breach", "breach"), ("not applicable", "not applicable")],
 )
 def test_an_empty_loop(empty: str, verdict: str) -> None:
-    text = each(f'require: e.radius >= 1 mm, empty: {empty}')
+    text = each(f"require: e.radius >= 1 mm, empty: {empty}")
     found = only("edges: {}\n", text)
     assert (found.verdict, found.margin) == (verdict, None)
     assert ("no element" in found.reason) == (empty == "not applicable")
@@ -383,7 +396,7 @@ def test_an_empty_loop(empty: str, verdict: str) -> None:
     [("open", "open"), ("complies", "open"), ("breach", "open"), ("not applicable", "open")],
 )
 def test_a_loop_of_which_it_is_unknown_whether_it_is_empty(empty: str, verdict: str) -> None:
-    text = f'rules:\n  it: {{each: e in edges where e.exposed == yes, require: e.radius >= 1 mm, empty: {empty}}}\n'
+    text = f"rules:\n  it: {{each: e in edges where e.exposed == yes, require: e.radius >= 1 mm, empty: {empty}}}\n"
     assert only("edges: {lip: {radius: 3 mm}}\n", text).verdict == verdict
     sure = "edges: {lip: {radius: 3 mm}, sill: {radius: 3 mm, exposed: yes}, vane: {radius: 0 mm, exposed: no}}\n"
     found = only(sure.replace("lip: {radius: 3 mm}, ", ""), text)
@@ -408,8 +421,10 @@ def test_an_empty_loop_under_a_condition(design: str, verdict: str) -> None:
 
 
 def test_a_condition_on_the_element_is_left_out_where_there_is_none() -> None:
-    text = DECLARED + "groups: {dry: {when: f, rules: [it]}}\n" + each(
-        "require: e.radius >= 1 mm, empty: breach, when: e.exposed == yes"
+    text = (
+        DECLARED
+        + "groups: {dry: {when: f, rules: [it]}}\n"
+        + each("require: e.radius >= 1 mm, empty: breach, when: e.exposed == yes")
     )
     assert only("f: yes\nedges: {}\n", text).verdict == "breach"
     assert only("f: no\nedges: {}\n", text).verdict == "not applicable"

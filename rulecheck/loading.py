@@ -1,0 +1,244 @@
+"""What a question is put to: files read, changes laid over the design, rulesets, house and reserves."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Mapping, Sequence
+from dataclasses import dataclass, field
+from fractions import Fraction
+from os import PathLike
+from pathlib import Path
+
+from rulecheck.binding.conditions import numeric_parts
+from rulecheck.diagnostics import Faults, Refused, Span
+from rulecheck.graph.figures import Graph
+from rulecheck.model.design import Design, Overlay, State
+from rulecheck.model.design_reader import read_change, read_design
+from rulecheck.model.house import has_house, read_house
+from rulecheck.model.names import is_name
+from rulecheck.model.ruleset import House, Ruleset
+from rulecheck.model.ruleset_reader import read_ruleset
+from rulecheck.quantity.dimension_names import name_of
+from rulecheck.quantity.quantity import Quantity
+from rulecheck.quantity.reading_values import read_quantity
+from rulecheck.reading.nearest import nearest
+from rulecheck.reading.nodes import Located
+from rulecheck.reading.workspace import Workspace
+from rulecheck.reading.yaml_reader import parse_yaml
+from rulecheck.studies.check import Reserves
+
+File = str | PathLike[str]
+
+
+@dataclass(slots=True)
+class Session:
+    """Files read for one question: where they lie, and their texts for diagnostics."""
+
+    workspaces: list[Workspace] = field(default_factory=list)
+    extra: dict[str, str] = field(default_factory=dict)
+
+    def workspace(self, path: Path) -> Workspace:
+        """The workspace of a file; one for each root."""
+        made = Workspace.around(path)
+        for known in self.workspaces:
+            if known.root == made.root:
+                return known
+        self.workspaces.append(made)
+        return made
+
+    @property
+    def texts(self) -> dict[str, str]:
+        """All texts that were read, by file."""
+        return {**self.extra, **{file: text for space in self.workspaces for file, text in space.texts.items()}}
+
+    @property
+    def digests(self) -> dict[str, str]:
+        """SHA-256 of every file that was read."""
+        return {file: digest for space in self.workspaces for file, digest in space.digests.items()}
+
+
+def load_design(path: File, *, session: Session | None = None) -> Design:
+    """Read a design or a variant. Raises `Refused` with every fault of the files read."""
+    workspace = (session or Session()).workspace(Path(path))
+    return read_design(workspace, workspace.name(Path(path)))
+
+
+def load_ruleset(path: File, *, session: Session | None = None) -> Ruleset:
+    """Read a ruleset with what it extends. Raises `Refused` with every fault of the files read."""
+    workspace = (session or Session()).workspace(Path(path))
+    return read_ruleset(workspace, workspace.name(Path(path)))
+
+
+@dataclass(slots=True)
+class Loaded:
+    """What a question is put to."""
+
+    design: Design
+    rulesets: tuple[Ruleset, ...]
+    also_known: tuple[Ruleset, ...]
+    house: House | None
+    changes: tuple[str, ...]
+
+
+def load(
+    session: Session,
+    path: File,
+    rules: Sequence[File],
+    settings: Mapping[str, str] | Iterable[tuple[str, str]],
+    changes: Sequence[File],
+    states: Mapping[str, str] | None,
+    *,
+    needs_rules: bool = True,
+) -> Loaded:
+    """Read everything that a question is put to. Raises `Refused` with the faults of all files."""
+    faults = Faults()
+    workspace = session.workspace(Path(path))
+    design: Design | None = None
+    house: House | None = None
+    try:
+        design = read_design(workspace, workspace.name(Path(path)))
+    except Refused as refused:
+        faults.take(refused)
+    try:
+        house = read_house(workspace) if has_house(workspace) else None
+    except Refused as refused:
+        faults.take(refused)
+    rulesets, also_known = _rulesets(session, workspace, design, house, rules, faults)
+    overlay, told = overlay_of(session, settings, changes, faults)
+    faults.settle()
+    assert design is not None
+    if needs_rules and not rulesets:
+        faults.add(
+            "no-rules",
+            f"{design.file} names no ruleset",
+            expected="rulesets: [name.ruleset.yaml] in the design, or --rules FILE",
+        )
+    elif needs_rules and not any(book.rules for book in rulesets):
+        faults.add("no-rules", f"{rulesets[0].file} has no rules", rulesets[0].span, expected="rules: {name: {…}}")
+    design = design.with_overlay(overlay)
+    design, said = _in_states(design, states or {}, faults)
+    faults.settle()
+    return Loaded(design, rulesets, also_known, house, (*told, *said))
+
+
+def _rulesets(
+    session: Session,
+    workspace: Workspace,
+    design: Design | None,
+    house: House | None,
+    rules: Sequence[File],
+    faults: Faults,
+) -> tuple[tuple[Ruleset, ...], tuple[Ruleset, ...]]:
+    """The rulesets to check against, and those whose inputs the design may state besides."""
+    own: list[Ruleset] = []
+    named = design.rulesets if design is not None else ()
+    beside = design.file if design is not None else ""
+    if house is not None and not named:
+        named, beside = house.rulesets, house.file
+    quiet = Faults()
+    for reference in named:
+        try:
+            target = workspace.resolve(reference.text, beside, reference.span)
+            own.append(read_ruleset(workspace, target, reference.span))
+        except Refused as refused:
+            (quiet if rules else faults).take(refused)
+    if not rules:
+        return tuple(own), ()
+    given: list[Ruleset] = []
+    for path in rules:
+        try:
+            given.append(load_ruleset(path, session=session))
+        except Refused as refused:
+            faults.take(refused)
+    return tuple(given), tuple(own)
+
+
+def overlay_of(
+    session: Session,
+    settings: Mapping[str, str] | Iterable[tuple[str, str]],
+    changes: Sequence[File],
+    faults: Faults,
+) -> tuple[Overlay, tuple[str, ...]]:
+    """Change files and then settings as one overlay, and what they set in words."""
+    overlay = Overlay()
+    told: list[str] = []
+    for path in changes:
+        try:
+            space = session.workspace(Path(path))
+            overlay = overlay.then(read_change(space, space.name(Path(path))))
+            told.append(f"change {space.name(Path(path))}")
+        except Refused as refused:
+            faults.take(refused)
+    pairs = settings.items() if isinstance(settings, Mapping) else settings
+    for path, text in pairs:
+        overlay = overlay.then(_setting(session, path, text, faults))
+        told.append(f"{path} = {text}")
+    return overlay, tuple(told)
+
+
+def _setting(session: Session, path: str, text: str, faults: Faults) -> Overlay:
+    """One change from the command line."""
+    file = f"--set {path}"
+    session.extra[file] = text
+    if not all(is_name(part) for part in path.split(".")):
+        faults.add(
+            "bad-name", f"'{path}' cannot be a path", Span(file, 0, 0, 1, 1), expected="--set tyres.rear.width=250mm"
+        )
+        return Overlay()
+    try:
+        return Overlay.of([(path, parse_yaml(text, file))])
+    except Refused as refused:
+        faults.take(refused)
+        return Overlay()
+
+
+def _in_states(design: Design, states: Mapping[str, str], faults: Faults) -> tuple[Design, tuple[str, ...]]:
+    for axis, name in states.items():
+        state: State | None = design.states.get(axis, {}).get(name)
+        if state is None:
+            known = [f"{a}={s}" for a, named in design.states.items() for s in named]
+            faults.add(
+                "unknown-state",
+                f"the design has no state {axis}={name}",
+                expected=" or ".join(known),
+                advice=nearest(f"{axis}={name}", known),
+            )
+            continue
+        design = design.with_overlay(state.overlay)
+    return design, tuple(f"state {axis}: {name}" for axis, name in states.items())
+
+
+def reserves_of(loaded: Loaded, graph: Graph, share: Fraction | None) -> Reserves:
+    """The reserves of the house file, or one share for every rule in their place."""
+    if share is not None:
+        return Reserves({}, share)
+    by_rule: dict[str, Quantity] = {}
+    faults = Faults()
+    own = {symbol: unit for book in loaded.rulesets for symbol, unit in book.units.items()}
+    for name, where in (loaded.house.reserves if loaded.house else {}).items():
+        read = read_quantity(where, None, own=own, faults=faults)
+        if read is not None:
+            by_rule[name] = read
+            _check_reserve(name, where, read, graph, faults)
+    faults.settle()
+    return Reserves(by_rule)
+
+
+def _check_reserve(name: str, where: Located, read: Quantity, graph: Graph, faults: Faults) -> None:
+    """A reserve that no margin of its rule can be held against is a mistake."""
+    cases = [case for rule in graph.rules if rule.name == name for case in rule.cases]
+    margins = [part.margin for case in cases for part in numeric_parts(case.condition)]
+    dimensions = {margin.dimension for margin in margins if margin is not None}
+    if dimensions and read.unit.dimension not in dimensions:
+        told = f"the reserve of rule '{name}' is {name_of(read.unit.dimension)}, and its margin is not"
+        expected = " or ".join(sorted(name_of(dimension) for dimension in dimensions))
+        faults.add("wrong-dimension", told, where.span, expected=expected)
+
+
+def reserve_text(house: House | None, share: Fraction | None) -> str:
+    """The reserve in words, empty where there is none."""
+    if share is not None:
+        return f"{float(share * 100):g} % of every limit"
+    if house is None or not house.reserves:
+        return ""
+    count = len(house.reserves)
+    return f"{count} rule{'s' if count > 1 else ''}, in {house.file}"
