@@ -23,6 +23,7 @@ FIRST = (
     "language",
     "units",
     "verdicts-and-margins",
+    "what-if-and-headroom",
     "physics",
     "diagnostics",
 )

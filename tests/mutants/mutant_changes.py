@@ -71,6 +71,22 @@ def changes(node: ast.AST) -> Iterator[Change]:
 
 def _made(node: ast.AST) -> Iterator[tuple[ast.AST, str]]:
     match node:
+        case ast.stmt():
+            yield from _statements(node)
+        case ast.comprehension(ifs=[_, *_]):
+            yield ast.comprehension(node.target, node.iter, [], node.is_async), f"all taken: {_text(node)}"
+        case ast.Name(id=name, ctx=ast.Load()) if name in _NAMES:
+            yield ast.Name(_NAMES[name], ast.Load()), ""
+        case ast.Attribute(value=value, attr=attr, ctx=ast.Load()) if attr in _FIELDS:
+            yield ast.Attribute(value, _FIELDS[attr], ast.Load()), ""
+        case ast.Constant():
+            yield from _constants(node)
+        case ast.expr():
+            yield from _expressions(node)
+
+
+def _expressions(node: ast.expr) -> Iterator[tuple[ast.AST, str]]:
+    match node:
         case ast.Compare():
             yield from _comparisons(node)
         case ast.BoolOp():
@@ -79,12 +95,6 @@ def _made(node: ast.AST) -> Iterator[tuple[ast.AST, str]]:
             yield operand, ""
         case ast.BinOp(op=op) if type(op) in _COUNTED:
             yield ast.BinOp(node.left, _COUNTED[type(op)](), node.right), ""
-        case ast.Constant():
-            yield from _constants(node)
-        case ast.Name(id=name, ctx=ast.Load()) if name in _NAMES:
-            yield ast.Name(_NAMES[name], ast.Load()), ""
-        case ast.Attribute(value=value, attr=attr, ctx=ast.Load()) if attr in _FIELDS:
-            yield ast.Attribute(value, _FIELDS[attr], ast.Load()), ""
         case ast.List(elts=[first, second], ctx=ast.Load()):
             yield ast.List([second, first], ast.Load()), ""
         case ast.Call(func=ast.Name(id=name), args=[*before, one, other]) if name in _ORDERED:
@@ -92,10 +102,6 @@ def _made(node: ast.AST) -> Iterator[tuple[ast.AST, str]]:
         case ast.IfExp():
             yield node.body, ""
             yield node.orelse, ""
-        case ast.comprehension(ifs=[_, *_]):
-            yield ast.comprehension(node.target, node.iter, [], node.is_async), f"all taken: {_text(node)}"
-        case ast.stmt():
-            yield from _statements(node)
 
 
 def _comparisons(node: ast.Compare) -> Iterator[tuple[ast.AST, str]]:

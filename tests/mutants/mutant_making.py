@@ -95,6 +95,8 @@ def _put(node: ast.AST, step: Step, new: ast.AST) -> None:
 _NO_LOGIC = (ast.Assert, ast.JoinedStr, ast.Import, ast.ImportFrom)
 _TOLD = ("fault", "add", "nearest", "Related")
 """Calls whose arguments are words for people, or are named nowhere else."""
+_FACTS = ("array", "form", "gives", "many", "meaning", "partials", "precedence", "script", "sign", "symbolic", "takes")
+"""Facts of an operation that no exact reading asks for."""
 _FAULTS = ("Broken", "BROKEN", "fault", "faults")
 """Names that speak of files at fault: those get no verdict at all, and the tests of diagnostics hold them."""
 
@@ -133,6 +135,8 @@ def _constant(node: ast.AST) -> str:
 
 def _parts(node: ast.AST) -> Iterator[tuple[Step, ast.AST]]:
     for field, value in ast.iter_fields(node):
+        if isinstance(node, ast.keyword) and node.arg in _FACTS:
+            continue
         if field == "test" and isinstance(node, ast.If) and _about_faults(node):
             continue
         if field in ("annotation", "returns", "decorator_list", "func_name", "bases", "targets", "target"):

@@ -18,8 +18,8 @@ from mutant_making import Mutant
 from mutant_patching import CodeKey, exchanged, install, needs_import, patch, watched
 from mutant_targets import ROOT, SUITE, TARGETS
 
-PATIENCE = 30
-"""Seconds after which a mutant counts as killed: it does not end."""
+PATIENCE = 60
+"""Seconds of computing after which a mutant counts as killed: it does not end."""
 FILES = frozenset(str(ROOT / target.file) for target in TARGETS)
 SURVIVED, KILLED, UNFIT = 0, 1, 7
 
@@ -216,7 +216,7 @@ class Pool:
     def _be(self, mutant: Mutant, write: int) -> None:
         status = KILLED
         try:
-            signal.alarm(PATIENCE)
+            signal.setitimer(signal.ITIMER_PROF, PATIENCE)
             _silent()
             ended = self.work(mutant)
             status, killer = ended if isinstance(ended, tuple) else (ended, -1)

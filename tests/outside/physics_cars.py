@@ -9,6 +9,7 @@ from __future__ import annotations
 
 from collections.abc import Iterable, Mapping
 from dataclasses import dataclass, field, replace
+from functools import cache
 from pathlib import Path
 
 import numpy as np
@@ -223,29 +224,31 @@ def random_car(seed: int) -> Car:
     return Car(numbers, tuple(masses), tuple(surfaces), {"recovery.axle": "rear", "options.driven_axle": "rear"})
 
 
-def in_si(figure: str) -> float:
-    """What one of the figure's own unit is in the SI."""
+@cache
+def unit_of(figure: str) -> str:
+    """The unit in which a figure is spoken of."""
     name, _, last = figure.partition(".")
     module = built_in(name)
     assert module is not None
     unit = module.figures[last].unit
+    assert unit is not None, f"{figure} is a text"
+    return unit.text
+
+
+def in_si(figure: str) -> float:
+    """What one of the figure's own unit is in the SI."""
     factors = {
         "kW": 1e3, "MJ": 1e6, "mm/N": 1e-3, "N/mm": 1e3, "mm": 1e-3, "deg": np.pi / 180, "km/h": 1 / 3.6, "%": 1e-2,
         "deg/gn": np.pi / 180 / GRAVITY,
     }  # fmt: skip
-    return float(factors.get(unit.text if unit else "", 1.0))
+    return float(factors.get(unit_of(figure), 1.0))
 
 
 def found(folder: Path, figures: Iterable[str], settings: Mapping[str, str] | None = None) -> dict[str, Finding]:
     """The findings on one rule a figure, in the figure's own unit."""
     rules = {}
     for figure in figures:
-        name, _, last = figure.partition(".")
-        module = built_in(name)
-        assert module is not None
-        unit = module.figures[last].unit
-        limit = f"0 {unit.text}" if unit and unit.text != "1" else "0"
-        rules[figure.replace(".", "_")] = {"require": f"{figure} >= {limit}"}
+        rules[figure.replace(".", "_")] = {"require": f"{figure} >= 0 {unit_of(figure)}"}
     write_ruleset(folder, rules=rules)
     return findings(folder, settings)
 
