@@ -25,7 +25,8 @@ from rulecheck.model.design import Design
 from rulecheck.model.ruleset import Formula, PhysicsModule, Ruleset
 from rulecheck.model.vocabulary import Vocabulary
 
-MOST_FRAMES = 40_000
+MOST_FRAMES = 250_000
+"""What the longest chain of the most deeply nested formulas takes; such frames use no stack of the machine."""
 Loader = Callable[[str], PhysicsModule | None]
 
 

@@ -26,6 +26,7 @@ class Mutant:
     number: int
     path: tuple[Step, ...]
     alternative: int
+    lines: range
 
     @property
     def key(self) -> tuple[str, str, str, int]:
@@ -56,7 +57,17 @@ def mutants_of(target: Target) -> Iterator[Mutant]:
             continue  # without a definition of its own a module does not even load
         for index, (_, name) in enumerate(changes(node)):
             named[function, name] += 1
-            yield Mutant(target.file, function, name, named[function, name], path, index)
+            yield Mutant(target.file, function, name, named[function, name], path, index, _lines(node))
+
+
+def _lines(node: ast.AST) -> range:
+    """The lines that run where a change makes a difference: of an `if` those of its condition."""
+    first = last = node
+    if isinstance(node, ast.If):
+        first = last = node.test
+    elif isinstance(node, ast.comprehension):
+        first, last = node.target, node.ifs[-1] if node.ifs else node.iter
+    return range(first.lineno, (last.end_lineno or last.lineno) + 1)  # type: ignore[attr-defined]
 
 
 def mutated(mutant: Mutant) -> CodeType:

@@ -9,7 +9,7 @@ import importlib.util
 import sys
 from collections.abc import Callable, Iterator, Mapping, Sequence
 from functools import cache
-from types import CodeType, FunctionType, ModuleType
+from types import CodeType, FrameType, FunctionType, ModuleType
 
 from mutant_making import Mutant, mutated, tree_of
 from mutant_targets import ROOT
@@ -68,18 +68,22 @@ def _own(code: CodeType) -> tuple[object, ...]:
     return (code.co_code, code.co_names, code.co_varnames, code.co_freevars, code.co_cellvars, constants)
 
 
-def patch(changed: Mapping[CodeKey, CodeType]) -> bool:
-    """Give all living functions their changed code. False where one of them cannot take it."""
-    files = {key[0] for key in changed}
+def living(files: frozenset[str]) -> Mapping[CodeKey, list[FunctionType]]:
+    """All functions of some files that live in this process."""
+    found: dict[CodeKey, list[FunctionType]] = {}
     for function in gc.get_objects():
-        if type(function) is not FunctionType or function.__code__.co_filename not in files:
-            continue
-        code = changed.get(code_key(function.__code__))
-        if code is None:
-            continue
-        if code.co_freevars != function.__code__.co_freevars:
-            return False
-        function.__code__ = code
+        if type(function) is FunctionType and function.__code__.co_filename in files:
+            found.setdefault(code_key(function.__code__), []).append(function)
+    return found
+
+
+def patch(changed: Mapping[CodeKey, CodeType], functions: Mapping[CodeKey, list[FunctionType]]) -> bool:
+    """Give living functions their changed code. False where one of them cannot take it."""
+    for key, code in changed.items():
+        for function in functions.get(key, ()):
+            if code.co_freevars != function.__code__.co_freevars:
+                return False
+            function.__code__ = code
     return True
 
 
@@ -108,13 +112,13 @@ def install(mutant: Mutant) -> None:
     sys.meta_path.insert(0, finder)
 
 
-def watched(run: Callable[[], object], files: frozenset[str]) -> frozenset[CodeKey]:
+def called(run: Callable[[], object], files: frozenset[str]) -> frozenset[CodeKey]:
     """The code of some files that runs during a call."""
     seen: set[CodeType] = set()
 
-    def note(frame: object, event: str, _: object) -> None:
+    def note(frame: FrameType, event: str, _: object) -> None:
         if event == "call":
-            seen.add(frame.f_code)  # type: ignore[attr-defined]
+            seen.add(frame.f_code)
 
     sys.setprofile(note)
     try:
@@ -122,3 +126,26 @@ def watched(run: Callable[[], object], files: frozenset[str]) -> frozenset[CodeK
     finally:
         sys.setprofile(None)
     return frozenset(code_key(code) for code in seen if code.co_filename in files)
+
+
+Line = tuple[str, int]
+
+
+def lines_run(run: Callable[[], object], files: frozenset[str]) -> frozenset[Line]:
+    """The lines of some files that run during a call."""
+    seen: set[Line] = set()
+
+    def inside(frame: FrameType, event: str, _: object) -> object:
+        if event == "line":
+            seen.add((frame.f_code.co_filename, frame.f_lineno))
+        return inside
+
+    def outside(frame: FrameType, event: str, _: object) -> object:
+        return inside if frame.f_code.co_filename in files else None
+
+    sys.settrace(outside)  # type: ignore[arg-type]
+    try:
+        run()
+    finally:
+        sys.settrace(None)
+    return frozenset(seen)

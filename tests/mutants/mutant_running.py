@@ -7,7 +7,7 @@ import pickle
 import signal
 import sys
 from collections import Counter
-from collections.abc import Callable, Mapping, Sequence
+from collections.abc import Callable, Sequence
 from dataclasses import dataclass, field
 from functools import cache
 from pathlib import Path
@@ -15,7 +15,7 @@ from pathlib import Path
 import pydantic
 import pytest
 from mutant_making import Mutant
-from mutant_patching import CodeKey, exchanged, install, needs_import, patch, watched
+from mutant_patching import CodeKey, Line, called, exchanged, install, lines_run, living, needs_import, patch
 from mutant_targets import ROOT, SUITE, TARGETS
 
 PATIENCE = 60
@@ -55,7 +55,7 @@ def run(
 def _import_time() -> frozenset[CodeKey]:
     import importlib
 
-    return watched(lambda: importlib.import_module("rulecheck.api"), FILES)
+    return called(lambda: importlib.import_module("rulecheck.api"), FILES)
 
 
 def _paths(suite: Sequence[str]) -> list[str]:
@@ -112,8 +112,8 @@ class _Mutating:
             self.fault = f"the tests fail without any change: {reached}"
             return True
         self.told(f"{len(session.items)} tests, {len(self.mutants)} mutants")
-        deadly: Counter[tuple[str, int]] = Counter()
-        pool = Pool(lambda mutant: _hunt(session, mutant, reached, deadly, self.import_time), self.told, deadly)
+        hunt = _Hunt(session, reached, self.import_time)
+        pool = Pool(hunt, self.told, hunt.deadly)
         for mutant, status in pool.run(self.mutants).items():
             if status == UNFIT:
                 self.outcome.left.append(mutant)
@@ -124,11 +124,11 @@ class _Mutating:
         return True
 
 
-def _reached(session: pytest.Session) -> list[frozenset[CodeKey]] | str:
-    """For each test the code that it reaches; a text where one fails."""
+def _reached(session: pytest.Session) -> list[frozenset[Line]] | str:
+    """For each test the lines that it runs; a text where one fails."""
     found = []
     for item in session.items:
-        found.append(watched(lambda item=item: _run_item(item), FILES))  # type: ignore[misc]
+        found.append(lines_run(lambda item=item: _run_item(item), FILES))  # type: ignore[misc]
         if session.testsfailed:
             return item.nodeid
     return found
@@ -138,25 +138,44 @@ def _run_item(item: pytest.Item) -> None:
     item.config.hook.pytest_runtest_protocol(item=item, nextitem=None)
 
 
-def _hunt(
-    session: pytest.Session,
-    mutant: Mutant,
-    reached: Sequence[frozenset[CodeKey]],
-    deadly: Mapping[tuple[str, int], int],
-    import_time: frozenset[CodeKey],
-) -> int | tuple[int, int]:
-    """Run the tests that reach the change, those that killed most so far first."""
-    changed = exchanged(mutant)
-    if needs_import(changed, import_time) or not patch(changed):
-        return UNFIT
-    able = [index for index, keys in enumerate(reached) if not keys.isdisjoint(changed)]
-    # Those first that killed most of this function's mutants, then of all.
-    able.sort(key=lambda index: (deadly.get((mutant.function, index), 0), deadly.get(("", index), 0)), reverse=True)
-    for index in able:
-        _run_item(session.items[index])
-        if session.testsfailed:
-            return KILLED, index
-    return SURVIVED
+def _covering(reached: Sequence[frozenset[Line]]) -> list[int]:
+    """The tests in an order in which each runs as many lines as it can that none before it ran."""
+    left = dict(enumerate(reached))
+    order: list[int] = []
+    while left:
+        best = max(left, key=lambda index: len(left[index]))
+        news = left.pop(best)
+        order.append(best)
+        if not news:
+            return [*order, *left]
+        left = {index: lines - news for index, lines in left.items()}
+    return order
+
+
+class _Hunt:
+    """Runs the tests that reach a change, until one fails."""
+
+    def __init__(
+        self, session: pytest.Session, reached: Sequence[frozenset[Line]], import_time: frozenset[CodeKey]
+    ) -> None:
+        self.session, self.reached, self.import_time = session, reached, import_time
+        self.order = _covering(reached)
+        self.functions = living(FILES)
+        self.deadly: Counter[tuple[str, int]] = Counter()
+
+    def __call__(self, mutant: Mutant) -> int | tuple[int, int]:
+        changed = exchanged(mutant)
+        if needs_import(changed, self.import_time) or not patch(changed, self.functions):
+            return UNFIT
+        lines = {(str(ROOT / mutant.file), line) for line in mutant.lines}
+        able = [index for index in self.order if not lines.isdisjoint(self.reached[index])]
+        # Those first that killed most of this function's mutants.
+        able.sort(key=lambda index: self.deadly.get((mutant.function, index), 0), reverse=True)
+        for index in able:
+            _run_item(self.session.items[index])
+            if self.session.testsfailed:
+                return KILLED, index
+        return SURVIVED
 
 
 # --- processes -------------------------------------------------------------------------------------------------------
@@ -235,7 +254,6 @@ class Pool:
         self._done[mutant] = os.waitstatus_to_exitcode(status) if os.WIFEXITED(status) else KILLED
         if killer not in ("", "-1"):
             self.deadly[mutant.function, int(killer)] += 1
-            self.deadly["", int(killer)] += 1
             self.said[mutant] = killer
 
 

@@ -7,7 +7,7 @@ and the wheel loads come out of `numpy.linalg.solve`.
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Mapping
+from collections.abc import Callable, Iterable, Mapping
 from dataclasses import dataclass, field, replace
 from functools import cache
 from pathlib import Path
@@ -19,6 +19,7 @@ from rulecheck.outcome.results import Finding
 from rulecheck.physics.modules import built_in
 
 GRAVITY = 9.80665
+NODES, WEIGHTS = np.polynomial.legendre.leggauss(16)
 Numbers = dict[str, float]
 
 UNITS = {
@@ -248,7 +249,8 @@ def found(folder: Path, figures: Iterable[str], settings: Mapping[str, str] | No
     """The findings on one rule a figure, in the figure's own unit."""
     rules = {}
     for figure in figures:
-        rules[figure.replace(".", "_")] = {"require": f"{figure} >= 0 {unit_of(figure)}"}
+        limit = "0" if unit_of(figure) == "1" else f"0 {unit_of(figure)}"
+        rules[figure.replace(".", "_")] = {"require": f"{figure} >= {limit}"}
     write_ruleset(folder, rules=rules)
     return findings(folder, settings)
 
@@ -291,3 +293,15 @@ def said(folder: Path, car: Car, figure: str, words: Iterable[str]) -> str:
     held = [word for index, word in enumerate(known) if report[f"word{index}"].verdict == "complies"]
     assert len(held) == 1, held
     return held[0]
+
+
+def integral(function: Callable[[float], float], low: float, high: float, pieces: int = 40) -> float:
+    """By Gauss and Legendre on equal pieces."""
+    edges = np.linspace(low, high, pieces + 1)
+    middle, half = (edges[1:] + edges[:-1]) / 2, (edges[1:] - edges[:-1]) / 2
+    return float(
+        sum(
+            h * sum(w * function(float(m + h * n)) for n, w in zip(NODES, WEIGHTS, strict=True))
+            for m, h in zip(middle, half, strict=True)
+        )
+    )

@@ -1,4 +1,4 @@
-"""Aero, wheel loads, ride heights and rollover against forces put at their places and solved by numpy.
+"""Aero, wheel loads and ride heights against forces put at their places and solved by numpy.
 
 Derived throughout but where a check names its source. Random cars; each test computes its figures a second way, from
 the balance of forces, of moments and of springs.
@@ -32,7 +32,7 @@ FIGURES = (
         )
     ),
     "platform.loaded_front_ride_height", "platform.loaded_rear_ride_height",
-    "rollover.static_stability_factor", "rollover.threshold", "rollover.tilt_angle", "balance.pressure_behind_gravity",
+    "balance.pressure_behind_gravity",
 )  # fmt: skip
 WHEELS = ("front_left", "front_right", "rear_left", "rear_right")
 
@@ -52,7 +52,7 @@ def close(value: float, due: float) -> None:
     assert value == pytest.approx(due, rel=1e-9, abs=1e-9)
 
 
-# --- air -------------------------------------------------------------------------------------------------------------
+# --- air --------------------------------------------------------------------------------------------------------------
 
 
 @pytest.mark.parametrize("seed", SEEDS)
@@ -160,7 +160,7 @@ def test_a_wing_on_the_rear_axle_moves_with_the_wheelbase(tmp_path):
         assert as_float(area) == pytest.approx(-0.5 / wheelbase, rel=1e-12)
 
 
-# --- wheels ----------------------------------------------------------------------------------------------------------
+# --- wheels -----------------------------------------------------------------------------------------------------------
 
 
 def rolled(car: Car, acceleration: float) -> tuple[float, float, float]:
@@ -286,7 +286,7 @@ def test_by_axle_needs_roll_stiffness(tmp_path):
     assert outside(tmp_path, apart, "load_transfer.lateral_both_axles")
 
 
-# --- ride heights ----------------------------------------------------------------------------------------------------
+# --- ride heights -----------------------------------------------------------------------------------------------------
 
 
 @pytest.mark.parametrize("seed", SEEDS)
@@ -317,63 +317,3 @@ def test_a_car_at_rest_stands_at_its_heights(tmp_path):
     found = figures_of(tmp_path, car, names)
     for end, name in zip(("front", "rear"), names, strict=True):
         close(found[name], car[f"dimensions.{end}_ride_height"])
-
-
-# --- rollover --------------------------------------------------------------------------------------------------------
-
-
-def moment_about_outer_contacts(car: Car, acceleration: float, side: int) -> float:
-    """Moment that holds the car down, about the line through the contacts of one side, by the vector product."""
-    x, y, h = car.centre()
-    front = np.array([0, side * car["dimensions.front_track"] / 2, 0])
-    rear = np.array([car["dimensions.wheelbase"], side * car["dimensions.rear_track"] / 2, 0])
-    force = np.array([0, side * acceleration, -GRAVITY]) * car.total
-    along = (rear - front) / np.linalg.norm(rear - front)
-    return float(side * np.dot(np.cross(np.array([x, y, h]) - front, force), along))
-
-
-@pytest.mark.parametrize("seed", SEEDS)
-def test_tipping_over_the_line_of_contacts(known, seed):
-    """The side force at which the moment about the line is nothing, on the side that tips first."""
-    car, figures = random_car(seed), known(seed)
-    limits = []
-    for side in (-1, 1):
-        none, one = (moment_about_outer_contacts(car, a, side) for a in (0.0, 1.0))
-        limits.append(none / (none - one) / GRAVITY)
-    assert abs(limits[0] - limits[1]) > 0.01
-    close(figures["rollover.threshold"], min(limits))
-    close(np.tan(figures["rollover.tilt_angle"]), min(limits))
-
-
-def tall_car(track: float, height: float) -> Car:
-    numbers = {"dimensions.wheelbase": 2.5, "dimensions.front_track": track, "dimensions.rear_track": track}
-    numbers |= {"dimensions.front_ride_height": 0.1, "dimensions.rear_ride_height": 0.1}
-    return Car(numbers, (Mass(1000.0, 1.2, 0.0, height - 0.1),), ())
-
-
-@pytest.mark.parametrize(("track", "height", "factor"), [(1.6, 0.5, 1.6), (1.5, 0.7, 1.0714)])
-def test_static_stability_factor(tmp_path, track, height, factor):
-    """Half the track over the height of the centre of gravity: NHTSA, 66 FR 3388, 2001 (definition read); arithmetic.
-
-    With equal tracks it is also the tipping threshold in gn.
-    """
-    figures = figures_of(tmp_path, tall_car(track, height), ["rollover.static_stability_factor", "rollover.threshold"])
-    assert figures["rollover.static_stability_factor"] == pytest.approx(factor, abs=1e-4)
-    close(figures["rollover.threshold"], figures["rollover.static_stability_factor"])
-
-
-@pytest.mark.parametrize(
-    ("kind", "heights", "treads", "thresholds"),
-    [
-        ("sports car", (18, 20), (50, 60), (1.2, 1.7)),
-        ("pickup truck", (30, 35), (65, 70), (0.9, 1.1)),
-        ("heavy truck", (60, 85), (70, 72), (0.4, 0.6)),
-    ],
-)
-def test_thresholds_by_class(tmp_path, kind, heights, treads, thresholds):
-    """Gillespie, Fundamentals of Vehicle Dynamics, 1992, table 9.1 (from memory; one figure after the point)."""
-    inch = 0.0254
-    cars = (tall_car(treads[0] * inch, heights[1] * inch), tall_car(treads[1] * inch, heights[0] * inch))
-    for car, due in zip(cars, thresholds, strict=True):
-        value = figures_of(tmp_path, car, ["rollover.static_stability_factor"])["rollover.static_stability_factor"]
-        assert value == pytest.approx(due, abs=0.1), kind

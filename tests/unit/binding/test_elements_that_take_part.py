@@ -12,9 +12,8 @@ TYRES = "tyres: {front: {width: 300 mm}, rear: {width: 300 mm}}\n"
     ("empty", "said"),
     [("open", "open"), ("complies", "complies"), ("breach", "breach"), ("not applicable", "not applicable")],
 )
-@pytest.mark.parametrize("where", ["t.width > 400 mm", "t.axle == none", "t.width > 299 mm and t.width < 300 mm"])
+@pytest.mark.parametrize("where", ["t.width > 400 mm", "1 > 2", "t.width > 299 mm and t.width < 300 mm"])
 def test_nothing_left_behind_where_is_empty_whether_by_word_or_by_number(empty: str, said: str, where: str) -> None:
-    where = where.replace("t.axle == none", "1 > 2")
     rule = f"{{each: t in tyres where {where}, empty: {empty}, require: t.width <= 500 mm}}"
     assert only(TYRES, f"rules: {{it: {rule}}}\n").verdict == said
 
