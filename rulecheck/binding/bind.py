@@ -82,7 +82,14 @@ def _bound(shared: Shared, figures: Sequence[str]) -> Graph:
         tuple(rules),
         shared.day,
         tuple(shared.declared.values()),
+        _cautions(shared),
     )
+
+
+def _cautions(shared: Shared) -> dict[str, str]:
+    """The words of caution of the physics modules that were read."""
+    modules = [found for key, found in shared.memo.items() if key[0] == "module"]
+    return {module.name: module.caution for module in modules if isinstance(module, PhysicsModule) and module.caution}
 
 
 def _shared(

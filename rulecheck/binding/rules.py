@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
 from dataclasses import dataclass, replace
 from itertools import product
 
@@ -12,6 +11,7 @@ from rulecheck.binding.comparing import all_of, any_of, opposite
 from rulecheck.binding.conditions import Builder, certain, holds, numeric_parts, open_part, scales_agree
 from rulecheck.binding.dispensations import dispensation
 from rulecheck.binding.documents import evidence, judgement
+from rulecheck.binding.meeting import met_by
 from rulecheck.binding.parsing import parsed, parsed_each
 from rulecheck.binding.scope import Scope, Shared
 from rulecheck.binding.states import Stance, stances
@@ -67,7 +67,7 @@ class _Binding:
             self._note_shape()
         touched = sorted(self.record.touched)
         permit = dispensation(self.record, self.rule.name)
-        met = self.record.bank.flag(True) if permit is not None else self._met(cases)
+        met = self.record.bank.flag(True) if permit is not None else met_by(self.record, cases)
         estimated = tuple(
             path for path in touched if self.shared.facts.get(path) and self.shared.facts[path].basis == "estimated"
         )
@@ -83,14 +83,6 @@ class _Binding:
         case = self._case(scope.inside(pairs, loop=False), "", None)
         if case is not None:
             self.shared.memo[("shape", self.ruleset.file, self.rule.name)] = case.condition
-
-    def _met(self, cases: Sequence[Case]) -> Term:
-        scope, flags = self.record, []
-        for case in cases:
-            asked = any_of(scope, [case.exempt, holds(scope, case.condition)])
-            # Where it is unknown whether a rule applies it is open, whatever it would come to (a branch says so).
-            flags.append(scope.bank.branch(case.applies, asked, scope.bank.flag(True)))
-        return all_of(scope, flags)
 
     def _in_stance(self, stance: Stance) -> list[Case]:
         scope = self.record

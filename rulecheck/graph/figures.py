@@ -65,3 +65,4 @@ class Graph:
     rules: tuple[BoundRule, ...]
     day: date
     declared: tuple[DeclaredCheck, ...] = field(default=())
+    cautions: Mapping[str, str] = field(default_factory=dict)

@@ -11,6 +11,7 @@ from rulecheck.graph.figures import DeclaredCheck
 from rulecheck.model.design import Design
 from rulecheck.model.ruleset import Ruleset
 from rulecheck.outcome.results import VERDICTS, Finding, Report, RulesetInfo
+from rulecheck.reading.nodes import Located
 from rulecheck.studies.amounts import amount
 from rulecheck.studies.check import Checker
 from rulecheck.studies.totals import binds, total
@@ -49,7 +50,7 @@ def report(
         rules=findings,
         counts=counts(findings),
         tightest=_tightest(findings),
-        notes=(*_decision(asked), *_notes(checker)),
+        notes=(*_decision(asked), *_notes(checker), *_stray(design, rulesets)),
         cautions=(CAUTION,),
         changes=asked.changes,
         reserve=asked.reserve,
@@ -91,6 +92,20 @@ def _decision(asked: Asked) -> Iterable[str]:
             f"the house asks for the decision rule '{asked.decision}'; this version judges every value as stated "
             "(simple), and takes no account of its uncertainty or tolerance"
         )
+
+
+def _stray(design: Design, rulesets: Sequence[Ruleset]) -> Iterable[str]:
+    """What the design says of rules that none of the rule books has: it has no effect, and may be a slip."""
+    rules = {name for ruleset in rulesets for name in ruleset.rules}
+    named = [(f"claims.{name}", name) for name in design.names("claims") or ()]
+    named += [(f"judgements.{name}", name) for name in design.names("judgements") or ()]
+    for name in design.names("dispensations") or ():
+        said = design.leaves.get(f"dispensations.{name}.rule")
+        named.append((f"dispensations.{name}", said.text if isinstance(said, Located) else ""))
+    for path, rule in named:
+        if rule not in rules:
+            place = f" ({design.keys[path]})" if path in design.keys else ""
+            yield f"{path} speaks of a rule '{rule}' that these rule books do not have{place}; it has no effect"
 
 
 def _notes(checker: Checker) -> Iterable[str]:

@@ -54,17 +54,17 @@ def _known(checker: Checker, rulesets: Sequence[Ruleset]) -> list[str]:
 
 
 def _named(checker: Checker, rulesets: Sequence[Ruleset], name: str, describe: Describe | None) -> Iterable[Working]:
-    books = {book.file: book for book in rulesets}
+    books, cautions = {book.file: book for book in rulesets}, checker.graph.cautions
     for bound in checker.graph.rules:
         if bound.name == name:
             yield _rule(checker, bound, books[bound.ruleset].rules[name], describe)
     figures = checker.graph.figures
     if name in figures:
-        yield _figure(checker, figures[name], describe, "")
+        yield _figure(checker, figures[name], describe, cautions.get(name.partition(".")[0], ""))
     elif any(full.startswith(f"{name}.") for full in figures):
         for full, figure in figures.items():
             if full.startswith(f"{name}.") and "(" not in full and "[" not in full:
-                yield _figure(checker, figure, describe, "")
+                yield _figure(checker, figure, describe, cautions.get(name, ""))
 
 
 def _rule(checker: Checker, bound: BoundRule, rule: Rule, describe: Describe | None) -> Working:

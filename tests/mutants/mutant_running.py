@@ -252,6 +252,8 @@ class Pool:
         with os.fdopen(read, "rb") as file:
             killer = file.read().decode()
         self._done[mutant] = os.waitstatus_to_exitcode(status) if os.WIFEXITED(status) else KILLED
+        if self._done[mutant] == SURVIVED:
+            self.told(f"lives: {mutant}")
         if killer not in ("", "-1"):
             self.deadly[mutant.function, int(killer)] += 1
             self.said[mutant] = killer
