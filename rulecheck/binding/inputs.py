@@ -241,6 +241,9 @@ def collection(scope: Scope, path: str, entry: Entry) -> Items:
     names = scope.view.design.names(path)
     if names is None and scope.view.design.states_none(path):
         names = ()
+    base = scope.shared.base.design
+    if names and base.names(path) is None and not base.states_none(path):
+        names = None  # what a state sets of some items does not make known what the car has of them
     if names is None:
         return Items(path, None, lacking=path, missing=max(entry.at_least, len(entry.items), 1))
     gone = [name for name in entry.items if name not in names]

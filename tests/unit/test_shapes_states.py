@@ -132,6 +132,12 @@ def test_an_item_may_be_absent_in_a_state() -> None:
     assert (found.verdict, margin(found)) == ("complies", 0)
 
 
+def test_a_state_does_not_make_an_absent_collection_known() -> None:
+    light = mass("{fuel: [empty], driver: [light]}", "<= 100 kg")
+    assert only(BOTH, light).verdict == "open"
+    assert only("masses: {}\n" + BOTH, light).verdict == "complies"
+
+
 def test_figures_are_computed_anew_in_a_state() -> None:
     rule = (
         f'{NEEDED}derived: {{all_mass: {{formula: "sum(m.mass for m in masses)", unit: kg}}}}\n'
