@@ -25,7 +25,7 @@ if TYPE_CHECKING:
     from rulecheck.output.screen import Screen
 
 COMPLIES, BREACH, UNUSABLE, NOT_SETTLED, INTERRUPTED = 0, 1, 2, 3, 130
-SCHEMAS = ("design", "ruleset", "house", "change", "report", "workings", "whatif", "diagnostics")
+SCHEMAS = ("design", "ruleset", "house", "change", "report", "workings", "whatif", "headroom", "diagnostics")
 
 
 def main() -> NoReturn:
@@ -305,13 +305,14 @@ def _schema(what: str, rules: Sequence[str]) -> str:
         raise click.UsageError(f"WHAT is one of {', '.join(SCHEMAS)}", click.get_current_context())
     if rules and what not in ("design", "change"):
         raise click.UsageError("--rules goes with the schema of a design or a change", click.get_current_context())
-    if what in ("report", "workings", "whatif", "diagnostics"):
-        from rulecheck.output import report_schema
+    if what in ("report", "workings", "whatif", "headroom", "diagnostics"):
+        from rulecheck.output import report_schema, study_schemas
 
         found = {
             "report": report_schema.report_schema,
             "workings": report_schema.workings_schema,
-            "whatif": report_schema.whatif_schema,
+            "whatif": study_schemas.whatif_schema,
+            "headroom": study_schemas.headroom_schema,
             "diagnostics": report_schema.diagnostics_schema,
         }[what]()
     else:

@@ -50,10 +50,11 @@ def _rules(outcome: WhatIf) -> Iterable[RenderableType]:
 
 def _table(first: str) -> Table:
     table = Table(box=None, padding=(0, 1, 0, 0), pad_edge=False, expand=True, header_style="underline")
-    table.add_column("", width=5)
+    if first == "rule":
+        table.add_column("", width=5)
     table.add_column(first, ratio=1)
     for header in ("before", "after", "difference", "foretold"):
-        table.add_column(header, justify="right", no_wrap=True, max_width=13)
+        table.add_column(header, justify="right", no_wrap=True, max_width=14)
     return table
 
 
@@ -102,7 +103,6 @@ def _figures(outcome: WhatIf) -> Iterable[RenderableType]:
 
 
 def _figure_row(change: FigureChange, moved: Moved, place: int, count: int) -> Iterable[Text]:
-    yield words("")
     column = f" [{place}]" if count > 1 else ""
     yield words((change.name if place == 1 else "") + column)
     yield words(short(change.before) if place == 1 else "")

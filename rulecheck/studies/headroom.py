@@ -1,7 +1,7 @@
 """`headroom`: how far one input can move each way before the first rule breaks, and which.
 
 The stretch from the value to the answer is covered without a gap by intervals on each of which every rule is certainly
-met, so that no earlier breach is jumped over (interval exclusion by bisection). Where a margin is linear in the input
+met, so that no earlier breach is jumped over (interval exclusion by bisection); where the value stands on a limit the first billionth is bridged by exact points. Where a margin is linear in the input
 the end itself is found exactly; else it is known to one part in a billion of the stretch that was looked at.
 """
 
@@ -116,12 +116,19 @@ class _Input:
             truths = self._over(flags, direction, inner, outer)
             if all(truth is holds for truth in truths):
                 inner, width = outer, width * 2
+            elif width <= reach * FINENESS and not inner and self._holds_beside(flags, direction, outer, holds):
+                # The value stands on a limit, and balls are wider than points: exact points bridge the first step.
+                inner, width = outer, width * 2
             elif width <= reach * FINENESS or steps > MOST_STEPS:
                 turned = tuple(index for index, truth in enumerate(truths) if truth is not holds)
                 return self._ended(rules, direction, _Found(inner, outer, turned), holds=holds)
             else:
                 width /= 2
         return Travel("free", None, None, (), False)
+
+    def _holds_beside(self, flags: Sequence[Term], direction: int, outer: Fraction, holds: bool) -> bool:
+        points = (outer / 8, outer / 2, outer)
+        return all(t is holds for point in points for t in self.along.at(flags, self.start + direction * point))
 
     def _over(self, flags: Iterable[Term], direction: int, inner: Fraction, outer: Fraction) -> list[bool | None]:
         ends = sorted((self.start + direction * inner, self.start + direction * outer))

@@ -16,6 +16,7 @@ from jsonschema import Draft202012Validator
 from rulecheck import __version__
 from rulecheck.cli import run
 from rulecheck.output.report_schema import diagnostics_schema, report_schema, workings_schema
+from rulecheck.output.study_schemas import headroom_schema, whatif_schema
 
 HERE = Path(__file__).parent
 CASE = HERE / "plover"
@@ -44,6 +45,16 @@ SHOWN = [
     ("workings.txt", 0, ["workings", "plover.design.yaml", "tyre_width", "mass_with_driver", "diffuser_room"]),
     ("workings.json", 0, ["workings", "plover.design.yaml", "diffuser_width", "--form", "json"]),
     ("workings-closed-form.txt", 0, ["workings", "plover.design.yaml", "diffuser_width", "--closed-form"]),
+    ("whatif.txt", 0, ["whatif", "plover.design.yaml", "--set", "tyres.rear.width=320mm"]),
+    (
+        "whatif-columns.txt",
+        0,
+        ["whatif", "plover.design.yaml", "--change", "mended.change.yaml", "--change", "settled.change.yaml"],
+    ),
+    ("whatif.json", 0, ["whatif", "plover.design.yaml", "--set", "tyres.rear.width=320mm", "--form", "json"]),
+    ("whatif-nothing.txt", 0, ["whatif", "plover.design.yaml"]),
+    ("headroom.txt", 0, ["headroom", "plover.design.yaml", "--change", "settled.change.yaml"]),
+    ("headroom.json", 0, ["headroom", "plover.design.yaml", "tyres.rear.width", "--form", "json"]),
     ("refused.json", 2, ["check", "faulty.design.yaml", "--form", "json"]),
 ]
 
@@ -65,7 +76,13 @@ def test_diagnostics_on_standard_error(capsys: pytest.CaptureFixture[str], golde
 
 @pytest.mark.parametrize(
     ("name", "schema"),
-    [("check.json", report_schema()), ("workings.json", workings_schema()), ("refused.json", diagnostics_schema())],
+    [
+        ("check.json", report_schema()),
+        ("workings.json", workings_schema()),
+        ("whatif.json", whatif_schema()),
+        ("headroom.json", headroom_schema()),
+        ("refused.json", diagnostics_schema()),
+    ],
 )
 def test_json_meets_its_schema(name: str, schema: dict[str, object]) -> None:
     Draft202012Validator(schema).validate(json.loads((CASE / "expected" / name).read_text(encoding="utf-8")))
