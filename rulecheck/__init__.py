@@ -14,30 +14,42 @@ from rulecheck.diagnostics import Diagnostic, Refused, Span
 __version__ = "0.1.0"
 
 if TYPE_CHECKING:
-    from rulecheck.api import check, load_design, load_ruleset, workings
+    from rulecheck.api import Change, check, headroom, load_design, load_ruleset, whatif, workings
+    from rulecheck.outcome.changes import WhatIf
     from rulecheck.outcome.results import Finding, Report, Workings
+    from rulecheck.outcome.travel import HeadroomReport
 
 _LATE = {
     "check": "rulecheck.api",
     "load_design": "rulecheck.api",
     "load_ruleset": "rulecheck.api",
     "workings": "rulecheck.api",
+    "whatif": "rulecheck.api",
+    "headroom": "rulecheck.api",
+    "Change": "rulecheck.api",
+    "WhatIf": "rulecheck.outcome.changes",
+    "HeadroomReport": "rulecheck.outcome.travel",
     "Finding": "rulecheck.outcome.results",
     "Report": "rulecheck.outcome.results",
     "Workings": "rulecheck.outcome.results",
 }
 
 __all__ = [
+    "Change",
     "Diagnostic",
     "Finding",
+    "HeadroomReport",
     "Refused",
     "Report",
     "Span",
+    "WhatIf",
     "Workings",
     "check",
     "date",
+    "headroom",
     "load_design",
     "load_ruleset",
+    "whatif",
     "workings",
 ]
 

@@ -264,7 +264,7 @@ def bind_point(scope: Scope, path: str, entry: Entry, span: Span) -> tuple[Numbe
     numbers = []
     for axis, given in zip("xyz", coordinates, strict=True):
         own = stated(scope, f"{path}.{axis}")
-        single = replace(entry, path=f"{entry.path}.{axis}", kind="number", unit=entry.unit or "mm", default="")
+        single = _axis(scope, entry, axis)
         if own is None and given is not None and node is not None:
             numbers.append(Number(_coordinate(scope, path, axis, single, node, given, unit), unit))
         else:
@@ -275,6 +275,16 @@ def bind_point(scope: Scope, path: str, entry: Entry, span: Span) -> tuple[Numbe
                 else Number(scope.missing(f"{path}.{axis}", "number", unit.dimension, span), unit)
             )
     return numbers[0], numbers[1], numbers[2]
+
+
+def _axis(scope: Scope, entry: Entry, axis: str) -> Entry:
+    """One coordinate of a point as an input of its own; made once for each kind of point."""
+    key = ("axis", entry.path, axis)
+    if key not in scope.shared.memo:
+        made = replace(entry, path=f"{entry.path}.{axis}", kind="number", unit=entry.unit or "mm", default="")
+        scope.shared.memo[key] = made
+    known: Entry = scope.shared.memo[key]
+    return known
 
 
 def _coordinate(scope: Scope, path: str, axis: str, entry: Entry, node: LeafNode, given: Quantity, unit: Unit) -> Any:
