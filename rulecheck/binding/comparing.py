@@ -261,7 +261,8 @@ def _equality(
     assert isinstance(a, Number) and isinstance(b, Number)
     unequal = (operator == "!=") != negated
     limit_right = not right.rests_on_inputs or left.rests_on_inputs
-    value, limit = (a, b) if limit_right else (b, a)
+    shown = _shown(a, left.day), _shown(b, right.day)
+    value, limit = shown if limit_right else shown[::-1]
     if syntax.within is None:
         if not (a.counted and b.counted):
             return scope.fault(

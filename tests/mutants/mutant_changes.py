@@ -38,8 +38,8 @@ _WORDS = {
     "and": "or", "or": "and", "every": "some", "some": "every",
     "at most": "at least", "at least": "at most", "within": "at most", "one of": "at most", "until": "at most",
     # kinds
-    "constant": "apply", "comparison": "flag", "evidence": "flag", "judgement": "flag", "flag": "comparison",
-    "number": "text", "text": "number", "days": "min", "day": "h", "degC": "degF", "degF": "degC", "dB": "dBA",
+    "constant": "apply", "comparison": "flag", "evidence": "flag", "judgement": "flag",
+    "days": "min", "day": "h", "degC": "degF", "degF": "degC", "dB": "dBA",
     # rows of tables, fields of a judgement
     "up_to": "below", "below": "up_to", "is": "below", "when": "is",
     "verdict": "role", "role": "reason", "reason": "role", "date": "role",
@@ -59,8 +59,8 @@ _FIELDS = {
     "low": "high", "high": "low", "first": "last", "last": "first", "applies": "exempt", "exempt": "applies",
 }  # fmt: skip
 
-_ORDERED = ("_do", "_ordinals", "compared")
-"""Calls whose last two arguments are exchanged."""
+_ORDERED = ("subtract", "divide", "below", "at_most")
+"""Operations whose operands are exchanged; with the others the order makes no difference."""
 
 
 def changes(node: ast.AST) -> Iterator[Change]:
@@ -95,13 +95,26 @@ def _expressions(node: ast.expr) -> Iterator[tuple[ast.AST, str]]:
             yield operand, ""
         case ast.BinOp(op=op) if type(op) in _COUNTED:
             yield ast.BinOp(node.left, _COUNTED[type(op)](), node.right), ""
-        case ast.List(elts=[first, second], ctx=ast.Load()):
-            yield ast.List([second, first], ast.Load()), ""
-        case ast.Call(func=ast.Name(id=name), args=[*before, one, other]) if name in _ORDERED:
-            yield ast.Call(node.func, [*before, other, one], node.keywords), ""
+        case ast.Call():
+            yield from _exchanged(node)
         case ast.IfExp():
             yield node.body, ""
             yield node.orelse, ""
+
+
+def _exchanged(node: ast.Call) -> Iterator[tuple[ast.AST, str]]:
+    match node.args:
+        case [ast.expr() as operation, ast.List(elts=[one, other]), *rest] if _is_ordered(operation):
+            yield ast.Call(node.func, [operation, ast.List([other, one], ast.Load()), *rest], node.keywords), ""
+        case [ast.expr() as scope, ast.expr() as operation, one, other] if _is_ordered(operation):
+            yield ast.Call(node.func, [scope, operation, other, one], node.keywords), ""
+        case [ast.Name(id="scope") as scope, one, other] if getattr(node.func, "id", "") == "_ordinals":
+            yield ast.Call(node.func, [scope, other, one], node.keywords), ""
+
+
+def _is_ordered(operation: ast.expr) -> bool:
+    words = {part.id for part in ast.walk(operation) if isinstance(part, ast.Name)}
+    return not words.isdisjoint(_ORDERED)
 
 
 def _comparisons(node: ast.Compare) -> Iterator[tuple[ast.AST, str]]:
@@ -133,10 +146,17 @@ def _statements(node: ast.stmt) -> Iterator[tuple[ast.AST, str]]:
         case ast.If(test=test):
             yield ast.If(ast.Constant(True), node.body, node.orelse), f"always: if {_text(test)}"
             yield ast.If(ast.Constant(False), node.body, node.orelse), f"never: if {_text(test)}"
-        case ast.Return(value=ast.expr() as value) if not (isinstance(value, ast.Constant) and value.value is None):
+        case ast.Return(value=ast.expr() as value) if not _says_nothing(value):
             yield ast.Return(ast.Constant(None)), ""
         case ast.Expr() | ast.Assign() | ast.AugAssign() | ast.Continue() | ast.Break():
             yield ast.Pass(), f"dropped: {_text(node)}"
+
+
+def _says_nothing(value: ast.expr) -> bool:
+    """None, and what is as good as None for whoever only asks whether there is something."""
+    if isinstance(value, (ast.Tuple, ast.List)):
+        return not value.elts
+    return isinstance(value, ast.Constant) and not value.value
 
 
 def _text(node: ast.AST) -> str:

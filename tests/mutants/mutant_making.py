@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import ast
 from collections import Counter
-from collections.abc import Iterator
+from collections.abc import Iterator, Sequence
 from dataclasses import dataclass
 from functools import cache
 from types import CodeType
@@ -104,12 +104,16 @@ def _put(node: ast.AST, step: Step, new: ast.AST) -> None:
 # --- where a change may be made --------------------------------------------------------------------------------------
 
 _NO_LOGIC = (ast.Assert, ast.JoinedStr, ast.Import, ast.ImportFrom)
-_TOLD = ("fault", "add", "nearest", "Related")
-"""Calls whose arguments are words for people, or are named nowhere else."""
+_TOLD = ("fault", "add", "nearest", "Related", "zip")
+"""Calls whose arguments are words for people, or are named nowhere else, or are only held to be of one length."""
 _FACTS = ("array", "form", "gives", "many", "meaning", "partials", "precedence", "script", "sign", "symbolic", "takes")
 """Facts of an operation that no exact reading asks for."""
 _FAULTS = ("Broken", "BROKEN", "fault", "faults")
 """Names that speak of files at fault: those get no verdict at all, and the tests of diagnostics hold them."""
+_BESIDE = ("touched", "uses", "memo", "leave", "MOST_CASES", "MOST_COMBINATIONS")
+"""Names of what other studies ask for, of what is kept to be quick, and of bounds."""
+_WORDS = ("text", "shown", "told", "label", "advice", "count")
+"""Names of texts for people, and of the count that is held against a bound."""
 
 
 def sites(
@@ -127,12 +131,16 @@ def sites(
 
 def _about_faults(node: ast.AST) -> bool:
     if isinstance(node, ast.If):
-        return _names_faults(node.test) or all(_names_faults(part) for part in node.body)
-    return not isinstance(node, (ast.FunctionDef, ast.ClassDef, ast.For)) and _names_faults(node)
+        return (
+            _names(node.test, (*_FAULTS, *_BESIDE)) or _names(node.body[-1], _FAULTS) or _names(node.body[0], _FAULTS)
+        )
+    if isinstance(node, ast.Expr):
+        return _names(node, (*_FAULTS, *_BESIDE))
+    return not isinstance(node, (ast.FunctionDef, ast.ClassDef, ast.For)) and _names(node, _FAULTS)
 
 
-def _names_faults(node: ast.AST) -> bool:
-    return any(getattr(part, "id", getattr(part, "attr", "")) in _FAULTS for part in ast.walk(node))
+def _names(node: ast.AST, words: Sequence[str]) -> bool:
+    return any(getattr(part, "id", getattr(part, "attr", "")) in words for part in ast.walk(node))
 
 
 def _constant(node: ast.AST) -> str:
@@ -148,7 +156,7 @@ def _parts(node: ast.AST) -> Iterator[tuple[Step, ast.AST]]:
     for field, value in ast.iter_fields(node):
         if isinstance(node, ast.keyword) and node.arg in _FACTS:
             continue
-        if field == "test" and isinstance(node, ast.If) and _about_faults(node):
+        if field in ("test", "body") and isinstance(node, ast.If) and _about_faults(node):
             continue
         if field in ("annotation", "returns", "decorator_list", "func_name", "bases", "targets", "target"):
             continue
@@ -168,5 +176,5 @@ def _is_words(node: ast.AST) -> bool:
     """Docstrings, and what is put together as text for people."""
     if isinstance(node, (ast.Assign, ast.AugAssign)):
         target = node.targets[0] if isinstance(node, ast.Assign) else node.target
-        return isinstance(target, ast.Name) and target.id in ("text", "shown", "told", "label")
+        return isinstance(target, ast.Name) and target.id in _WORDS
     return isinstance(node, ast.Expr) and isinstance(node.value, ast.Constant)

@@ -196,6 +196,11 @@ def test_days_are_shown_as_dates() -> None:
     assert (str(found.value), str(found.limit)) == ("2027-03-04", "2027-03-10")
     turned = require("2027-03-10 >= d", DESIGN, DECLARED)
     assert (str(turned.value), str(turned.limit)) == ("2027-03-04", "2027-03-10")
+    for condition in ("d == 2027-03-04", "2027-03-04 == d", "not d != 2027-03-04"):
+        same = require(condition, DESIGN, DECLARED)
+        assert (same.verdict, str(same.value), str(same.limit)) == ("complies", "2027-03-04", "2027-03-04")
+    other = require("2027-03-05 != d", DESIGN, DECLARED)
+    assert (str(other.value), str(other.limit)) == ("2027-03-04", "2027-03-05")
     lengths = require("d - on <= 5 days", DESIGN, DECLARED)
     assert lengths.value is not None
     assert lengths.limit is not None
@@ -448,3 +453,240 @@ def test_margins_with_roots_are_ordered_among_the_others(condition: str, said: s
     found = require(condition, DESIGN, DECLARED)
     assert found.binding is not None
     assert (found.verdict, found.binding.part) == (said, part)
+
+
+# --- kinds -----------------------------------------------------------------------------------------------------------
+
+KINDS = {
+    "number": "a",
+    "mass": "c",
+    "flag": "f",
+    "text": "w",
+    "date": "d",
+    "days": "3 days",
+    "months": "2 months",
+    "item": "tyres.front",
+}
+MATES = {("date", "date"), ("days", "days")}
+
+
+@pytest.mark.parametrize("one", KINDS)
+@pytest.mark.parametrize("other", KINDS)
+@pytest.mark.parametrize("operator", ["<=", "==", "!="])
+def test_unlike_kinds_are_refused(one: str, other: str, operator: str) -> None:
+    alike = one == other
+    condition = f"{KINDS[one]} {operator} {KINDS[other]}"
+    if operator != "<=" and alike and one in ("flag", "text", "date", "item"):
+        assert require(condition, DESIGN, DECLARED).verdict == ("complies" if operator == "==" else "breach")
+    elif operator == "<=" and alike and one in ("number", "mass", "date"):
+        assert require(condition, DESIGN, DECLARED).verdict == "complies"
+    else:
+        faults = refused(DESIGN, f"{DECLARED}rules:\n  it:\n    require: {condition}\n")
+        assert {item.code for item in faults} <= {"kind-mismatch", "dimension-mismatch", "formula-syntax"}
+
+
+@pytest.mark.parametrize(
+    "condition",
+    [
+        "f in steels", "c in gauges", "w in gauges", "d in gauges", "a in steels", "a in w", "a in [yes, no]",
+        "a == 3 mm within 1 kg", "a == 3 mm within f", "a <= 3 mm within 1 mm", "a == 3 mm",
+        "a", "w", "sum(e.radius for e in edges)", "count(for e in edges)", "d - on <= 2 months", "d - on <= 3 mm",
+    ],
+)  # fmt: skip
+def test_conditions_that_are_refused(condition: str) -> None:
+    assert refused(f"{DESIGN}edges: {{}}\n", f'{DECLARED}rules:\n  it:\n    require: "{condition}"\n')
+
+
+@pytest.mark.parametrize(
+    ("condition", "said"),
+    [
+        ("p == q", "breach"),
+        ("p != q", "complies"),
+        ("p == p", "complies"),
+        ("not p == q", "complies"),
+    ],
+)
+def test_items_are_the_same_where_they_are_one(condition: str, said: str) -> None:
+    rule = f'rules:\n  it: {{each: "p, q in pairs(edges)", require: "{condition}"}}\n'
+    assert only("edges: {lip: {}, sill: {}}\n", rule).verdict == said
+
+
+@pytest.mark.parametrize(
+    ("condition", "value", "limit"),
+    [
+        ("a == b within 20 mm", "40", "50"),
+        ("b == a within 20 mm", "50", "40"),
+        ("45 mm == a within 20 mm", "40", "45"),
+        ("a == 45 mm within 20 mm", "40", "45"),
+        ("30 mm == 40 mm within 20 mm", "30", "40"),
+        ("n == 3", "3", "3"),
+        ("4 != n", "3", "4"),
+        ("3 == 3", "3", "3"),
+        ("3 != 4", "3", "4"),
+    ],
+)
+def test_which_side_is_the_limit_of_an_equality(condition: str, value: str, limit: str) -> None:
+    found = require(condition, DESIGN, DECLARED)
+    assert found.verdict == "complies"
+    assert found.value is not None
+    assert found.limit is not None
+    assert (found.value.exact, found.limit.exact) == (value, limit)
+
+
+@pytest.mark.parametrize(
+    ("condition", "text"),
+    [
+        ("a <= 50 mm", "a <= 50 mm"),
+        ("not a <= 30 mm", "not a <= 30 mm"),
+        ("a == 41 mm within 3 mm", "a == 41 mm within 3 mm"),
+        ("not a == 41 mm within 0.5 mm", "not a == 41 mm within 0.5 mm"),
+        ("not not a <= 50 mm", "a <= 50 mm"),
+    ],
+)
+def test_the_words_of_a_part(condition: str, text: str) -> None:
+    (part,) = require(condition, DESIGN, DECLARED).parts
+    assert (part.text, part.verdict) == (text, "complies")
+
+
+@pytest.mark.parametrize(
+    ("condition", "unit"),
+    [
+        ("a == 41 mm within 0.1 * b", "m"),
+        ("a == 41 mm within a * a / b", "mm"),
+        ("a == b within b * b / b", "m"),
+        ("b >= a * b / b", "m"),
+        ("a * a <= b * b", "m^2"),
+        ("a * a <= 1 m^2", "m^2"),
+        ("p <= 0.5", "%"),
+        ("p <= 0.25 * 2", "%"),
+        ("p <= 50 %", "%"),
+        ("n <= 0.5 * 10", "1"),
+        ("n <= 600 %", "%"),
+        ("a / b <= 3", "1"),
+        ("c * a <= c * b", "kg*m"),
+    ],
+)
+def test_the_unit_of_a_margin_that_no_limit_states(condition: str, unit: str) -> None:
+    declared = DECLARED.replace("lists:", '  p: {unit: "%", meaning: p}\nlists:')
+    found = require(condition, f"{DESIGN}p: 40 %\n", declared)
+    assert found.margin is not None
+    assert (found.verdict, found.margin.unit) == ("complies", unit)
+
+
+@pytest.mark.parametrize(
+    ("condition", "counted"),
+    [
+        ("n <= 5", True),
+        ("n <= 5.5", False),
+        ("n / 2 <= 5", False),
+        ("n <= 3 * n", True),
+        ("5 >= n", True),
+        ("5.5 >= n", False),
+        ("5 >= n / 2", False),
+    ],
+)
+def test_a_count_is_held_against_a_count(condition: str, counted: bool) -> None:
+    assert require(condition, DESIGN, DECLARED).counted is counted
+
+
+@pytest.mark.parametrize(
+    ("condition", "relative"),
+    [
+        ("0 mm <= a <= 50 mm", 0.2),
+        ("-10 mm <= a - 40 mm <= 0 mm", 0.0),
+        ("70 degC <= t <= 90 degC", None),
+        ("343.15 K <= t <= 90 degC", None),
+        ("70 degC <= t <= 363.15 K", None),
+        ("158 degF <= t", None),
+        ("l <= 100 dB", None),
+        ("t <= 363.15 K", pytest.approx(10 / 363.15)),
+    ],
+)
+def test_what_measures_a_range(condition: str, relative: object) -> None:
+    declared = DECLARED.replace("lists:", "  l: {unit: dB, meaning: l}\nlists:")
+    found = require(condition, f"{DESIGN}l: 90 dB\n", declared)
+    assert found.verdict == "complies"
+    assert found.relative_margin == (relative if not isinstance(relative, float) else pytest.approx(relative))
+
+
+@pytest.mark.parametrize(
+    ("condition", "said", "unit", "room"),
+    [
+        ("a <= 50 mm and c >= 4.9 kg", "complies", "kg", Fraction(1, 10)),
+        ("a <= 40.1 mm and c >= 1 kg", "complies", "mm", Fraction(1, 10)),
+        ("c >= 4 kg and a <= 45 mm", "complies", "mm", 5),
+        ("a <= 80 mm or c >= 4 kg", "complies", "mm", 40),
+        ("c >= 4 kg or a <= 45 mm", "complies", "kg", 1),
+        ("a <= 20 mm and c >= 6 kg", "breach", "mm", -20),
+        ("a <= 20 mm or c >= 6 kg", "breach", "kg", -1),
+    ],
+)
+def test_parts_are_ordered_by_relative_margin(condition: str, said: str, unit: str, room: Fraction | int) -> None:
+    found = require(condition, DESIGN, DECLARED)
+    assert found.margin is not None
+    assert (found.verdict, found.margin.unit, margin(found)) == (said, unit, room)
+
+
+def test_parts_without_a_measure_are_ordered_by_their_margin() -> None:
+    found = require("t <= 90 degC and t <= 85 degC and t <= 95 degC", DESIGN, DECLARED)
+    assert margin(found) == 5
+    assert margin(require("t <= 90 degC or t <= 85 degC or t <= 95 degC", DESIGN, DECLARED)) == 15
+
+
+@pytest.mark.parametrize(
+    ("condition", "said"),
+    [
+        ("count(for e in edges where e.exposed == yes) >= 1", "complies"),
+        ("count(for e in edges where e.exposed == yes) >= 2", "open"),
+        ("count(for e in edges where e.exposed == yes) >= 3", "breach"),
+        ("count(for e in edges where e.exposed == yes) >= 1 and a <= 50 mm", "complies"),
+        ("a <= 30 mm or count(for e in edges where e.exposed == yes) <= 2", "complies"),
+        ("a <= 30 mm and count(for e in edges where e.exposed == yes) >= 3", "breach"),
+        ("1 <= count(for e in edges where e.exposed == yes) <= 2", "complies"),
+        ("count(for e in edges where e.exposed == yes) == 1", "open"),
+        ("count(for e in edges where e.exposed == yes) == 3", "breach"),
+        ("count(for e in edges where e.exposed == yes) != 3", "complies"),
+    ],
+)
+def test_counts_between_bounds(condition: str, said: str) -> None:
+    design = f"{DESIGN}edges: {{lip: {{exposed: yes}}, sill: {{}}, vane: {{exposed: no}}}}\n"
+    assert require(condition, design, DECLARED).verdict == said
+
+
+@pytest.mark.parametrize(
+    ("condition", "said", "texts"),
+    [
+        ("e.radius >= 1 mm and e.radius <= 9 mm", "complies", ["e.radius >= 1 mm", "e.radius <= 9 mm"]),
+        ("e.radius >= 3 mm and e.radius <= 9 mm", "breach", ["e.radius >= 3 mm", "e.radius <= 9 mm"]),
+        ("e.radius >= 3 mm or e.radius <= 2 mm", "complies", ["e.radius >= 3 mm", "e.radius <= 2 mm"]),
+        ("e.radius >= 5 mm or e.radius <= 1 mm", "breach", ["e.radius >= 5 mm", "e.radius <= 1 mm"]),
+        ("(e.radius >= 5 mm or e.radius <= 2 mm) and e.radius >= 1 mm", "breach", None),
+    ],
+)
+def test_joined_conditions_of_every_element(condition: str, said: str, texts: list[str] | None) -> None:
+    edges = "edges: {lip: {radius: 2 mm}, sill: {radius: 4 mm}}\n"
+    found = require(f"every({condition} for e in edges)", edges)
+    assert found.verdict == said
+    if texts is not None:
+        assert [part.text for part in found.parts] == [f"{name}: {text}" for name in ("lip", "sill") for text in texts]
+
+
+def test_every_keeps_its_margins_where_a_choice_settles_who_takes_part() -> None:
+    wings = "aero_surfaces: {front: {kind: wing, drag_area: 1 m^2}, floor: {kind: floor, drag_area: 3 m^2}}\n"
+    found = require("every(s.drag_area <= 2 m^2 for s in aero_surfaces where s.kind == wing)", wings)
+    assert (found.verdict, margin(found)) == ("complies", 1)
+
+
+def test_every_waits_for_what_is_required() -> None:
+    lamps = (
+        "inputs: {lamps: {kind: collection, meaning: Lamps, at_least: 2, element: {area: {unit: cm^2, meaning: a}}}}\n"
+    )
+    every = "every(l.area >= 2 cm^2 for l in lamps)"
+    assert require(every, "lamps: {a: {area: 3 cm^2}}\n", lamps).verdict == "open"
+    assert require(every, "lamps: {a: {area: 1 cm^2}}\n", lamps).verdict == "breach"
+    assert require(every, "lamps: {a: {area: 3 cm^2}, b: {area: 3 cm^2}}\n", lamps).verdict == "complies"
+    one = "tyres: {front: {width: 300 mm}}\n"
+    assert require("every(t.width <= 310 mm for t in tyres)", one).verdict == "open"
+    assert require("every(t.width <= 290 mm for t in tyres)", one).verdict == "breach"
+    assert require("some(t.width <= 310 mm for t in tyres)", one).verdict == "complies"
+    assert require("some(t.width <= 290 mm for t in tyres)", one).verdict == "open"

@@ -218,3 +218,13 @@ def test_a_declared_count_between_bounds_stays_one() -> None:
 
 def test_a_contradiction_is_open_and_not_unproven() -> None:
     assert CONTRADICTION.kind == "contradiction"
+
+
+def test_balls_that_just_touch() -> None:
+    wide = ball(0, 0.5)
+    border = Ball(wide.rad())  # exactly the upper end of the other: equal, or above it
+    assert at_most.ball([wide, border]) is True
+    assert below.ball([border, wide]) is False
+    assert at_most.ball([border, wide]) is UNDECIDED
+    assert below.ball([wide, border]) is UNDECIDED
+    assert equal.ball([wide, border]) is UNDECIDED

@@ -206,6 +206,8 @@ def test_states_that_are_missing(design: str, states: str, verdict: str, reason:
         ('"masses.*.mass"', "{masses.fuel.mass: 0 kg}", "open"),
         ('"masses.*.mass"', "{masses.fuel.mass: 1 kg, masses.tub.mass: 90 kg, masses.man.mass: 70 kg}", "complies"),
         ('"masses.fuel.mass", "masses.man.mass"', "{masses.fuel.mass: 0 kg}", "open"),
+        ('"masses.fuel"', "{masses.fuel.mass: 0 kg}", "open"),
+        ('"masses.fuel"', "{masses.fuel: none}", "complies"),
         ('"edges.*.radius"', "{masses.fuel.mass: 0 kg}", "open"),
     ],
 )
@@ -445,3 +447,85 @@ def test_tables_that_are_refused(text: str) -> None:
 def test_lists(listed: str, condition: str, verdict: str) -> None:
     declared = f"{DECLARED}lists: {{allowed: {listed}}}\n"
     assert require(condition, "a: 8 mm\nw: soft\n", declared).verdict == verdict
+
+
+def test_the_words_of_a_document_that_is_not_there() -> None:
+    for design in ("", hoop("kind: drawing, until: 2027-06-30"), hoop("until: 2027-06-30"), "evidence: {hoop: none}\n"):
+        (part,) = only(design, evidence()).parts
+        assert part.text == "certificate 'hoop'"
+    assert "is a drawing" in only(hoop("kind: drawing, until: 2027-06-30"), evidence()).reason
+    assert "the kind of" in only(hoop("until: 2027-06-30"), evidence()).reason
+    (absent,) = only("", evidence()).parts
+    assert absent.kind == "evidence"
+    (late,) = only("", evidence("kind: drawing, name: hoop, due: 2027-02-01")).parts
+    assert (late.kind, late.text) == ("evidence", "drawing 'hoop' by its day")
+
+
+def test_an_element_that_names_no_document_has_none() -> None:
+    declared = (
+        "inputs: {lamps: {kind: collection, meaning: Lamps, element: {proof: {kind: text, meaning: Its paper}}}}\n"
+    )
+    rule = f"{declared}rules:\n  it: {{each: l in lamps, evidence: {{kind: inspection, name: l.proof}}}}\n"
+    assert only("lamps: {a: {}}\nevidence: {None: {kind: inspection}}\n", rule).verdict == "open"
+
+
+@pytest.mark.parametrize(
+    ("given", "verdict"),
+    [
+        (f"judgements: {{it: {slot()}}}\n", "complies"),
+        (f"judgements: {{it: {{lip: {slot()}}}}}\n", "complies"),
+        ("judgements: {it: {lip: {verdict: complies}}}\n", "open"),
+    ],
+)
+def test_a_judgement_of_one_element_or_of_all(given: str, verdict: str) -> None:
+    rule = "rules:\n  it: {each: e in edges, judgement: Is it smooth?}\n"
+    assert only(f"edges: {{lip: {{}}}}\n{given}", rule).verdict == verdict
+
+
+@pytest.mark.parametrize(
+    ("design", "verdict"),
+    [
+        ("aero_surfaces: {complete: yes, front_wing: {kind: wing}}\n", "breach"),
+        ("aero_surfaces: {front_wing: {kind: wing}}\n", "open"),
+        ("aero_surfaces: {complete: yes, rear_wing: {kind: wing}}\n", "breach"),
+        ("aero_surfaces: {complete: yes, rear_wing: {kind: wing, drag_area: 1 m^2}}\n", "complies"),
+    ],
+)
+def test_presence_inside_a_collection_that_is_complete(design: str, verdict: str) -> None:
+    assert require("present(aero_surfaces.rear_wing.drag_area)", design).verdict == verdict
+
+
+@pytest.mark.parametrize("unit", ["", ", unit: kg"])
+def test_tables_whose_rows_are_written_in_other_units(unit: str) -> None:
+    steps = table(f"over: a{unit}, steps: [{{up_to: 10 mm, value: m * 0.1}}, {{otherwise: 4000 gram}}]")
+    lines = table(f"over: a{unit}, linear: [[0 mm, 1000 gram], [10 mm, 2000 gram]]")
+    for text in (steps, lines):
+        found = require("m >= least", "a: 10 mm\nm: 10 kg\n", text)
+        assert found.limit is not None
+        assert found.verdict == "complies"
+        assert found.limit.unit == ("kg" if unit or text == steps else "gram")
+
+
+def test_states_named_without_being_needed() -> None:
+    text = weighed("{fuel: [empty]}", "crew: [light, heavy]")
+    found = only(MASSES + STATES, text)
+    assert (found.verdict, margin(found)) == ("complies", 20)
+
+
+def test_the_unit_of_a_table_is_that_of_the_first_row_that_has_one() -> None:
+    for first in ("m * a / a", "1000 gram"):
+        text = table(f"over: a, steps: [{{up_to: 10 mm, value: {first}}}, {{otherwise: 4000 gram}}]")
+        found = require("m >= least", "a: 10 mm\nm: 10 kg\n", text)
+        assert found.limit is not None
+        assert found.limit.unit == "gram"
+
+
+def test_a_line_needs_two_rows() -> None:
+    for key in (9, 11):
+        single = table("over: a, linear: [[10 mm, 2 kg]]")
+        assert require("m >= least", f"a: {key} mm\nm: 10 kg\n", single).verdict == "open"
+
+
+def test_a_text_that_is_not_stated_is_no_word_of_a_table() -> None:
+    text = table("over: k, steps: [{is: front, value: w}, {is: rear, value: hard}]")
+    assert refused("k: front\n", f"{text}rules:\n  it: {{require: least == None}}\n")

@@ -4,10 +4,12 @@ from __future__ import annotations
 
 from datetime import date
 from fractions import Fraction
+from pathlib import Path
 
 import pytest
-from small_files import CAR, DAY, RULES, check_files, check_texts, findings, margin, only, refused
+from small_files import CAR, DAY, RULES, check_files, check_texts, findings, margin, only, refused, write_files
 
+from rulecheck.api import headroom
 from rulecheck.outcome.results import Finding
 
 DECLARED = """\
@@ -84,6 +86,11 @@ def test_unless(design: str, verdict: str, room: int | None, reason: str) -> Non
     assert said(found) == (verdict, room)
     assert reason in found.reason
     assert bool(found.reason) == bool(reason)
+
+
+def test_an_exemption_without_a_reason() -> None:
+    found = only("a: 12 mm\nf: yes\n", rule("require: a <= 10 mm, unless: {when: f}"))
+    assert (found.verdict, found.reason) == ("not applicable", "exempt")
 
 
 def test_an_undefined_exemption_is_unproven() -> None:
@@ -575,3 +582,109 @@ def test_a_scale_has_to_measure(scale: str) -> None:
 
 def test_the_day_of_these_tests_is_fixed() -> None:
     assert date(2027, 3, 1) == DAY
+
+
+# --- what is shown where nothing applies -----------------------------------------------------------------------------
+
+
+def test_the_worst_margin_of_what_does_not_apply_is_one_with_a_number() -> None:
+    text = DECLARED + each("require: e.radius >= 1 mm, when: f")
+    for edges in ("one: {}, two: {radius: 3 mm}, three: {radius: 2 mm}", "two: {radius: 2 mm}, one: {}"):
+        found = only(f"f: no\nedges: {{{edges}}}\n", text)
+        assert said(found) == ("not applicable", 1)
+    none = only("f: no\nedges: {one: {}}\n", text)
+    assert said(none) == ("not applicable", None)
+
+
+@pytest.mark.parametrize(
+    ("condition", "reserve", "verdict"),
+    [
+        ("g and a <= 10 mm", "3 mm", "tight"),
+        ("g and a <= 10 mm", "1 mm", "complies"),
+        ("a <= 10 mm and c >= 4 kg", "1 mm", "complies"),
+        ("a <= 10 mm and c >= 4 kg", "3 mm", "tight"),
+        ("a <= 10 mm and c >= 4 kg", "2 kg", "tight"),
+        ("a <= 10 mm and c >= 4.9999 kg", "1 mm", "complies"),
+        ("a <= 10 mm or c >= 4.9999 kg", "3 mm", "complies"),
+    ],
+)
+def test_a_reserve_is_held_against_margins_of_its_dimension(condition: str, reserve: str, verdict: str) -> None:
+    # The margin in kilograms is 0.0001: as a bare number it would be less than 1 mm in metres.
+    design = "a: 8 mm\nc: 5 kg\ng: yes\n"
+    assert with_house(design, rule(f"require: {condition}"), f"it: {reserve}").verdict == verdict
+
+
+@pytest.mark.parametrize(
+    ("when", "design", "verdict"),
+    [
+        ("f and e.exposed == yes", "f: no\nedges: {}\n", "breach"),
+        ("e.exposed == yes and f", "f: no\nedges: {}\n", "breach"),
+        ("f and g", "f: no\nedges: {}\n", "not applicable"),
+        ("f and g", "f: yes\ng: yes\nedges: {}\n", "breach"),
+    ],
+)
+def test_a_condition_that_speaks_of_an_element_in_part(when: str, design: str, verdict: str) -> None:
+    text = DECLARED + each(f'require: e.radius >= 1 mm, empty: breach, when: "{when}"')
+    assert only(design, text).verdict == verdict
+
+
+def test_two_loops_of_which_one_lacks_what_is_required() -> None:
+    text = 'rules:\n  it: {each: ["t in tyres", "e in edges"], require: t.width >= e.radius, empty: breach}\n'
+    both = "tyres: {front: {width: 300 mm}, rear: {width: 300 mm}}\n"
+    one = "tyres: {front: {width: 300 mm}}\n"
+    edge = "edges: {lip: {radius: 3 mm}}\n"
+    assert only(both + edge, text).verdict == "complies"
+    assert only(one + edge, text).verdict == "open"
+    assert only(both + "edges: {}\n", text).verdict == "breach"
+    assert only(one + "edges: {}\n", text).verdict == "breach"
+
+
+@pytest.mark.parametrize("without", ["rule: it, ", "reference: L-1, ", ", until: 2027-12-31"])
+def test_a_dispensation_that_lacks_a_field_is_none(without: str) -> None:
+    assert without in letter()
+    assert only("a: 12 mm\n" + letter().replace(without, ""), rule("require: a <= 10 mm")).verdict == "breach"
+
+
+def test_parts_of_a_loop_that_is_empty_or_lacks_something() -> None:
+    text = each("require: e.radius >= 1 mm, empty: open")
+    (part,) = only("edges: {}\n", text).parts
+    assert (part.verdict, part.text) == ("open", "an element that the rule is about")
+    (wanting,) = only("", text).parts
+    assert (wanting.verdict, wanting.text) == ("open", "edges")
+
+
+def test_what_binds_is_told_to_the_other_studies(tmp_path: Path) -> None:
+    text = rule("require: a <= 10 mm") + "  advice: {require: a <= 9 mm, standing: should}\n"
+    write_files(tmp_path, {"car.design.yaml": CAR + "a: 12 mm\n", "cup.ruleset.yaml": RULES + text})
+    assert headroom(tmp_path / "car.design.yaml", on=DAY).breached == ("it",)
+
+
+@pytest.mark.parametrize(
+    "text",
+    [
+        "require: a <= 10 mm, unless: {when: a, because: So}",
+        "require: a <= 10 mm, scale: f",
+        "require: a <= 10 mm, scale: 2027-03-01",
+        "branches: {p: {when: a, require: a <= 10 mm}, q: {require: a <= 9 mm}}",
+        "require: a <= 10 mm, when: a",
+    ],
+)
+def test_what_is_of_another_kind_is_refused(text: str) -> None:
+    assert {item.code for item in refused("a: 8 mm\nf: yes\n", rule(text))} == {"kind-mismatch"}
+
+
+@pytest.mark.parametrize(
+    ("lamps", "edges", "verdict"),
+    [
+        ("{l: {area: 3 cm^2}}", "{}", "open"),
+        ("{l: {area: 3 cm^2}, r: {area: 3 cm^2}}", "{}", "breach"),
+        ("{l: {area: 3 cm^2}, r: {area: 3 cm^2}}", "{lip: {radius: 1 mm}}", "complies"),
+        ("{l: {area: 3 cm^2}}", "{lip: {radius: 1 mm}}", "open"),
+    ],
+)
+def test_where_something_is_lacking_nothing_is_empty(lamps: str, edges: str, verdict: str) -> None:
+    text = (
+        "inputs: {lamps: {kind: collection, meaning: Lamps, at_least: 2, element: {area: {unit: cm^2, meaning: a}}}}\n"
+        'rules:\n  it: {each: ["l in lamps", "e in edges"], require: "l.area >= e.radius * 1 mm", empty: breach}\n'
+    )
+    assert only(f"lamps: {lamps}\nedges: {edges}\n", text).verdict == verdict
