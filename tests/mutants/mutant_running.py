@@ -10,7 +10,7 @@ from collections import Counter
 from collections.abc import Callable, Sequence
 from dataclasses import dataclass, field
 from functools import cache
-from pathlib import Path
+from typing import TypeVar
 
 import pydantic
 import pytest
@@ -18,6 +18,7 @@ from mutant_making import Mutant
 from mutant_patching import CodeKey, Line, called, exchanged, install, lines_run, living, needs_import, patch
 from mutant_targets import ROOT, SUITE, TARGETS
 
+R = TypeVar("R")
 PATIENCE = 60
 """Seconds of computing after which a mutant counts as killed: it does not end."""
 FILES = frozenset(str(ROOT / target.file) for target in TARGETS)
@@ -181,7 +182,7 @@ class _Hunt:
 # --- processes -------------------------------------------------------------------------------------------------------
 
 
-def _in_child(work: Callable[[], object]) -> object:
+def _in_child(work: Callable[[], R]) -> R:
     """The result of a call in a forked process."""
     read, write = os.pipe()
     child = os.fork()
@@ -196,7 +197,8 @@ def _in_child(work: Callable[[], object]) -> object:
     with os.fdopen(read, "rb") as file:
         data = file.read()
     os.waitpid(child, 0)
-    return pickle.loads(data)
+    found: R = pickle.loads(data)
+    return found
 
 
 @dataclass(slots=True)
@@ -271,4 +273,4 @@ def prepare() -> None:
         if str(place) not in sys.path:
             sys.path.insert(0, str(place))
     assert not any(name.startswith("rulecheck") for name in sys.modules), "rulecheck must not be loaded yet"
-    assert Path.cwd() == ROOT or not os.chdir(ROOT)
+    os.chdir(ROOT)
