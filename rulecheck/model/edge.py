@@ -5,7 +5,8 @@ A few models only, built when first used: each costs start-up time.
 
 from __future__ import annotations
 
-from typing import Annotated, Any, TypeVar
+from functools import cache
+from typing import Annotated, Any, TypeVar, cast
 
 from pydantic import BaseModel, ConfigDict, Field, GetPydanticSchema, TypeAdapter, ValidationError, WithJsonSchema
 from pydantic_core import core_schema
@@ -159,10 +160,16 @@ def plain(node: Node) -> Any:
     return node
 
 
+@cache
+def _adapter(shape: type[Shape]) -> TypeAdapter[Any]:
+    """Building one costs more than reading a small file: one for each shape, when it is first used."""
+    return TypeAdapter(shape)
+
+
 def shaped(shape: type[S], root: Node, faults: Faults) -> S | None:
     """The node in a shape, or None with every fault noted at the place that it has in the file."""
     try:
-        return TypeAdapter(shape).validate_python(plain(root))
+        return cast(S, _adapter(shape).validate_python(plain(root)))
     except ValidationError as error:
         before = len(faults.found)
         items = error.errors(include_url=False, include_context=False, include_input=False)
