@@ -38,7 +38,7 @@ _CONDITIONAL: dict[str, Operation] = {
     "deviation": deviation_where,
 }
 _PLAIN: dict[str, Operation] = {"sum": total, "min": minimum, "max": maximum}
-_MOST_ELEMENTS = 20_000
+MOST_ELEMENTS = 20_000
 
 
 @dataclass(frozen=True, slots=True)
@@ -70,8 +70,8 @@ def loop(scope: Scope, variables: Sequence[str], collection: Syntax, where: Synt
     if isinstance(turns, Broken):
         return BROKEN
     stand_in = tuple((name, Item(f"{items.path}.*")) for name in variables)
-    if len(turns) > _MOST_ELEMENTS:
-        return scope.fault("too-large", f"this loop has {len(turns)} turns", span, expected=f"at most {_MOST_ELEMENTS}")
+    if len(turns) > MOST_ELEMENTS:
+        return scope.fault("too-large", f"this loop has {len(turns)} turns", span, expected=f"at most {MOST_ELEMENTS}")
     if where is not None and not turns:
         scope.inside(stand_in).express(where)
     elements: list[Element] = []

@@ -37,7 +37,8 @@ def literal(scope: Scope, syntax: NumberSyntax) -> Bound:
         return _period(scope, syntax, unit)
     rational, pi_power = unit.in_si(syntax.value)
     term = scope.bank.constant(Monomial(rational, pi_power), "number", unit.dimension, syntax.span)
-    return Number(term, unit, offset=bool(unit.offset))
+    counted = unit.symbol == "1" and syntax.value.denominator == 1
+    return Number(term, unit, counted, offset=bool(unit.offset))
 
 
 def _period(scope: Scope, syntax: NumberSyntax, unit: Unit) -> Bound:
@@ -193,7 +194,7 @@ def _dates(scope: Scope, syntax: Binary, left: Date, right: Bound) -> Bound:
         if days[0] is None or days[1] is None:
             return BROKEN
         term = scope.apply(subtract, [days[0], days[1]], syntax.span)
-        return Number(term, find_unit("days")) if term else BROKEN
+        return Number(term, find_unit("days"), counted=True) if term else BROKEN
     if isinstance(right, Number):
         return scope.fault(
             "kind-mismatch", "a date takes a calendar period", syntax.right.span, expected="such as 30 days or 5 years"

@@ -124,7 +124,7 @@ def _sides(scope: Scope, syntax: Comparison) -> list[Side]:
         second = _side(scope, operands[1], None)
         return [_side(scope, first, second.bound), second]
     if len(operands) == 2 and isinstance(first, Name) and len(first.path) == 1 and first.path[0] not in scope.variables:
-        other = _quiet(scope, operands[1])
+        other = _chosen(scope, operands[1]) or _quiet(scope, operands[1])
         if isinstance(other, Words) and first.path[0] in other.choices:
             second = _side(scope, operands[1], None)
             return [_side(scope, first, second.bound), second]
@@ -132,6 +132,12 @@ def _sides(scope: Scope, syntax: Comparison) -> list[Side]:
     for operand in operands:
         made.append(_side(scope, operand, made[-1].bound if made else None))
     return made
+
+
+def _chosen(scope: Scope, syntax: Syntax) -> Bound | None:
+    """An input of one word that declares choices; None for any other word, which may be a choice itself."""
+    entry = scope.shared.vocabulary.entry(syntax.path[0]) if isinstance(syntax, Name) else None
+    return scope.express(syntax) if entry is not None and entry.kind == "choice" else None
 
 
 def _quiet(scope: Scope, syntax: Syntax) -> Bound | None:

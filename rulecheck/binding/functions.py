@@ -133,7 +133,9 @@ def _one(scope: Scope, syntax: Call, operation: Operation) -> Bound:
     if term is None:
         return BROKEN
     unit = find_unit("rad") if syntax.function in _INVERSE else None
-    return Number(term, operand.unit if syntax.function == "abs" else unit)
+    if syntax.function == "abs":
+        return Number(term, operand.unit, operand.counted)
+    return Number(term, unit)
 
 
 def _is_literal(syntax: Syntax) -> bool:

@@ -51,7 +51,7 @@ def presence(scope: Scope, path: str, span: Span) -> Term:
     node = design.leaves.get(path)
     if design.states_none(path) or (isinstance(node, Located) and node.text == NONE):
         return scope.bank.flag(False)
-    if node is not None or design.names(path):
+    if node is not None or design.names(path) is not None:  # an empty collection is stated too
         return scope.bank.flag(True)
     closed = (holder in design.complete for holder in holders(path) if holder != path)
     if any(closed):

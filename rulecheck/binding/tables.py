@@ -170,7 +170,10 @@ def _unit(scope: Scope, table: Table, dimension: Dimension) -> Unit | None:
 
 
 def _linear(scope: Scope, table: Table, key: Syntax | None, parse: Parse) -> Bound:
-    """Straight lines between rows; left of the first row and right of the last there is no value."""
+    """Straight lines between rows; left of the first row and right of the last there is no value.
+
+    A single row has a value on its own key.
+    """
     at = scope.express(key) if key is not None else BROKEN
     rows: list[tuple[Number, Number]] = []
     for left, right in table.linear:
@@ -222,6 +225,9 @@ def _lies_above(before: Number, key: Number, *, repeated: bool) -> bool:
 def _lines(scope: Scope, table: Table, at: Number, rows: list[tuple[Number, Number]]) -> Bound:
     dimension = rows[0][1].dimension
     term = scope.bank.unknown(_no_row(table, "a key beyond its last row"), "number", dimension)
+    if len(rows) == 1:  # no line, yet a row gives its value on its key, as every row does
+        key, value = rows[0]
+        term = scope.bank.branch(_do(scope, at_most, at.term, key.term), value.term, term, table.span)
     for (x0, y0), (x1, y1) in reversed(list(pairwise(rows))):
         run = _do(scope, subtract, x1.term, x0.term)
         share = _do(scope, divide, _do(scope, subtract, at.term, x0.term), run)

@@ -108,7 +108,7 @@ def _stuck(wrong: Wrong) -> Advice:
         return Advice(message, "a unit has one slash: write N/(m*s) for N/m/s, or put blanks round a division")
     if sign == "." and re.search(r"\^-?[0-9]+$", unit):
         return Advice(message, f"a unit takes whole powers only; a broken one is written ({token.text} m)^2.5")
-    if not unit.endswith(")") and (sign == "(" or re.match(r"\.[^\W\d]", wrong.text[wrong.start :])):
+    if unit != "1" and not unit.endswith(")") and (sign == "(" or re.match(r"\.[^\W\d]", wrong.text[wrong.start :])):
         cut = max(unit.rfind("*"), unit.rfind("/"))
         name = unit[cut + 1 :]
         goes_on = f"{name}(...)" if sign == "(" else name + wrong.text[wrong.start :].split(maxsplit=1)[0]

@@ -42,8 +42,9 @@ _SYMBOL = rf"{_NOT_RESERVED}(?:{_FIRST}|[%\u00b0])(?:{_NEXT}|[%\u00b0])*"
 _FACTOR = rf"{_SYMBOL}(?:\^-?[0-9]+)?"
 _FACTORS = rf"{_FACTOR}(?:\*{_FACTOR})*"
 _BELOW = rf"/(?:{_FACTOR}|\({_FACTORS}\))"
-_UNIT = rf"(?:{_FACTORS}(?:{_BELOW})?|1{_BELOW})"
 _STUCK = r"[\w.%\u00b0]"
+_PURE = rf"1(?!{_STUCK}|/[0-9])"
+_UNIT = rf"(?:{_FACTORS}(?:{_BELOW})?|1{_BELOW}|{_PURE})"
 
 TOKEN: Final = re.compile(
     rf"""{_BLANK}*(?:

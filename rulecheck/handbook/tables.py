@@ -5,11 +5,12 @@ from __future__ import annotations
 from collections.abc import Callable, Iterable
 from fractions import Fraction
 
-from rulecheck.binding import rules, states
+from rulecheck.binding import aggregates, points, rules, scope, states
 from rulecheck.binding.inputs import VALUE_KEYS
 from rulecheck.diagnostics import CODES
 from rulecheck.formula import lexer, token_reader
 from rulecheck.handbook.functions import FUNCTIONS
+from rulecheck.model import design_reader, ruleset_reader
 from rulecheck.model.core_table import CORE
 from rulecheck.model.vocabulary import Entry
 from rulecheck.physics.modules import BUILT_IN, built_in
@@ -133,6 +134,11 @@ def bound_rows() -> str:
         ("characters of a value with its unit", value_parts.LONGEST_VALUE),
         ("characters of a formula", lexer.MAXIMUM_LENGTH),
         ("parentheses and signs inside each other in a formula", token_reader.MAXIMUM_DEPTH),
+        ("figures and rules resting one on the other", scope.MOST_DEEP),
+        ("datums counted one from the other", points.MOST_DATUMS),
+        ("variants of variants", design_reader.MOST_VARIANTS),
+        ("rulesets that extend one another", ruleset_reader.MOST_LAYERS),
+        ("turns of a loop", aggregates.MOST_ELEMENTS),
         ("combinations of states of a rule", states.MOST_COMBINATIONS),
         ("cases of a rule: elements times states", rules.MOST_CASES),
         ("terms of everything that is computed", exact.MAXIMUM_TERMS),

@@ -13,7 +13,7 @@ from rulecheck.reading.nodes import Located, Mapping, Node, Sequence
 from rulecheck.reading.workspace import Workspace
 from rulecheck.reading.yaml_reader import read_yaml
 
-_MOST_VARIANTS = 20
+MOST_VARIANTS = 20
 
 
 @dataclass(slots=True)
@@ -89,7 +89,7 @@ def read_design(workspace: Workspace, file: str, asked: Span | None = None) -> D
 
 
 def _read_design(workspace: Workspace, file: str, asked: Span | None, above: tuple[str, ...]) -> Design:
-    if file in above or len(above) >= _MOST_VARIANTS:
+    if file in above or len(above) >= MOST_VARIANTS:
         chain = " changes ".join((*above, file))
         fault = Faults()
         fault.add("cycle", f"variants are based on each other: {chain}", asked, advice="base one of them on a design")

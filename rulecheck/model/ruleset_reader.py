@@ -32,7 +32,7 @@ from rulecheck.reading.yaml_reader import read_yaml
 EXPIRING = frozenset(("certificate", "homologation", "licence"))
 STANDINGS = ("shall", "should", "may", "note")
 EMPTY = ("open", "complies", "breach", "not applicable")
-_MOST_LAYERS = 20
+MOST_LAYERS = 20
 
 
 def read_ruleset(workspace: Workspace, file: str, asked: Span | None = None) -> Ruleset:
@@ -42,7 +42,7 @@ def read_ruleset(workspace: Workspace, file: str, asked: Span | None = None) -> 
 
 def _read(workspace: Workspace, file: str, asked: Span | None, above: tuple[str, ...]) -> Ruleset:
     faults = Faults()
-    if file in above or len(above) >= _MOST_LAYERS:
+    if file in above or len(above) >= MOST_LAYERS:
         faults.add("cycle", f"rulesets extend each other: {' extends '.join((*above, file))}", asked)
         faults.settle()
     root = read_yaml(workspace, file, asked)

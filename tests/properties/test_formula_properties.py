@@ -36,7 +36,23 @@ from rulecheck.reading.nodes import Located
 
 SPAN = Span("a.yaml", 0, 0, 1, 1)
 NUMERALS = ("0", "3", "1900", "0.375", "1e3", "1.5e-6", "2e+2", "1.50")
-UNITS = (None, None, "mm", "%", "in", "km/h", "m^2", "W/(m^2*K)", "1/s", "cm3", "kg*m^-1*s^-2", "°", "µm", "gal_us")
+UNITS = (
+    None,
+    None,
+    "1",
+    "mm",
+    "%",
+    "in",
+    "km/h",
+    "m^2",
+    "W/(m^2*K)",
+    "1/s",
+    "cm3",
+    "kg*m^-1*s^-2",
+    "°",
+    "µm",
+    "gal_us",
+)
 PATHS = ("a", "b2", "on", "pi", "t.width", "tyres.rear.width", "mm", "not_so", "größe", "e", "e5")
 AGGREGATES = ("sum", "min", "max", "mean", "deviation", "every", "some")
 
