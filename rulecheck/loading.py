@@ -8,8 +8,8 @@ from fractions import Fraction
 from os import PathLike
 from pathlib import Path
 
-from rulecheck.binding.conditions import numeric_parts
 from rulecheck.diagnostics import Faults, Refused, Span
+from rulecheck.graph.conditions import numeric_parts
 from rulecheck.graph.figures import Graph
 from rulecheck.model.design import Design, Overlay, State
 from rulecheck.model.design_reader import read_change, read_design

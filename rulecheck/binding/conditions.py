@@ -10,8 +10,8 @@ from rulecheck.binding.comparing import Compared, all_of, any_of, compare, oppos
 from rulecheck.binding.scope import Scope
 from rulecheck.diagnostics import Span
 from rulecheck.formula.printing import show
-from rulecheck.formula.syntax import Aggregate, Comparison, Joined, Not, Syntax
-from rulecheck.graph.conditions import AllOf, AnyOf, Condition, Part
+from rulecheck.formula.syntax import Aggregate, Comparison, Conditional, Joined, Not, Syntax
+from rulecheck.graph.conditions import AllOf, AnyOf, Condition, Either, Part, numeric_parts
 from rulecheck.graph.terms import Term
 from rulecheck.operations.arithmetic import absolute
 from rulecheck.operations.extremes import maximum
@@ -40,6 +40,8 @@ class Builder:
             )
         if isinstance(syntax, Comparison):
             return self._comparison(syntax, negated)
+        if isinstance(syntax, Conditional):
+            return self._either(syntax, negated)
         if isinstance(syntax, Aggregate) and syntax.function in ("every", "some"):
             return self._quantified(syntax, negated)
         return self._flag(syntax, negated)
@@ -51,6 +53,14 @@ class Builder:
         if len(whole) == 1:
             return whole[0]
         return AllOf(whole) if together else AnyOf(whole)
+
+    def _either(self, syntax: Conditional, negated: bool) -> Condition | Broken:
+        gate = replace(self, scale=None).build(syntax.condition)
+        arms = [self.build(arm, negated=negated) for arm in (syntax.then, syntax.otherwise)]
+        whole = [arm for arm in arms if not isinstance(arm, Broken)]
+        if isinstance(gate, Broken) or len(whole) < len(arms):
+            return Broken()
+        return Either(gate, holds(self.scope, gate), whole[0], whole[1])
 
     def _flag(self, syntax: Syntax, negated: bool) -> Condition | Broken:
         bound = self.scope.express(syntax)
@@ -150,6 +160,10 @@ def labelled(condition: Condition, label: str) -> Condition:
     """The parts of a condition with the element named in front."""
     if isinstance(condition, Part):
         return replace(condition, text=f"{label}: {condition.text}")
+    if isinstance(condition, Either):
+        return replace(
+            condition, then=labelled(condition.then, label), otherwise=labelled(condition.otherwise, label)
+        )  # fmt: skip
     parts = tuple(labelled(part, label) for part in condition.parts)
     return AllOf(parts) if isinstance(condition, AllOf) else AnyOf(parts, condition.labels)
 
@@ -158,6 +172,10 @@ def holds(scope: Scope, condition: Condition) -> Term:
     """A condition as one flag."""
     if isinstance(condition, Part):
         return condition.holds
+    if isinstance(condition, Either):
+        return scope.bank.branch(
+            condition.chooses, holds(scope, condition.then), holds(scope, condition.otherwise)
+        )  # fmt: skip
     flags = [holds(scope, part) for part in condition.parts]
     return any_of(scope, flags) if isinstance(condition, AnyOf) else all_of(scope, flags)
 
@@ -173,17 +191,15 @@ def open_part(scope: Scope, what: str, span: Span | None, text: str = "") -> Par
 
 
 def scales_agree(condition: Condition) -> bool:
-    """False where margins without a common measure would be compared: `scale` is then needed."""
+    """False where margins without a common measure would be compared: `scale` is then needed.
+
+    The arms of a conditional are not compared with each other.
+    """
+    if isinstance(condition, Either):
+        return scales_agree(condition.then) and scales_agree(condition.otherwise)
     parts = list(numeric_parts(condition))
     bare = [part for part in parts if part.scale is None]
     if len(parts) < 2 or not bare:
         return True
     dimensions: set[Dimension] = {part.margin.dimension for part in parts if part.margin is not None}
     return len(bare) == len(parts) and len(dimensions) == 1
-
-
-def numeric_parts(condition: Condition) -> list[Part]:
-    """All parts with a margin."""
-    if isinstance(condition, Part):
-        return [condition] if condition.margin is not None else []
-    return [inner for part in condition.parts for inner in numeric_parts(part)]

@@ -10,7 +10,7 @@ from rulecheck.binding.comparing import all_of, any_of
 from rulecheck.binding.conditions import holds
 from rulecheck.binding.scope import Scope
 from rulecheck.diagnostics import Span
-from rulecheck.graph.conditions import AnyOf, BoundRule, Condition, Part
+from rulecheck.graph.conditions import AnyOf, BoundRule, Condition, Either, Part
 from rulecheck.graph.terms import Term
 from rulecheck.operations.arithmetic import divide
 from rulecheck.operations.comparison import at_most
@@ -75,6 +75,8 @@ def _room(scope: Scope, condition: Condition, span: Span) -> _Room | None:
     yes = scope.bank.flag(True)
     if isinstance(condition, Part):
         return None if condition.margin is None else _Room(condition.margin, condition.scale, condition.unit, yes)
+    if isinstance(condition, Either):
+        return _room_of_either(scope, condition, span)
     alternatives = isinstance(condition, AnyOf)
     rooms: list[_Room] = []
     bare: list[Term] = []
@@ -90,6 +92,23 @@ def _room(scope: Scope, condition: Condition, span: Span) -> _Room | None:
     if alternatives:
         return replace(best, margin=scope.bank.branch(any_of(scope, bare), decided, best.margin))
     return replace(best, margin=scope.bank.branch(all_of(scope, bare), best.margin, decided))
+
+
+def _room_of_either(scope: Scope, condition: Either, span: Span) -> _Room | None:
+    """The room of the arm that is taken; where that has no number, the conditional has none."""
+    then, otherwise = _room(scope, condition.then, span), _room(scope, condition.otherwise, span)
+    known = then or otherwise
+    if known is None:
+        return None
+    if then is not None and otherwise is not None and then.margin.dimension != otherwise.margin.dimension:
+        raise _Mixed
+    decided = _undefined(scope, known, "a part without a number decides", span)
+    margins = [decided if room is None else room.margin for room in (then, otherwise)]
+    scales = [None if room is None else room.scale for room in (then or known, otherwise or known)]
+    scale = None
+    if scales[0] is not None and scales[1] is not None:
+        scale = scope.bank.branch(condition.chooses, scales[0], scales[1])
+    return replace(known, margin=scope.bank.branch(condition.chooses, margins[0], margins[1]), scale=scale)
 
 
 def _best(scope: Scope, rooms: Sequence[_Room], *, least: bool) -> _Room | None:

@@ -8,7 +8,7 @@ from itertools import product
 from rulecheck.binding.aggregates import Loop, loop
 from rulecheck.binding.bound import Broken, Element, Number, Truth, kind_of
 from rulecheck.binding.comparing import all_of, any_of, opposite
-from rulecheck.binding.conditions import Builder, certain, holds, numeric_parts, open_part, scales_agree
+from rulecheck.binding.conditions import Builder, certain, holds, open_part, scales_agree
 from rulecheck.binding.dispensations import dispensation
 from rulecheck.binding.documents import evidence, judgement
 from rulecheck.binding.meeting import met_by
@@ -18,7 +18,7 @@ from rulecheck.binding.states import Stance, stances
 from rulecheck.diagnostics import Span
 from rulecheck.formula.syntax import Each
 from rulecheck.formula.walk import names
-from rulecheck.graph.conditions import AllOf, AnyOf, BoundRule, Case, Condition
+from rulecheck.graph.conditions import AllOf, AnyOf, BoundRule, Case, Condition, numeric_parts
 from rulecheck.graph.terms import Term
 from rulecheck.model.ruleset import Alternative, Rule, Ruleset
 from rulecheck.operations.values import Monomial

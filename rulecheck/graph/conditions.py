@@ -65,7 +65,31 @@ class AnyOf:
     labels: tuple[str, ...] = ()
 
 
-Condition = Part | AllOf | AnyOf
+@dataclass(frozen=True, slots=True)
+class Either:
+    """A conditional: `gate` says which of two conditions is asked, and the one that is taken binds."""
+
+    gate: Condition
+    chooses: Term
+    then: Condition
+    otherwise: Condition
+
+
+Condition = Part | AllOf | AnyOf | Either
+
+
+def numeric_parts(condition: Condition) -> list[Part]:
+    """All parts with a margin, of both arms of a conditional."""
+    return [part for part in every_part(condition) if part.margin is not None]
+
+
+def every_part(condition: Condition) -> list[Part]:
+    """All parts in order, of both arms of a conditional."""
+    if isinstance(condition, Part):
+        return [condition]
+    if isinstance(condition, Either):
+        return [*every_part(condition.then), *every_part(condition.otherwise)]
+    return [inner for part in condition.parts for inner in every_part(part)]
 
 
 @dataclass(frozen=True, slots=True)

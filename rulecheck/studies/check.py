@@ -3,11 +3,11 @@
 from __future__ import annotations
 
 from collections.abc import Iterable, Mapping, Sequence
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, replace
 from fractions import Fraction
 
 from rulecheck.diagnostics import Span
-from rulecheck.graph.conditions import AnyOf, BoundRule, Case, Condition, Part
+from rulecheck.graph.conditions import AnyOf, BoundRule, Case, Condition, Either, Part, every_part
 from rulecheck.graph.figures import Graph
 from rulecheck.graph.terms import Term
 from rulecheck.model.ruleset import Rule
@@ -22,6 +22,10 @@ from rulecheck.studies.amounts import amount, place, reason_text
 from rulecheck.studies.judging import Judge, Judged, all_of, verdict_of
 
 NEAR = Fraction(1, 100)
+_NO_MEASURE = (
+    "no margin stands for the rule: those that could decide have no common measure, since a limit comes to zero "
+    "or is of another kind; 'scale' gives one"
+)
 
 
 @dataclass(frozen=True, slots=True)
@@ -70,7 +74,7 @@ class Checker:
             value_place=place(self._value_place(part)),
             estimates=bound.estimated,
             outside_validity=self._outside(bound),
-            notes=tuple(self._near(bound.cases)),
+            notes=(*self._near(bound.cases), *([_NO_MEASURE] if binding is not None and binding.mixed else [])),
             dispensation=permit,
             history=tuple(f"{origin.what}: {origin.span}" for origin in rule.history),
             ruleset_name=ruleset_name,
@@ -92,7 +96,7 @@ class Checker:
         applies = self.reader.truth(case.applies)
         exempt = self.reader.truth(case.exempt)
         found = self.judge.condition(case.condition)
-        found = Judged(found.truth, found.part, case, found.branch, found.room)
+        found = replace(found, case=case)
         if applies is False:
             return "not applicable", found, case.because if case.applies is case.exempt else ""
         if isinstance(applies, Unknown):
@@ -147,6 +151,9 @@ class Checker:
     def _keeps_reserve(self, rule: Rule, condition: Condition) -> bool:
         if isinstance(condition, Part):
             return self.reader.truth(condition.holds) is True and not self._is_tight(rule, condition)
+        if isinstance(condition, Either):
+            arm = self.judge.taken(condition)
+            return arm is not None and self._keeps_reserve(rule, arm)
         kept = (self._keeps_reserve(rule, part) for part in condition.parts)
         return any(kept) if isinstance(condition, AnyOf) else all(kept)
 
@@ -180,8 +187,20 @@ class Checker:
         for case in cases:
             if self.reader.truth(case.applies) is False:
                 continue
-            for part, branch in _leaves(case.condition):
+            for part, branch in self._leaves(case.condition):
                 yield self.part_result(part, case, branch)
+
+    def _leaves(self, condition: Condition, branch: str = "") -> Iterable[tuple[Part, str]]:
+        """The parts that are asked: of a conditional those of the arm that is taken, else what chooses."""
+        if isinstance(condition, Part):
+            yield condition, branch
+            return
+        if isinstance(condition, Either):
+            yield from self._leaves(self.judge.taken(condition) or condition.gate, branch)
+            return
+        own = condition.labels if isinstance(condition, AnyOf) else ()
+        for part, label in zip(condition.parts, own or (branch,) * len(condition.parts), strict=True):
+            yield from self._leaves(part, label)
 
     def part_result(self, part: Part, case: Case, branch: str) -> PartResult:
         """One part for the report."""
@@ -233,8 +252,8 @@ class Checker:
         """Conditions that are close to their own threshold: a small change would turn whether the rule applies."""
         seen = set()
         for case in cases:
-            for gate in case.gates:
-                for part, _ in _leaves(gate):
+            for gate in (*case.gates, *_choices(case.condition)):
+                for part in every_part(gate):
                     if part.margin is None or part.text in seen or part.scale is None:
                         continue
                     seen.add(part.text)
@@ -250,13 +269,14 @@ def _inside_reserve(tight: Sequence[Case], binding: Judged | None) -> str:
     return "inside the house reserve" + ("" if bound in elements else f": {', '.join(elements[:4])}")
 
 
-def _leaves(condition: Condition, branch: str = "") -> Iterable[tuple[Part, str]]:
-    if isinstance(condition, Part):
-        yield condition, branch
-        return
-    labels = condition.labels if isinstance(condition, AnyOf) and condition.labels else (branch,) * len(condition.parts)
-    for part, label in zip(condition.parts, labels, strict=True):
-        yield from _leaves(part, label)
+def _choices(condition: Condition) -> Iterable[Condition]:
+    """The conditions that choose between the arms of conditionals."""
+    if isinstance(condition, Either):
+        yield condition.gate
+        yield from (*_choices(condition.then), *_choices(condition.otherwise))
+    elif not isinstance(condition, Part):
+        for part in condition.parts:
+            yield from _choices(part)
 
 
 def _binding(judged: Judged | None) -> BindingPart | None:

@@ -14,7 +14,7 @@ from fractions import Fraction
 
 from rulecheck import __version__
 from rulecheck.diagnostics import Faults
-from rulecheck.graph.conditions import BoundRule
+from rulecheck.graph.conditions import BoundRule, numeric_parts
 from rulecheck.graph.figures import InputFact
 from rulecheck.graph.terms import Term
 from rulecheck.model.design import Design
@@ -200,11 +200,5 @@ class _Input:
 
 def _margins(rule: BoundRule) -> Iterable[Term]:
     """The margins of all parts of a rule."""
-    waiting = [case.condition for case in rule.cases]
-    while waiting:
-        condition = waiting.pop()
-        parts = getattr(condition, "parts", None)
-        if parts is not None:
-            waiting.extend(parts)
-        elif condition.margin is not None:  # type: ignore[union-attr]
-            yield condition.margin  # type: ignore[union-attr]
+    for case in rule.cases:
+        yield from (part.margin for part in numeric_parts(case.condition) if part.margin is not None)

@@ -8,10 +8,10 @@ relative margin, so that parts of several units can be held against each other.
 from __future__ import annotations
 
 from collections.abc import Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from fractions import Fraction
 
-from rulecheck.graph.conditions import AnyOf, Case, Condition, Part
+from rulecheck.graph.conditions import AnyOf, Case, Condition, Either, Part
 from rulecheck.graph.terms import Bank, Term
 from rulecheck.operations.arithmetic import divide
 from rulecheck.operations.values import Bounds, Reason, Unknown
@@ -23,13 +23,19 @@ Truth = bool | Unknown
 
 @dataclass(frozen=True, slots=True)
 class Judged:
-    """A condition with its truth; `part` is what binds, in its case, on its branch; `room` orders margins."""
+    """A condition with its truth; `part` is what binds, in its case, on its branch; `room` orders margins.
+
+    `measure` is what the room is in: empty for a relative margin, else the dimension of the margin itself. `mixed` says
+    that several parts would decide whose rooms have no common measure; then none of them is said to bind.
+    """
 
     truth: Truth
     part: Part | None
     case: Case | None = None
     branch: str = ""
     room: Fraction | float | None = None
+    measure: str = ""
+    mixed: bool = False
 
 
 class Judge:
@@ -42,15 +48,19 @@ class Judge:
     def part(self, part: Part) -> Judged:
         """One part: its truth, and its relative margin where it has one."""
         truth = self.reader.truth(part.holds)
-        return Judged(truth, part, room=self.room(part))
+        room, measure = self._measured(part)
+        return Judged(truth, part, room=room, measure=measure)
 
     def room(self, part: Part) -> Fraction | float | None:
         """What a part's margin is ordered by: the relative margin, else the margin itself (SI); None without number."""
+        return self._measured(part)[0]
+
+    def _measured(self, part: Part) -> tuple[Fraction | float | None, str]:
         if part.margin is None:
-            return None
+            return None, ""
         term = self.relative(part)
         found = None if term is None else self._number(term)
-        return self._number(part.margin) if found is None else found
+        return (self._number(part.margin), str(part.margin.dimension)) if found is None else (found, "")
 
     def relative(self, part: Part) -> Term | None:
         """The relative margin as a term; None where nothing measures it."""
@@ -78,6 +88,8 @@ class Judge:
         """A tree of conditions."""
         if isinstance(condition, Part):
             return self.part(condition)
+        if isinstance(condition, Either):
+            return self._either(condition)
         inner = [self.condition(part) for part in condition.parts]
         if isinstance(condition, AnyOf):
             if condition.labels:
@@ -85,21 +97,34 @@ class Judge:
             return any_of(inner)
         return all_of(inner)
 
+    def taken(self, condition: Either) -> Condition | None:
+        """The arm of a conditional that is asked; None where that is not known."""
+        truth = self.reader.truth(condition.chooses)
+        if isinstance(truth, Unknown):
+            return None
+        return condition.then if truth else condition.otherwise
+
+    def _either(self, condition: Either) -> Judged:
+        arm = self.taken(condition)
+        if arm is not None:
+            return self.condition(arm)
+        return replace(self.condition(condition.gate), truth=self.reader.truth(condition.chooses), room=None)
+
 
 def _on_branch(item: Judged, label: str) -> Judged:
-    return Judged(item.truth, item.part, item.case, label, item.room)
+    return replace(item, branch=label)
 
 
 def all_of(items: Sequence[Judged]) -> Judged:
     """`and`: a part that fails without a number decides; else the least relative margin binds."""
     failing = [item for item in items if item.truth is False]
     if failing:
-        bare = [item for item in failing if item.room is None]
+        bare = [item for item in failing if _is_bare(item)]
         return bare[0] if bare else _least(failing)
     unknown = [item for item in items if isinstance(item.truth, Unknown)]
     if unknown:
         return _unknown(unknown)
-    numbered = [item for item in items if item.room is not None]
+    numbered = [item for item in items if not _is_bare(item)]
     return _least(numbered) if numbered else items[0]
 
 
@@ -107,12 +132,12 @@ def any_of(items: Sequence[Judged]) -> Judged:
     """`or`: a part that holds without a number decides; else the greatest relative margin binds."""
     holding = [item for item in items if item.truth is True]
     if holding:
-        bare = [item for item in holding if item.room is None]
+        bare = [item for item in holding if _is_bare(item)]
         return bare[0] if bare else _greatest(holding)
     unknown = [item for item in items if isinstance(item.truth, Unknown)]
     if unknown:
         return _unknown(unknown)
-    numbered = [item for item in items if item.room is not None]
+    numbered = [item for item in items if not _is_bare(item)]
     return _greatest(numbered) if numbered else items[0]
 
 
@@ -125,12 +150,24 @@ def _unknown(items: Sequence[Judged]) -> Judged:
     return Judged(Unknown(tuple(reasons)), first.part, first.case, first.branch)
 
 
+def _is_bare(item: Judged) -> bool:
+    """True for what is decided without a number."""
+    return item.room is None and not item.mixed
+
+
 def _least(items: Sequence[Judged]) -> Judged:
-    return min(items, key=_order)
+    return _mixed(items) or min(items, key=_order)
 
 
 def _greatest(items: Sequence[Judged]) -> Judged:
-    return max(items, key=_order)
+    return _mixed(items) or max(items, key=_order)
+
+
+def _mixed(items: Sequence[Judged]) -> Judged | None:
+    """The truth alone, where several rooms have no common measure (a limit that comes to zero measures nothing)."""
+    if not any(item.mixed for item in items) and len({item.measure for item in items}) == 1:
+        return None
+    return Judged(items[0].truth, None, items[0].case, mixed=True)
 
 
 def _order(item: Judged) -> tuple[Fraction | float, bool]:
