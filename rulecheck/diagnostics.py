@@ -128,6 +128,8 @@ CODES: dict[str, str] = {
     "duplicate-key": "A key stands twice in one mapping.",
     "quote-this": "YAML would read this formula as something else; it has to be quoted.",
     "ledger-row": "A row of a ledger cannot be read.",
+    "column-file": "A file of columns cannot be read.",
+    "bad-curve": "The rows of a curve or map do not make one.",
     "ledger-header": "The header of a ledger lacks a column or names an unknown one.",
     # numbers and units
     "bad-number": "This is not a number as the language writes numbers.",

@@ -14,7 +14,7 @@ from rulecheck.binding.figures import figure, physics_figure, physics_module
 from rulecheck.binding.parsing import parsed, parsed_each
 from rulecheck.binding.points import zero_place
 from rulecheck.binding.rules import bind_rule
-from rulecheck.binding.scope import Scope, Shared, View
+from rulecheck.binding.scope import NO_RULES, Scope, Shared, View
 from rulecheck.binding.tables import list_of, table_value
 from rulecheck.binding.validate import validate
 from rulecheck.diagnostics import Faults
@@ -62,7 +62,7 @@ def deep_formulas() -> Iterator[None]:
 
 def _bound(shared: Shared, figures: Sequence[str]) -> Graph:
     rulesets = shared.rulesets
-    base = Scope(shared, shared.base, rulesets[0] if rulesets else _NO_RULES)
+    base = Scope(shared, shared.base, rulesets[0] if rulesets else NO_RULES)
     check_declarations(base, rulesets)
     validate(base)
     for ruleset in rulesets:
@@ -167,6 +167,3 @@ def _wanted(scope: Scope, name: str) -> None:
     for formula in module.figures.values():
         if formula.loop is None and formula.of is None:
             physics_figure(scope, (name, formula.name), formula.span)
-
-
-_NO_RULES = PhysicsModule("", "", "", {}, {}, "")

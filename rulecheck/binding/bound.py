@@ -4,9 +4,11 @@ from __future__ import annotations
 
 from dataclasses import dataclass, field
 
+from rulecheck.diagnostics import Span
 from rulecheck.graph.terms import Term
 from rulecheck.quantity.dimension import Dimension
 from rulecheck.quantity.units import Unit
+from rulecheck.reading.nodes import Located
 
 
 @dataclass(frozen=True, slots=True)
@@ -117,13 +119,29 @@ class Choices:
 
 
 @dataclass(frozen=True, slots=True)
+class Curve:
+    """A curve or map: `keys` are the keys of its rows along each axis, rising, and `values` stand in their order, the
+    last axis running fastest; all are terms. Without rows where the design states none. `over` are the names that it
+    is stated over; with `steps` a value holds up to the next key, else lines between rows are straight."""
+
+    path: str
+    keys: tuple[tuple[Number, ...], ...]
+    values: tuple[Number, ...]
+    key_units: tuple[Unit, ...]
+    unit: Unit
+    over: tuple[Located, ...]
+    steps: bool
+    span: Span | None
+
+
+@dataclass(frozen=True, slots=True)
 class Broken:
     """What a fault leaves behind: whatever is made of it is broken too, without a second fault."""
 
 
 BROKEN = Broken()
 
-Bound = Number | Truth | Words | Date | Period | Place | Line | Plane | Item | Items | Choices | Broken
+Bound = Number | Truth | Words | Date | Period | Place | Line | Plane | Item | Items | Choices | Curve | Broken
 
 _KINDS: dict[type, str] = {
     Number: "a number",
@@ -137,6 +155,7 @@ _KINDS: dict[type, str] = {
     Item: "an item",
     Items: "a collection",
     Choices: "a list",
+    Curve: "a curve that is not called at a key",
     Broken: "nothing",
 }
 

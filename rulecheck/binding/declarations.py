@@ -27,8 +27,10 @@ def check_declarations(scope: Scope, rulesets: tuple[Ruleset, ...]) -> None:
 
 def _declared(scope: Scope, known: Vocabulary, entry: Entry) -> None:
     unit = unit_of(entry, scope)
-    if entry.kind == "number" and not entry.unit and not entry.definition:
-        scope.fault("missing-key", f"the number '{entry.path}' has no unit", entry.span, expected='unit: mm, or "1"')
+    if entry.kind in ("number", "curve", "map") and not entry.unit and not entry.definition:
+        scope.fault(
+            "missing-key", f"the {entry.kind} '{entry.path}' has no unit", entry.span, expected='unit: mm, or "1"'
+        )
     if entry.kind == "item" and entry.of:
         holder = scope.shared.vocabulary.entry(entry.of)
         if holder is None or holder.kind != "collection":

@@ -108,9 +108,12 @@ def called_figure(scope: Scope, syntax: Call) -> Bound | None:
     owner = scope.owner
     name = syntax.function
     if isinstance(owner, Ruleset) and name in owner.tables:
-        if len(syntax.arguments) != 1:
-            return scope.fault("wrong-arguments", f"the table '{name}' takes one key", syntax.span)
-        return table_value(scope, owner.tables[name], syntax.arguments[0], parsed)
+        table = owner.tables[name]
+        due = len(table.over) if table.linear else 1
+        if len(syntax.arguments) != due:
+            told = f"the table '{name}' takes {'one key' if due == 1 else f'{due} keys'}"
+            return scope.fault("wrong-arguments", told, syntax.span, expected="a key for each name that it is over")
+        return table_value(scope, table, syntax.arguments, parsed)
     formulas = owner.figures if isinstance(owner, PhysicsModule) else owner.derived
     if name not in formulas:
         return None

@@ -13,6 +13,7 @@ from rulecheck.binding.bound import (
     Number,
     kind_of,
 )
+from rulecheck.binding.curves import curve_call
 from rulecheck.binding.geometry_calls import GEOMETRY, geometry
 from rulecheck.binding.presence import present
 from rulecheck.binding.references import margin_reference, rule_reference
@@ -80,11 +81,15 @@ def call(scope: Scope, syntax: Call) -> Bound:
             syntax.span,
             expected=f"{name}(… for x in collection)",
         )
-    own = figures.called_figure(scope, syntax)
+    own = figures.called_figure(scope, syntax) or curve_call(scope, syntax)
     if own is not None:
         return own
-    known = (*special, *_ONE, *_ROUND, *GEOMETRY, *_AGGREGATES, *figures.callable_names(scope))
+    known = (*special, *_ONE, *_ROUND, *GEOMETRY, *_AGGREGATES, *figures.callable_names(scope), *_curves(scope))
     return scope.fault("unknown-function", f"there is no function '{name}'", syntax.span, advice=nearest(name, known))
+
+
+def _curves(scope: Scope) -> list[str]:
+    return [entry.path for entry in scope.shared.vocabulary if entry.kind in ("curve", "map")]
 
 
 def arguments(scope: Scope, syntax: Call, least: int, most: int) -> list[Bound] | None:

@@ -6,6 +6,7 @@ from typing import Any
 
 from rulecheck.binding import figures
 from rulecheck.binding.bound import BROKEN, Bound, Date, Item, Items, Number, Place, Truth, Words
+from rulecheck.binding.curves import bind_curve
 from rulecheck.binding.inputs import bind_input
 from rulecheck.binding.points import direction, place_of
 from rulecheck.binding.reconciling import reconciled, states_value
@@ -156,6 +157,8 @@ def _through_item(scope: Scope, path: str, span: Span) -> Bound | None:
 def _guarded(scope: Scope, path: str, entry: Entry, span: Span) -> Bound:
     if entry.kind == "point":
         return place_of(scope, path, entry, span)
+    if entry.kind in ("curve", "map"):
+        return bind_curve(scope, path, entry)
     bound = bind_input(scope, path, entry, span)
     if isinstance(bound, Number):
         return _checked(scope, path, bound, span)

@@ -55,6 +55,8 @@ class View:
 
 
 Owner = Ruleset | PhysicsModule
+NO_RULES = PhysicsModule("", "", "", {}, {}, "")
+"""An owner without names of its own."""
 MOST_DEEP = 200
 """So many figures and rules may rest one on the other."""
 

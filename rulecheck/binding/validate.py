@@ -5,6 +5,7 @@ from __future__ import annotations
 from dataclasses import replace
 
 from rulecheck.binding.bound import Broken
+from rulecheck.binding.curves import bind_curve
 from rulecheck.binding.inputs import VALUE_KEYS, bind_input
 from rulecheck.binding.points import from_datum, place_of, zero_place
 from rulecheck.binding.scope import Scope
@@ -84,6 +85,9 @@ def _value(scope: Scope, path: str, entry: Entry, node: LeafNode) -> None:
             scope.fault(
                 "bad-structure", f"'{path}' is a collection", node.span, expected="{name: {field: value}}, or none"
             )
+        return
+    if entry.kind in ("curve", "map"):
+        bind_curve(scope, path, entry)
         return
     if entry.kind not in READ_BY_THEMSELVES and not _is_single(scope, path, node):
         return

@@ -19,6 +19,7 @@ FIRST = (
     "index",
     "first-ten-minutes",
     "design-files",
+    "curves-and-maps",
     "rulesets",
     "language",
     "units",

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Callable, Iterable
 from fractions import Fraction
 
-from rulecheck.binding import aggregates, points, rules, scope, states
+from rulecheck.binding import aggregates, curves, points, rules, scope, states
 from rulecheck.binding.inputs import VALUE_KEYS
 from rulecheck.diagnostics import CODES
 from rulecheck.formula import lexer, token_reader
@@ -53,6 +53,8 @@ def holds(entry: Entry) -> str:
     """
     if entry.kind == "number":
         return "pure number" if entry.unit == "1" else f"number in `{entry.unit}`"
+    if entry.kind in ("curve", "map"):
+        return f"{entry.kind} in `{entry.unit}`"
     if entry.kind == "choice":
         return ", ".join(f"`{choice}`" for choice in entry.choices)
     if entry.kind == "collection":
@@ -126,7 +128,8 @@ def bound_rows() -> str:
         ("mappings and lists inside each other", bounds.MAXIMUM_DEPTH),
         ("aliases of a YAML file", bounds.MAXIMUM_ALIASES),
         ("characters of a text in a YAML file or of a ledger's cell", bounds.MAXIMUM_SCALAR),
-        ("rows of a ledger", bounds.MAXIMUM_ROWS),
+        ("rows of a curve or map", curves.MOST_POINTS),
+        ("rows of a ledger or of a file of columns", bounds.MAXIMUM_ROWS),
         ("cells of a ledger's row", bounds.MAXIMUM_CELLS),
         ("faults told of one file", bounds.MAXIMUM_FAULTS),
         ("digits of a number", numbers.MAXIMUM_DIGITS),

@@ -14,7 +14,7 @@ from rulecheck.quantity.units import is_unit
 from rulecheck.reading.nearest import nearest
 from rulecheck.reading.nodes import Located, Mapping, Node, Sequence
 
-KINDS = ("number", "flag", "choice", "text", "date", "point", "item", "collection")
+KINDS = ("number", "flag", "choice", "text", "date", "point", "item", "collection", "curve", "map")
 
 
 def own_units(declared: dict[str, Located], faults: Faults) -> dict[str, Dimension]:
@@ -70,6 +70,7 @@ def _rows(
         items=tuple(item.text for item in shape.items or ()),
         at_least=_count(shape.at_least, faults),
         of=_text(shape.of),
+        over=tuple(item.text for item in _over(shape)),
         datum_required=_text(shape.datum) == "required",
         definition=_text(shape.definition),
         origin=file,
@@ -126,12 +127,31 @@ def _whole(entry: Entry, shape: InputShape, span: Span | None, faults: Faults) -
         faults.add("missing-key", f"the choice '{entry.path}' has no choices", span, expected="choices: [open, closed]")
     if entry.kind == "item" and not entry.of:
         faults.add("missing-key", f"'{entry.path}' is an item of nothing", span, expected="of: the collection")
+    _keys(entry, shape, span, faults)
     said = shape.definition
     if said is not None and entry.definitions and said.text not in entry.definitions:
         faults.add(
             "unknown-choice", f"'definitions' of this file have no '{said.text}' for '{entry.path}'", said.span,
             expected=" or ".join(entry.definitions), advice=nearest(said.text, entry.definitions),
         )  # fmt: skip
+
+
+def _over(shape: InputShape) -> tuple[Located, ...]:
+    if shape.over is None:
+        return ()
+    return (shape.over,) if isinstance(shape.over, Located) else tuple(shape.over)
+
+
+def _keys(entry: Entry, shape: InputShape, span: Span | None, faults: Faults) -> None:
+    """A curve has one key, a map two or more, and nothing else has any."""
+    keys = len(entry.over)
+    if entry.kind == "curve" and keys != 1:
+        faults.add("missing-key", f"the curve '{entry.path}' has one key", span, expected="over: the unit of its key")
+    elif entry.kind == "map" and keys < 2:
+        expected = "over: [unit, unit], the units of its keys"
+        faults.add("missing-key", f"the map '{entry.path}' has two keys or more", span, expected=expected)
+    elif entry.kind not in ("curve", "map") and shape.over is not None:
+        faults.add("unknown-key", f"'{entry.path}' is no curve and no map, and has no keys", span, advice="kind: curve")
 
 
 def _count(where: Located | None, faults: Faults) -> int:

@@ -14,8 +14,8 @@ NONE = "none"
 
 
 def is_leaf(node: Node) -> bool:
-    """A scalar, a list, or a mapping that gives a value with what is known about it."""
-    return not isinstance(node, Mapping) or node.get("value") is not None
+    """A scalar, a list, or a mapping that gives a value, or rows of a curve, with what is known about it."""
+    return not isinstance(node, Mapping) or any(node.get(key) is not None for key in ("value", "rows", "file"))
 
 
 def flat(path: str, node: Node) -> Iterator[tuple[str, LeafNode]]:

@@ -5,6 +5,7 @@ from __future__ import annotations
 from dataclasses import dataclass, field, replace
 
 from rulecheck.diagnostics import Faults, Refused, Related, Span
+from rulecheck.model.curve_files import CurveFiles
 from rulecheck.model.design import NONE, Design, LeafNode, Overlay, State, is_leaf
 from rulecheck.model.names import RESERVED_KEYS, check_name, check_path
 from rulecheck.reading.ledger import LedgerRow, read_ledger
@@ -21,6 +22,7 @@ class _Draft:
     """What is collected while a file is walked."""
 
     faults: Faults
+    files: CurveFiles
     leaves: dict[str, LeafNode] = field(default_factory=dict)
     items: dict[str, tuple[str, ...]] = field(default_factory=dict)
     complete: set[str] = field(default_factory=set)
@@ -30,7 +32,7 @@ class _Draft:
     def walk(self, path: str, node: Node) -> None:
         """Lay a node flat under its path."""
         if is_leaf(node):
-            self.leaves[path] = node
+            self.leaves[path] = self.files.filled(path, node)
             if isinstance(node, Located) and node.text == NONE:
                 self.absent.add(path)
             return
@@ -111,7 +113,8 @@ def _read_design(workspace: Workspace, file: str, asked: Span | None, above: tup
 
 
 def _plain_design(workspace: Workspace, file: str, root: Mapping, faults: Faults) -> Design:
-    draft = _Draft(faults)
+    files = CurveFiles(workspace, file, faults)
+    draft = _Draft(faults, files)
     draft.walk("", Mapping(tuple(entry for entry in root if entry.key.text not in RESERVED_KEYS), root.span))
     for row in _ledger_rows(workspace, file, root.get("ledger"), faults):
         draft.row(row)
@@ -133,7 +136,7 @@ def _plain_design(workspace: Workspace, file: str, root: Mapping, faults: Faults
         items=draft.items,
         complete=frozenset(draft.complete),
         absent=frozenset(draft.absent),
-        states=_states(root.get("states"), faults),
+        states=_states(root.get("states"), files),
         keys=draft.keys,
     )
     faults.settle()
@@ -144,7 +147,7 @@ def _variant(
     workspace: Workspace, file: str, root: Mapping, base: Located, above: tuple[str, ...], faults: Faults
 ) -> Design:
     _only(root, ("design", "revision", "note", "changes", "set", "rulesets"), "a variant", faults)
-    overlay = _overlay(root.get("set"), faults)
+    overlay = _overlay(root.get("set"), CurveFiles(workspace, file, faults))
     design: Design | None = None
     try:
         design = _read_design(workspace, workspace.resolve(base.text, file, base.span), base.span, (*above, file))
@@ -179,28 +182,31 @@ def read_change(workspace: Workspace, file: str, asked: Span | None = None) -> O
     _only(root, ("note", "set"), "a change file", faults)
     if root.get("set") is None:
         faults.add("missing-key", "a change file needs 'set:'", root.span, expected="set: {path: value, …}")
-    overlay = _overlay(root.get("set"), faults)
+    overlay = _overlay(root.get("set"), CurveFiles(workspace, file, faults))
     faults.settle()
     return overlay
 
 
-def _overlay(node: Node | None, faults: Faults) -> Overlay:
+def _overlay(node: Node | None, files: CurveFiles) -> Overlay:
+    faults = files.faults
     if node is None:
         return Overlay()
     if not isinstance(node, Mapping):
         faults.add("bad-structure", "changes are given as paths and values", node.span, expected="{path: value, …}")
         return Overlay()
-    return Overlay.of((entry.key.text, entry.value) for entry in node if check_path(entry.key, faults))
+    pairs = ((entry.key.text, entry.value) for entry in node if check_path(entry.key, faults))
+    return files.filled_all(Overlay.of(pairs))
 
 
-def _states(node: Node | None, faults: Faults) -> dict[str, dict[str, State]]:
+def _states(node: Node | None, files: CurveFiles) -> dict[str, dict[str, State]]:
+    faults = files.faults
     states: dict[str, dict[str, State]] = {}
     for axis in _entries(node, "states are given by axis", faults):
         check_name(axis.key, faults)
         states[axis.key.text] = {}
         for state in _entries(axis.value, f"the states of axis '{axis.key.text}' are given by name", faults):
             check_name(state.key, faults)
-            overlay = _overlay(state.value, faults)
+            overlay = _overlay(state.value, files)
             states[axis.key.text][state.key.text] = State(axis.key.text, state.key.text, overlay, state.key.span)
     return states
 

@@ -73,7 +73,7 @@ class TableShape(Shape):
 
     over: Leaf | list[Leaf] = Field(description="Key: a figure, or several")
     steps: list[Leaves] | None = Field(None, description="Rows from the top: up_to, below, is, when or otherwise")
-    linear: list[list[Leaf]] | None = Field(None, description="Rows [key, value], straight lines between them")
+    linear: list[list[Leaf]] | None = Field(None, description="Rows [key, …, value], straight lines between them")
     unit: Leaf | None = Field(None, description="Unit of the values")
     meaning: Leaf | None = Field(None, description="What it gives")
 
@@ -93,8 +93,11 @@ class FigureShape(Shape):
 class InputShape(Shape):
     """The declaration of an input, or of a field of a collection's elements."""
 
-    kind: Leaf | None = Field(None, description="number, flag, choice, text, date, point, item or collection")
-    unit: Leaf | None = Field(None, description="Unit of a number")
+    kind: Leaf | None = Field(
+        None, description="number, flag, choice, text, date, point, item, collection, curve or map"
+    )
+    unit: Leaf | None = Field(None, description="Unit of a number, or of the values of a curve or map")
+    over: Leaf | list[Leaf] | None = Field(None, description="Unit of the key of a curve; those of a map, in order")
     choices: list[Leaf] | None = Field(None, description="Words of a choice")
     meaning: Leaf | None = Field(None, description="One line on what it is")
     datum: Leaf | None = Field(None, description="required: a point must name its datum")

@@ -114,7 +114,7 @@ class Table:
     span: Span
     over: tuple[Located, ...]
     steps: tuple[Row, ...]
-    linear: tuple[tuple[Located, Located], ...]
+    linear: tuple[tuple[Located, ...], ...]
     unit: Located | None
     meaning: str
 

@@ -37,6 +37,8 @@ _KINDS: Mapping[str, Entry] = {
     "point": Entry("", "point", ""),
     "datum": Entry("", "datum", ""),
     "item": Entry("", "item", ""),
+    "curve": Entry("", "curve", ""),
+    "map": Entry("", "map", ""),
 }
 """Kinds of values that read alike wherever they stand; their names have a blank, which no path has."""
 
@@ -170,7 +172,7 @@ def _inside(vocabulary: Vocabulary, path: str, entry: Entry | None, paths: Conta
 def _said(entry: Entry) -> str:
     """The meaning with unit, term of a standard, default and rival definitions."""
     parts = [entry.meaning]
-    if entry.kind == "number":
+    if entry.kind in ("number", "curve", "map"):
         parts.append("pure number" if entry.unit == "1" else f"in {entry.unit} or another unit of its kind")
     if entry.term:
         parts.append(entry.term)
@@ -190,7 +192,28 @@ def _leaf(entry: Entry) -> list[Schema]:
     return _forms(entry)
 
 
+_CURVE: Schema = {
+    "type": "object",
+    "properties": {
+        "over": {"anyOf": [TEXT, {"type": "array", "items": TEXT}], "description": "Names of the figures it is over"},
+        "rows": {"type": "array", "items": {"type": "array", "items": TEXT}, "description": "Keys, then the value"},
+        "file": {"type": "string", "description": "A CSV file with the rows, beside this file"},
+        "column": {"type": "string", "description": "Column of the values"},
+        "delimiter": {"description": "What parts cells", "enum": ["comma", "semicolon", "tab", ",", ";", "|"]},
+        "decimal": {"description": "What parts decimals", "enum": [".", ","]},
+        "interpolation": {"enum": ["linear", "steps"], "description": "What holds between rows"},
+        "basis": {"enum": list(BASES), "description": "Where the values come from"},
+        "reference": {**TEXT, "description": "Sheet or document that it stands on"},
+        "note": {**TEXT, "description": "A remark"},
+    },
+    "oneOf": [{"required": ["rows"]}, {"required": ["file"]}],
+    "additionalProperties": False,
+}
+
+
 def _forms(entry: Entry) -> list[Schema]:
+    if entry.kind in ("curve", "map"):
+        return [_CURVE]
     plain = _plain(entry)
     axes: list[Schema] = []
     if entry.kind == "point":

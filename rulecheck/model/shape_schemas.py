@@ -43,7 +43,7 @@ _STEPS: Schema = {
         + [{"required": ["otherwise"], "maxProperties": 1}],
     },
 }
-_PAIRS: Schema = {"type": "array", "items": {"type": "array", "items": TEXT, "minItems": 2, "maxItems": 2}}
+_ROWS: Schema = {"type": "array", "items": {"type": "array", "items": TEXT, "minItems": 2}}
 _GROUPS: Schema = {
     "type": "object",
     "additionalProperties": {
@@ -60,7 +60,7 @@ _NARROWER: Mapping[tuple[str, str], Schema] = {
     ("RuleShape", "unless"): _UNLESS,
     ("EvidenceShape", "expires"): {"enum": ["yes", "no", True, False]},
     ("TableShape", "steps"): _STEPS,
-    ("TableShape", "linear"): _PAIRS,
+    ("TableShape", "linear"): _ROWS,
     ("InputShape", "kind"): {"enum": list(KINDS)},
     ("InputShape", "at_least"): {"type": ["integer", "string"]},
     ("RulesetShape", "valid"): _WINDOW,

@@ -36,17 +36,18 @@ def read_table(name: str, key: Located, shape: TableShape, faults: Faults) -> Ta
     return Table(name, key.span, over, rows, _linear(name, key, shape, faults), shape.unit, _text(shape.meaning))
 
 
-def _linear(name: str, key: Located, shape: TableShape, faults: Faults) -> tuple[tuple[Located, Located], ...]:
+def _linear(name: str, key: Located, shape: TableShape, faults: Faults) -> tuple[tuple[Located, ...], ...]:
+    keys = 1 if isinstance(shape.over, Located) else len(shape.over)
     linear = []
-    for pair in shape.linear or ():
-        if len(pair) == 2:
-            linear.append((pair[0], pair[1]))
+    for row in shape.linear or ():
+        if len(row) == keys + 1:
+            linear.append(tuple(row))
         else:
             faults.add(
                 "bad-structure",
-                f"a linear row of table '{name}' is a key and a value",
-                pair[0].span if pair else key.span,
-                expected="[key, value]",
+                f"a linear row of table '{name}' is {'a key' if keys == 1 else f'{keys} keys'} and a value",
+                row[0].span if row else key.span,
+                expected="[key, value]" if keys == 1 else "[key, …, value]",
             )
     return tuple(linear)
 

@@ -8,7 +8,7 @@ from typing import Literal
 
 from rulecheck.diagnostics import Span
 
-InputKind = Literal["number", "flag", "choice", "text", "date", "point", "datum", "item", "collection"]
+InputKind = Literal["number", "flag", "choice", "text", "date", "point", "datum", "item", "collection", "curve", "map"]
 
 
 @dataclass(frozen=True, slots=True)
@@ -17,7 +17,7 @@ class Entry:
 
     `unit` is the unit in which the value is spoken of (`1` for a pure number); `default` the text that holds where
     nothing is stated; `items` and `at_least` say what a collection must hold; `definition` is the definition that a
-    ruleset asks for, `definitions` those that rival. `computed` marks a declared value beside a computed figure.
+    ruleset asks for, `definitions` those that rival; `over` the units of the keys of a curve or map. `computed` marks a declared value beside a computed figure.
     """
 
     path: str
@@ -35,6 +35,7 @@ class Entry:
     definitions: tuple[str, ...] = ()
     origin: str = ""
     computed: bool = False
+    over: tuple[str, ...] = ()
     span: Span | None = field(default=None, compare=False)
 
 
@@ -106,7 +107,18 @@ def _merged(known: Entry, entry: Entry) -> Entry:
     """A ruleset may narrow or complete a known input; what it leaves out stays as it was."""
     told = {
         name: getattr(entry, name)
-        for name in ("unit", "choices", "items", "at_least", "definition", "definitions", "meaning", "of", "default")
+        for name in (
+            "unit",
+            "choices",
+            "items",
+            "at_least",
+            "definition",
+            "definitions",
+            "meaning",
+            "of",
+            "default",
+            "over",
+        )
         if getattr(entry, name)
     }
     required = known.datum_required or entry.datum_required

@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-import re
 from dataclasses import dataclass, field
 
 from rulecheck.diagnostics import Diagnostic, Faults, Refused, Related, Span
@@ -10,7 +9,7 @@ from rulecheck.reading.bounds import MAXIMUM_ROWS
 from rulecheck.reading.characters import line_at, span_at
 from rulecheck.reading.nearest import nearest
 from rulecheck.reading.nodes import Located
-from rulecheck.reading.rows import Row, Scanner
+from rulecheck.reading.rows import Row, Scanner, number_cell, other_decimal
 from rulecheck.reading.workspace import Workspace
 
 COLUMNS = (
@@ -46,9 +45,6 @@ DELIMITERS = (",", ";", "\t", "|")
 DECIMALS = (".", ",")
 """What may part the decimals of a number."""
 
-_BARE_NUMBER = re.compile(r"[+-]?[0-9]+(?:\.[0-9]+)?(?:[eE][+-]?[0-9]+)?")
-_DECIMAL_COMMA = re.compile(r"(?<=[0-9]),(?=[0-9])")
-_DECIMAL_POINT = re.compile(r"(?<=[0-9])\.(?=[0-9])")
 _NAMES = {",": "a comma", ";": "a semicolon", "\t": "a tab", "|": "an upright line"}
 
 
@@ -90,7 +86,7 @@ def read_ledger(
     `Refused` with every fault: `ledger-header`, `ledger-row`, `too-large`, `bad-value` for signs that
     cannot be, and what `Workspace.read` raises.
     """
-    _check_signs(delimiter, decimal, asked)
+    check_signs(delimiter, decimal, asked)
     text = workspace.read(file, asked)
     reading = _Reading(file, delimiter, decimal)
     rows = Scanner(file, text, delimiter, reading.faults).rows()
@@ -113,7 +109,8 @@ def read_ledger(
     return tuple(found)
 
 
-def _check_signs(delimiter: str, decimal: str, asked: Span | None) -> None:
+def check_signs(delimiter: str, decimal: str, asked: Span | None) -> None:
+    """Raises `Refused` where these cannot be the signs of one file."""
     if delimiter not in DELIMITERS:
         message, expected = f"{delimiter!r} cannot part the cells of a ledger", "a comma, `;`, a tab or `|`"
     elif decimal not in DECIMALS:
@@ -160,7 +157,7 @@ def _written(delimiter: str) -> str:
 
 
 def _column(reading: _Reading, heading: Located, place: int) -> Column | None:
-    name, unit = _name_and_unit(heading.text)
+    name, unit = name_and_unit(heading.text)
     if name not in COLUMNS:
         message = f"no column is called {name!r}" if name else f"column {place} has no name"
         advice = nearest(name, COLUMNS) or "delete the column, or rename it"
@@ -173,8 +170,12 @@ def _column(reading: _Reading, heading: Located, place: int) -> Column | None:
     return Column(name, unit or "", heading)
 
 
-def _name_and_unit(heading: str) -> tuple[str, str | None]:
-    """`mass [kg]` to `mass` and `kg`; without brackets at its end, the heading is the name."""
+def name_and_unit(heading: str) -> tuple[str, str | None]:
+    """`mass [kg]` to `mass` and `kg`; without brackets at its end, the heading is the name.
+
+    >>> name_and_unit("mass [kg]")
+    ('mass', 'kg')
+    """
     name, bracket, unit = heading.partition("[")
     if bracket and unit.endswith("]"):
         return name.strip(), unit[:-1].strip()
@@ -242,18 +243,9 @@ def _refuse_count(reading: _Reading, row: Row) -> None:
 def _cell(reading: _Reading, column: Column, cell: Located, number: int) -> Located:
     if column.name not in NUMERIC:
         return cell
-    text = cell.text
-    if reading.decimal == ",":
-        if _DECIMAL_POINT.search(text):
-            _refuse_decimal(reading, column, cell, number)
-        text = _DECIMAL_COMMA.sub(".", text)
-    elif _DECIMAL_COMMA.search(text):
+    if other_decimal(cell.text, reading.decimal):
         _refuse_decimal(reading, column, cell, number)
-    if column.unit and _BARE_NUMBER.fullmatch(text):
-        text = f"{text} {column.unit}"
-    if text == cell.text:
-        return cell
-    return Located(text, cell.span, cell.raw if cell.raw is not None else cell.text, cell.quoted)
+    return number_cell(cell, reading.decimal, column.unit)
 
 
 def _refuse_decimal(reading: _Reading, column: Column, cell: Located, number: int) -> None:

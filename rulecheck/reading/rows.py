@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from collections.abc import Iterator
 from dataclasses import dataclass
 
@@ -10,6 +11,9 @@ from rulecheck.reading.bounds import MAXIMUM_CELLS, MAXIMUM_FAULTS, MAXIMUM_SCAL
 from rulecheck.reading.nodes import Located
 
 _BLANKS = " \t"
+_BARE_NUMBER = re.compile(r"[+-]?[0-9]+(?:\.[0-9]+)?(?:[eE][+-]?[0-9]+)?")
+_DECIMAL_COMMA = re.compile(r"(?<=[0-9]),(?=[0-9])")
+_DECIMAL_POINT = re.compile(r"(?<=[0-9])\.(?=[0-9])")
 
 
 @dataclass(frozen=True, slots=True)
@@ -140,3 +144,22 @@ class Scanner:
         self.faults.add(
             "ledger-row", message, self._span(start, end), expected="cells as RFC 4180 has them", advice=advice
         )
+
+
+def other_decimal(text: str, decimal: str) -> bool:
+    """True where a number holds the sign of decimals that was not declared.
+
+    >>> other_decimal("12,5", ".")
+    True
+    """
+    return bool((_DECIMAL_POINT if decimal == "," else _DECIMAL_COMMA).search(text))
+
+
+def number_cell(cell: Located, decimal: str, unit: str) -> Located:
+    """A cell that holds a number: a decimal comma reads as a point, a bare number takes the unit of its heading."""
+    text = _DECIMAL_COMMA.sub(".", cell.text) if decimal == "," else cell.text
+    if unit and _BARE_NUMBER.fullmatch(text):
+        text = f"{text} {unit}"
+    if text == cell.text:
+        return cell
+    return Located(text, cell.span, cell.raw if cell.raw is not None else cell.text, cell.quoted)

@@ -8,7 +8,7 @@ from datetime import date
 from rulecheck import __version__
 from rulecheck.diagnostics import Faults
 from rulecheck.formula.printing import show, show_with
-from rulecheck.formula.syntax import Aggregate, Name, Syntax
+from rulecheck.formula.syntax import Aggregate, Call, Name, Syntax
 from rulecheck.graph.conditions import BoundRule, Part, Use
 from rulecheck.graph.figures import Figure
 from rulecheck.graph.terms import Term
@@ -176,7 +176,7 @@ class _Walk:
         uses = {use.text: use for use in names}
 
         def number(node: Syntax) -> str | None:
-            if not isinstance(node, (Name, Aggregate)):
+            if not isinstance(node, (Name, Aggregate, Call)):
                 return None
             use = uses.get(show(node))
             shown = self._amount(use.term, use) if use else None

@@ -7,6 +7,7 @@ from pathlib import Path
 
 import pytest
 from small_files import CAR, RULES, check_files
+from wrong_curves import WRONG_CURVES
 from wrong_designs import WRONG_DESIGNS
 from wrong_inputs import Wrong
 from wrong_rulesets import WRONG_RULESETS
@@ -16,7 +17,7 @@ from rulecheck.diagnostics import CODES, Refused
 from rulecheck.physics.modules import read_module
 from rulecheck.reading.workspace import Workspace
 
-WRONG = (*WRONG_DESIGNS, *WRONG_RULESETS)
+WRONG = (*WRONG_DESIGNS, *WRONG_CURVES, *WRONG_RULESETS)
 _CODE = re.compile(r"^(?:\S.*?:\d+:\d+: )?([a-z0-9-]+): ")
 OF_THE_COMMAND = frozenset(("usage", "cannot-write", "internal"))
 OF_PHYSICS = frozenset(("bad-physics",))
