@@ -192,6 +192,7 @@ def _setting(session: Session, path: str, text: str, faults: Faults) -> Overlay:
 
 
 def _in_states(design: Design, states: Mapping[str, str], faults: Faults) -> tuple[Design, tuple[str, ...]]:
+    chosen: list[State] = []
     for axis, name in states.items():
         state: State | None = design.states.get(axis, {}).get(name)
         if state is None:
@@ -203,8 +204,8 @@ def _in_states(design: Design, states: Mapping[str, str], faults: Faults) -> tup
                 advice=nearest(f"{axis}={name}", known),
             )
             continue
-        design = design.with_overlay(state.overlay)
-    return design, tuple(f"state {axis}: {name}" for axis, name in states.items())
+        chosen.append(state)
+    return design.in_states(chosen), tuple(f"state {axis}: {name}" for axis, name in states.items())
 
 
 def reserves_of(loaded: Loaded, graph: Graph, share: Fraction | None) -> Reserves:

@@ -125,12 +125,14 @@ def _after(scope: Scope, day: Term) -> bool:
     return isinstance(day.value, Monomial) and day.value.rational > scope.shared.day.toordinal()
 
 
-def judgement(scope: Scope, rule: str, element: str, question: Located) -> Part:
-    """A slot for a person: verdict, role, date and reason; what is not filled in is open."""
+def judgement(scope: Scope, rule: str, element: str | None, question: Located) -> Part:
+    """A slot for a person: verdict, role, date and reason; what is not filled in is open.
+
+    `element` is None for a rule that is about the whole car. A judgement that names no element speaks of none.
+    """
     design = scope.view.design
-    key = element.replace(", ", "_")
-    own = f"judgements.{rule}.{key}"
-    base = own if key and design.names(own) is not None else f"judgements.{rule}"
+    whole = f"judgements.{rule}"
+    base = whole if element is None else f"{whole}.{_key(element)}"
     scope.touched.add(base)
     missing = [name for name in ("verdict", "role", "reason") if _words(scope, f"{base}.{name}", question.span) is None]
     day = _date(scope, f"{base}.date", question.span)
@@ -138,8 +140,9 @@ def judgement(scope: Scope, rule: str, element: str, question: Located) -> Part:
         missing.append("date")
     text = f"judgement: {question.text}"
     if missing:
-        told = "" if len(missing) == 4 else f" ({', '.join(missing)})"
-        gone = scope.bank.unknown(Reason("missing", f"a judgement{told}", question.span), "flag")
+        is_said_of_rule = any(f"{whole}.{name}" in design.leaves for name in missing)
+        told = _unjudged(base, missing, element, is_said_of_rule)
+        gone = scope.bank.unknown(Reason("missing", told, question.span), "flag")
         return Part("judgement", text, gone, span=question.span)
     if day is not None and _after(scope, day):
         return Part(
@@ -152,3 +155,18 @@ def judgement(scope: Scope, rule: str, element: str, question: Located) -> Part:
     return Part(
         "judgement", text, scope.bank.flag(verdict == "complies"), span=question.span, place=design.keys.get(base)
     )
+
+
+def _key(element: str) -> str:
+    """The name under which an element is judged: `left`, or `left_right` for a pair; `*` where there is none."""
+    return element.replace(" with ", "_").replace(", ", "_") or "*"
+
+
+def _unjudged(base: str, missing: list[str], element: str | None, is_said_of_rule: bool) -> str:
+    """What is missing of a judgement, and where it would stand."""
+    if element is None:
+        return "a judgement" if len(missing) == 4 else f"a judgement ({', '.join(missing)})"
+    told = f"{base}, a judgement of '{element}'"
+    if len(missing) < 4:
+        return f"{told} ({', '.join(missing)})"
+    return f"{told}; one of the whole rule speaks of no element" if is_said_of_rule else told

@@ -11,7 +11,8 @@ from rulecheck.binding.bound import BROKEN, Bound, Date, Item, Items, Number, Tr
 from rulecheck.binding.scope import Scope
 from rulecheck.diagnostics import Faults, Span
 from rulecheck.graph.figures import InputFact
-from rulecheck.model.design import NONE, LeafNode
+from rulecheck.graph.terms import Term
+from rulecheck.model.design import NONE, LeafNode, holders
 from rulecheck.model.vocabulary import Entry
 from rulecheck.operations.values import Monomial
 from rulecheck.quantity.dimension import PURE, Dimension
@@ -118,7 +119,7 @@ def _number(scope: Scope, path: str, entry: Entry, node: LeafNode | None, span: 
         node = _default(scope, entry)
     counted = entry.unit == "1"
     if node is None or (isinstance(node, Located) and node.text == NONE):
-        return Number(scope.bank.input(path, "number", unit.dimension, span), unit, counted)
+        return Number(_not_stated(scope, path, unit, span), unit, counted)
     read = quantity(scope, entry, node)
     if read is None:
         return BROKEN
@@ -128,6 +129,13 @@ def _number(scope: Scope, path: str, entry: Entry, node: LeafNode | None, span: 
         return Number(scope.missing(what, "number", unit.dimension, node.span), unit)
     rational, power = read.si()
     return Number(leaf(scope, path, entry, node, Monomial(rational, power), unit), unit, counted)
+
+
+def _not_stated(scope: Scope, path: str, unit: Unit, span: Span) -> Term:
+    """An input without a value; in a state that takes it away, not the one that the design has otherwise."""
+    if any(holder in scope.view.set_paths for holder in holders(path)):
+        return scope.missing(path, "number", unit.dimension, span)
+    return scope.bank.input(path, "number", unit.dimension, span)
 
 
 def leaf(scope: Scope, path: str, entry: Entry, node: LeafNode, value: Monomial, unit: Unit) -> Any:

@@ -258,7 +258,8 @@ class _Binding:
         if alternative.evidence is not None:
             parts.append(evidence(scope, alternative.evidence))
         if alternative.judgement is not None:
-            parts.append(judgement(scope, self.rule.name, element, alternative.judgement))
+            about = element if self.rule.each else None
+            parts.append(judgement(scope, self.rule.name, about, alternative.judgement))
         return parts
 
     def _scale(self, scope: Scope) -> Number | None:

@@ -7,7 +7,7 @@ from itertools import chain, product
 
 from rulecheck.binding.scope import Shared, View
 from rulecheck.diagnostics import Related, Span
-from rulecheck.model.design import Overlay, State, holders
+from rulecheck.model.design import Design, Overlay, State, holders
 from rulecheck.model.ruleset import Rule, Ruleset
 from rulecheck.reading.nearest import nearest
 from rulecheck.reading.nodes import Located
@@ -103,7 +103,11 @@ def _combined(shared: Shared, ruleset: Ruleset, combination: tuple[tuple[str, st
 
 
 def combined_view(shared: Shared, chosen: list[State]) -> View:
-    """The design with all chosen states laid over it; two that set one path are a fault."""
+    """The design with all chosen states laid over it; two that set one path are a fault.
+
+    A state that is laid over the design for the whole run makes way for one of the same axis.
+    """
+    under, freed = _under(shared.base.design, {state.axis for state in chosen})
     owners: dict[str, State] = {}
     overlay = Overlay()
     for state in chosen:
@@ -114,9 +118,18 @@ def combined_view(shared: Shared, chosen: list[State]) -> View:
         owners.update((path, state) for path in state.overlay.paths)
         overlay = overlay.then(state.overlay)
     states = tuple((state.axis, state.name) for state in chosen)
-    if not overlay:
+    if not overlay and not freed:
         return View(shared.base.design, states, frozenset())
-    return View(shared.base.design.with_overlay(overlay), states, frozenset(overlay.paths), shared.base.design)
+    return View(under.with_overlay(overlay), states, frozenset((*overlay.paths, *freed)), shared.base.design)
+
+
+def _under(design: Design, axes: set[str]) -> tuple[Design, tuple[str, ...]]:
+    """What states of some axes are laid over, and the paths on which that differs from the design of the run."""
+    freed = [path for axis in axes & set(design.chosen) for path in design.chosen[axis].overlay.paths]
+    if not freed or design.plain is None:
+        return design, ()
+    kept = [state for axis, state in design.chosen.items() if axis not in axes]
+    return design.plain.in_states(kept), tuple(freed)
 
 
 def _owner(owners: dict[str, State], path: str) -> State | None:

@@ -97,6 +97,7 @@ class Design:
     """One car. `leaves` has what is stated by path, `items` the names directly below each inner path in order.
 
     `complete` are the collections that are closed, `absent` what is stated `none`, `keys` where each key stands.
+    `chosen` are the states, by axis, that are laid over it for one run, and `plain` is the design without them.
     """
 
     file: str
@@ -110,6 +111,8 @@ class Design:
     absent: frozenset[str]
     states: MappingOf[str, MappingOf[str, State]]
     keys: MappingOf[str, Span]
+    chosen: MappingOf[str, State] = field(default_factory=dict)
+    plain: Design | None = None
 
     def with_overlay(self, overlay: Overlay) -> Design:
         """The design with the changes laid over it; the design itself stays."""
@@ -120,7 +123,17 @@ class Design:
         for path, node in overlay.settings:
             _lay(path, node, leaves, items, absent)
             keys[path] = node.span
-        return replace(self, leaves=leaves, items=items, absent=frozenset(absent), keys=keys)
+        plain = self.plain.with_overlay(overlay) if self.plain is not None else None
+        return replace(self, leaves=leaves, items=items, absent=frozenset(absent), keys=keys, plain=plain)
+
+    def in_states(self, chosen: Iterable[State]) -> Design:
+        """The design with states laid over it for a whole run; rules may ask for others on the same axes."""
+        overlay = Overlay()
+        laid = {state.axis: state for state in chosen}
+        for state in laid.values():
+            overlay = overlay.then(state.overlay)
+        plain = self.plain or self
+        return replace(plain.with_overlay(overlay), chosen=laid, plain=plain) if laid else plain
 
     def names(self, path: str) -> tuple[str, ...] | None:
         """The names directly below a path without those stated `none`, or None where nothing is stated there."""

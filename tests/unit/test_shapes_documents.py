@@ -156,6 +156,39 @@ def test_a_judgement_of_an_element_that_is_not_whole_is_not_made_up_by_that_of_t
     assert only(f"{design}{general}\n    sill: {{{short}}}\n", rule).verdict == "open"
 
 
+EACH_EDGE = "rules:\n  it:\n    each: e in edges\n    judgement: Is it smooth?\n"
+
+
+@pytest.mark.parametrize("verdict", ["complies", "breach"])
+def test_a_judgement_of_the_whole_rule_answers_for_no_element(verdict: str) -> None:
+    found = only("edges: {sill: {radius: 1 mm}, lip: {radius: 1 mm}}\n" + judged(verdict=verdict), EACH_EDGE)
+    assert found.verdict == "open"
+    for name in ("sill", "lip"):
+        assert (
+            f"judgements.it.{name}, a judgement of '{name}'; one of the whole rule speaks of no element" in found.reason
+        )
+
+
+def test_the_reason_says_where_a_judgement_would_stand() -> None:
+    whole = ", ".join(f"{key}: {value}" for key, value in SLOT.items())
+    design = (
+        "edges: {sill: {radius: 1 mm}, lip: {radius: 1 mm}}\njudgements: {it: {sill: {"
+        + whole
+        + "}, lip: {role: me}}}\n"
+    )
+    assert only(design, EACH_EDGE).reason == "missing: judgements.it.lip, a judgement of 'lip' (verdict, reason, date)"
+
+
+def test_judgements_of_pairs() -> None:
+    rule = "rules:\n  it:\n    each: a, b in pairs(edges)\n    judgement: Do they match?\n".replace(
+        "a, b in pairs(edges)", '"a, b in pairs(edges)"'
+    )
+    edges = "edges: {sill: {radius: 1 mm}, lip: {radius: 1 mm}}\n"
+    whole = ", ".join(f"{key}: {value}" for key, value in SLOT.items())
+    assert only(f"{edges}judgements: {{it: {{sill_lip: {{{whole}}}}}}}\n", rule).verdict == "complies"
+    assert only(f"{edges}judgements: {{it: {{sill: {{{whole}}}}}}}\n", rule).verdict == "open"
+
+
 # --- branches --------------------------------------------------------------------------------------------------------
 
 TUBE = """\

@@ -150,3 +150,63 @@ def test_figures_are_computed_anew_in_a_state() -> None:
 def test_one_state_may_be_laid_over_the_design_for_a_question() -> None:
     found = findings(check_texts(CAR + BOTH, mass("", "<= 800 kg"), states={"fuel": "empty"}))["it"]
     assert (found.verdict, margin(found)) == ("complies", 25)
+
+
+@pytest.mark.parametrize(
+    ("states", "chosen", "room", "state"),
+    [
+        # Written: 700 + 50 + 75 kg; empty takes 50 kg away, light 15 kg; heavy adds 15 kg.
+        ("", {"fuel": "empty"}, 15, {}),
+        ("", {"fuel": "empty", "driver": "light"}, 0, {}),
+        ("{fuel: [full]}", {"fuel": "empty"}, 65, {"fuel": "full"}),
+        ("{fuel: [full]}", {"fuel": "empty", "driver": "heavy"}, 80, {"fuel": "full"}),
+        ("{driver: [light]}", {"fuel": "empty"}, 0, {"driver": "light"}),
+        ("{driver: [heavy]}", {"driver": "light"}, 80, {"driver": "heavy"}),
+        ("every", {"fuel": "empty"}, 0, {"fuel": "empty", "driver": "light"}),
+        ("every", {"fuel": "full", "driver": "heavy"}, 0, {"fuel": "empty", "driver": "light"}),
+        (
+            "{driver: every, fuel: [full]}",
+            {"fuel": "empty", "driver": "heavy"},
+            50,
+            {"fuel": "full", "driver": "light"},
+        ),
+    ],
+)
+def test_the_axes_that_a_rule_names_win_over_a_state_of_the_whole_run(
+    states: str, chosen: dict[str, str], room: int, state: dict[str, str]
+) -> None:
+    found = only(CAR + BOTH, mass(states), states=chosen)
+    assert (found.verdict, margin(found)) == ("complies", room)
+    assert found.binding is not None
+    assert dict(found.binding.state) == state
+
+
+def test_what_only_the_state_of_the_whole_run_states_is_gone_in_another() -> None:
+    design = "states: {wing: {fitted: {dimensions.overall_height: 900 mm}, none_fitted: {}}}\n"
+    rule = (
+        "states_needed: {wing: [fitted, none_fitted]}\n"
+        "rules:\n  it: {states: {wing: [none_fitted]}, require: dimensions.overall_height <= 950 mm}\n"
+        "  other: {require: dimensions.overall_height <= 950 mm}\n"
+    )
+    found = findings(check_texts(design, rule, states={"wing": "fitted"}))
+    assert (found["it"].verdict, found["other"].verdict) == ("open", "complies")
+
+
+@pytest.mark.parametrize("order", [1, -1])
+def test_a_value_that_a_state_takes_away_is_not_that_of_the_design(order: int) -> None:
+    design = (
+        "dimensions: {overall_height: 900 mm}\npoints: {top: 0 0 900 mm}\n"
+        "states: {roof: {off: {dimensions.overall_height: none, points.top: none}}}\n"
+    )
+    rules = [
+        "  it: {states: {roof: [off]}, require: dimensions.overall_height <= 950 mm}\n",
+        "  at: {states: {roof: [off]}, require: points.top.z <= 950 mm}\n",
+        "  other: {require: dimensions.overall_height <= 950 mm and points.top.z <= 950 mm}\n",
+    ]
+    text = "states_needed: {roof: [off]}\nrules:\n" + "".join(rules[::order])
+    found = findings(check_texts(design, text))
+    assert {name: found[name].verdict for name in ("it", "at", "other")} == {
+        "it": "open",
+        "at": "open",
+        "other": "complies",
+    }
