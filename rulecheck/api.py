@@ -126,7 +126,8 @@ def whatif(
 ) -> WhatIf:
     """Every margin and figure before and after each change. Raises `Refused` with every fault.
 
-    A change is laid over the design as it stands; several changes stand side by side.
+    A change is laid over the design as it stands; several changes stand side by side. What lies inside a reserve of
+    the house file is `tight`, as in `check`.
     """
     from rulecheck.studies.whatif import what_if
 
@@ -137,7 +138,7 @@ def whatif(
     for change in columns:
         loaded = load(session, design, rules, change.settings, change.changes, states)
         made.append(_column(loaded, base, change, day))
-    return what_if(Checker(_bind(base, day, BUILT_IN)), made, base.design, base.rulesets, day)
+    return what_if(_checker(base, day), made, base.design, base.rulesets, day)
 
 
 def headroom(
@@ -187,10 +188,16 @@ def kept_variant(design: File, columns: Sequence[Change], target: File, session:
 def _column(loaded: Loaded, base: Loaded, change: Change, day: date) -> Column:
     from rulecheck.studies.whatif import Column
 
-    checker = Checker(_bind(loaded, day, BUILT_IN))
+    checker = _checker(loaded, day)
     name = ", ".join(Path(path).name.removesuffix(".change.yaml") for path in change.changes)
     structural = _structure(loaded.design) != _structure(base.design)
     return Column(name or "change", loaded.changes, checker, structural)
+
+
+def _checker(loaded: Loaded, day: date) -> Checker:
+    """A design judged with every physics figure and the reserves of the house file."""
+    graph = _bind(loaded, day, BUILT_IN)
+    return Checker(graph, reserves_of(loaded, graph, None))
 
 
 def _structure(design: Design) -> tuple[object, ...]:

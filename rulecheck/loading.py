@@ -14,6 +14,7 @@ from rulecheck.graph.figures import Graph
 from rulecheck.model.design import Design, Overlay, State
 from rulecheck.model.design_reader import read_change, read_design
 from rulecheck.model.house import has_house, read_house
+from rulecheck.model.house_rules import house_rule_names, rule_names
 from rulecheck.model.names import is_name
 from rulecheck.model.ruleset import House, Ruleset
 from rulecheck.model.ruleset_reader import read_ruleset
@@ -77,6 +78,7 @@ class Loaded:
     also_known: tuple[Ruleset, ...]
     house: House | None
     changes: tuple[str, ...]
+    workspace: Workspace
 
 
 def load(
@@ -117,7 +119,7 @@ def load(
     design = design.with_overlay(overlay)
     design, said = _in_states(design, states or {}, faults)
     faults.settle()
-    return Loaded(design, rulesets, also_known, house, (*told, *said))
+    return Loaded(design, rulesets, also_known, house, (*told, *said), workspace)
 
 
 def _rulesets(
@@ -220,6 +222,7 @@ def reserves_of(loaded: Loaded, graph: Graph, share: Fraction | None) -> Reserve
         if read is not None:
             by_rule[name] = read
             _check_reserve(name, where, read, graph, faults)
+    _check_names(loaded, faults)
     faults.settle()
     return Reserves(by_rule)
 
@@ -233,6 +236,22 @@ def _check_reserve(name: str, where: Located, read: Quantity, graph: Graph, faul
         told = f"the reserve of rule '{name}' is {name_of(read.unit.dimension)}, and its margin is not"
         expected = " or ".join(sorted(name_of(dimension) for dimension in dimensions))
         faults.add("wrong-dimension", told, where.span, expected=expected)
+
+
+def _check_names(loaded: Loaded, faults: Faults) -> None:
+    """A reserve for a rule that is in none of the rule books that the house works to would have no effect."""
+    house = loaded.house
+    known = rule_names((*loaded.rulesets, *loaded.also_known))
+    strange = {name: where for name, where in (house.reserves if house else {}).items() if name not in known}
+    if house is None or not strange:
+        return
+    others = house_rule_names(loaded.workspace, house)
+    if others is None:
+        return
+    for name, where in strange.items():
+        if name not in others:
+            told = f"the house keeps a reserve for a rule '{name}', which none of its rule books has"
+            faults.add("unknown-name", told, where.span, advice=nearest(name, sorted(known | others)))
 
 
 def reserve_text(house: House | None, share: Fraction | None) -> str:

@@ -10,7 +10,7 @@ from rulecheck.binding.inputs import VALUE_KEYS
 from rulecheck.diagnostics import CODES
 from rulecheck.formula import lexer, token_reader
 from rulecheck.handbook.functions import FUNCTIONS
-from rulecheck.model import design_reader, ruleset_reader
+from rulecheck.model import design_reader, house_rules, ruleset_reader
 from rulecheck.model.core_table import CORE
 from rulecheck.model.vocabulary import Entry
 from rulecheck.physics.modules import BUILT_IN, built_in
@@ -142,6 +142,7 @@ def bound_rows() -> str:
         ("variants of variants", design_reader.MOST_VARIANTS),
         ("rulesets that extend one another", ruleset_reader.MOST_LAYERS),
         ("turns of a loop", aggregates.MOST_ELEMENTS),
+        ("designs of a house file that are looked through for the name of a rule", house_rules.MOST_DESIGNS),
         ("combinations of states of a rule", states.MOST_COMBINATIONS),
         ("cases of a rule: elements times states", rules.MOST_CASES),
         ("terms of everything that is computed", exact.MAXIMUM_TERMS),

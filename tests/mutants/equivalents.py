@@ -394,12 +394,6 @@ _LISTED: tuple[tuple[str, str, str, Changes], ...] = (
     (
         "binding/documents.py",
         "judgement",
-        "a name that ends in a dot is never stated",
-        ("key and design.names(own) is not None -> design.names(own) is not None",),
-    ),
-    (
-        "binding/documents.py",
-        "judgement",
         "a missing day has been answered above",
         ("day is not None and _after(scope, day) -> _after(scope, day)",),
     ),
@@ -407,7 +401,7 @@ _LISTED: tuple[tuple[str, str, str, Changes], ...] = (
         "binding/states.py",
         "combined_view",
         "laying nothing over a design gives the design",
-        ("never: if not overlay",),
+        ("never: if not overlay and (not freed)",),
     ),
     (
         "binding/presence.py",

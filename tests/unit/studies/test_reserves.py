@@ -82,3 +82,71 @@ def test_a_reserve_that_nothing_can_be_held_against(reserve: str, code: str) -> 
         kept(reserve, TYRES, BY_AXLE)
     assert [item.code for item in caught.value.diagnostics] == [code]
     assert str(caught.value.diagnostics[0].span).startswith("rulecheck.yaml:2:")
+
+
+WIDTH = "rules: {it: {require: dimensions.overall_width <= 1900 mm}}\n"
+
+
+def house(reserves: str, more: str = "", **files: str) -> Finding:
+    """The finding of a car in a repository whose house file keeps reserves."""
+    return findings(
+        check_files(
+            {
+                "car.design.yaml": CAR + "dimensions: {overall_width: 1890 mm}\n",
+                "cup.ruleset.yaml": RULES + WIDTH,
+                "rulecheck.yaml": f"house: Heron office\nreserves: {reserves}\n{more}",
+                **{name.replace("__", ".") + ".yaml": text for name, text in files.items()},
+            }
+        )
+    )["it"]
+
+
+def test_a_reserve_for_a_rule_that_no_rule_book_has_is_refused_with_the_nearest_name() -> None:
+    with pytest.raises(Refused) as caught:
+        house("{it: 20 mm, itt: 2 mm}")
+    (found,) = caught.value.diagnostics
+    assert (found.code, "'itt'" in found.message, "it" in found.advice) == ("unknown-name", True, True)
+    assert str(found.span).startswith("rulecheck.yaml:2:")
+
+
+OTHER = (
+    RULES.replace("Dunmere Cup", "Dunmere Trophy") + "rules: {height: {require: dimensions.overall_height <= 1 m}}\n"
+)
+
+
+def test_a_reserve_for_a_rule_of_another_ruleset_of_the_house_is_fine() -> None:
+    assert (
+        house("{it: 20 mm, height: 2 mm}", "rulesets: [trophy.ruleset.yaml]\n", trophy__ruleset=OTHER).verdict
+        == "tight"
+    )
+
+
+def test_a_reserve_for_a_rule_of_another_design_of_the_house_is_fine() -> None:
+    files = {"trophy__ruleset": OTHER, "other__design": CAR.replace("cup.", "trophy.")}
+    assert house("{it: 20 mm, height: 2 mm}", 'designs: ["*.design.yaml"]\n', **files).verdict == "tight"
+    with pytest.raises(Refused):
+        house("{it: 20 mm, height: 2 mm}", 'designs: ["car.*.yaml"]\n', **files)
+
+
+@pytest.mark.parametrize("broken", ["ruleset: [", RULES.replace("ruleset", "rulset")])
+def test_nothing_is_said_of_names_where_a_rule_book_cannot_be_read(broken: str) -> None:
+    assert (
+        house("{it: 20 mm, height: 2 mm}", "rulesets: [trophy.ruleset.yaml]\n", trophy__ruleset=broken).verdict
+        == "tight"
+    )
+
+
+@pytest.mark.parametrize("pattern", ["../*.design.yaml", "/*.design.yaml", ""])
+def test_designs_outside_the_repository_are_not_looked_for(pattern: str) -> None:
+    assert house("{it: 20 mm, height: 2 mm}", f'designs: ["{pattern}"]\n').verdict == "tight"
+
+
+def test_a_reserve_for_a_rule_that_is_withdrawn_is_no_slip() -> None:
+    book = f"{RULES}extends: trophy.ruleset.yaml\nwithdrawn: {{height: bulletin 2}}\n{WIDTH}"
+    files = {
+        "trophy.ruleset.yaml": OTHER,
+        "cup.ruleset.yaml": book,
+        "car.design.yaml": CAR + "dimensions: {overall_width: 1890 mm}\n",
+    }
+    report = check_files({**files, "rulecheck.yaml": "house: Heron office\nreserves: {it: 20 mm, height: 2 mm}\n"})
+    assert findings(report)["it"].verdict == "tight"

@@ -99,3 +99,21 @@ def test_a_kept_variant_reads_back_to_the_same_design(car):
 def test_only_one_change_can_be_kept(car):
     with pytest.raises(Refused, match="--keep writes one change, and there are 2"):
         api.kept_variant(car, [Change(), Change()], car.parent / "kept.design.yaml", api.Session())
+
+
+def test_what_lies_inside_a_reserve_of_the_house_is_tight(car):
+    (car.parent / "rulecheck.yaml").write_text("house: Heron office\nreserves: {x: 30 mm}\n", encoding="utf-8")
+    outcome = api.whatif(car, [Change((), (("v.x", "280mm"),)), Change((), (("v.x", "260mm"),))], on=DAY)
+    (moved,) = [change for change in outcome.rules if change.name == "x"]
+    assert (moved.verdict, [item.verdict for item in moved.moved]) == ("complies", ["tight", "complies"])
+    assert outcome.verdicts == ("breach", "complies")  # 280 mm makes the area too large: 42000 of 40000 mm^2
+    checked = api.check(car, settings={"v.x": "280mm"}, on=DAY)
+    assert {finding.name: finding.verdict for finding in checked.rules}["x"] == "tight"
+
+
+def test_a_design_that_is_tight_already(car):
+    (car.parent / "rulecheck.yaml").write_text("house: Heron office\nreserves: {x: 100.1 mm}\n", encoding="utf-8")
+    outcome = api.whatif(car, [Change((), (("v.x", "199mm"),))], on=DAY)
+    assert outcome.verdict == "tight"
+    assert outcome.rules[0].name == "x"
+    assert (outcome.rules[0].verdict, outcome.rules[0].moved[0].verdict) == ("tight", "complies")
