@@ -60,14 +60,19 @@ class Disk:
             raise Refused([_unreadable(error, file, _near(path), asked)]) from None
 
 
-def outside(file: str, asked: Span | None) -> Diagnostic:
-    """The diagnostic for a file that lies outside the root."""
+def outside(
+    file: str,
+    asked: Span | None,
+    root: str = "the folder that the files of a design may not leave",
+    advice: str = "move the file into the repository",
+) -> Diagnostic:
+    """The diagnostic for a file that lies outside the root, which is told in words."""
     return Diagnostic(
         "outside-root",
-        f"{file} lies outside the folder that the files of a design may not leave",
+        f"{file} lies outside {root}",
         asked,
-        expected="a file of the same repository, named relative to the file that names it",
-        advice="move the file into the repository",
+        expected="a file below that folder, named relative to the file that names it",
+        advice=advice,
     )
 
 

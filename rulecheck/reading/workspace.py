@@ -20,6 +20,8 @@ HOUSE_FILE = "rulecheck.yaml"
 class Workspace:
     """A root, and what was read below it: texts with line feeds, and digests of the bytes.
 
+    `mark` is what makes the folder the root: `.git`, the house file, or nothing where it is the file's own folder.
+
     Names of files are relative to the root and written with forward slashes. Each file is read once,
     so that a run sees one content of it. `digests` are SHA-256, in hexadecimal.
     """
@@ -28,6 +30,7 @@ class Workspace:
     texts: dict[str, str] = field(default_factory=dict)
     digests: dict[str, str] = field(default_factory=dict)
     store: Store | None = None
+    mark: str | None = None
 
     @classmethod
     def around(cls, path: Path) -> Workspace:
@@ -36,7 +39,8 @@ class Workspace:
         """
         place = Path(os.path.abspath(path))
         folder = place if os.path.isdir(place) else place.parent
-        return cls(_root_above(folder))
+        root, mark = _root_above(folder)
+        return cls(root, mark=mark)
 
     def name(self, path: Path) -> str:
         """The name of a file given by its path; `Refused` with `outside-root` where it lies outside."""
@@ -45,7 +49,7 @@ class Workspace:
                 return Path(settle(path)).relative_to(settle(self.root)).as_posix()
             except ValueError:
                 continue
-        raise Refused([outside(str(path), None)])
+        raise Refused([self._outside(str(path), None)])
 
     def resolve(self, reference: str, beside: str, asked: Span | None) -> str:
         """The name of the file that `beside` refers to, relative to the folder of `beside`.
@@ -56,10 +60,11 @@ class Workspace:
         if not reference.strip() or "\x00" in reference:
             raise Refused([_no_name(reference, asked)])
         if reference.startswith(("/", "\\")) or PureWindowsPath(reference).drive:
-            raise Refused([outside(reference, asked)])
-        name = self._store().real(posixpath.join(posixpath.dirname(beside), reference))
+            raise Refused([self._outside(reference, asked)])
+        whole = posixpath.join(posixpath.dirname(beside), reference)
+        name = self._store().real(whole)
         if name is None:
-            raise Refused([outside(reference, asked)])
+            raise Refused([self._outside(reference, asked, posixpath.normpath(whole))])
         return name
 
     def read(self, file: str, asked: Span | None = None) -> str:
@@ -76,16 +81,31 @@ class Workspace:
         self.texts[file] = text
         return text
 
+    def _outside(self, file: str, asked: Span | None, whole: str = "") -> Diagnostic:
+        """What the root is and how another folder is made the root; `whole` is the file as seen from the root."""
+        if self.mark is None:
+            return outside(file, asked)
+        levels = sum(part == ".." for part in whole.split("/"))
+        above = {0: "a folder that holds both", 1: "the folder above"}.get(levels, f"the folder {levels} levels above")
+        house = f"a file '{HOUSE_FILE}' with the line 'house: NAME'"
+        if self.mark == HOUSE_FILE:
+            return outside(file, asked, f"the folder of {HOUSE_FILE}", f"move {HOUSE_FILE} into {above}")
+        if self.mark:
+            return outside(file, asked, "the git work tree", "move the file into the work tree")
+        root = f"the design's own folder, which is the root where no git work tree and no {HOUSE_FILE} is above it"
+        return outside(file, asked, root, f"put {house} into {above}, or make that a git work tree")
+
     def _store(self) -> Store:
         return self.store if self.store is not None else Disk(self.root)
 
 
-def _root_above(folder: Path) -> Path:
+def _root_above(folder: Path) -> tuple[Path, str]:
+    """The root, and what marks it."""
     for mark in (".git", HOUSE_FILE):
         for place in (folder, *folder.parents):
             if os.path.exists(place / mark):
-                return place
-    return folder
+                return place, mark
+    return folder, ""
 
 
 def _no_name(reference: str, asked: Span | None) -> Diagnostic:

@@ -174,7 +174,7 @@ WRONG_CURVES: tuple[Wrong, ...] = (
     Wrong(
         "a file of a curve outside the folder",
         (
-            "car.design.yaml:4:22: outside-root: ../torque.csv lies outside the folder that the files of a design may not leave; expected a file of the same repository, named relative to the file that names it; move the file into the repository",
+            "car.design.yaml:4:22: outside-root: ../torque.csv lies outside the design's own folder, which is the root where no git work tree and no rulecheck.yaml is above it; expected a file below that folder, named relative to the file that names it; put a file 'rulecheck.yaml' with the line 'house: NAME' into the folder above, or make that a git work tree",
         ),
         design="rig: {torque: {file: ../torque.csv}}\n",
         ruleset=RULE,

@@ -162,3 +162,47 @@ def test_another_store_takes_the_place_of_the_disk() -> None:
     assert workspace.read(name) == "a: 1"
     assert workspace.read(name) == "a: 1"
     assert store.reads == ["rules/a.yaml"]
+
+
+@pytest.mark.parametrize(
+    ("mark", "design", "reference", "told", "advice"),
+    [
+        (
+            "",
+            "car.yaml",
+            "../a.yaml",
+            "the design's own folder",
+            "with the line 'house: NAME' into the folder above, or",
+        ),
+        (
+            "",
+            "car.yaml",
+            "../../rules/a.yaml",
+            "the design's own folder",
+            "into the folder 2 levels above, or make that",
+        ),
+        ("", "car.yaml", "/a.yaml", "the design's own folder", "into a folder that holds both, or make that a git"),
+        (".git", "designs/car.yaml", "../../a.yaml", "the git work tree", "move the file into the work tree"),
+        ("rulecheck.yaml", "designs/car.yaml", "../../a.yaml", "the folder of rulecheck.yaml", "into the folder above"),
+    ],
+)
+def test_what_to_do_about_a_file_outside_is_said(
+    tmp_path: Path, mark: str, design: str, reference: str, told: str, advice: str
+) -> None:
+    root = tmp_path / "root"
+    (root / "designs").mkdir(parents=True)
+    if mark:
+        (root / mark).write_text("house: Heron office\n")
+    workspace = Workspace.around(root / design)
+    with pytest.raises(Refused) as refused:
+        workspace.resolve(reference, design, ASKED)
+    (found,) = refused.value.diagnostics
+    assert f"lies outside {told}" in found.message
+    assert advice in found.advice
+
+
+def test_the_advice_for_a_file_outside_works(tmp_path: Path) -> None:
+    (tmp_path / "designs").mkdir()
+    (tmp_path / "rulecheck.yaml").write_text("house: Heron office\n")
+    workspace = Workspace.around(tmp_path / "designs" / "car.yaml")
+    assert workspace.resolve("../rules/a.yaml", "designs/car.yaml", ASKED) == "rules/a.yaml"
