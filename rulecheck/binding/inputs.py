@@ -54,6 +54,14 @@ def _bind_input(scope: Scope, path: str, entry: Entry, span: Span) -> Bound:
     if entry.kind == "collection":
         return collection(scope, path, entry)
     node = stated(scope, path)
+    bound = _of_kind(scope, path, entry, node, span)
+    gap = _without_basis(scope, path, entry, node)
+    if not gap or node is None or not isinstance(bound, (Number, Truth, Words, Date)):
+        return bound
+    return replace(bound, term=scope.missing(gap, bound.term.sort, bound.term.dimension, node.span))
+
+
+def _of_kind(scope: Scope, path: str, entry: Entry, node: LeafNode | None, span: Span) -> Bound:
     if entry.kind == "number":
         return _number(scope, path, entry, node, span)
     if entry.kind == "flag":
@@ -165,6 +173,18 @@ def basis_of(scope: Scope, path: str, node: LeafNode) -> str:
         if entry is not None:
             return entry.default
         item = item.rpartition(".")[0]
+    return ""
+
+
+def _without_basis(scope: Scope, path: str, entry: Entry, node: LeafNode | None) -> str:
+    """What a stated value lacks of the basis that a ruleset asks for; empty where it lacks nothing."""
+    if not entry.basis or node is None or (isinstance(node, Located) and node.text == NONE):
+        return ""
+    found = basis_of(scope, path, node)
+    if found != entry.basis:
+        return f"{path} with the basis '{entry.basis}' (stated: {found or 'none'})"
+    if entry.basis == "supplier" and not beside(node, "reference").strip():
+        return f"the reference of {path}, which is the maker's data sheet"
     return ""
 
 

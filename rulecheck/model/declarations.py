@@ -10,10 +10,12 @@ from rulecheck.model.edge import InputShape
 from rulecheck.model.names import RESERVED_KEYS, check_name, is_name
 from rulecheck.model.vocabulary import Entry
 from rulecheck.quantity.dimension import Dimension
+from rulecheck.quantity.reading_records import BASES
 from rulecheck.quantity.units import is_unit
 from rulecheck.reading.nearest import nearest
 from rulecheck.reading.nodes import Located, Mapping, Node, Sequence
 
+WITH_BASIS = ("number", "flag", "choice", "text", "date")
 KINDS = ("number", "flag", "choice", "text", "date", "point", "item", "collection", "curve", "map")
 
 
@@ -73,6 +75,7 @@ def _rows(
         over=tuple(item.text for item in _over(shape)),
         datum_required=_text(shape.datum) == "required",
         definition=_text(shape.definition),
+        basis=_text(shape.basis),
         origin=file,
         span=span,
     )
@@ -111,7 +114,7 @@ def _kind(path: str, shape: InputShape, span: Span | None, faults: Faults) -> An
         return "choice"
     if shape.element is not None or shape.items is not None or shape.at_least is not None:
         return "collection"
-    if shape.unit is None and shape.definition is None:
+    if shape.unit is None and shape.definition is None and shape.basis is None:
         faults.add(
             "missing-key",
             f"the input '{path}' has neither a unit nor a kind",
@@ -128,12 +131,27 @@ def _whole(entry: Entry, shape: InputShape, span: Span | None, faults: Faults) -
     if entry.kind == "item" and not entry.of:
         faults.add("missing-key", f"'{entry.path}' is an item of nothing", span, expected="of: the collection")
     _keys(entry, shape, span, faults)
+    _basis(entry, shape.basis, faults)
     said = shape.definition
     if said is not None and entry.definitions and said.text not in entry.definitions:
         faults.add(
             "unknown-choice", f"'definitions' of this file have no '{said.text}' for '{entry.path}'", said.span,
             expected=" or ".join(entry.definitions), advice=nearest(said.text, entry.definitions),
         )  # fmt: skip
+
+
+def _basis(entry: Entry, said: Located | None, faults: Faults) -> None:
+    """Where a value must come from is one of the bases, and is asked of single values."""
+    if said is None:
+        return
+    if said.text not in BASES:
+        faults.add(
+            "unknown-choice", f"'{said.text}' is no basis", said.span, expected=" or ".join(BASES),
+            advice=nearest(said.text, BASES),
+        )  # fmt: skip
+    if entry.kind not in WITH_BASIS:
+        told = f"'{entry.path}' is a {entry.kind}, of which no basis can be asked"
+        faults.add("bad-structure", told, said.span, expected=f"a {' or '.join(WITH_BASIS)}")
 
 
 def _over(shape: InputShape) -> tuple[Located, ...]:

@@ -102,6 +102,7 @@ class InputShape(Shape):
     meaning: Leaf | None = Field(None, description="One line on what it is")
     datum: Leaf | None = Field(None, description="required: a point must name its datum")
     definition: Leaf | None = Field(None, description="Definition that a value must meet")
+    basis: Leaf | None = Field(None, description="Where the value must come from; supplier needs a reference too")
     of: Leaf | None = Field(None, description="Collection that an item is of")
     items: list[Leaf] | None = Field(None, description="Items that must be there")
     at_least: Leaf | None = Field(None, description="How many items there must be")

@@ -17,7 +17,7 @@ class Entry:
 
     `unit` is the unit in which the value is spoken of (`1` for a pure number); `default` the text that holds where
     nothing is stated; `items` and `at_least` say what a collection must hold; `definition` is the definition that a
-    ruleset asks for, `definitions` those that rival; `over` the units of the keys of a curve or map. `computed` marks a declared value beside a computed figure.
+    ruleset asks for, `definitions` those that rival; `basis` is where a ruleset asks the value to come from; `over` the units of the keys of a curve or map. `computed` marks a declared value beside a computed figure.
     """
 
     path: str
@@ -33,6 +33,7 @@ class Entry:
     datum_required: bool = False
     definition: str = ""
     definitions: tuple[str, ...] = ()
+    basis: str = ""
     origin: str = ""
     computed: bool = False
     over: tuple[str, ...] = ()
@@ -113,6 +114,7 @@ def _merged(known: Entry, entry: Entry) -> Entry:
             "items",
             "at_least",
             "definition",
+            "basis",
             "definitions",
             "meaning",
             "of",
