@@ -14,10 +14,11 @@ from rulecheck.diagnostics import Diagnostic, Refused, Span
 __version__ = "0.1.0"
 
 if TYPE_CHECKING:
-    from rulecheck.api import Change, check, headroom, load_design, load_ruleset, whatif, workings
+    from rulecheck.api import Change, check, headroom, load_design, load_ruleset, vary, whatif, workings
     from rulecheck.outcome.changes import WhatIf
     from rulecheck.outcome.results import Finding, Report, Workings
     from rulecheck.outcome.travel import HeadroomReport
+    from rulecheck.outcome.varied import Varied
 
 _LATE = {
     "check": "rulecheck.api",
@@ -26,9 +27,11 @@ _LATE = {
     "workings": "rulecheck.api",
     "whatif": "rulecheck.api",
     "headroom": "rulecheck.api",
+    "vary": "rulecheck.api",
     "Change": "rulecheck.api",
     "WhatIf": "rulecheck.outcome.changes",
     "HeadroomReport": "rulecheck.outcome.travel",
+    "Varied": "rulecheck.outcome.varied",
     "Finding": "rulecheck.outcome.results",
     "Report": "rulecheck.outcome.results",
     "Workings": "rulecheck.outcome.results",
@@ -42,6 +45,7 @@ __all__ = [
     "Refused",
     "Report",
     "Span",
+    "Varied",
     "WhatIf",
     "Workings",
     "check",
@@ -49,6 +53,7 @@ __all__ = [
     "headroom",
     "load_design",
     "load_ruleset",
+    "vary",
     "whatif",
     "workings",
 ]

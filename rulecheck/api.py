@@ -7,8 +7,8 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Mapping, Sequence
-from dataclasses import dataclass
+from collections.abc import Iterable, Iterator, Mapping, Sequence
+from dataclasses import dataclass, replace
 from datetime import date
 from fractions import Fraction
 from os.path import relpath
@@ -16,7 +16,7 @@ from pathlib import Path
 from typing import TYPE_CHECKING
 
 from rulecheck.binding.bind import bind
-from rulecheck.diagnostics import Faults
+from rulecheck.diagnostics import Diagnostic, Faults, Refused
 from rulecheck.graph.figures import Graph
 from rulecheck.graph.terms import Term
 from rulecheck.loading import (
@@ -29,6 +29,8 @@ from rulecheck.loading import (
     overlay_of,
     reserve_text,
     reserves_of,
+    varyings_of,
+    with_value,
 )
 from rulecheck.model.design import Design, Overlay
 from rulecheck.outcome.results import ClosedFormResult, Report, Workings
@@ -38,8 +40,10 @@ from rulecheck.studies.check import Checker
 from rulecheck.studies.reporting import Asked, report
 
 if TYPE_CHECKING:
+    from rulecheck.model.value_ranges import Varying
     from rulecheck.outcome.changes import WhatIf
     from rulecheck.outcome.travel import HeadroomReport
+    from rulecheck.outcome.varied import Varied
     from rulecheck.studies.whatif import Column
 
 
@@ -166,6 +170,60 @@ def headroom(
     return travels(checker, loaded.design, names, day)
 
 
+def vary(
+    design: File,
+    names: Sequence[str],
+    along: Mapping[str, str] | Iterable[tuple[str, str]],
+    *,
+    rules: Sequence[File] = (),
+    settings: Mapping[str, str] | Iterable[tuple[str, str]] = (),
+    changes: Sequence[File] = (),
+    states: Mapping[str, str] | None = None,
+    on: date | None = None,
+    session: Session | None = None,
+) -> Varied:
+    """Margins of rules, figures or whole modules along the values of one input. Raises `Refused` with every fault.
+
+    `along` is a path with its values, such as `{"vehicle.speed": "60..320km/h:20km/h"}` or
+    `{"recovery.axle": "front,rear"}`; a second path gives a curve for each of its values. Every value is an exact
+    evaluation of its own.
+    """
+    from rulecheck.studies.varying import Asked as AskedAlong
+    from rulecheck.studies.varying import vary as along_values
+
+    session = session or Session()
+    day = on or date.today()
+    loaded = load(session, design, rules, settings, changes, states, needs_rules=False)
+    first, second = varyings_of(session, loaded, along)
+    wanted = [name for name in names if name.partition(".")[0] in BUILT_IN]
+    designs = [loaded.design]
+    if second is not None:
+        designs = [with_value(loaded.design, second, setting) for setting in second.settings]
+    runs = (_run(replace(loaded, design=changed), first, day, wanted) for changed in designs)
+    return along_values(AskedAlong(loaded.design, loaded.rulesets, names, day, first, second, loaded.changes), runs)
+
+
+def _run(loaded: Loaded, varying: Varying, day: date, wanted: Sequence[str]) -> Iterator[Checker]:
+    """A checker for each value: on one graph where the value is a number of it, else each bound by itself."""
+    from rulecheck.studies.varying import MOST_BOUND, exchanged
+
+    def bound(place: int) -> Checker:
+        changed = replace(loaded, design=with_value(loaded.design, varying, varying.settings[place]))
+        graph = _bind(changed, day, wanted)
+        return Checker(graph, reserves_of(loaded, graph, None))
+
+    base = bound(0)
+    if varying.unit is not None and varying.path in base.graph.inputs:
+        yield from exchanged(base, varying)
+        return
+    if len(varying.settings) > MOST_BOUND:
+        message = f"'{varying.path}' is settled before anything is computed, and has {len(varying.settings)} values"
+        advice = f"name at most {MOST_BOUND} values"
+        raise Refused([Diagnostic("too-large", message, varying.settings[0].text.span, advice=advice)])
+    yield base
+    yield from (bound(place) for place in range(1, len(varying.settings)))
+
+
 def kept_variant(design: File, columns: Sequence[Change], target: File, session: Session) -> str:
     """One change as the text of a variant file that changes the design. Raises `Refused`."""
     from rulecheck.model.variant_writer import variant_text
@@ -220,4 +278,4 @@ def _bind(loaded: Loaded, day: date, figures: Sequence[str] = ()) -> Graph:
     )
 
 
-__all__ = ["Session", "check", "headroom", "load_design", "load_ruleset", "whatif", "workings"]
+__all__ = ["Session", "check", "headroom", "load_design", "load_ruleset", "vary", "whatif", "workings"]

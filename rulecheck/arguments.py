@@ -16,7 +16,9 @@ from typing import Any, TypeVar
 
 import click
 
-FORMS = ("terminal", "json")
+from rulecheck.diagnostics import Diagnostic
+
+FORMS = ("terminal", "json", "csv", "svg")
 
 Command = TypeVar("Command", bound=Callable[..., Any])
 
@@ -32,6 +34,17 @@ class Asked:
     states: dict[str, str]
     on: date | None
     deliveries: tuple[tuple[str, Path | None], ...]
+
+    @property
+    def options(self) -> dict[str, Any]:
+        """What every verb about a design takes by name."""
+        return {
+            "rules": self.rules,
+            "settings": self.settings,
+            "changes": self.changes,
+            "states": self.states,
+            "on": self.on,
+        }
 
     @property
     def json_on_stream(self) -> bool:
@@ -136,7 +149,7 @@ _OPTIONS = (
         metavar="FORM",
         type=click.Choice(FORMS),
         multiple=True,
-        help=f"Form of the answer: {' or '.join(FORMS)}; repeatable.",
+        help="Form of the answer: terminal, json, or another that the command has; repeatable.",
     ),
     click.option(
         "--output", metavar="FILE", multiple=True, help="File for the form before it, instead of standard output."
@@ -150,6 +163,14 @@ def question(command: Command) -> Command:
         command = option(command)
     return command
 
+
+vary_option = click.option(
+    "--vary",
+    metavar="PATH=VALUES",
+    multiple=True,
+    callback=_reading(lambda text: pair(text, "PATH=VALUES")),
+    help="Tabulate and plot along a range or a list: vehicle.speed=60..320km/h:20km/h, recovery.axle=front,rear.",
+)
 
 reserve_option = click.option(
     "--reserve",
@@ -207,3 +228,28 @@ def deliveries(
     if len(set(places)) < len(places):
         raise click.UsageError("two forms would go to one file", context)
     return tuple(pairs) or (("terminal", None),)
+
+
+def usage_fault(error: click.ClickException) -> Diagnostic:
+    """A fault of the command line in our own form."""
+    message, _, near = error.format_message().partition("Did you mean")
+    message = message.rstrip(" .(")
+    if message[1:2].islower():
+        message = message[0].lower() + message[1:]
+    context = getattr(error, "ctx", None)
+    command = context.command_path if context else "rulecheck"
+    advice = f"did you mean{near.rstrip(')')}" if near else f"'{command} --help' says what it takes"
+    return Diagnostic("usage", message, advice=advice)
+
+
+def own_fault(error: Exception) -> Diagnostic:
+    """A fault of ours, with the innermost place in the program."""
+    trace = error.__traceback__
+    while trace is not None and trace.tb_next is not None:
+        trace = trace.tb_next
+    place = f"{Path(trace.tb_frame.f_code.co_filename).name}, line {trace.tb_lineno}" if trace else "an unknown place"
+    return Diagnostic(
+        "internal",
+        f"{type(error).__name__} in {place}: {error}",
+        advice="this is a fault of rulecheck, not of your files; please report it with the files that brought it about",
+    )

@@ -17,15 +17,25 @@ from typing import TYPE_CHECKING, Any, NoReturn
 import click
 
 from rulecheck import __version__
-from rulecheck.arguments import Asked, Question, asked_from, question, reserve_option
+from rulecheck.arguments import (
+    Asked,
+    Question,
+    asked_from,
+    own_fault,
+    question,
+    reserve_option,
+    usage_fault,
+    vary_option,
+)
 from rulecheck.diagnostics import Diagnostic, Refused
 
 if TYPE_CHECKING:
     from rulecheck.api import Session
     from rulecheck.output.screen import Screen
 
+Forms = dict[str, "Callable[[Screen], str]"]
 COMPLIES, BREACH, UNUSABLE, NOT_SETTLED, INTERRUPTED = 0, 1, 2, 3, 130
-SCHEMAS = ("design", "ruleset", "house", "change", "report", "workings", "whatif", "headroom", "diagnostics")
+SCHEMAS = ("design", "ruleset", "house", "change", "report", "workings", "varied", "whatif", "headroom", "diagnostics")
 
 
 def main() -> NoReturn:
@@ -41,40 +51,15 @@ def run(arguments: Sequence[str]) -> int:
     try:
         answer = rulecheck.main(list(arguments), prog_name="rulecheck", standalone_mode=False)
     except click.ClickException as error:
-        return _refuse([_usage(error)])
+        return _refuse([usage_fault(error)])
     except Refused as refused:
         return _refuse(refused.diagnostics)
     except (KeyboardInterrupt, click.Abort):
         click.echo("interrupted", err=True)
         return INTERRUPTED
     except Exception as error:  # noqa: BLE001 - a crash must not be taken for a breach, whose exit code it would have
-        return _refuse([_crash(error)])
+        return _refuse([own_fault(error)])
     return answer if isinstance(answer, int) else COMPLIES
-
-
-def _usage(error: click.ClickException) -> Diagnostic:
-    """A fault of the command line in our own form."""
-    message, _, near = error.format_message().partition("Did you mean")
-    message = message.rstrip(" .(")
-    if message[1:2].islower():
-        message = message[0].lower() + message[1:]
-    context = getattr(error, "ctx", None)
-    command = context.command_path if context else "rulecheck"
-    advice = f"did you mean{near.rstrip(')')}" if near else f"'{command} --help' says what it takes"
-    return Diagnostic("usage", message, advice=advice)
-
-
-def _crash(error: Exception) -> Diagnostic:
-    """A fault of ours, with the innermost place in the program."""
-    trace = error.__traceback__
-    while trace is not None and trace.tb_next is not None:
-        trace = trace.tb_next
-    place = f"{Path(trace.tb_frame.f_code.co_filename).name}, line {trace.tb_lineno}" if trace else "an unknown place"
-    return Diagnostic(
-        "internal",
-        f"{type(error).__name__} in {place}: {error}",
-        advice="this is a fault of rulecheck, not of your files; please report it with the files that brought it about",
-    )
 
 
 def _say(text: str, encoding: str) -> None:
@@ -134,17 +119,10 @@ def check(design: str, reserve: Fraction | None, **given: Any) -> int:
 
     asked, session = asked_from(design, given), api.Session()
     try:
-        report = api.check(
-            asked.design,
-            rules=asked.rules,
-            settings=asked.settings,
-            changes=asked.changes,
-            states=asked.states,
-            on=asked.on,
-            reserve=reserve,
-            session=session,
+        report = api.check(asked.design, reserve=reserve, session=session, **asked.options)
+        _deliver(
+            asked, session, {"terminal": lambda on: report_text(report, on), "json": lambda _: report_json(report)}
         )
-        _deliver(asked, session, lambda screen: report_text(report, screen), lambda: report_json(report))
     except Refused as refused:
         return _refuse(refused.diagnostics, session, as_json=asked.json_on_stream)
     return {"breach": BREACH, "open": NOT_SETTLED, "unproven": NOT_SETTLED}.get(report.verdict, COMPLIES)
@@ -156,27 +134,63 @@ def check(design: str, reserve: Fraction | None, **given: Any) -> int:
 @question
 @click.option("--closed-form", is_flag=True, help="Also the margin as one formula of the inputs, with its derivatives.")
 @click.option("--solve-for", metavar="PATH", default="", help="Solve the closed form for this input.")
-def workings(design: str, names: tuple[str, ...], closed_form: bool, solve_for: str, **given: Any) -> int:
-    """How rules, derived figures, physics figures or whole physics modules came about, step by step."""
+@vary_option
+def workings(
+    design: str,
+    names: tuple[str, ...],
+    closed_form: bool,
+    solve_for: str,
+    vary: tuple[tuple[str, str], ...],
+    **given: Any,
+) -> int:
+    """How rules, derived figures, physics figures or whole physics modules came about, step by step.
+
+    With --vary instead: how they run along the values of an input, as a table and a plot; a second --vary gives a
+    curve for each of its values.
+    """
     from rulecheck import api
     from rulecheck.output.json_report import workings_json
     from rulecheck.output.terminal_workings import workings_text
 
+    if vary and (closed_form or solve_for):
+        raise click.UsageError("a closed form is of the design as it stands, and does not go with --vary")
     asked, session = asked_from(design, given), api.Session()
+    if vary:
+        return _varied(asked, session, names, vary)
     try:
         found = api.workings(
             asked.design,
             names,
-            rules=asked.rules,
-            settings=asked.settings,
-            changes=asked.changes,
-            states=asked.states,
-            on=asked.on,
             closed_form=closed_form or bool(solve_for),
             solve_for=solve_for,
             session=session,
+            **asked.options,
         )
-        _deliver(asked, session, lambda screen: workings_text(found, screen), lambda: workings_json(found))
+        _deliver(
+            asked, session, {"terminal": lambda on: workings_text(found, on), "json": lambda _: workings_json(found)}
+        )
+    except Refused as refused:
+        return _refuse(refused.diagnostics, session, as_json=asked.json_on_stream)
+    return COMPLIES
+
+
+def _varied(asked: Asked, session: Session, names: Sequence[str], along: Sequence[tuple[str, str]]) -> int:
+    """`workings --vary`."""
+    from rulecheck import api
+    from rulecheck.output.csv_table import varied_csv
+    from rulecheck.output.json_varied import varied_json
+    from rulecheck.output.svg_varied import varied_svg
+    from rulecheck.output.terminal_varied import varied_text
+
+    try:
+        found = api.vary(asked.design, names, along, session=session, **asked.options)
+        forms: Forms = {
+            "terminal": lambda on: varied_text(found, on),
+            "json": lambda _: varied_json(found),
+            "csv": lambda _: varied_csv(found),
+            "svg": lambda _: varied_svg(found),
+        }
+        _deliver(asked, session, forms)
     except Refused as refused:
         return _refuse(refused.diagnostics, session, as_json=asked.json_on_stream)
     return COMPLIES
@@ -204,7 +218,8 @@ def whatif(design: str, keep: str, **given: Any) -> int:
             asked.design, columns, rules=asked.rules, states=asked.states, on=asked.on, session=session
         )  # fmt: skip
         kept = api.kept_variant(asked.design, columns, Path(keep), session) if keep else ""
-        _deliver(asked, session, lambda screen: whatif_text(found, screen), lambda: whatif_json(found), (keep, kept))
+        forms: Forms = {"terminal": lambda on: whatif_text(found, on), "json": lambda _: whatif_json(found)}
+        _deliver(asked, session, forms, (keep, kept))
     except Refused as refused:
         return _refuse(refused.diagnostics, session, as_json=asked.json_on_stream)
     return COMPLIES
@@ -222,17 +237,10 @@ def headroom(design: str, names: tuple[str, ...], **given: Any) -> int:
 
     asked, session = asked_from(design, given), api.Session()
     try:
-        found = api.headroom(
-            asked.design,
-            names,
-            rules=asked.rules,
-            settings=asked.settings,
-            changes=asked.changes,
-            states=asked.states,
-            on=asked.on,
-            session=session,
+        found = api.headroom(asked.design, names, session=session, **asked.options)
+        _deliver(
+            asked, session, {"terminal": lambda on: headroom_text(found, on), "json": lambda _: headroom_json(found)}
         )
-        _deliver(asked, session, lambda screen: headroom_text(found, screen), lambda: headroom_json(found))
     except Refused as refused:
         return _refuse(refused.diagnostics, session, as_json=asked.json_on_stream)
     return COMPLIES
@@ -241,11 +249,10 @@ def headroom(design: str, names: tuple[str, ...], **given: Any) -> int:
 def _deliver(
     asked: Asked,
     session: Session,
-    for_terminal: Callable[[Screen], str],
-    as_json: Callable[[], str],
+    forms: Forms,
     kept: tuple[str, str] = ("", ""),
 ) -> None:
-    """Files first, so that nothing is said where one of them cannot be written."""
+    """Files first, so that nothing is said where one of them cannot be written. `forms` writes each form for a screen."""
     from rulecheck.output.screen import PAPER, screen_of
     from rulecheck.output.writing import write_files
 
@@ -253,7 +260,10 @@ def _deliver(
     shown = ""
     for form, path in asked.deliveries:
         screen = PAPER if path is not None else screen_of(sys.stdout)
-        text = for_terminal(screen) if form == "terminal" else as_json()
+        if form not in forms:
+            message = f"there is no form '{form}' of this answer"
+            raise Refused([Diagnostic("usage", message, expected=" or ".join(forms))])
+        text = forms[form](screen)
         if path is None:
             shown = text
         else:
@@ -305,16 +315,10 @@ def _schema(what: str, rules: Sequence[str]) -> str:
         raise click.UsageError(f"WHAT is one of {', '.join(SCHEMAS)}", click.get_current_context())
     if rules and what not in ("design", "change"):
         raise click.UsageError("--rules goes with the schema of a design or a change", click.get_current_context())
-    if what in ("report", "workings", "whatif", "headroom", "diagnostics"):
-        from rulecheck.output import report_schema, study_schemas
+    from rulecheck.output.schemas import OUTPUTS
 
-        found = {
-            "report": report_schema.report_schema,
-            "workings": report_schema.workings_schema,
-            "whatif": study_schemas.whatif_schema,
-            "headroom": study_schemas.headroom_schema,
-            "diagnostics": report_schema.diagnostics_schema,
-        }[what]()
+    if what in OUTPUTS:
+        found = OUTPUTS[what]()
     else:
         from rulecheck.api import load_ruleset
         from rulecheck.model import schemas

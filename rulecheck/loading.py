@@ -18,11 +18,13 @@ from rulecheck.model.house_rules import house_rule_names, rule_names
 from rulecheck.model.names import is_name
 from rulecheck.model.ruleset import House, Ruleset
 from rulecheck.model.ruleset_reader import read_ruleset
+from rulecheck.model.value_ranges import MOST_CURVES, Setting, Varying, read_varying
 from rulecheck.quantity.dimension_names import name_of
 from rulecheck.quantity.quantity import Quantity
 from rulecheck.quantity.reading_values import read_quantity
 from rulecheck.reading.nearest import nearest
-from rulecheck.reading.nodes import Located
+from rulecheck.reading.nodes import Entry, Located
+from rulecheck.reading.nodes import Mapping as Keyed
 from rulecheck.reading.workspace import Workspace
 from rulecheck.reading.yaml_reader import parse_yaml
 from rulecheck.studies.check import Reserves
@@ -208,6 +210,40 @@ def _in_states(design: Design, states: Mapping[str, str], faults: Faults) -> tup
             continue
         chosen.append(state)
     return design.in_states(chosen), tuple(f"state {axis}: {name}" for axis, name in states.items())
+
+
+def varyings_of(
+    session: Session, loaded: Loaded, along: Mapping[str, str] | Iterable[tuple[str, str]]
+) -> tuple[Varying, Varying | None]:
+    """The path to run along, and the one that gives a curve for each value. Raises `Refused` with every fault."""
+    faults = Faults()
+    own = {symbol: unit for book in (*loaded.also_known, *loaded.rulesets) for symbol, unit in book.units.items()}
+    pairs = list(along.items() if isinstance(along, Mapping) else along)
+    for path, text in pairs:
+        session.extra[f"--vary {path}"] = text
+    found = [read for path, text in pairs if (read := read_varying(path, text, own, faults)) is not None]
+    if not 1 <= len(pairs) <= 2 or len({path for path, _ in pairs}) < len(pairs):
+        told = "one path is varied, or two: the first runs, and the second gives a curve for each of its values"
+        faults.add("usage", told, advice="give --vary once or twice, with a path each")
+    elif len(found) == 2 and len(found[1].settings) > MOST_CURVES:
+        told = f"'{found[1].path}' gives {len(found[1].settings)} curves"
+        advice = f"name at most {MOST_CURVES} values, and let the first --vary have the many"
+        faults.add("too-large", told, found[1].settings[0].text.span, advice=advice)
+    faults.settle()
+    return found[0], found[1] if len(found) == 2 else None
+
+
+def with_value(design: Design, varying: Varying, setting: Setting) -> Design:
+    """The design with one value of the path; which definition the value meets stays as the design says."""
+    node: Located | Keyed = setting.text
+    stated = design.leaves.get(varying.path)
+    kept = stated.key("definition") if isinstance(stated, Keyed) else None
+    if isinstance(stated, Keyed) and kept is not None:
+        inner = stated.get("definition")
+        assert inner is not None
+        value = Entry(Located("value", node.span), node)
+        node = Keyed((value, Entry(kept, inner)), node.span)
+    return design.with_overlay(Overlay.of([(varying.path, node)]))
 
 
 def reserves_of(loaded: Loaded, graph: Graph, share: Fraction | None) -> Reserves:

@@ -12,12 +12,14 @@ from rulecheck.formula import lexer, token_reader
 from rulecheck.handbook.functions import FUNCTIONS
 from rulecheck.model import design_reader, house_rules, ruleset_reader
 from rulecheck.model.core_table import CORE
+from rulecheck.model.value_ranges import MOST_CURVES, MOST_VALUES
 from rulecheck.model.vocabulary import Entry
 from rulecheck.physics.modules import BUILT_IN, built_in
 from rulecheck.quantity import numbers, unit_table, value_parts
 from rulecheck.readers import exact
 from rulecheck.reading import bounds
 from rulecheck.reading.ledger import COLUMNS, REQUIRED
+from rulecheck.studies import varying
 
 
 def table(head: Iterable[str], rows: Iterable[Iterable[str]]) -> str:
@@ -146,6 +148,9 @@ def bound_rows() -> str:
         ("combinations of states of a rule", states.MOST_COMBINATIONS),
         ("cases of a rule: elements times states", rules.MOST_CASES),
         ("terms of everything that is computed", exact.MAXIMUM_TERMS),
+        ("values of a `--vary`", MOST_VALUES),
+        ("values of a `--vary` that is settled before anything is computed, such as a choice", varying.MOST_BOUND),
+        ("curves of a second `--vary`", MOST_CURVES),
         ("bits of a number that is not exact, when a sign is looked for", exact.MOST_BITS),
     )
     return table(["what", "at most"], ([what, f"{bound:,}".replace(",", " ")] for what, bound in rows))

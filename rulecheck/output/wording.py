@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+from collections.abc import Mapping, Sequence
 from decimal import ROUND_DOWN, Context, Decimal, InvalidOperation
 
 from rulecheck.outcome.results import Amount
@@ -65,3 +65,22 @@ def counted(number: int, singular: str, plural: str = "") -> str:
     ('1 rule', '3 rules')
     """
     return f"{number} {singular if number == 1 else plural or singular + 's'}"
+
+
+def common_unit(values: Sequence[Amount]) -> str:
+    """The unit of values that are all numbers in one unit, else nothing; `1` for pure numbers.
+
+    >>> common_unit([Amount("1", "mm", 1.0), Amount("2", "mm", 2.0)]), common_unit([Amount("rear", "")])
+    ('mm', '')
+    """
+    units = {value.unit if value.value is not None else "" for value in values}
+    return next(iter(units)) if len(units) == 1 else ""
+
+
+def with_unit(name: str, unit: str) -> str:
+    """The head of a column or an axis.
+
+    >>> with_unit("vehicle.speed", "km/h"), with_unit("aero.downforce_to_drag", "1")
+    ('vehicle.speed [km/h]', 'aero.downforce_to_drag')
+    """
+    return name if unit in ("", "1") else f"{name} [{unit}]"

@@ -22,6 +22,8 @@ _SIGNED = rf"[+-]?{NUMBER_PATTERN}"
 _PARTS = re.compile(
     r"(?P<plus_minus>±|\+/-(?=[ 0-9.]|$))|(?P<coverage>\(k *=[^)]*\)?)|(?P<tolerance>[+-][0-9.][^ /]*/[^ ]+)|(?P<word>(?:(?!\(k *=)[^ ±])+)"
 )
+# `-5km/h` with the blank left out is a number with its unit, and no tolerance.
+_RATE = re.compile(rf"{_SIGNED}[^\W\d][^ /]*/[^ 0-9+-][^ ]*")
 _COVERAGE = re.compile(rf"\(k *= *({NUMBER_PATTERN})\)")
 _LEADING_NUMBER = re.compile(_SIGNED)
 _NUMERIC = re.compile(
@@ -65,7 +67,7 @@ class Pieces:
     def _cut(self, found: re.Match[str]) -> list[Piece]:
         text, start = found[0], found.start()
         for sort in ("plus-minus", "coverage", "tolerance"):
-            if found[sort.replace("-", "_")]:
+            if found[sort.replace("-", "_")] and not (self.missing_blank and _RATE.fullmatch(text)):
                 return [Piece(sort, text, start)]
         if not _NUMERIC.match(text):
             return [Piece("word", text, start)]

@@ -32,7 +32,7 @@ class SegmentReader:
         value = inputs[path]
         assert isinstance(value, Monomial)
         self._power = value.power
-        self._moving = _resting_on(bank, path)
+        self._moving = resting_on(bank, path)
         still = [(index, found) for index, found in base.known() if index not in self._moving]
         # One set of inputs for both readers, in which one value is exchanged.
         self._inputs: dict[str, Any] = dict(inputs)
@@ -73,7 +73,7 @@ def _certain(truth: bool | Unknown) -> bool | None:
     return None if isinstance(truth, Unknown) else truth
 
 
-def _resting_on(bank: Bank, path: str) -> set[int]:
+def resting_on(bank: Bank, path: str) -> set[int]:
     """All terms that rest on an input; arguments come first, so one pass is enough."""
     found: set[int] = set()
     for term in bank.terms:

@@ -15,6 +15,7 @@ from jsonschema import Draft202012Validator
 
 from rulecheck import __version__
 from rulecheck.cli import run
+from rulecheck.output.json_varied import varied_schema
 from rulecheck.output.report_schema import diagnostics_schema, report_schema, workings_schema
 from rulecheck.output.study_schemas import headroom_schema, whatif_schema
 
@@ -36,6 +37,8 @@ def _without_version(text: str) -> str:
     return text.replace(f'"version": "{__version__}"', '"version": "VERSION"')
 
 
+VARIED = ["workings", "plover.design.yaml", "diffuser_width", "extinguisher", "diffuser_room"]
+CURVES = ["--vary", "tyres.rear.width=300..320mm:4mm", "--vary", "diffuser.gap=15mm,20mm"]
 SHOWN = [
     ("check.txt", 1, ["check", "plover.design.yaml"]),
     ("check.json", 1, ["check", "plover.design.yaml", "--form", "json"]),
@@ -55,6 +58,11 @@ SHOWN = [
     ("whatif-nothing.txt", 0, ["whatif", "plover.design.yaml"]),
     ("headroom.txt", 0, ["headroom", "plover.design.yaml", "--change", "settled.change.yaml"]),
     ("headroom.json", 0, ["headroom", "plover.design.yaml", "tyres.rear.width", "--form", "json"]),
+    ("varied.txt", 0, [*VARIED, "mass.height", "--vary", "tyres.rear.width=300..320mm:4mm"]),
+    ("varied-curves.txt", 0, [*VARIED, *CURVES]),
+    ("varied.json", 0, [*VARIED, *CURVES, "--form", "json"]),
+    ("varied.csv", 0, [*VARIED, *CURVES, "--form", "csv"]),
+    ("varied.svg", 0, [*VARIED, *CURVES, "--form", "svg"]),
     ("refused.json", 2, ["check", "faulty.design.yaml", "--form", "json"]),
 ]
 
@@ -79,6 +87,7 @@ def test_diagnostics_on_standard_error(capsys: pytest.CaptureFixture[str], golde
     [
         ("check.json", report_schema()),
         ("workings.json", workings_schema()),
+        ("varied.json", varied_schema()),
         ("whatif.json", whatif_schema()),
         ("headroom.json", headroom_schema()),
         ("refused.json", diagnostics_schema()),

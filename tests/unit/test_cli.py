@@ -274,3 +274,33 @@ def test_a_closed_pipe_is_no_fault() -> None:
         assert errors.read() == b""
     # The verdict is known although nobody reads it.
     assert process.wait() == 1
+
+
+def test_vary_draws_to_a_file_and_tells_on_the_stream(capsys: Output) -> None:
+    asked = ["workings", "car.design.yaml", "overall_width", "--on", "2027-03-01"]
+    vary = ["--vary", "dimensions.overall_width=1880..1910mm:10mm"]
+    assert run([*asked, *vary, "--form", "csv", "--form", "svg", "--output", "plot.svg"]) == 0
+    rows = capsys.readouterr().out.splitlines()
+    assert rows[1:] == ["1880,20,complies,", "1890,10,complies,", "1900,0,complies,", "1910,-10,breach,"]
+    assert Path("plot.svg").read_text(encoding="utf-8").startswith("<svg ")
+
+
+@pytest.mark.parametrize(
+    ("options", "said"),
+    [
+        (["--form", "svg"], "usage: there is no form 'svg' of this answer\n    expected: terminal or json\n"),
+        (["--vary", "a"], "usage: invalid value for '--vary': 'a' is not of the form PATH=VALUES\n"),
+        (
+            ["--vary", "dimensions.overall_width=1..2mm", "--closed-form"],
+            "usage: a closed form is of the design as it stands, and does not go with --vary\n",
+        ),
+        (
+            ["--vary", "dimensions.overall_width=1..2kg"],
+            "--vary dimensions.overall_width:1:5: wrong-dimension: 'kg' is a unit of mass [kg], and length [m] is due\n"
+            "    1..2kg\n        ^^\n",
+        ),
+    ],
+)
+def test_vary_refuses(options: list[str], said: str, capsys: Output) -> None:
+    assert run(["workings", "car.design.yaml", "overall_width", "--on", "2027-03-01", *options]) == 2
+    assert capsys.readouterr().err.startswith(said)

@@ -32,5 +32,7 @@ def test_a_value_falls_into_parts(text: str, sorts: list[str]) -> None:
 def test_number_and_unit_are_cut_apart_where_the_blank_may_be_missing() -> None:
     assert [piece.text for piece in pieces("250mm", missing_blank=True).waiting] == ["250", "mm"]
     assert [piece.text for piece in pieces("1e3mm", missing_blank=True).waiting] == ["1e3mm"]
+    assert [piece.text for piece in pieces("-5km/h", missing_blank=True).waiting] == ["-5", "km/h"]
+    assert [piece.text for piece in pieces("1895mm +0/-2mm", missing_blank=True).waiting][2:] == ["+0/-2mm"]
     assert [piece.text for piece in pieces("0x1F", missing_blank=True).waiting] == ["0x1F"]
     assert [piece.text for piece in pieces("250mm").waiting] == ["250mm"]
