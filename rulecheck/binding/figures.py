@@ -9,6 +9,7 @@ from rulecheck.binding.bound import BROKEN, Bound, Broken, Date, Item, Number, P
 from rulecheck.binding.parsing import parsed, parsed_each
 from rulecheck.binding.reconciling import declared_figure, states_value
 from rulecheck.binding.scope import Owner, Scope
+from rulecheck.binding.solves import solved
 from rulecheck.binding.tables import list_of, table_value
 from rulecheck.diagnostics import Refused, Span
 from rulecheck.formula.syntax import Call
@@ -202,19 +203,29 @@ def _of_points(variables: Mapping[str, Bound] | None) -> bool:
 
 
 def _bind(scope: Scope, owner: Owner, formula: Formula, name: str) -> Made:
+    states = scope.view.states
     syntax = parsed(scope, formula.formula)
-    bound = scope.express(syntax) if syntax is not None else BROKEN
+    if formula.solve is not None or formula.between:
+        scope, bound, how = solved(scope, formula, name, syntax)
+    else:
+        how, bound = None, scope.express(syntax) if syntax is not None else BROKEN
     bound = _spoken(scope, formula, bound)
+    if any(term.kind == "variable" for term in scope.view.given.values()):
+        return Made(bound, frozenset(scope.touched), frozenset())
     valid = _validity(scope, formula)
     if syntax is not None and isinstance(bound, (Number, Truth, Words, Date)):
-        states = ",".join(f"{axis}={state}" for axis, state in scope.view.states)
-        full = f"{name} [{states}]" if states else name
+        full = _in_states(name, states)
         scope.shared.figures[full] = Figure(
             full, bound.term, getattr(bound, "unit", None), syntax, formula.meaning, _source(owner, formula),
-            formula.formula.span, tuple(scope.uses.values()), valid,
+            formula.formula.span, tuple(scope.uses.values()), valid, how,
         )  # fmt: skip
         scope.figures.add(full)
     return Made(bound, frozenset(scope.touched), frozenset(scope.figures))
+
+
+def _in_states(name: str, states: tuple[tuple[str, str], ...]) -> str:
+    told = ",".join(f"{axis}={state}" for axis, state in states)
+    return f"{name} [{told}]" if told else name
 
 
 def _source(owner: Owner, formula: Formula) -> str:

@@ -123,6 +123,8 @@ def _read(scope: Scope, entry: Entry, node: LeafNode) -> Quantity | None:
 
 def _number(scope: Scope, path: str, entry: Entry, node: LeafNode | None, span: Span) -> Bound:
     unit = unit_of(entry, scope)
+    if path in scope.view.given:
+        return Number(scope.view.given[path], unit)
     if node is None and entry.default:
         node = _default(scope, entry)
     counted = entry.unit == "1"

@@ -24,12 +24,14 @@ from rulecheck.reading.nodes import Located
 
 @dataclass(frozen=True, slots=True)
 class View:
-    """The design in one combination of states; `set_paths` are constants in it."""
+    """The design in one combination of states; `set_paths` are constants in it. `given` are inputs for which a term
+    stands: what an equation is solved for, and its solution."""
 
     design: Design
     states: tuple[tuple[str, str], ...] = ()
     set_paths: frozenset[str] = frozenset()
     base: Design | None = None
+    given: Mapping[str, Term] = field(default_factory=dict)
     _known: dict[str, bool] = field(default_factory=dict)
 
     def changes(self, path: str) -> bool:

@@ -14,8 +14,20 @@ from rulecheck.quantity.units import Unit
 
 
 @dataclass(frozen=True, slots=True)
+class Solved:
+    """What a figure is solved for: the input, and the label under which figures at the solution are kept."""
+
+    path: str
+    low: str
+    high: str
+    label: str
+    residual: Term
+
+
+@dataclass(frozen=True, slots=True)
 class Figure:
-    """A named value with the formula behind it. `valid` is a flag: within the range of validity, or None."""
+    """A named value with the formula behind it. `valid` is a flag: within the range of validity, or None. Where it is
+    `solved`, the formula is zero at the value."""
 
     name: str
     term: Term
@@ -26,6 +38,7 @@ class Figure:
     span: Span
     uses: tuple[Use, ...]
     valid: Term | None = None
+    solved: Solved | None = None
 
 
 @dataclass(frozen=True, slots=True)

@@ -3,7 +3,9 @@
 A bank makes the terms of one graph. Equal terms of one bank are one object, so identity is equality;
 `index` grows with creation and arguments come first, so order of index is a topological order.
 Kinds: `constant`; `input` (a number a design gives under a path, or lacks); `apply` (an operation);
-`branch` (condition, then, otherwise: reads its condition and the arm that it takes); `unknown`.
+`branch` (condition, then, otherwise: reads its condition and the arm that it takes); `unknown`;
+`variable` (what an equation is solved for; occurs in equations only); `solve` (the least solution of an equation
+in a range: arguments are the ends of the range, then what the equation takes from outside).
 """
 
 from __future__ import annotations
@@ -12,20 +14,34 @@ from collections.abc import Iterable, Iterator, Mapping
 from dataclasses import dataclass, field
 from datetime import date
 from fractions import Fraction
-from typing import Literal
+from typing import Any, Literal
 
 from rulecheck.diagnostics import Span
 from rulecheck.operations.operation import Operation, Sort
 from rulecheck.operations.values import Monomial, Reason
 from rulecheck.quantity.dimension import PURE, Dimension
 
-Kind = Literal["constant", "input", "apply", "branch", "unknown"]
+Kind = Literal["constant", "input", "apply", "branch", "unknown", "variable", "solve"]
 Constant = Monomial | bool | str
 
 
 @dataclass(frozen=True, slots=True, eq=False)
+class Equation:
+    """`body` is zero at the solution. `moving` are its terms that rest on the variable, arguments first; what they take
+    from outside are the arguments of the solve behind the ends of the range. `said` names the variable and the range;
+    `unit` and `factor` (in SI) say in what its values are told."""
+
+    body: Term
+    variable: Term
+    moving: tuple[Term, ...]
+    said: str = ""
+    unit: str = ""
+    factor: float = 1.0
+
+
+@dataclass(frozen=True, slots=True, eq=False)
 class Term:
-    """One node of the graph. `value` is the constant, the input's path, or the reason it is unknown."""
+    """One node of the graph. `value` is the constant, the reason it is unknown, or the equation that is solved."""
 
     index: int
     kind: Kind
@@ -33,7 +49,7 @@ class Term:
     dimension: Dimension
     operation: Operation | None = None
     arguments: tuple[Term, ...] = ()
-    value: Constant | Reason | None = None
+    value: Constant | Reason | Equation | None = None
     path: str = ""
 
 
@@ -80,6 +96,31 @@ class Bank:
         """A value that cannot be had, and why."""
         return self._make(("unknown", reason, sort, dimension), "unknown", sort, dimension, reason.span, value=reason)
 
+    def variable(self, label: str, dimension: Dimension) -> Term:
+        """What the equation of that label is solved for."""
+        return self._make(("variable", label, dimension), "variable", "number", dimension, None, path=label)
+
+    def solve(self, body: Term, variable: Term, ends: tuple[Term, Term], span: Span | None = None, **said: Any) -> Term:
+        """The least value of the variable between the ends for which `body` is zero; `said` as in `Equation`.
+
+        >>> bank = Bank()
+        >>> x = bank.variable("x", PURE)
+        >>> bank.solve(x, x, (bank.number(0), bank.number(1))).arguments == (bank.number(0), bank.number(1))
+        True
+        """
+        moving = resting_on(cone([body]), variable)
+        inside = {term.index for term in moving}
+        outside = {part.index: part for term in moving for part in term.arguments if part.index not in inside}
+        arguments = (*ends, *(outside[index] for index in sorted(outside)))
+        key = ("solve", body.index, variable.index, ends[0].index, ends[1].index)
+        equation = Equation(body, variable, moving, **said)
+        return self._make(key, "solve", "number", variable.dimension, span, arguments=arguments, value=equation)
+
+    @staticmethod
+    def rests_on_its_variable(solve: Term) -> bool:
+        """True where the equation of a solve has its variable in it."""
+        return isinstance(solve.value, Equation) and bool(solve.value.moving)
+
     def apply(
         self,
         operation: Operation,
@@ -113,7 +154,7 @@ class Bank:
         *,
         operation: Operation | None = None,
         arguments: tuple[Term, ...] = (),
-        value: Constant | Reason | None = None,
+        value: Constant | Reason | Equation | None = None,
         path: str = "",
     ) -> Term:
         known = self._known.get(key)
@@ -142,3 +183,12 @@ def cone(roots: Iterable[Term]) -> list[Term]:
             seen[term.index] = term
             waiting.extend(term.arguments)
     return [seen[index] for index in sorted(seen)]
+
+
+def resting_on(terms: Iterable[Term], root: Term) -> tuple[Term, ...]:
+    """Those of the terms, given arguments first, that rest on one of them; it is among them where it is given."""
+    found: dict[int, Term] = {}
+    for term in terms:
+        if term is root or any(part.index in found for part in term.arguments):
+            found[term.index] = term
+    return tuple(found.values())

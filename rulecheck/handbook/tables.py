@@ -12,6 +12,7 @@ from rulecheck.formula import lexer, token_reader
 from rulecheck.handbook.functions import FUNCTIONS
 from rulecheck.model import design_reader, house_rules, ruleset_reader
 from rulecheck.model.core_table import CORE
+from rulecheck.model.ruleset import Formula
 from rulecheck.model.value_ranges import MOST_CURVES, MOST_VALUES
 from rulecheck.model.vocabulary import Entry
 from rulecheck.physics.modules import BUILT_IN, built_in
@@ -196,7 +197,7 @@ def physics_rows() -> str:
             [
                 f"`{name}.{figure.name}`",
                 figure.meaning,
-                f"`{figure.formula.text}`",
+                f"{_solved(figure)}`{figure.formula.text}`{' = 0' if figure.solve else ''}",
                 f"`{figure.valid.text}`" if figure.valid else "",
             ]
             for figure in module.figures.values()
@@ -206,6 +207,14 @@ def physics_rows() -> str:
         head = f"## {name}\n\n{module.meaning}.{caution}"
         parts.append(f"{head}\n\n{table(['figure', 'meaning', 'formula', 'valid for'], rows)}\n\nSources:\n\n{sources}")
     return "\n\n".join(parts)
+
+
+def _solved(figure: Formula) -> str:
+    """What a figure is solved for."""
+    if figure.solve is None:
+        return ""
+    low, high = figure.between
+    return f"the least `{figure.solve.text}` from {low.text} to {high.text} with "
 
 
 TABLES: dict[str, Callable[[], str]] = {

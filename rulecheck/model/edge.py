@@ -88,6 +88,8 @@ class FigureShape(Shape):
     valid: Leaf | None = Field(None, description="Range of validity, as a condition")
     loop: Leaf | None = Field(None, alias="for", description="b in bonds: used as name(b)")
     of: Leaf | None = Field(None, description="Name of a point: used as name(p)")
+    solve: Leaf | None = Field(None, description="Input whose least value makes the formula zero: the figure is that")
+    between: list[Leaf] | None = Field(None, description="Range in which it is looked for: [from, to]")
 
 
 class InputShape(Shape):

@@ -132,6 +132,8 @@ class Formula:
     valid: Located | None
     loop: Located | None
     of: Located | None
+    solve: Located | None = None
+    between: tuple[Located, ...] = ()
 
 
 @dataclass(frozen=True, slots=True)

@@ -282,6 +282,8 @@ def formula_of(name: str, key: Located, shape: FigureShape) -> Formula:
         shape.valid,
         shape.loop,
         shape.of,
+        shape.solve,
+        tuple(shape.between or ()),
     )
 
 

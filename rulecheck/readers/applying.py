@@ -37,7 +37,7 @@ class Applying:
         """What an operation gives whose operands are of any kind."""
         assert term.operation is not None
         values = self._values(term, rough)
-        return self._finished(term, values, _on_any(term.operation, values), bits)
+        return self._finished(term, values, on_any(term.operation, values), bits)
 
     def is_zero(self, term: Term, bits: int) -> bool:
         """True where a proof says that a term, whose ball holds zero, is zero."""
@@ -58,7 +58,7 @@ class Applying:
                 return operation.exact([Rational(0), Rational(0)])
             return UNDECIDED
         proved = [self._rational(part, value) for part, value in zip(arguments, values, strict=True)]
-        return _on_any(operation, proved)
+        return on_any(operation, proved)
 
     def _rational(self, term: Term, value: Any) -> Any:
         if not isinstance(value, Ball):
@@ -95,7 +95,7 @@ def tie(bits: int, span: Span | None) -> Unknown:
     return Unknown((Reason("tie", f"a tie at {int(bits * math.log10(2))} digits", span),))
 
 
-def _on_any(operation: Operation, values: Sequence[Any]) -> Any:
+def on_any(operation: Operation, values: Sequence[Any]) -> Any:
     """The rules of an operation on values of any kind."""
     if operation.strict:
         doubt = _doubt(operation, values)

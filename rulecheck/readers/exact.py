@@ -29,6 +29,8 @@ from rulecheck.operations.operation import UNDECIDED, Undecided
 from rulecheck.operations.values import Bounds, Monomial, Reason, Unknown
 from rulecheck.readers.applying import EXACT_KINDS, Applying, tie
 from rulecheck.readers.decimals import in_digits, rounded
+from rulecheck.readers.enclosing import Enclosing
+from rulecheck.readers.solving import Solving
 
 # A graph with more terms is refused: a count, so that verdicts are reproducible.
 MAXIMUM_TERMS = 1_000_000
@@ -66,6 +68,7 @@ class ExactReader:
         self._exact: dict[int, Any] = {}
         self._levels: dict[int, dict[int, Any]] = {}
         self._applying = Applying(bank, self._exact, self._most)
+        self._solving = Solving(bank)
 
     def take(self, found: Iterable[tuple[int, Any]]) -> None:
         """Take over values that were found exactly by other means, by the index of their term."""
@@ -73,6 +76,7 @@ class ExactReader:
 
     def forget(self, indices: Iterable[int]) -> None:
         """Forget what was found for some terms: an input that they rest on has changed."""
+        self._solving.forget()
         tables = [self._exact, *self._levels.values()]
         for index in indices:
             for table in tables:
@@ -141,6 +145,10 @@ class ExactReader:
             return _as_float(to_fraction(found))
         ball = self._accurate(term, _DOUBLE_BITS)
         return None if ball is None else float(ball.mid())
+
+    def enclosing(self, term: Term, bits: int = START_BITS) -> Enclosing:
+        """The formula of a solve, with what it takes from outside at a precision."""
+        return self._solving.enclosing(term, [self._at(part, bits) for part in term.arguments])
 
     def _accurate(self, term: Term, accuracy: int) -> Ball | None:
         """A ball with so many bits of relative accuracy, as far as the bound on precision allows."""
@@ -264,9 +272,11 @@ class ExactReader:
     def _leaf(self, term: Term, arm: Term | None, rough: dict[int, Any]) -> Any:
         if term.kind == "branch":
             return self._look(term.arguments[0] if arm is None else arm, rough)
+        if term.kind == "solve":
+            return self._solving.value(term, [self._look(part, rough) for part in term.arguments])
         if term.kind == "unknown":
             return Unknown((term.value,)) if isinstance(term.value, Reason) else Unknown(())
-        value = term.value if term.kind == "constant" else self._inputs.get(term.path)
+        value = term.value if term.kind == "constant" else self._inputs.get(term.path)  # a variable has no value
         if value is None:
             return Unknown((Reason("missing", term.path, self._bank.spans[term.index]),))
         return exact_number(value) if isinstance(value, Monomial) else value

@@ -11,7 +11,9 @@ import math
 from dataclasses import dataclass, field
 
 from rulecheck.graph.terms import Bank, Term, cone
-from rulecheck.readers.exact import ExactReader
+from rulecheck.operations.exact import Ball
+from rulecheck.readers.exact import START_BITS, ExactReader
+from rulecheck.readers.implicit import implicit_partials, local_partials
 
 
 @dataclass(frozen=True, slots=True)
@@ -70,14 +72,15 @@ class GradientReader:
         return self._partials[term.index]
 
     def _computed(self, term: Term) -> tuple[float, ...]:
+        if term.kind == "solve":
+            found = self._reader.ball(term, START_BITS)
+            if not isinstance(found, Ball):
+                return (math.nan,) * len(term.arguments)
+            return implicit_partials(term, found, self._reader.enclosing(term))
         if term.kind == "branch":
             taken = self._reader.truth(term.arguments[0])
             return (0.0, 1.0 if taken is True else 0.0, 1.0 if taken is False else 0.0)
-        operation = term.operation
-        if operation is None or operation.partials is None:
-            return (0.0,) * len(term.arguments)
-        values = [self._value(argument) for argument in term.arguments]
-        return tuple(float(partial) for partial in operation.partials(math, values))
+        return local_partials(term, [self._value(argument) for argument in term.arguments])
 
     def _is_kinked(self, term: Term) -> bool:
         operation = term.operation

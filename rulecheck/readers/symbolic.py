@@ -14,7 +14,7 @@ from typing import Any
 import sympy
 
 from rulecheck.diagnostics import Diagnostic, Refused
-from rulecheck.graph.terms import Bank, Inputs, Term, cone
+from rulecheck.graph.terms import Bank, Equation, Inputs, Term, cone
 from rulecheck.operations.values import Monomial, Reason
 
 # Larger forms help no reader, and sympy takes minutes for them.
@@ -128,6 +128,9 @@ class _Forms:
         """What operations need of operands that are not plain numbers: `the divisor is not zero: x`."""
         found: dict[str, None] = {}
         for term in self._cone(root):
+            if isinstance(term.value, Equation):
+                told = f"is the least {term.value.said} with"
+                found[f"solution_{term.index} {told} {written(self._forms[term.value.body.index])} = 0"] = None
             if term.operation is not None and term.operation.domain:
                 operands = [self._forms[part.index] for part in term.arguments]
                 if any(getattr(operand, "free_symbols", None) for operand in operands):
@@ -151,9 +154,20 @@ class _Forms:
             return sympy.Piecewise((then, condition), (otherwise, True))
         if term.kind == "input":
             return self._input(term)
+        if term.kind == "solve":
+            return self._solution(term)
         if isinstance(term.value, Reason):
             return symbol(term.value.text)
         return _constant(term.value)
+
+    def _solution(self, term: Term) -> Any:
+        """A solution has no closed form: it stands as a symbol of its own, and its formula is a condition."""
+        assert isinstance(term.value, Equation)
+        found = symbol(f"solution_{term.index}")
+        self._forms[term.value.variable.index] = found
+        for part in term.value.moving[1:]:
+            self._forms[part.index] = self._step(part)
+        return found
 
     def _input(self, term: Term) -> Any:
         value = self._inputs.get(term.path)
@@ -163,12 +177,25 @@ class _Forms:
 
     def _partials(self, term: Term) -> list[Any]:
         operands = [self._forms[part.index] for part in term.arguments]
+        if isinstance(term.value, Equation):
+            return self._implicit(term, term.value)
         if term.kind == "branch":
             condition = operands[0]
             return [0, *(sympy.Piecewise((1, holds), (0, True)) for holds in (condition, sympy.Not(condition)))]
         if term.operation is None or term.operation.partials is None:
             return [0] * len(operands)
         return [_exactly(partial) for partial in term.operation.partials(sympy, operands)]
+
+    def _implicit(self, term: Term, equation: Equation) -> list[Any]:
+        """The implicit function theorem, with the solution's own symbol."""
+        slopes: dict[int, Any] = {equation.body.index: sympy.Integer(1)}
+        for part in reversed(equation.moving[1:]):
+            slope = slopes.get(part.index, 0)
+            if slope != 0:
+                for below, partial in zip(part.arguments, self._partials(part), strict=True):
+                    slopes[below.index] = slopes.get(below.index, 0) + slope * partial
+        by_variable = slopes.get(equation.variable.index, sympy.nan)
+        return [0, 0, *(-slopes.get(part.index, 0) / by_variable for part in term.arguments[2:])]
 
 
 def _exactly(partial: Any) -> Any:

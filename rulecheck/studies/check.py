@@ -233,7 +233,7 @@ class Checker:
         if term is None:
             return None
         while term.arguments and term.kind != "input":
-            inputs = [argument for argument in term.arguments if argument.kind in ("input", "apply", "branch")]
+            inputs = [argument for argument in term.arguments if argument.kind in ("input", "apply", "branch", "solve")]
             if not inputs:
                 break
             term = inputs[0]

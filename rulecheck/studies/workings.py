@@ -16,6 +16,7 @@ from rulecheck.model.design import Design
 from rulecheck.model.ruleset import Rule, Ruleset
 from rulecheck.operations.values import Unknown
 from rulecheck.outcome.results import Amount, ClosedFormResult, Step, Working, Workings
+from rulecheck.readers.exact import START_BITS
 from rulecheck.reading.nearest import nearest
 from rulecheck.studies.amounts import amount, place, reason_text
 from rulecheck.studies.check import Checker
@@ -99,6 +100,14 @@ def _figure(checker: Checker, figure: Figure, describe: Describe | None, caution
     return Working(figure.name, figure.meaning, "", "", "", None, (), tuple(walk.steps.values()), form, caution)
 
 
+def _formula(figure: Figure) -> str:
+    """The formula of a step; of a solve, what is looked for."""
+    solved = figure.solved
+    if solved is None:
+        return show(figure.syntax)
+    return f"the least {solved.path} from {solved.low} to {solved.high} with {show(figure.syntax)} = 0"
+
+
 class _Walk:
     """Figures with what they rest on, what comes first first; each once."""
 
@@ -134,6 +143,8 @@ class _Walk:
         if figure.name in self.steps or len(self.steps) >= MOST_STEPS:
             return
         state = figure.name.partition(" [")[2]
+        if figure.solved is not None:
+            state = f"{state.removesuffix(']')},{figure.solved.label}]".lstrip(",")
         for use in figure.uses:
             self._use(use, state, depth)
         self.steps[figure.name] = self._step(figure, depth)
@@ -162,8 +173,8 @@ class _Walk:
         return Step(
             figure.name,
             figure.meaning,
-            show(figure.syntax),
-            self._with_numbers(figure.syntax, figure.uses),
+            _formula(figure),
+            self._numbers(figure),
             str(shown) if shown else self._why(figure.term),
             shown.exact if shown else "",
             figure.source,
@@ -171,6 +182,18 @@ class _Walk:
             outside,
             depth,
         )
+
+    def _numbers(self, figure: Figure) -> str:
+        """The formula with numbers; of a solve, with those at the solution, and what is left of zero there."""
+        numbers = self._with_numbers(figure.syntax, figure.uses)
+        if figure.solved is None:
+            return numbers
+        rest = self.checker.reader.ball(figure.solved.residual, START_BITS)
+        if isinstance(rest, Unknown):
+            return numbers
+        if rest.is_zero():
+            return f"{numbers}, exactly zero"
+        return f"{numbers}, which is zero to within {float(abs(rest).upper()):.1g} in SI units"
 
     def _with_numbers(self, syntax: Syntax, names: Iterable[Use]) -> str:
         uses = {use.text: use for use in names}

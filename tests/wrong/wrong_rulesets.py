@@ -217,4 +217,58 @@ WRONG_RULESETS: tuple[Wrong, ...] = (
         design="",
         ruleset='rules:\n  it: {require: "on <= 2027-02-30"}\n',
     ),
+    *(
+        Wrong(
+            f"a solve {name}",
+            (said,),
+            ruleset=f"{NUMBERS}derived:\n  d: {{{text}}}\nrules:\n  it: {{require: d <= 10 mm}}\n",
+        )
+        for name, said, text in (
+            (
+                "without a range",
+                "cup.ruleset.yaml:5:3: bad-structure: a solution is looked for between two ends, not 0; expected between: [from, to]",
+                "solve: a, formula: a - b",
+            ),
+            (
+                "with one end",
+                "cup.ruleset.yaml:5:27: bad-structure: a solution is looked for between two ends, not 1; expected between: [from, to]",
+                "solve: a, between: [1 mm], formula: a - b",
+            ),
+            (
+                "of no input",
+                "cup.ruleset.yaml:5:14: unknown-name: there is no input 'aa'; did you mean 'a'?",
+                "solve: aa, between: [1 mm, 2 mm], formula: a - b",
+            ),
+            (
+                "of a computed figure",
+                "cup.ruleset.yaml:5:14: kind-mismatch: 'mass.total' is a computed figure; expected an input that is a number",
+                "solve: mass.total, between: [1 kg, 2 kg], formula: a - b",
+            ),
+            (
+                "that does not read its input",
+                "cup.ruleset.yaml:5:49: wrong-arguments: the formula does not rest on 'c'; solve for an input that it reads",
+                "solve: c, between: [1 kg, 2 kg], formula: a - b",
+            ),
+            (
+                "of a condition",
+                "cup.ruleset.yaml:5:49: kind-mismatch: the formula of a solve is a number that is zero at the solution, and this is a flag; write one side less the other",
+                "solve: a, between: [1 mm, 2 mm], formula: a <= b",
+            ),
+            (
+                "with an end in another dimension",
+                "cup.ruleset.yaml:5:27: wrong-dimension: an end of the range of 'a' is length [m], and this is mass [kg]; expected a value in mm",
+                "solve: a, between: [1 kg, 2 mm], formula: a - b",
+            ),
+            (
+                "with a range and no input",
+                "cup.ruleset.yaml:5:17: missing-key: 'between:' says where a solution is looked for; add 'solve:' with the input that is looked for, or take it out",
+                "between: [1 mm, 2 mm], formula: a - b",
+            ),
+            (
+                "of itself",
+                "cup.ruleset.yaml:5:3: cycle: 'd' is defined by itself: d -> d; break the circle at one of them",
+                "solve: a, between: [1 mm, 2 mm], formula: a - d",
+            ),
+        )
+    ),
 )
