@@ -240,7 +240,7 @@ def in_si(figure: str) -> float:
     """What one of the figure's own unit is in the SI."""
     factors = {
         "kW": 1e3, "MJ": 1e6, "mm/N": 1e-3, "N/mm": 1e3, "mm": 1e-3, "deg": np.pi / 180, "km/h": 1 / 3.6, "%": 1e-2,
-        "deg/gn": np.pi / 180 / GRAVITY,
+        "deg/gn": np.pi / 180 / GRAVITY, "gn": GRAVITY,
     }  # fmt: skip
     return float(factors.get(unit_of(figure), 1.0))
 
