@@ -12,6 +12,7 @@ from rulecheck.binding.declarations import check_declarations
 from rulecheck.binding.express import express
 from rulecheck.binding.figures import figure, physics_figure, physics_module
 from rulecheck.binding.parsing import parsed, parsed_each
+from rulecheck.binding.placing import check_unused_places
 from rulecheck.binding.points import zero_place
 from rulecheck.binding.rules import bind_rule
 from rulecheck.binding.scope import NO_RULES, Scope, Shared, View
@@ -69,6 +70,8 @@ def _bound(shared: Shared, figures: Sequence[str]) -> Graph:
         _unused_formulas(Scope(shared, shared.base, ruleset), ruleset)
         for name in ruleset.rules:
             bind_rule(shared, ruleset, name)
+    for ruleset in rulesets:
+        check_unused_places(Scope(shared, shared.base, ruleset), ruleset)
     for name in figures:
         _wanted(base, name)
     shared.faults.settle()

@@ -46,6 +46,9 @@ def own_figure(scope: Scope, name: str, span: Span) -> Bound | None:
         return table_value(scope, owner.tables[name], None, parsed)
     if name in owner.lists:
         return list_of(scope, owner.lists[name], name, parsed)
+    if (name in owner.zones or name in owner.templates) and scope.shared.vocabulary.entry(name) is None:
+        what, use = ("zone", f"depth(p, {name})") if name in owner.zones else ("template", "passes: or stops:")
+        return scope.fault("kind-mismatch", f"'{name}' is a {what}", span, advice=f"use it in {use}")
     if name in owner.rules and scope.shared.vocabulary.entry(name) is None:
         return scope.fault("kind-mismatch", f"'{name}' is a rule", span, advice=f"write rule({name}) or margin({name})")
     return None

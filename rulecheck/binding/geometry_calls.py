@@ -6,6 +6,7 @@ from collections.abc import Callable
 
 from rulecheck.binding import figures
 from rulecheck.binding.bound import BROKEN, Bound, Broken, Line, Number, Place, Plane, kind_of
+from rulecheck.binding.depth import USAGE, depth
 from rulecheck.binding.names import as_place
 from rulecheck.binding.points import (
     VIEWS,
@@ -37,12 +38,19 @@ _USAGE = {
     "angle": "angle(line(a, b), vertical, side)",
     "turn_angle": "turn_angle(a, b, c)",
     "above_ground": "above_ground(p)",
+    "depth": USAGE,
+    "hull": "depth(p, hull([a, b, c]), side)",
 }
 GEOMETRY = tuple(_USAGE)
 
 
 def geometry(scope: Scope, syntax: Call) -> Bound:
     """Bind a call of this family."""
+    if syntax.function == "depth":
+        return depth(scope, syntax)
+    if syntax.function == "hull":
+        told = "a hull is what 'depth' measures against"
+        return scope.fault("wrong-arguments", told, syntax.span, expected=_USAGE["hull"])
     made: dict[str, Callable[[Scope, Call, list[Bound], str], Bound | None]] = {
         "point": _point,
         "line": _line,

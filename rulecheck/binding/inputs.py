@@ -63,13 +63,17 @@ def _bind_input(scope: Scope, path: str, entry: Entry, span: Span) -> Bound:
 
 def _of_kind(scope: Scope, path: str, entry: Entry, node: LeafNode | None, span: Span) -> Bound:
     if entry.kind == "number":
-        return _number(scope, path, entry, node, span)
+        return number_at(scope, path, entry, node, span)
     if entry.kind == "flag":
         return _flag(scope, path, entry, node, span)
     if entry.kind == "date":
         return _date(scope, path, node, span)
     if entry.kind == "item":
         return _item(scope, path, entry, node, span)
+    if entry.kind in ("outline", "range"):
+        what = "an outline" if entry.kind == "outline" else "an extent"
+        told = f"'{path}' is {what}, and formulas calculate with numbers"
+        return scope.fault("kind-mismatch", told, span, advice="hold it against a zone with 'inside' or 'outside'")
     return _words(scope, path, entry, node, span)
 
 
@@ -121,7 +125,8 @@ def _read(scope: Scope, entry: Entry, node: LeafNode) -> Quantity | None:
     )  # fmt: skip
 
 
-def _number(scope: Scope, path: str, entry: Entry, node: LeafNode | None, span: Span) -> Bound:
+def number_at(scope: Scope, path: str, entry: Entry, node: LeafNode | None, span: Span) -> Bound:
+    """A number as a leaf states it, whatever the leaf's own path."""
     unit = unit_of(entry, scope)
     if path in scope.view.given:
         return Number(scope.view.given[path], unit)
@@ -298,7 +303,7 @@ def bind_point(scope: Scope, path: str, entry: Entry, span: Span) -> tuple[Numbe
         if own is None and given is not None and node is not None:
             numbers.append(Number(_coordinate(scope, path, axis, single, node, given, unit), unit))
         else:
-            bound = _number(scope, f"{path}.{axis}", single, own, span)
+            bound = number_at(scope, f"{path}.{axis}", single, own, span)
             numbers.append(
                 bound
                 if isinstance(bound, Number)

@@ -43,7 +43,7 @@ def place_of(scope: Scope, path: str, entry: Entry, span: Span) -> Place:
 
 def _place(scope: Scope, path: str, entry: Entry, span: Span) -> Place:
     x, y, z = bind_point(scope, path, entry, span)
-    datum = _datum_of(scope, path)
+    datum = datum_of(scope, path)
     if datum is None and entry.datum_required and (stated(scope, path) or stated(scope, f"{path}.at")):
         gone = scope.missing(f"{path}.datum", "number", LENGTH, span)
         return Place(*(Number(gone, x.unit) for _ in range(3)))
@@ -52,7 +52,7 @@ def _place(scope: Scope, path: str, entry: Entry, span: Span) -> Place:
     return from_datum(scope, Place(x, y, z), datum.text, datum.span, ())
 
 
-def _datum_of(scope: Scope, path: str) -> Located | None:
+def datum_of(scope: Scope, path: str) -> Located | None:
     """The datum stated for a point: below it, or beside it in the same item."""
     holder = path.rpartition(".")[0]
     for candidate in (f"{path}.datum", f"{holder}.datum"):

@@ -6,13 +6,14 @@ from dataclasses import dataclass, replace
 from itertools import product
 
 from rulecheck.binding.aggregates import Loop, loop
-from rulecheck.binding.bound import Broken, Element, Number, Truth, kind_of
+from rulecheck.binding.bound import Bound, Broken, Element, Number, Truth, kind_of
 from rulecheck.binding.comparing import all_of, any_of, opposite
 from rulecheck.binding.conditions import Builder, certain, holds, open_part, scales_agree
 from rulecheck.binding.dispensations import dispensation
 from rulecheck.binding.documents import evidence, judgement
 from rulecheck.binding.meeting import met_by
 from rulecheck.binding.parsing import parsed, parsed_each
+from rulecheck.binding.placing import place_condition
 from rulecheck.binding.scope import Scope, Shared
 from rulecheck.binding.states import Stance, stances
 from rulecheck.diagnostics import Span
@@ -255,12 +256,20 @@ class _Binding:
         if alternative.require is not None:
             syntax = parsed(scope, alternative.require)
             parts.append(Broken() if syntax is None else Builder(scope, self._scale(scope)).build(syntax))
+        for wanted in alternative.places:
+            parts.append(place_condition(scope, wanted, self._about(scope), self._scale(scope)))
         if alternative.evidence is not None:
             parts.append(evidence(scope, alternative.evidence))
         if alternative.judgement is not None:
             about = element if self.rule.each else None
             parts.append(judgement(scope, self.rule.name, about, alternative.judgement))
         return parts
+
+    def _about(self, scope: Scope) -> Bound | None:
+        """The element that the rule is about, where it is one."""
+        heads = (parsed_each(scope, where) for where in self.rule.each)
+        names = [name for head in heads if head is not None for name in head.variables]
+        return scope.variables.get(names[0]) if len(names) == 1 else None
 
     def _scale(self, scope: Scope) -> Number | None:
         if self.rule.scale is None:

@@ -4,10 +4,12 @@ from __future__ import annotations
 
 from dataclasses import replace
 
+from rulecheck.binding.bodies import corners_of
 from rulecheck.binding.bound import Broken
 from rulecheck.binding.curves import bind_curve
 from rulecheck.binding.inputs import VALUE_KEYS, bind_input
 from rulecheck.binding.points import from_datum, place_of, zero_place
+from rulecheck.binding.ranges import bind_range
 from rulecheck.binding.scope import Scope
 from rulecheck.binding.states import combined_view
 from rulecheck.diagnostics import Span
@@ -16,7 +18,7 @@ from rulecheck.model.vocabulary import Entry
 from rulecheck.reading.nearest import nearest
 from rulecheck.reading.nodes import Located, Mapping, Sequence
 
-READ_BY_THEMSELVES = ("number", "point")
+READ_BY_THEMSELVES = ("number", "point", "outline", "range")
 """Kinds whose reading notes every fault of a value."""
 
 
@@ -95,6 +97,10 @@ def _value(scope: Scope, path: str, entry: Entry, node: LeafNode) -> None:
         return
     if entry.kind == "point":
         place_of(scope, path, entry, node.span)
+    elif entry.kind == "outline":
+        corners_of(scope, path)
+    elif entry.kind == "range":
+        bind_range(scope, path, entry, node.span)
     elif not isinstance(bind_input(scope, path, entry, node.span), Broken):
         _definition(scope, path, entry, node)
 

@@ -1,1 +1,5 @@
-"""Outlines and zones of a car, below binding. Nothing lives here yet: points, lines and planes are bound in `binding`."""
+"""Outlines and zones: outlines read, and room inside of zones or clear of them as ordinary terms.
+
+`outlines` reads; `polygons`, `cells` and `rooms` are what `zones` is made of; `bodies` is what is measured. Everything
+is expanded to terms of the catalogue's operations, so every reader knows it.
+"""

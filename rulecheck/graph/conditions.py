@@ -22,7 +22,7 @@ class Use:
     unit: Unit | None
 
 
-PartKind = Literal["comparison", "flag", "evidence", "judgement"]
+PartKind = Literal["comparison", "flag", "evidence", "judgement", "zone"]
 
 
 @dataclass(frozen=True, slots=True)

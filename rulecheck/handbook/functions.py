@@ -99,6 +99,18 @@ FUNCTIONS: tuple[Row, ...] = (
         "turn_angle(points.left, points.nose, points.right)",
         "36.8699 deg",
     ),
+    Row(
+        "depth(p, zone)",
+        "signed distance to the border of a zone, or of a hull of points; positive inside; a view may follow a hull",
+        "depth(point(400 mm, 0 mm, 0 mm), hull([points.nose, points.left, points.right]), plan)",
+        "100 mm",
+    ),
+    Row(
+        "hull([a, b, …])",
+        "the least convex body around points, for `depth`: 4 to 12 in space, 3 to 12 in a view",
+        "depth(point(480 mm, 0 mm, 300 mm), hull([points.nose, points.left, points.roof]), side)",
+        "20 mm",
+    ),
     Row("above_ground(p)", "height above ground in the state", "above_ground(points.nose)", "150 mm"),
     Row("present(x)", "yes if stated, no if stated none, else not known", "present(aero_surfaces.rear_wing)", "no"),
     Row("rule(x)", "yes where that rule does not stop the car", "rule(overall_width)", "yes"),

@@ -22,6 +22,7 @@ FIRST = (
     "curves-and-maps",
     "rulesets",
     "language",
+    "zones",
     "units",
     "verdicts-and-margins",
     "what-if-and-headroom",

@@ -7,6 +7,7 @@ numbers are left out, since they differ between editions).
 from __future__ import annotations
 
 from rulecheck.model.operating_table import BALLASTING, CONDITIONS, WEIGHING
+from rulecheck.model.shape_table import OUTLINES, extent_rows, outline_rows
 from rulecheck.model.vocabulary import Entry
 
 
@@ -168,6 +169,8 @@ AERO = (
         chord="Depth along the car",
         height="Top above the reference plane",
     ),
+    *outline_rows("aero_surfaces.*.outline"),
+    *extent_rows("aero_surfaces.*.extent"),
     Entry("aero.reference_area", "number", "Area that coefficients are based on", unit="m^2"),
 )
 
@@ -333,6 +336,7 @@ CORE: tuple[Entry, ...] = (
     *TYRES,
     *AERO,
     *PLACES,
+    *OUTLINES,
     *SYSTEMS,
     *CONDITIONS,
     *WEIGHING,

@@ -44,6 +44,12 @@ class BranchShape(Shape):
     require: Leaf | None = Field(None, description="Condition")
     evidence: EvidenceShape | None = Field(None, description="Document that is asked for")
     judgement: Leaf | None = Field(None, description="Question that a person answers")
+    inside: Any = Field(None, description="Zone that the element, or what is named, lies inside of")
+    outside: Any = Field(None, description="Zone that the element, or what is named, stays clear of")
+    passes: Any = Field(None, description="Template that fits an opening at a place: template, through, at")
+    stops: Any = Field(None, description="Template that does not fit an opening at a place: template, through, at")
+    sight: Any = Field(None, description="Lines of sight that nothing may cut: from, to, past, view")
+    cover: Any = Field(None, description="Lines of sight each of which something must cut: from, to, past, view")
     when: Leaf | None = Field(None, description="The branch is open only to cars for which this holds")
 
 
@@ -125,6 +131,8 @@ class RulesetShape(Shape):
     inputs: dict[str, InputShape] | None = Field(None, description="Inputs beyond the core vocabulary")
     tables: dict[str, TableShape] | None = Field(None, description="Tables")
     lists: dict[str, list[Leaf]] | None = Field(None, description="Lists of what is allowed")
+    zones: dict[str, Any] | None = Field(None, description="Regions of the car's space, by their borders")
+    templates: dict[str, Any] | None = Field(None, description="Outlines that are placed at a point")
     derived: dict[str, FigureShape] | None = Field(None, description="Derived figures")
     states_needed: dict[str, Any] | None = Field(None, description="States that a design must define, by axis")
     groups: dict[str, Any] | None = Field(None, description="Rules that share a condition")

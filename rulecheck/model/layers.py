@@ -44,6 +44,8 @@ def _over(base: Ruleset, top: Ruleset, faults: Faults) -> Ruleset:
         inputs=(*base.inputs, *top.inputs),
         tables={**base.tables, **top.tables},
         lists={**base.lists, **top.lists},
+        zones={**base.zones, **top.zones},
+        templates={**base.templates, **top.templates},
         derived={**base.derived, **top.derived},
         needed={
             axis: {**base.needed.get(axis, {}), **top.needed.get(axis, {})} for axis in {**base.needed, **top.needed}
@@ -67,6 +69,8 @@ def _one_name_space(made: Ruleset, faults: Faults) -> None:
         "derived figure": {name: figure.span for name, figure in made.derived.items()},
         "table": {name: table.span for name, table in made.tables.items()},
         "list": {name: members[0].span for name, members in made.lists.items() if members},
+        "zone": {name: zone.span for name, zone in made.zones.items()},
+        "template": {name: template.span for name, template in made.templates.items()},
         "rule": {name: rule.span for name, rule in made.rules.items()},
     }
     seen: dict[str, str] = {}

@@ -9,6 +9,7 @@ from typing import Literal
 
 from rulecheck.diagnostics import Span
 from rulecheck.model.vocabulary import Entry
+from rulecheck.model.zones import PlaceCondition, Template, ZoneRule
 from rulecheck.quantity.dimension import Dimension
 from rulecheck.reading.nodes import Located, Node
 
@@ -51,6 +52,7 @@ class Alternative:
     evidence: EvidenceWanted | None
     judgement: Located | None
     when: Located | None
+    places: tuple[PlaceCondition, ...] = ()
 
 
 @dataclass(frozen=True, slots=True)
@@ -174,6 +176,8 @@ class Ruleset:
     withdrawn: tuple[Withdrawn, ...]
     books: tuple[Book, ...]
     span: Span = field(compare=False)
+    zones: MappingOf[str, ZoneRule] = field(default_factory=dict)
+    templates: MappingOf[str, Template] = field(default_factory=dict)
 
 
 @dataclass(frozen=True, slots=True)

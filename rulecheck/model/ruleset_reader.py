@@ -23,6 +23,7 @@ from rulecheck.model.ruleset import (
     Window,
 )
 from rulecheck.model.table_reader import read_table
+from rulecheck.model.zone_reader import place_conditions, read_template, read_zone
 from rulecheck.quantity.reading_values import read_day
 from rulecheck.reading.nearest import nearest
 from rulecheck.reading.nodes import Located, Mapping, Node
@@ -33,6 +34,7 @@ EXPIRING = frozenset(("certificate", "homologation", "licence"))
 STANDINGS = ("shall", "should", "may", "note")
 EMPTY = ("open", "complies", "breach", "not applicable")
 MOST_LAYERS = 20
+_SHARING = "rules, derived figures, tables, lists, zones and templates"
 
 
 def read_ruleset(workspace: Workspace, file: str, asked: Span | None = None) -> Ruleset:
@@ -114,7 +116,19 @@ class _Reader:
             withdrawn=(),
             books=(Book(shape.ruleset.text, text(shape.edition), self.file),),
             span=shape.ruleset.span,
+            zones=self._nodes("zones", shape.zones, read_zone),
+            templates=self._nodes("templates", shape.templates, read_template),
         )
+
+    def _nodes(self, section: str, entries: dict[str, Any] | None, read: Any) -> dict[str, Any]:
+        """The entries of a section that is read from its nodes; those at fault are left out."""
+        node = self.root.get(section)
+        made = {}
+        for name, key, _ in self.named(section, entries):
+            inner = _inside(node, name)
+            if inner is not None:
+                made[name] = read(name, key, inner, self.faults)
+        return {name: value for name, value in made.items() if value is not None}
 
     def _list(self, name: str, key: Located, members: list[Located]) -> tuple[Located, ...]:
         if not members:
@@ -127,16 +141,16 @@ class _Reader:
             self.faults.add("bad-value", f"{what} is empty", where.span, advice="write it, or take the key out")
 
     def _one_name_space(self) -> None:
-        """Rules, derived figures, tables and lists share one name space."""
+        """Rules, derived figures, tables, lists, zones and templates share one name space."""
         seen: dict[str, Located] = {}
-        for section in ("derived", "tables", "lists", "rules"):
+        for section in ("derived", "tables", "lists", "zones", "templates", "rules"):
             node = self.root.get(section)
             for entry in node if isinstance(node, Mapping) else ():
                 other = seen.setdefault(entry.key.text, entry.key)
                 if other is not entry.key:
                     self.faults.add(
                         "name-taken",
-                        f"'{entry.key.text}' is used twice: rules, derived figures, tables and lists share one name space",
+                        f"'{entry.key.text}' is used twice: {_SHARING} share one name space",
                         entry.key.span,
                         advice="give one of them another name",
                         related=(Related("the other one is here", other.span),),
@@ -145,15 +159,15 @@ class _Reader:
     def rule(self, name: str, key: Located, shape: RuleShape, groups: dict[str, tuple[Located, ...]]) -> Rule:
         node = self.root.get("rules")
         inner = node.get(name) if isinstance(node, Mapping) else None
-        own = self.alternative("", shape)
+        own = self.alternative("", shape, inner)
         branches = tuple(self._branch(name, label, branch) for label, branch in (shape.branches or {}).items())
         standing: Standing = self._word(shape.standing, STANDINGS, "shall")  # type: ignore[assignment]
-        if standing in ("shall", "should") and not branches and not (own.require or own.evidence or own.judgement):
+        if standing in ("shall", "should") and not branches and not asks(shape):
             self.faults.add(
                 "missing-key",
                 f"rule '{name}' asks for nothing",
                 key.span,
-                expected="require, branches, evidence or judgement",
+                expected="require, inside, outside, branches, evidence or judgement",
             )
         return Rule(
             name=name,
@@ -197,20 +211,24 @@ class _Reader:
         return (each,) if isinstance(each, Located) else tuple(each or ())
 
     def _branch(self, rule: str, label: str, shape: BranchShape) -> Alternative:
-        if not (shape.require or shape.evidence or shape.judgement):
+        if not asks(shape):
             self.faults.add(
                 "missing-key",
                 f"branch '{label}' of rule '{rule}' asks for nothing",
                 self.key("rules", rule, "branches", label).span,
-                expected="require, evidence or judgement",
+                expected="require, inside, outside, evidence or judgement",
             )
-        return self.alternative(label, shape)
+        node = self.root.get("rules")
+        for part in (rule, "branches", label):
+            node = _inside(node, part)
+        return self.alternative(label, shape, node)
 
-    def alternative(self, name: str, shape: BranchShape) -> Alternative:
+    def alternative(self, name: str, shape: BranchShape, node: Node | None) -> Alternative:
         """The conditions of a rule or branch."""
         self._said(shape.judgement, "the question")
         wanted = self._evidence(shape.evidence) if shape.evidence else None
-        return Alternative(name, shape.require, wanted, shape.judgement, shape.when)
+        places = place_conditions(node, self.faults)
+        return Alternative(name, shape.require, wanted, shape.judgement, shape.when, places)
 
     def _evidence(self, shape: EvidenceShape) -> EvidenceWanted:
         self._said(shape.kind, "the kind of document")
@@ -259,6 +277,15 @@ class _Reader:
             )
             return None
         return Unless(shape["when"], text(shape.get("because")))
+
+
+def asks(shape: BranchShape) -> bool:
+    """True where a rule or branch has a condition of its own."""
+    plain = shape.require or shape.evidence or shape.judgement
+    return bool(plain) or any(getattr(shape, word) is not None for word in PLACES)
+
+
+PLACES = ("inside", "outside", "passes", "stops", "sight", "cover")
 
 
 def _inside(node: Node | None, key: str) -> Node | None:

@@ -39,6 +39,8 @@ _KINDS: Mapping[str, Entry] = {
     "item": Entry("", "item", ""),
     "curve": Entry("", "curve", ""),
     "map": Entry("", "map", ""),
+    "outline": Entry("", "outline", ""),
+    "range": Entry("", "range", ""),
 }
 """Kinds of values that read alike wherever they stand; their names have a blank, which no path has."""
 
@@ -237,6 +239,10 @@ def _plain(entry: Entry) -> list[Schema]:
         return [dict(DAY)]
     if entry.kind == "point":
         return [{"type": "string", "pattern": f"^{_NUMBER} +{_NUMBER} +{_NUMBER} +[^ ]+$"}]
+    if entry.kind == "outline":
+        return [{"type": "string", "pattern": f"^ *{_NUMBER} .*,.*,"}]
+    if entry.kind == "range":
+        return [{"type": "array", "items": _kind("number"), "minItems": 2, "maxItems": 2}]
     return [dict(TEXT)]
 
 

@@ -9,6 +9,7 @@ from rulecheck.model.declarations import KINDS
 from rulecheck.model.edge import HouseShape, RulesetShape, Shape
 from rulecheck.model.house import DECISIONS
 from rulecheck.model.ruleset_reader import EMPTY, STANDINGS
+from rulecheck.model.zone_schemas import PLACES, TEMPLATES, ZONE, ZONES
 
 Schema = dict[str, Any]
 
@@ -65,6 +66,9 @@ _NARROWER: Mapping[tuple[str, str], Schema] = {
     ("InputShape", "at_least"): {"type": ["integer", "string"]},
     ("RulesetShape", "valid"): _WINDOW,
     ("RulesetShape", "groups"): _GROUPS,
+    ("RulesetShape", "zones"): ZONES,
+    ("RulesetShape", "templates"): TEMPLATES,
+    **{(shape, word): schema for word, schema in PLACES.items() for shape in ("RuleShape", "BranchShape")},
     ("HouseShape", "decision"): {"enum": list(DECISIONS)},
 }
 """What the readers hold beyond the shapes, by shape and key."""
@@ -72,7 +76,8 @@ _NARROWER: Mapping[tuple[str, str], Schema] = {
 
 def ruleset_schema() -> Schema:
     """The schema of a ruleset file."""
-    return _of(RulesetShape, "Ruleset")
+    made = _of(RulesetShape, "Ruleset")
+    return {**made, "$defs": {**made["$defs"], "zone": ZONE}}
 
 
 def house_schema() -> Schema:

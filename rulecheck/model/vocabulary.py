@@ -8,7 +8,9 @@ from typing import Literal
 
 from rulecheck.diagnostics import Span
 
-InputKind = Literal["number", "flag", "choice", "text", "date", "point", "datum", "item", "collection", "curve", "map"]
+InputKind = Literal[
+    "number", "flag", "choice", "text", "date", "point", "datum", "item", "collection", "curve", "map", "outline", "range",
+]  # fmt: skip
 
 
 @dataclass(frozen=True, slots=True)

@@ -178,7 +178,7 @@ WRONG_RULESETS: tuple[Wrong, ...] = (
     Wrong(
         "a figure and a rule of one name",
         (
-            "cup.ruleset.yaml:6:3: name-taken: 'it' is used twice: rules, derived figures, tables and lists share one name space; give one of them another name",
+            "cup.ruleset.yaml:6:3: name-taken: 'it' is used twice: rules, derived figures, tables, lists, zones and templates share one name space; give one of them another name",
         ),
         ruleset=NUMBERS + "derived: {it: {formula: a + b, unit: mm}}\nrules:\n  it: {require: a <= 10 mm}\n",
     ),

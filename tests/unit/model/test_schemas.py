@@ -78,7 +78,7 @@ def test_inputs_of_a_ruleset_are_not_in_the_core_schema() -> None:
     assert not _validator("design").is_valid(design)
 
 
-SAMPLES = {"flag": "yes", "date": "2027-03-01", "point": "1 2 3 mm", "datum": "rear_axle", "text": "sheet 4"}
+SAMPLES = {"flag": "yes", "date": "2027-03-01", "point": "1 2 3 mm", "datum": "rear_axle", "text": "sheet 4", "outline": "0 0, 9 0, 9 9 mm", "range": ["1 mm", "2 mm"]}  # fmt: skip
 
 
 @pytest.mark.parametrize("entry", CORE, ids=lambda entry: entry.path)
@@ -112,6 +112,8 @@ GOOD = [
     "{design: D, points: {nose: {datum: rear_axle, at: -1 0 2 mm}, tail: {x: 1 mm, y: 2 mm, z: 3 mm}}}",
     "{design: D, aero_surfaces: {complete: yes, wing: none}}",
     "{design: D, judgements: {finish: {verdict: complies, date: 2027-01-02}, lamps: {left: {verdict: breach}}}}",
+    "{design: D, outlines: {tub: {side: '0 0, 9 0, 9 9 mm', plan: {value: '0 0, 9 0, 9 9 mm', basis: drawing}, mirror: yes}}}",
+    "{design: D, aero_surfaces: {wing: {outline: {side: '0 0, 9 0, 9 9 mm'}, extent: {x: [1 mm, 2 mm], y: {from: 1 mm}}}}}",
     "{changes: d.design.yaml, set: {judgements.lamps.left.verdict: breach, masses.fuel.at.x: 1500 mm}}",
 ]
 
@@ -126,6 +128,8 @@ WRONG = [
     ("set without a base", "{design: D, set: {}}"),
     ("unknown section", "{design: D, wheels: {}}"),
     ("unknown field", "{design: D, tyres: {rear: {widht: 300 mm}}}"),
+    ("an outline of two corners", "{design: D, outlines: {tub: {side: '0 0, 9 9 mm'}}}"),
+    ("an extent of one end", "{design: D, aero_surfaces: {wing: {extent: {x: [1 mm]}}}}"),
     ("number without its unit", "{design: D, dimensions: {wheelbase: '2860'}}"),
     ("blank left out", "{design: D, dimensions: {wheelbase: 2860mm}}"),
     ("list for a value", "{design: D, dimensions: {wheelbase: [1 mm]}}"),
@@ -162,7 +166,9 @@ valid: {from: 2027-01-01}
 inputs: {lamps: {kind: collection, items: [left], element: {role: {choices: [a, b]}}}}
 tables: {t: {over: a.b, steps: [{up_to: 1 mm, value: 2 mm}, {otherwise: 3 mm}]}}
 groups: {g: {when: a == b, rules: [width]}}
-rules: {width: {require: a.b <= 1 mm, standing: should, unless: {when: c == yes, because: x}, states: {fuel: every}}}
+zones: {box: {x: [0 mm, 1 mm], any: [{z: {to: 1 mm}}, {view: side, points: [[0 mm, 0 mm], points.a, [0 mm, 1 mm]]}]}}
+templates: {probe: {view: side, points: [[0 mm, 0 mm], [1 mm, 0 mm], [0 mm, 1 mm]]}}
+rules: {width: {require: a.b <= 1 mm, inside: box, outside: {zone: box, what: points.a}, standing: should, unless: {when: c == yes, because: x}, states: {fuel: every}}}
 """
 
 RULESET_FAULTS: list[tuple[list[str], Any]] = [
@@ -176,6 +182,15 @@ RULESET_FAULTS: list[tuple[list[str], Any]] = [
     (["tables", "t", "steps"], [{"up_to": "1 mm"}]),
     (["tables", "t", "linear"], [["1 mm"]]),
     (["groups", "g", "when"], None),
+    (["zones", "box", "x"], ["0 mm"]),
+    (["zones", "box", "y"], {"upto": "1 mm"}),
+    (["zones", "box", "any"], []),
+    (["zones", "box", "any"], [{"points": [["0 mm", "0 mm"], "points.a", "points.b"]}]),
+    (["zones", "box", "round"], "1 mm"),
+    (["templates", "probe", "view"], None),
+    (["rules", "width", "outside", "zone"], None),
+    (["rules", "width", "passes"], {"template": "probe"}),
+    (["rules", "width", "sight"], {"from": "points.a", "to": "points.b"}),
     (["rules", "width", "requires"], "a"),
     (["rules", "width", "standing"], "must"),
     (["rules", "width", "empty"], "fine"),
