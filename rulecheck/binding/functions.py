@@ -18,6 +18,7 @@ from rulecheck.binding.geometry_calls import GEOMETRY, geometry
 from rulecheck.binding.presence import present
 from rulecheck.binding.references import margin_reference, rule_reference
 from rulecheck.binding.scope import Scope
+from rulecheck.binding.uncertainties import standard_uncertainty
 from rulecheck.formula.printing import show
 from rulecheck.formula.syntax import Call, Negative, Syntax
 from rulecheck.formula.syntax import Number as NumberSyntax
@@ -47,7 +48,7 @@ _AGGREGATES = ("sum", "mean", "deviation", "count", "share", "every", "some")
 
 
 NAMES = (
-    "present", "rule", "margin", "end_of_year", "years_between", "atan2", "min", "max", "pairs", *_ONE, *_ROUND,
+    "present", "rule", "margin", "end_of_year", "years_between", "atan2", "min", "max", "pairs", "standard_uncertainty", *_ONE, *_ROUND,
     *GEOMETRY, *_AGGREGATES,
 )  # fmt: skip
 """The names of all functions of the language."""
@@ -65,6 +66,7 @@ def call(scope: Scope, syntax: Call) -> Bound:
         "atan2": _atan2,
         "min": _extreme,
         "max": _extreme,
+        "standard_uncertainty": standard_uncertainty,
     }
     if name in special:
         return special[name](scope, syntax)

@@ -299,7 +299,7 @@ def bind_point(scope: Scope, path: str, entry: Entry, span: Span) -> tuple[Numbe
     numbers = []
     for axis, given in zip("xyz", coordinates, strict=True):
         own = stated(scope, f"{path}.{axis}")
-        single = _axis(scope, entry, axis)
+        single = axis_entry(scope, entry, axis)
         if own is None and given is not None and node is not None:
             numbers.append(Number(_coordinate(scope, path, axis, single, node, given, unit), unit))
         else:
@@ -312,7 +312,7 @@ def bind_point(scope: Scope, path: str, entry: Entry, span: Span) -> tuple[Numbe
     return numbers[0], numbers[1], numbers[2]
 
 
-def _axis(scope: Scope, entry: Entry, axis: str) -> Entry:
+def axis_entry(scope: Scope, entry: Entry, axis: str) -> Entry:
     """One coordinate of a point as an input of its own; made once for each kind of point."""
     key = ("axis", entry.path, axis)
     if key not in scope.shared.memo:

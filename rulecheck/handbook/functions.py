@@ -112,6 +112,12 @@ FUNCTIONS: tuple[Row, ...] = (
         "20 mm",
     ),
     Row("above_ground(p)", "height above ground in the state", "above_ground(points.nose)", "150 mm"),
+    Row(
+        "standard_uncertainty(x)",
+        "what an input says of its measurement uncertainty, as a standard one; else not known",
+        "standard_uncertainty(dimensions.wheelbase)",
+        "0.5 mm",
+    ),
     Row("present(x)", "yes if stated, no if stated none, else not known", "present(aero_surfaces.rear_wing)", "no"),
     Row("rule(x)", "yes where that rule does not stop the car", "rule(overall_width)", "yes"),
     Row("margin(x)", "the margin of that rule", "margin(overall_width)", "10 mm"),

@@ -176,7 +176,7 @@ def ledger_rows() -> str:
     fields = {entry.path: entry for entry in CORE}
     rows = []
     for column in COLUMNS:
-        entry = fields.get(f"masses.*.{column}")
+        entry = fields.get(f"masses.*.{column.replace('inertia_', 'inertia.')}")
         said = meaning(entry) if entry else {"item": "Name of the row"}.get(column, "Place of its centre of gravity")
         rows.append([f"`{column}`", "must be there" if column in REQUIRED else "", said])
     return table(["column", "", "meaning"], rows)

@@ -6,7 +6,7 @@ numbers are left out, since they differ between editions).
 
 from __future__ import annotations
 
-from rulecheck.model.operating_table import BALLASTING, CONDITIONS, WEIGHING
+from rulecheck.model.operating_table import BALLASTING, COMPUTED, CONDITIONS, WEIGHING
 from rulecheck.model.shape_table import OUTLINES, extent_rows, outline_rows
 from rulecheck.model.vocabulary import Entry
 
@@ -122,6 +122,8 @@ def _tyre_rows(collection: str) -> tuple[Entry, ...]:
         *_numbers(f"{collection}.*", "km/h", speed_rating="Speed that the maker allows"),
         Entry(f"{collection}.*.stiffness", "number", "Vertical stiffness", unit="N/mm"),
         Entry(f"{collection}.*.axle", "choice", "Axle that it stands on", choices=("front", "rear")),
+        Entry(f"{collection}.*.camber", "number", "Camber at rest, negative where the top leans inwards", unit="deg"),
+        Entry(f"{collection}.*.bulge", "number", "How far the loaded sidewall stands out beyond the tread", unit="mm"),
     )
 
 
@@ -343,6 +345,5 @@ CORE: tuple[Entry, ...] = (
     *BALLASTING,
     *SAFETY,
     *RECORDS,
-    Entry("mass.total", "number", "Declared total mass, beside the ledger", unit="kg", computed=True),
-    Entry("platform.width_over_tyres", "number", "Declared width over the tyres", unit="mm", computed=True),
+    *COMPUTED,
 )

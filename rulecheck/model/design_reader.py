@@ -15,6 +15,11 @@ from rulecheck.reading.workspace import Workspace
 from rulecheck.reading.yaml_reader import read_yaml
 
 MOST_VARIANTS = 20
+_HELD = {
+    **{axis: f"at.{axis}" for axis in "xyz"},
+    **{f"inertia_{axis}": f"inertia.{axis}" for axis in ("xx", "yy", "zz")},
+}
+"""Columns of a ledger whose field lies inside another."""
 
 
 @dataclass(slots=True)
@@ -76,13 +81,15 @@ class _Draft:
         for column, cell in row.cells.items():
             if column == "item":
                 continue
-            name = f"at.{column}" if column in ("x", "y", "z") else column
+            name = _HELD.get(column, column)
             self.leaves[f"{path}.{name}"] = cell
             self.keys[f"{path}.{name}"] = cell.span
             names.append(name.partition(".")[0])
         self.items[path] = tuple(dict.fromkeys(names))
-        if axes := tuple(column for column in ("x", "y", "z") if column in row.cells):
-            self.items[f"{path}.at"] = axes
+        for holder in ("at", "inertia"):
+            held = [_HELD[column].partition(".") for column in row.cells if column in _HELD]
+            if inner := tuple(last for first, _, last in held if first == holder):
+                self.items[f"{path}.{holder}"] = inner
 
 
 def read_design(workspace: Workspace, file: str, asked: Span | None = None) -> Design:

@@ -32,3 +32,17 @@ BALLASTING = (
     Entry("ballasting.front_share_aim", "number", "Front share of the mass that is aimed at", unit="%"),
     Entry("ballasting.total_aim", "number", "Total mass that is aimed at", unit="kg"),
 )
+
+COMPUTED = (
+    Entry("mass.reserve", "number", "Mass that the project keeps beside the growth of the rows", unit="kg"),
+    Entry("mass.total", "number", "Declared total mass, beside the ledger", unit="kg", computed=True),
+    Entry(
+        "platform.tyre_width",
+        "choice",
+        "What counts in the width over the tyres: treads alone, or loaded sections with camber and bulge",
+        choices=("tread", "section"),
+        default="tread",
+    ),
+    Entry("platform.width_over_tyres", "number", "Declared width over the tyres", unit="mm", computed=True),
+)
+"""What stands beside figures that the car's own parts give."""

@@ -24,6 +24,9 @@ COLUMNS = (
     "basis",
     "maturity",
     "growth",
+    "inertia_xx",
+    "inertia_yy",
+    "inertia_zz",
     "unsprung",
     "owner",
     "group",
@@ -33,7 +36,7 @@ COLUMNS = (
 REQUIRED = ("item", "mass")
 """The columns that a ledger must have, with a value in every row."""
 
-WITH_UNIT = ("mass", "x", "y", "z", "growth")
+WITH_UNIT = ("mass", "x", "y", "z", "growth", "inertia_xx", "inertia_yy", "inertia_zz")
 """The columns whose heading may state a unit for bare numbers: `mass [kg]`."""
 
 NUMERIC = (*WITH_UNIT, "quantity")

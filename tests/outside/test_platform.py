@@ -122,6 +122,57 @@ def test_width_over_tyres(tmp_path, front_track, rear_track, front_width, rear_w
     assert as_fraction(findings(tmp_path)["width"].margin) == 1900 - Fraction(str(over))
 
 
+def leaning_wheel(camber: float, loaded_radius: float, tread: float, section: float, bulge: float) -> float:
+    """How far a right-hand wheel stands out beyond its contact centre: the outermost of the points of a rigid wheel.
+
+    The wheel leans about the line along its contact centre, by numpy's rotation of points, not by a formula of ours.
+    Positive camber leans the top outwards, to +y.
+    """
+    lean = np.radians(camber)
+    turn = np.array([[np.cos(lean), np.sin(lean)], [-np.sin(lean), np.cos(lean)]])
+    slant = loaded_radius / np.cos(lean)  # the wheel centre stands `loaded_radius` above ground, leaning or not
+    side_of_section = turn @ np.array([section / 2, slant])
+    return max(side_of_section[0], tread / 2, tread / 2 + bulge)
+
+
+@pytest.mark.parametrize("camber", [-4.0, -2.5, 0.0, 1.5, 3.0])
+@pytest.mark.parametrize(("section", "bulge"), [(318.0, 0.0), (300.0, 0.0), (318.0, 9.5), (345.0, 4.0)])
+def test_width_over_sections_with_camber_and_bulge(tmp_path, camber, section, bulge):
+    front = {"width": "300 mm", "section_width": f"{section} mm", "bulge": f"{bulge} mm", "loaded_radius": "331 mm"}
+    rear = {"width": "330 mm", "section_width": f"{section + 30} mm", "bulge": f"{bulge} mm", "loaded_radius": "343 mm"}
+    tyres = {"front": {**front, "camber": f"{camber} deg"}, "rear": {**rear, "camber": f"{camber / 2} deg"}}
+    write_design(tmp_path, dimensions=WIDTHS, tyres=tyres, platform={"tyre_width": "section"})
+    names = ("width_over_front_tyres", "width_over_rear_tyres", "width_over_tyres")
+    figures = {f"platform.{name}": "mm" for name in names}
+    write_figures(tmp_path, figures)
+    over_front = 1600 + 2 * leaning_wheel(camber, 331, 300, section, bulge)
+    over_rear = 1560 + 2 * leaning_wheel(camber / 2, 343, 330, section + 30, bulge)
+    found = values(tmp_path, figures)
+    assert [found[name] for name in figures] == pytest.approx(
+        [over_front, over_rear, max(over_front, over_rear)], rel=1e-13
+    )
+
+
+@pytest.mark.parametrize("left_out", ["section_width", "bulge", "camber", "loaded_radius", "width"])
+def test_sections_count_only_where_all_is_given(tmp_path, left_out):
+    """Who asks for sections states all of them; nothing is taken for zero."""
+    whole = {
+        "width": "300 mm",
+        "section_width": "318 mm",
+        "bulge": "0 mm",
+        "loaded_radius": "331 mm",
+        "camber": "0 deg",
+    }
+    tyres = {"front": {key: value for key, value in whole.items() if key != left_out}, "rear": whole}
+    rules = {"width": {"require": "platform.width_over_tyres <= 2000 mm"}}
+    write_design(tmp_path, dimensions=WIDTHS, tyres=tyres, platform={"tyre_width": "section"})
+    write_ruleset(tmp_path, rules=rules)
+    assert findings(tmp_path)["width"].verdict == "open"
+    assert findings(tmp_path, {"platform.tyre_width": "tread"})["width"].verdict == (
+        "open" if left_out == "width" else "complies"
+    )
+
+
 # --- typed values that the car's own parts contradict ----------------------------------------------------------------
 
 

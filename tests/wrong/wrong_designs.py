@@ -90,7 +90,7 @@ WRONG_DESIGNS: tuple[Wrong, ...] = (
     Wrong(
         "a ledger with an unknown column",
         (
-            "parts.csv:1:37: ledger-header: no column is called 'qantity'; expected a header of item, mass, x, y, z, datum, quantity, mirror, basis, maturity, growth, unsprung, owner, group, of which item and mass must be there; did you mean 'quantity'?",
+            "parts.csv:1:37: ledger-header: no column is called 'qantity'; expected a header of item, mass, x, y, z, datum, quantity, mirror, basis, maturity, growth, inertia_xx, inertia_yy, inertia_zz, unsprung, owner, group, of which item and mass must be there; did you mean 'quantity'?",
         ),
         design="a: 5 mm\nledger: [parts.csv]\n",
         files={"parts.csv": "item,mass [kg],x [mm],y [mm],z [mm],qantity\ntub,92,1190,0,318,2\n"},
