@@ -97,6 +97,9 @@ def _in_force(scope: Scope, wanted: EvidenceWanted, base: str, text: str) -> Con
     issued = _date(scope, f"{base}.issued", wanted.name.span)
     if issued is not None and _after(scope, issued):
         return open_part(scope, f"{text} (issued after the evaluation date)", place, text)
+    if issued is None:
+        # Not asked for by rules, so not missing: but nobody is to think that it was held against the day of judging.
+        text += ", day of issue not stated"
     until = _date(scope, f"{base}.until", wanted.name.span)
     if until is None:
         if wanted.expires:

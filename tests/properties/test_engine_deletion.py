@@ -36,7 +36,11 @@ MET = ("complies", "tight")
 NOT_MET = ("breach", "open", "unproven", "not followed")
 
 OPTIONAL = ("quantity", "mirror", "datum", "growth", "basis", "issued")
-"""Fields that may be left out: to leave them out is a change of the design, not a gap in it."""
+"""Fields that may be left out: to leave them out is a change of the design, not a gap in it.
+
+`issued` is one of them (no rule asks for it), and so is the last day of kinds that do not run out; what leaving them out
+may do, and no more, is held by `test_what_striking_out_the_dates_of_a_document_can_do`.
+"""
 
 
 def verdicts(design: Design, ruleset: Ruleset) -> dict[str, str]:
@@ -246,3 +250,40 @@ def test_a_value_in_the_long_form_is_one_value() -> None:
     design, ruleset = CARS["good"]
     assert isinstance(design.leaves["dimensions.rear_track"], MappingNode)
     assert "dimensions.rear_track" in takeable(design, ruleset)
+
+
+PAPERS = """\
+design: Heron 4
+rulesets: [cup.ruleset.yaml]
+evidence:
+  hoop: {{kind: {kind}, reference: R1{issued}{until}}}
+"""
+PAPER_RULE = "ruleset: Dunmere Cup\nrules:\n  it: {{evidence: {{kind: {kind}, name: hoop}}}}\n"
+
+
+def paper_verdict(kind: str, issued: str, until: str) -> str:
+    with TemporaryDirectory() as folder:
+        place = Path(folder)
+        dates = {"issued": f", issued: {issued}" if issued else "", "until": f", until: {until}" if until else ""}
+        (place / "car.design.yaml").write_text(PAPERS.format(kind=kind, **dates), encoding="utf-8")
+        (place / "cup.ruleset.yaml").write_text(PAPER_RULE.format(kind=kind), encoding="utf-8")
+        return verdicts(load_design(place / "car.design.yaml"), load_ruleset(place / "cup.ruleset.yaml"))["it"]
+
+
+RUNS_OUT = ("certificate", "homologation", "licence")
+EARLIER, LATER = "2027-02-28", "2027-03-02"
+
+
+@pytest.mark.parametrize("kind", next(entry for entry in CORE if entry.path == "evidence.*.kind").choices)
+def test_what_striking_out_the_dates_of_a_document_can_do(kind: str) -> None:
+    """It mends a document of a later day, and the last day of one that need not run out; never one that must."""
+    for issued in ("", EARLIER, str(DAY), LATER):
+        for until in ("", EARLIER, str(DAY), LATER):
+            before = paper_verdict(kind, issued, until)
+            if paper_verdict(kind, "", until) in MET and before not in MET:
+                assert issued == LATER
+            if paper_verdict(kind, issued, "") in MET and before not in MET:
+                assert (until, kind in RUNS_OUT) == (EARLIER, False)
+    assert paper_verdict(kind, EARLIER, "") == ("open" if kind in RUNS_OUT else "complies")
+    assert paper_verdict(kind, LATER, LATER) == "open"
+    assert paper_verdict(kind, EARLIER, EARLIER) == "breach"

@@ -61,6 +61,14 @@ def test_what_is_missing_of_a_document_is_open(design: str, said: str) -> None:
     assert bool(found.reason) == (said == "open")
 
 
+@pytest.mark.parametrize(("issued", "said"), [("2026-01-10", False), (None, True)])
+def test_a_day_of_issue_that_is_not_stated_is_said(issued: str | None, said: bool) -> None:
+    dates = {"until": "2027-06-30", **({"issued": issued} if issued else {})}
+    found = only(paper(kind="certificate", **dates), HOOP)
+    assert found.verdict == "complies"
+    assert [part.text.endswith("day of issue not stated") for part in found.parts] == [said]
+
+
 @pytest.mark.parametrize(
     ("expires", "design", "said"),
     [
