@@ -77,6 +77,15 @@ def test_both_axles_lock_together(tmp_path):
     at = low["braking.equal_utilisation_rate"] * GRAVITY
     both = figures_of(tmp_path, car.but({"vehicle.deceleration": at}), names)
     close(both["braking.front_utilisation"], both["braking.rear_utilisation"])
+    # UN R13 Annex 10 wants the front axle to use more at every rate from 0.15 to 0.8: this car does not.
+    order = {}
+    for rate in (0.15, 0.5, 0.54, 0.7, 0.8):
+        used = figures_of(tmp_path, car.but({"vehicle.deceleration": rate * GRAVITY}), names)
+        order[rate] = used["braking.front_utilisation"] > used["braking.rear_utilisation"]
+        if rate == 0.7:
+            assert used["braking.front_utilisation"] == pytest.approx(0.6694, abs=5e-5)
+            assert used["braking.rear_utilisation"] == pytest.approx(0.81126, abs=5e-6)
+    assert order == {0.15: True, 0.5: True, 0.54: False, 0.7: False, 0.8: False}
 
 
 def test_distribution_from_the_hardware(tmp_path):
