@@ -57,7 +57,7 @@ class Program:
                 return False
             self._paths.append(term.path)
             return True
-        known = term.kind == "branch" or (term.operation is not None and _template(term) is not None)
+        known = term.kind == "branch" or (term.operation is not None and template(term) is not None)
         return known and all(argument.index in self._inside for argument in term.arguments)
 
     def _needed(self, terms: Sequence[Term], wanted: set[int]) -> list[int]:
@@ -106,9 +106,9 @@ class Program:
         operands = [texts[argument.index] for argument in term.arguments]
         if term.kind == "branch":
             return f"({operands[1]} if {operands[0]} else {operands[2]})"
-        template = _template(term)
-        assert template is not None
-        return template(operands)
+        write = template(term)
+        assert write is not None
+        return write(operands)
 
     def reader(self, inputs: Inputs) -> ExactReader:
         """A reader for these inputs that already knows the rational part. Needs the inputs it was made with."""
@@ -134,7 +134,7 @@ class Program:
         return made
 
 
-def _template(term: Term) -> Callable[[list[str]], str] | None:
+def template(term: Term) -> Callable[[list[str]], str] | None:
     """How an operation is written, or None where it may leave the rationals."""
     operation = term.operation
     assert operation is not None

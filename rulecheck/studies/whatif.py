@@ -6,6 +6,7 @@ shows. It is given where a change moves numbers alone; a choice or a part that c
 
 from __future__ import annotations
 
+import math
 from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass
 from datetime import date
@@ -139,11 +140,10 @@ class _Comparing:
         """The first-order change of a number, in its unit."""
         if column.structural:
             return None
-        gradient = self.gradients.gradient(term)
-        if gradient is None:
-            return None
         steps = _steps(self.base.graph.inputs, column.checker.graph.inputs)
-        change = sum(slope * float(steps[path]) for path, slope in gradient.slopes.items() if path in steps)
+        change = self.gradients.along(term, {path: float(step) for path, step in steps.items()})
+        if change is None or math.isinf(change):
+            return None
         scale = float(unit.factor * _PI**unit.power) if unit is not None else 1.0
         shown = change / scale
         return Amount(

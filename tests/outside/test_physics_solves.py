@@ -145,6 +145,15 @@ def test_the_slope_of_the_gradient_against_differences(tmp_path, seed):
     close(slope, (ends[0] - ends[1]) / (2 * step), rel=1e-6)
 
 
+def test_how_stiffness_grows_with_load(tmp_path):
+    """Central differences of the tyre's law, written without circular functions."""
+    car, step = on_wheels(3300.0, 5200.0), 0.1
+    figures = figures_of(tmp_path, car, [f"balance.{end}_stiffness_slope" for end in ENDS])
+    for end, load in (("front", 3300.0), ("rear", 5200.0)):
+        due = (stiffness(car, end, load + step) - stiffness(car, end, load - step)) / (2 * step)
+        close(figures[f"balance.{end}_stiffness_slope"], due, rel=1e-7)
+
+
 # --- limit balance ----------------------------------------------------------------------------------------------------
 
 
@@ -170,12 +179,16 @@ def test_limit_of_each_axle_against_brentq(tmp_path, seed):
         car.numbers, tuple(Mass(p.mass, p.x, 0.0, p.z, p.unsprung) for p in car.masses), car.surfaces, car.choices
     )
     limits = ["front_limit", "rear_limit"]
-    figures = figures_of(tmp_path, car, ["air.density", *(f"balance.{name}" for name in limits), "balance.limit"])
+    figures = figures_of(
+        tmp_path, car, ["air.density", *(f"balance.{name}" for name in (*limits, "limit", "limit_balance"))]
+    )
     values = {}
     for end in ENDS:
         due = brentq(lambda a, end=end: held(car, figures["air.density"], end, a), 0.1, 60.0, xtol=1e-12)
         values[end] = due
         close(figures[f"balance.{end}_limit"], due, rel=1e-8)
+    close(figures["balance.limit"], min(values.values()), rel=1e-8)
+    close(figures["balance.limit_balance"], (values["rear"] - values["front"]) / min(values.values()), rel=1e-6)
     first = min(ENDS, key=lambda end: values[end])
     assert said(tmp_path, car, "balance.gives_way_first", ENDS) == first
 
