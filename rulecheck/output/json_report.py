@@ -5,6 +5,7 @@ from __future__ import annotations
 import json
 import math
 from dataclasses import fields, is_dataclass
+from typing import Protocol
 
 from rulecheck.outcome.results import Amount, BindingPart, Finding, PartResult, Place, Report, RulesetInfo, Workings
 
@@ -15,12 +16,7 @@ def report_json(report: Report) -> str:
     """The outcome of `check` as JSON text; the same outcome gives the same bytes."""
     return json_text(
         {
-            "form": "report",
-            "version": report.version,
-            "design": report.design,
-            "revision": report.revision,
-            "file": report.file,
-            "date": report.date,
+            **heading("report", report),
             "verdict": report.verdict,
             "tightest": report.tightest,
             "counts": dict(report.counts),
@@ -39,11 +35,7 @@ def workings_json(workings: Workings) -> str:
     """The outcome of `workings` as JSON text."""
     return json_text(
         {
-            "form": "workings",
-            "version": workings.version,
-            "design": workings.design,
-            "file": workings.file,
-            "date": workings.date,
+            **heading("workings", workings),
             "items": [
                 {
                     "name": item.name,
@@ -61,6 +53,28 @@ def workings_json(workings: Workings) -> str:
             ],
         }
     )
+
+
+class _Headed(Protocol):
+    """What every outcome says of itself."""
+
+    @property
+    def version(self) -> str: ...
+    @property
+    def design(self) -> str: ...
+    @property
+    def file(self) -> str: ...
+    @property
+    def date(self) -> str: ...
+
+
+def heading(form: str, outcome: _Headed) -> Json:
+    """What stands first in every form: what it is, of which design, on which day; a report also says the revision."""
+    revision: Json = {"revision": outcome.revision} if isinstance(outcome, Report) else {}
+    return {
+        "form": form, "version": outcome.version, "design": outcome.design, **revision, "file": outcome.file,
+        "date": outcome.date,
+    }  # fmt: skip
 
 
 def json_text(value: Json) -> str:

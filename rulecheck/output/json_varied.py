@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from rulecheck.outcome.varied import Axis, Varied, VariedFigure, VariedPoint
-from rulecheck.output.json_report import Json, amount_json, json_text
+from rulecheck.output.json_report import Json, amount_json, heading, json_text
 from rulecheck.output.report_schema import (
     DRAFT,
     Schema,
@@ -21,11 +21,7 @@ def varied_json(varied: Varied) -> str:
     """The whole JSON form of `workings --vary`."""
     return json_text(
         {
-            "form": "varied",
-            "version": varied.version,
-            "design": varied.design,
-            "file": varied.file,
-            "date": varied.date,
+            **heading("varied", varied),
             "changes": list(varied.changes),
             "along": _axis(varied.along),
             "curves": _axis(varied.curves) if varied.curves else None,

@@ -6,18 +6,14 @@ from typing import Any
 
 from rulecheck.outcome.changes import FigureChange, Moved, RuleChange, WhatIf
 from rulecheck.outcome.travel import HeadroomReport, Travel
-from rulecheck.output.json_report import amount_json, json_text
+from rulecheck.output.json_report import amount_json, heading, json_text
 
 
 def whatif_json(outcome: WhatIf) -> str:
     """The whole JSON form of `whatif`."""
     return json_text(
         {
-            "form": "whatif",
-            "version": outcome.version,
-            "design": outcome.design,
-            "file": outcome.file,
-            "date": outcome.date,
+            **heading("whatif", outcome),
             "changes": [{"name": name, "settings": list(settings)} for name, settings in outcome.columns],
             "verdict": outcome.verdict,
             "verdicts": list(outcome.verdicts),
@@ -64,11 +60,7 @@ def headroom_json(report: HeadroomReport) -> str:
     """The whole JSON form of `headroom`."""
     return json_text(
         {
-            "form": "headroom",
-            "version": report.version,
-            "design": report.design,
-            "file": report.file,
-            "date": report.date,
+            **heading("headroom", report),
             "breached": list(report.breached),
             "inputs": [
                 {
