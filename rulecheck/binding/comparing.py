@@ -136,7 +136,8 @@ def _sides(scope: Scope, syntax: Comparison) -> list[Side]:
 
 def _chosen(scope: Scope, syntax: Syntax) -> Bound | None:
     """An input of one word that declares choices; None for any other word, which may be a choice itself."""
-    entry = scope.shared.vocabulary.entry(syntax.path[0]) if isinstance(syntax, Name) else None
+    word = syntax.path[0] if isinstance(syntax, Name) and len(syntax.path) == 1 else ""
+    entry = scope.shared.vocabulary.entry(word) if word and word not in scope.variables else None
     return scope.express(syntax) if entry is not None and entry.kind == "choice" else None
 
 
