@@ -33,6 +33,7 @@ from rulecheck.loading import (
     with_value,
 )
 from rulecheck.model.design import Design, Overlay
+from rulecheck.model.ruleset import SIMPLE, Decision
 from rulecheck.outcome.results import ClosedFormResult, Report, Workings
 from rulecheck.physics.modules import BUILT_IN, built_in
 from rulecheck.reading.nodes import Located
@@ -56,21 +57,28 @@ def check(
     states: Mapping[str, str] | None = None,
     on: date | None = None,
     reserve: Fraction | None = None,
+    trials: int = 0,
     session: Session | None = None,
 ) -> Report:
     """Check a design file against its rulesets, or those given. Raises `Refused` with every fault.
 
     `settings` are changes laid over the design (path to text as the file would write it), after the `changes` files;
     `states` lays one state an axis over it; `on` is the evaluation date (default today); `reserve` is room that is
-    kept beyond every limit, as a share of it, and replaces the reserves of the house file.
+    kept beyond every limit, as a share of it, and replaces the reserves of the house file; `trials` is how many Monte
+    Carlo trials at most are held against each first-order uncertainty, none if 0.
     """
     session = session or Session()
     day = on or date.today()
     loaded = load(session, design, rules, settings, changes, states)
     graph = _bind(loaded, day)
-    checker = Checker(graph, reserves_of(loaded, graph, reserve))
-    decision = loaded.house.decision if loaded.house else "simple"
-    asked = Asked(day, loaded.changes, reserve_text(loaded.house, reserve), decision)
+    at_random = None
+    if trials:
+        # numpy takes longer to load than all the rest: only where trials are asked for.
+        from rulecheck.studies.at_random import at_random_of
+
+        at_random = at_random_of(graph, trials)
+    checker = Checker(graph, reserves_of(loaded, graph, reserve), _decision(loaded), at_random)
+    asked = Asked(day, loaded.changes, reserve_text(loaded.house, reserve))
     return report(checker, loaded.design, loaded.rulesets, asked, session.digests)
 
 
@@ -99,7 +107,7 @@ def workings(
     day = on or date.today()
     loaded = load(session, design, rules, settings, changes, states, needs_rules=False)
     graph = _bind(loaded, day, [name for name in names if name.partition(".")[0] in BUILT_IN])
-    checker = Checker(graph, reserves_of(loaded, graph, None))
+    checker = Checker(graph, reserves_of(loaded, graph, None), _decision(loaded))
     describe = None
     if closed_form or solve_for:
         # sympy takes longer to load than all the rest: only where a closed form is asked for.
@@ -165,7 +173,7 @@ def headroom(
     session = session or Session()
     day = on or date.today()
     loaded = load(session, design, rules, settings, changes, states)
-    checker = Checker(_bind(loaded, day))
+    checker = Checker(_bind(loaded, day), decision=_decision(loaded))
     checker.read_all()
     return travels(checker, loaded.design, names, day)
 
@@ -255,7 +263,7 @@ def _column(loaded: Loaded, base: Loaded, change: Change, day: date) -> Column:
 def _checker(loaded: Loaded, day: date) -> Checker:
     """A design judged with every physics figure and the reserves of the house file."""
     graph = _bind(loaded, day, BUILT_IN)
-    return Checker(graph, reserves_of(loaded, graph, None))
+    return Checker(graph, reserves_of(loaded, graph, None), _decision(loaded))
 
 
 def _structure(design: Design) -> tuple[object, ...]:
@@ -264,6 +272,11 @@ def _structure(design: Design) -> tuple[object, ...]:
         path: node for path, node in design.leaves.items() if isinstance(node, Located) and node.text[:1].isalpha()
     }
     return (sorted(design.leaves), sorted((path, node.text) for path, node in words.items()))
+
+
+def _decision(loaded: Loaded) -> Decision:
+    """The decision rule of the house, for rules that have none of their own."""
+    return (loaded.house.decision if loaded.house else None) or SIMPLE
 
 
 def _bind(loaded: Loaded, day: date, figures: Sequence[str] = ()) -> Graph:

@@ -180,6 +180,15 @@ reserve_option = click.option(
 )
 
 
+trials_option = click.option(
+    "--trials",
+    metavar="NUMBER",
+    type=click.IntRange(10_000, 10_000_000),
+    default=None,
+    help="Also hold each uncertainty against Monte Carlo trials, at most so many.",
+)
+
+
 def asked_from(design: str, given: dict[str, Any]) -> Asked:
     """The question that the options come to. Raises a usage error where they do not go together."""
     return Asked(

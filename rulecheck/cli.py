@@ -24,6 +24,7 @@ from rulecheck.arguments import (
     own_fault,
     question,
     reserve_option,
+    trials_option,
     usage_fault,
     vary_option,
 )
@@ -108,7 +109,8 @@ def rulecheck(context: click.Context) -> None:
 @click.argument("design", metavar="DESIGN")
 @question
 @reserve_option
-def check(design: str, reserve: Fraction | None, **given: Any) -> int:
+@trials_option
+def check(design: str, reserve: Fraction | None, trials: int | None, **given: Any) -> int:
     """Verdict and margin of every rule for one design.
 
     Exit code: 0 nothing that binds fails, 1 a breach, 2 unusable input, 3 open or unproven.
@@ -119,7 +121,7 @@ def check(design: str, reserve: Fraction | None, **given: Any) -> int:
 
     asked, session = asked_from(design, given), api.Session()
     try:
-        report = api.check(asked.design, reserve=reserve, session=session, **asked.options)
+        report = api.check(asked.design, reserve=reserve, trials=trials or 0, session=session, **asked.options)
         _deliver(
             asked, session, {"terminal": lambda on: report_text(report, on), "json": lambda _: report_json(report)}
         )

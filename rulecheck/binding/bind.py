@@ -86,6 +86,7 @@ def _bound(shared: Shared, figures: Sequence[str]) -> Graph:
         shared.day,
         tuple(shared.declared.values()),
         _cautions(shared),
+        shared.base.design.correlations,
     )
 
 

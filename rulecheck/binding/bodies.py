@@ -5,7 +5,8 @@ from __future__ import annotations
 from collections.abc import Iterable, Mapping
 
 from rulecheck.binding.bound import BROKEN, Bound, Broken, Item, Number, Place, Truth
-from rulecheck.binding.inputs import bind_input, scalar, scope_units, stated
+from rulecheck.binding.inputs import bind_input, scope_units, stated
+from rulecheck.binding.leaves import scalar
 from rulecheck.binding.points import datum_of, from_datum, plane_height
 from rulecheck.binding.ranges import bind_range
 from rulecheck.binding.scope import Scope

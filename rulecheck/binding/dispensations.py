@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from rulecheck.binding.inputs import scalar
+from rulecheck.binding.leaves import scalar
 from rulecheck.binding.scope import Scope
 from rulecheck.graph.conditions import Permit
 from rulecheck.quantity.reading_values import read_day

@@ -8,20 +8,20 @@ from datetime import date
 from typing import Any
 
 from rulecheck.binding.bound import BROKEN, Bound, Date, Item, Items, Number, Truth, Words
+from rulecheck.binding.leaves import beside, leaf, scalar, without_basis
 from rulecheck.binding.scope import Scope
 from rulecheck.diagnostics import Faults, Span
-from rulecheck.graph.figures import InputFact
 from rulecheck.graph.terms import Term
 from rulecheck.model.design import NONE, LeafNode, holders
 from rulecheck.model.vocabulary import Entry
 from rulecheck.operations.values import Monomial
 from rulecheck.quantity.dimension import PURE, Dimension
 from rulecheck.quantity.quantity import Quantity
-from rulecheck.quantity.reading_records import read_stated
-from rulecheck.quantity.reading_values import read_day, read_point
+from rulecheck.quantity.reading_records import read_stated, read_stated_point
+from rulecheck.quantity.reading_values import read_day
 from rulecheck.quantity.units import Unit, UnitFault, find_unit
 from rulecheck.reading.nearest import nearest
-from rulecheck.reading.nodes import Located, Mapping, Sequence
+from rulecheck.reading.nodes import Located, Sequence
 
 VALUE_KEYS = ("value", "uncertainty", "coverage", "shape", "tolerance", "basis", "reference", "definition")
 
@@ -55,7 +55,7 @@ def _bind_input(scope: Scope, path: str, entry: Entry, span: Span) -> Bound:
         return collection(scope, path, entry)
     node = stated(scope, path)
     bound = _of_kind(scope, path, entry, node, span)
-    gap = _without_basis(scope, path, entry, node)
+    gap = without_basis(scope, path, entry, node)
     if not gap or node is None or not isinstance(bound, (Number, Truth, Words, Date)):
         return bound
     return replace(bound, term=scope.missing(gap, bound.term.sort, bound.term.dimension, node.span))
@@ -81,20 +81,6 @@ def stated(scope: Scope, path: str) -> LeafNode | None:
     """What the design states under a path in this state; None where nothing is, or `none`."""
     node = scope.view.design.leaves.get(path)
     return node
-
-
-def scalar(node: LeafNode | None) -> Located | None:
-    """The text of a leaf, also where it stands with what is known about it."""
-    if isinstance(node, Mapping):
-        inner = node.get("value")
-        return inner if isinstance(inner, Located) else None
-    return node if isinstance(node, Located) else None
-
-
-def beside(node: LeafNode | None, key: str) -> str:
-    """What a value says of itself: its basis, reference, definition."""
-    inner = node.get(key) if isinstance(node, Mapping) else None
-    return inner.text if isinstance(inner, Located) else ""
 
 
 def quantity(scope: Scope, entry: Entry, node: LeafNode) -> Quantity | None:
@@ -143,7 +129,8 @@ def number_at(scope: Scope, path: str, entry: Entry, node: LeafNode | None, span
         what = f"{path} by the definition '{entry.definition}' (stated: {found})"
         return Number(scope.missing(what, "number", unit.dimension, node.span), unit)
     rational, power = read.si()
-    return Number(leaf(scope, path, entry, node, Monomial(rational, power), unit), unit, counted)
+    term = leaf(scope, path, node, Monomial(rational, power), unit, read.spread_si(), path in scope.view.set_paths)
+    return Number(term, unit, counted)
 
 
 def _not_stated(scope: Scope, path: str, unit: Unit, span: Span) -> Term:
@@ -151,48 +138,6 @@ def _not_stated(scope: Scope, path: str, unit: Unit, span: Span) -> Term:
     if any(holder in scope.view.set_paths for holder in holders(path)):
         return scope.missing(path, "number", unit.dimension, span)
     return scope.bank.input(path, "number", unit.dimension, span)
-
-
-def leaf(scope: Scope, path: str, entry: Entry, node: LeafNode, value: Monomial, unit: Unit) -> Any:
-    """The term of a stated number: an input of the graph, or a constant where a state or a default sets it."""
-    if path in scope.view.set_paths or node.span.file == "default":
-        return scope.bank.constant(value, "number", unit.dimension, node.span)
-    if path not in scope.shared.inputs:
-        scope.shared.inputs[path] = value
-        shown = scalar(node)
-        scope.shared.facts[path] = InputFact(
-            path, unit, node.span, basis_of(scope, path, node), beside(node, "reference"), shown.text if shown else ""
-        )
-    return scope.bank.input(path, "number", unit.dimension, node.span)
-
-
-def basis_of(scope: Scope, path: str, node: LeafNode) -> str:
-    """Where a value comes from: said beside it, or by the item that it belongs to."""
-    own = beside(node, "basis")
-    if own:
-        return own
-    item = path.rpartition(".")[0]
-    while item:
-        shared = scope.view.design.leaves.get(f"{item}.basis")
-        if isinstance(shared, Located):
-            return shared.text
-        entry = scope.shared.vocabulary.entry(f"{item}.basis")
-        if entry is not None:
-            return entry.default
-        item = item.rpartition(".")[0]
-    return ""
-
-
-def _without_basis(scope: Scope, path: str, entry: Entry, node: LeafNode | None) -> str:
-    """What a stated value lacks of the basis that a ruleset asks for; empty where it lacks nothing."""
-    if not entry.basis or node is None or (isinstance(node, Located) and node.text == NONE):
-        return ""
-    found = basis_of(scope, path, node)
-    if found != entry.basis:
-        return f"{path} with the basis '{entry.basis}' (stated: {found or 'none'})"
-    if entry.basis == "supplier" and not beside(node, "reference").strip():
-        return f"the reference of {path}, which is the maker's data sheet"
-    return ""
 
 
 def _default(scope: Scope, entry: Entry) -> Located:
@@ -324,10 +269,8 @@ def axis_entry(scope: Scope, entry: Entry, axis: str) -> Entry:
 
 def _coordinate(scope: Scope, path: str, axis: str, entry: Entry, node: LeafNode, given: Quantity, unit: Unit) -> Any:
     rational, power = given.si()
-    name = f"{path}.{axis}"
-    if path in scope.view.set_paths:
-        return scope.bank.constant(Monomial(rational, power), "number", unit.dimension, node.span)
-    return leaf(scope, name, entry, node, Monomial(rational, power), unit)
+    by_state = path in scope.view.set_paths or f"{path}.at" in scope.view.set_paths
+    return leaf(scope, f"{path}.{axis}", node, Monomial(rational, power), unit, given.spread_si(), by_state)
 
 
 def _coordinates(scope: Scope, node: LeafNode | None) -> tuple[Quantity | None, Quantity | None, Quantity | None]:
@@ -340,7 +283,7 @@ def _coordinates(scope: Scope, node: LeafNode | None) -> tuple[Quantity | None, 
             scope.fault("bad-value", "this is a point", node.span, expected="three lengths, such as '1250 0 310 mm'")
             read = None
         else:
-            read = read_point(where, scope_units(scope), scope.shared.faults)
+            read = read_stated_point(node, scope_units(scope), scope.shared.faults)
         known = (node, read)
         scope.shared.parsed[(id(node), "point")] = known
     return known[1] or (None, None, None)

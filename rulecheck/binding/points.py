@@ -5,7 +5,8 @@ from __future__ import annotations
 from fractions import Fraction
 
 from rulecheck.binding.bound import Line, Number, Place, Plane
-from rulecheck.binding.inputs import bind_input, bind_point, scalar, stated
+from rulecheck.binding.inputs import bind_input, bind_point, stated
+from rulecheck.binding.leaves import scalar
 from rulecheck.binding.scope import Scope
 from rulecheck.diagnostics import Span
 from rulecheck.graph.terms import Term

@@ -6,7 +6,8 @@ from dataclasses import replace
 from fractions import Fraction
 
 from rulecheck.binding.bound import Bound, Number
-from rulecheck.binding.inputs import quantity, scalar
+from rulecheck.binding.inputs import quantity
+from rulecheck.binding.leaves import scalar
 from rulecheck.binding.scope import Scope
 from rulecheck.graph.figures import DeclaredCheck
 from rulecheck.graph.terms import Term

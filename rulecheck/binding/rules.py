@@ -15,6 +15,7 @@ from rulecheck.binding.meeting import met_by
 from rulecheck.binding.parsing import parsed, parsed_each
 from rulecheck.binding.placing import place_condition
 from rulecheck.binding.scope import Scope, Shared
+from rulecheck.binding.scrutineers import check_scrutineer
 from rulecheck.binding.states import Stance, stances
 from rulecheck.diagnostics import Span
 from rulecheck.formula.syntax import Each
@@ -66,6 +67,7 @@ class _Binding:
             return None
         if not any(numeric_parts(case.condition) for case in cases):
             self._note_shape()
+        check_scrutineer(self.record, self.rule, cases)
         touched = sorted(self.record.touched)
         permit = dispensation(self.record, self.rule.name)
         met = self.record.bank.flag(True) if permit is not None else met_by(self.record, cases)
@@ -75,6 +77,7 @@ class _Binding:
         return BoundRule(
             self.rule.name, self.ruleset.file, met, tuple(cases), self.rule.empty, estimated, tuple(touched),
             tuple(sorted(self.record.figures)), permit, self.rule.standing == "shall",
+            self.rule.decision,
         )  # fmt: skip
 
     def _note_shape(self) -> None:

@@ -9,6 +9,7 @@ from typing import Literal
 from rulecheck.diagnostics import Span
 from rulecheck.formula.syntax import Syntax
 from rulecheck.graph.terms import Term
+from rulecheck.model.ruleset import Decision
 from rulecheck.quantity.units import Unit
 
 
@@ -130,3 +131,4 @@ class BoundRule:
     figures: tuple[str, ...]
     permit: Permit | None = None
     binds: bool = True
+    decision: Decision | None = None

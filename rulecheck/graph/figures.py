@@ -10,6 +10,8 @@ from rulecheck.diagnostics import Span
 from rulecheck.formula.syntax import Syntax
 from rulecheck.graph.conditions import BoundRule, Use
 from rulecheck.graph.terms import Bank, Inputs, Term
+from rulecheck.model.design import Correlation
+from rulecheck.quantity.quantity import Tolerance, Uncertainty
 from rulecheck.quantity.units import Unit
 
 
@@ -43,7 +45,10 @@ class Figure:
 
 @dataclass(frozen=True, slots=True)
 class InputFact:
-    """What is known of an input beside its value."""
+    """What is known of an input beside its value; the widths of its spread are in SI, without the value's power of pi.
+
+    `setting` is the state that sets it: such an input goes by its path and that state, and is nobody's to move.
+    """
 
     path: str
     unit: Unit | None
@@ -51,6 +56,8 @@ class InputFact:
     basis: str = ""
     reference: str = ""
     text: str = ""
+    setting: str = ""
+    spread: Uncertainty | Tolerance | None = None
 
 
 @dataclass(frozen=True, slots=True)
@@ -79,3 +86,4 @@ class Graph:
     day: date
     declared: tuple[DeclaredCheck, ...] = field(default=())
     cautions: Mapping[str, str] = field(default_factory=dict)
+    correlations: tuple[Correlation, ...] = ()

@@ -25,6 +25,7 @@ FIRST = (
     "zones",
     "units",
     "verdicts-and-margins",
+    "spread",
     "what-if-and-headroom",
     "physics",
     "diagnostics",

@@ -10,7 +10,7 @@ from rulecheck.binding.inputs import VALUE_KEYS
 from rulecheck.diagnostics import CODES
 from rulecheck.formula import lexer, token_reader
 from rulecheck.handbook.functions import FUNCTIONS
-from rulecheck.model import design_reader, house_rules, ruleset_reader
+from rulecheck.model import correlations, design_reader, house_rules, ruleset_reader
 from rulecheck.model.core_table import CORE
 from rulecheck.model.ruleset import Formula
 from rulecheck.model.value_ranges import MOST_CURVES, MOST_VALUES
@@ -20,7 +20,7 @@ from rulecheck.quantity import numbers, unit_table, value_parts
 from rulecheck.readers import exact
 from rulecheck.reading import bounds
 from rulecheck.reading.ledger import COLUMNS, REQUIRED
-from rulecheck.studies import varying
+from rulecheck.studies import varying, worst_case
 
 
 def table(head: Iterable[str], rows: Iterable[Iterable[str]]) -> str:
@@ -146,6 +146,8 @@ def bound_rows() -> str:
         ("rulesets that extend one another", ruleset_reader.MOST_LAYERS),
         ("turns of a loop", aggregates.MOST_ELEMENTS),
         ("designs of a house file that are looked through for the name of a rule", house_rules.MOST_DESIGNS),
+        ("inputs that stand in correlations", correlations.MOST_CORRELATED),
+        ("boxes into which a range of values is bisected", worst_case.MOST_BOXES),
         ("combinations of states of a rule", states.MOST_COMBINATIONS),
         ("cases of a rule: elements times states", rules.MOST_CASES),
         ("terms of everything that is computed", exact.MAXIMUM_TERMS),

@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterable, Iterator
 from collections.abc import Mapping as MappingOf
 from dataclasses import dataclass, field, replace
+from fractions import Fraction
 
 from rulecheck.diagnostics import Span
 from rulecheck.reading.nodes import Located, Mapping, Node, Sequence
@@ -93,6 +94,16 @@ class State:
 
 
 @dataclass(frozen=True, slots=True)
+class Correlation:
+    """Two inputs whose measurements are off together, with the coefficient from -1 to 1."""
+
+    first: str
+    second: str
+    coefficient: Fraction
+    span: Span = field(compare=False)
+
+
+@dataclass(frozen=True, slots=True)
 class Design:
     """One car. `leaves` has what is stated by path, `items` the names directly below each inner path in order.
 
@@ -113,6 +124,7 @@ class Design:
     keys: MappingOf[str, Span]
     chosen: MappingOf[str, State] = field(default_factory=dict)
     plain: Design | None = None
+    correlations: tuple[Correlation, ...] = ()
 
     def with_overlay(self, overlay: Overlay) -> Design:
         """The design with the changes laid over it; the design itself stays."""

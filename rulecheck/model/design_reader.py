@@ -5,6 +5,7 @@ from __future__ import annotations
 from dataclasses import dataclass, field, replace
 
 from rulecheck.diagnostics import Faults, Refused, Related, Span
+from rulecheck.model.correlations import read_correlations
 from rulecheck.model.curve_files import CurveFiles
 from rulecheck.model.design import NONE, Design, LeafNode, Overlay, State, is_leaf
 from rulecheck.model.names import RESERVED_KEYS, check_name, check_path
@@ -145,6 +146,7 @@ def _plain_design(workspace: Workspace, file: str, root: Mapping, faults: Faults
         absent=frozenset(draft.absent),
         states=_states(root.get("states"), files),
         keys=draft.keys,
+        correlations=read_correlations(root.get("correlations"), draft.leaves, faults),
     )
     faults.settle()
     return design

@@ -71,6 +71,7 @@ class RuleShape(BranchShape):
     valid: Leaves | None = Field(None, description="First and last day: from, until")
     measure: Any = Field(None, description="The rule book's procedure, for the measuring sheet")
     scrutineer: Any = Field(None, description="The scrutineer's own uncertainty and tolerance")
+    decision: Any = Field(None, description="Decision rule where values have a spread")
     examples: list[Any] | None = Field(None, description="The rule's own tests")
 
 
@@ -136,6 +137,7 @@ class RulesetShape(Shape):
     derived: dict[str, FigureShape] | None = Field(None, description="Derived figures")
     states_needed: dict[str, Any] | None = Field(None, description="States that a design must define, by axis")
     groups: dict[str, Any] | None = Field(None, description="Rules that share a condition")
+    decision: Any = Field(None, description="Decision rule of every rule that has none of its own")
     rules: dict[str, RuleShape] | None = Field(None, description="Rules")
 
 
@@ -156,7 +158,7 @@ class HouseShape(Shape):
     designs: list[Leaf] | None = Field(None, description="Designs, with wildcards")
     rulesets: list[Leaf] | None = Field(None, description="Rulesets that every design is checked against")
     reserves: Leaves | None = Field(None, description="Room kept beyond the rule book, by rule")
-    decision: Leaf | None = Field(None, description="Decision rule under uncertainty")
+    decision: Any = Field(None, description="Decision rule where values have a spread")
     fails_on: list[Leaf] | None = Field(None, description="What fails the gate")
     eroded: Leaves | None = Field(None, description="share: how much of a margin may go in one change")
     ending: Leaves | None = Field(None, description="within: how long before its end a document is named")

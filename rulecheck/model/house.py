@@ -3,13 +3,11 @@
 from __future__ import annotations
 
 from rulecheck.diagnostics import Faults
+from rulecheck.model.decisions import read_decision
 from rulecheck.model.edge import HouseShape, shaped
 from rulecheck.model.ruleset import House
-from rulecheck.model.ruleset_reader import text
 from rulecheck.reading.workspace import HOUSE_FILE, Workspace
 from rulecheck.reading.yaml_reader import read_yaml
-
-DECISIONS = ("simple", "guarded", "worst case")
 
 
 def read_house(workspace: Workspace, file: str = HOUSE_FILE) -> House:
@@ -17,13 +15,7 @@ def read_house(workspace: Workspace, file: str = HOUSE_FILE) -> House:
     root = read_yaml(workspace, file)
     faults = Faults()
     shape = shaped(HouseShape, root, faults)
-    if shape is not None and shape.decision is not None and shape.decision.text not in DECISIONS:
-        faults.add(
-            "unknown-choice",
-            f"'{shape.decision.text}' is no decision rule",
-            shape.decision.span,
-            expected=" or ".join(DECISIONS),
-        )
+    decision = read_decision(root.get("decision"), faults)
     faults.settle()
     assert shape is not None
     return House(
@@ -32,7 +24,7 @@ def read_house(workspace: Workspace, file: str = HOUSE_FILE) -> House:
         designs=tuple(shape.designs or ()),
         rulesets=tuple(shape.rulesets or ()),
         reserves=shape.reserves or {},
-        decision=text(shape.decision) or "simple",
+        decision=decision,
         fails_on=tuple(shape.fails_on or ()),
         eroded=shape.eroded or {},
         ending=shape.ending or {},

@@ -7,7 +7,7 @@ import re
 from rulecheck.diagnostics import Faults
 from rulecheck.reading.nodes import Located
 
-RESERVED_KEYS = ("design", "revision", "note", "rulesets", "ledger", "states", "changes", "set")
+RESERVED_KEYS = ("design", "revision", "note", "rulesets", "ledger", "states", "correlations", "changes", "set")
 """Keys at the top of a design that are no inputs."""
 RESERVED = frozenset(["and", "or", "not", "if", "else", "for", "in", "where", "within", "yes", "no"])
 _NAME = re.compile(r"[^\W\d]\w*\Z")

@@ -5,16 +5,20 @@ from __future__ import annotations
 from collections.abc import Mapping as MappingOf
 from dataclasses import dataclass, field
 from datetime import date
+from fractions import Fraction
 from typing import Literal
 
 from rulecheck.diagnostics import Span
 from rulecheck.model.vocabulary import Entry
 from rulecheck.model.zones import PlaceCondition, Template, ZoneRule
 from rulecheck.quantity.dimension import Dimension
+from rulecheck.quantity.quantity import Quantity, Uncertainty
+from rulecheck.quantity.units import Unit
 from rulecheck.reading.nodes import Located, Node
 
 Standing = Literal["shall", "should", "may", "note"]
 EmptyMeans = Literal["open", "complies", "breach", "not applicable"]
+DecisionName = Literal["simple", "guarded", "worst case"]
 
 
 @dataclass(frozen=True, slots=True)
@@ -73,6 +77,30 @@ class Origin:
 
 
 @dataclass(frozen=True, slots=True)
+class Decision:
+    """How a verdict takes account of spread. `coverage` is the factor k of a guard band `k * u`.
+
+    The factor is 2 where nothing is said (JCGM 100:2008, 6.3.3: a level of confidence of about 95 %).
+    """
+
+    name: DecisionName = "simple"
+    coverage: Fraction = Fraction(2)
+
+
+SIMPLE = Decision()
+
+
+@dataclass(frozen=True, slots=True)
+class Scrutineer:
+    """What the scrutineer measures with: the uncertainty of the instrument, in `unit`, and the leniency that it gives."""
+
+    uncertainty: Uncertainty | None
+    unit: Unit | None
+    tolerance: Quantity | None
+    span: Span = field(compare=False)
+
+
+@dataclass(frozen=True, slots=True)
 class Rule:
     """One rule, as written. `own` are its own conditions, `branches` its alternatives; `states` is None for the design
     as written, () for every state, else pairs of axis and names (() for every name)."""
@@ -94,7 +122,8 @@ class Rule:
     scale: Located | None
     valid: Window
     measure: Node | None = None
-    scrutineer: Node | None = None
+    scrutineer: Scrutineer | None = None
+    decision: Decision | None = None
     examples: tuple[Node, ...] = ()
     history: tuple[Origin, ...] = ()
 
@@ -201,7 +230,7 @@ class House:
     designs: tuple[Located, ...]
     rulesets: tuple[Located, ...]
     reserves: MappingOf[str, Located]
-    decision: str
+    decision: Decision | None
     fails_on: tuple[Located, ...]
     eroded: MappingOf[str, Located]
     ending: MappingOf[str, Located]

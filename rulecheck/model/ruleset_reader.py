@@ -6,6 +6,7 @@ from dataclasses import replace
 from typing import Any
 
 from rulecheck.diagnostics import Faults, Refused, Related, Span
+from rulecheck.model.decisions import read_decision, read_scrutineer
 from rulecheck.model.declarations import declared_entries, needed_states, own_units
 from rulecheck.model.edge import BranchShape, EvidenceShape, FigureShape, RulesetShape, RuleShape, shaped
 from rulecheck.model.groups import group_conditions
@@ -14,6 +15,7 @@ from rulecheck.model.names import check_name
 from rulecheck.model.ruleset import (
     Alternative,
     Book,
+    Decision,
     EvidenceWanted,
     Formula,
     Rule,
@@ -59,8 +61,18 @@ def _read(workspace: Workspace, file: str, asked: Span | None, above: tuple[str,
     faults.settle()
     assert shape is not None
     made = layered(bases, _Reader(file, root, shape, faults).ruleset(), root.get("withdrawn"), faults)
+    decision = read_decision(root.get("decision"), faults)
     faults.settle()
-    return made
+    return made if decision is None else _decided(made, decision)
+
+
+def _decided(ruleset: Ruleset, decision: Decision) -> Ruleset:
+    """Every rule that has no decision rule of its own takes that of the rule book, also what it extends."""
+    rules = {
+        name: replace(rule, decision=decision) if rule.decision is None else rule
+        for name, rule in ruleset.rules.items()
+    }
+    return replace(ruleset, rules=rules)
 
 
 def _references(node: Node | None) -> tuple[Located, ...]:
@@ -76,6 +88,7 @@ class _Reader:
 
     def __init__(self, file: str, root: Mapping, shape: RulesetShape, faults: Faults) -> None:
         self.file, self.root, self.shape, self.faults = file, root, shape, faults
+        self.units = own_units(shape.units or {}, faults)
 
     def key(self, *path: str) -> Located:
         """The key at a path of the file."""
@@ -93,7 +106,7 @@ class _Reader:
 
     def ruleset(self) -> Ruleset:
         shape, faults = self.shape, self.faults
-        units = own_units(shape.units or {}, faults)
+        units = self.units
         groups = group_conditions(self.root.get("groups"), shape.rules or {}, faults)
         rules = {name: self.rule(name, key, value, groups) for name, key, value in self.named("rules", shape.rules)}
         self._one_name_space()
@@ -187,7 +200,8 @@ class _Reader:
             scale=shape.scale,
             valid=window(shape.valid, self.faults),
             measure=_inside(inner, "measure"),
-            scrutineer=_inside(inner, "scrutineer"),
+            scrutineer=read_scrutineer(_inside(inner, "scrutineer"), self.units, self.faults),
+            decision=read_decision(_inside(inner, "decision"), self.faults),
             examples=tuple(_inside(inner, "examples") or ()),  # type: ignore[arg-type]
         )
 

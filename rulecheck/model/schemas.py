@@ -109,6 +109,20 @@ def _header() -> dict[str, Schema]:
             "description": "Files of masses, one row each",
         },
         "states": {"type": "object", "additionalProperties": axes, "description": "What each state changes, by axis"},
+        "correlations": {
+            "type": "array",
+            "description": "Measurements that are off together",
+            "items": {
+                "type": "object",
+                "properties": {
+                    "between": {"type": "array", "items": {"type": "string"}, "minItems": 2},
+                    "coefficient": {**TEXT, "description": "From -1 to 1, for every pair of these inputs"},
+                    "because": {"type": "string", "description": "A remark, such as the instrument that they share"},
+                },
+                "required": ["between", "coefficient"],
+                "additionalProperties": False,
+            },
+        },
         "changes": {"type": "string", "description": "The design that this variant changes"},
         "set": {"$ref": "#/$defs/kind%20overlay", "description": "What the variant changes"},
     }

@@ -5,11 +5,12 @@ from __future__ import annotations
 from collections.abc import Mapping
 from typing import Any
 
+from rulecheck.model.decisions import DECISIONS
 from rulecheck.model.declarations import KINDS
 from rulecheck.model.edge import HouseShape, RulesetShape, Shape
-from rulecheck.model.house import DECISIONS
 from rulecheck.model.ruleset_reader import EMPTY, STANDINGS
 from rulecheck.model.zone_schemas import PLACES, TEMPLATES, ZONE, ZONES
+from rulecheck.quantity.quantity import SHAPES
 
 Schema = dict[str, Any]
 
@@ -54,6 +55,30 @@ _GROUPS: Schema = {
         "additionalProperties": False,
     },
 }
+_DECISION: Schema = {
+    "anyOf": [
+        {"enum": list(DECISIONS)},
+        {
+            "type": "object",
+            "properties": {
+                "rule": {"enum": list(DECISIONS)},
+                "coverage": {**TEXT, "description": "Factor k of the guard band k times u; 2 where nothing is said"},
+            },
+            "required": ["rule"],
+            "additionalProperties": False,
+        },
+    ]
+}
+_SCRUTINEER: Schema = {
+    "type": "object",
+    "properties": {
+        "uncertainty": {**TEXT, "description": "Half width of what the instrument may be off by"},
+        "coverage": {**TEXT, "description": "Coverage factor k of the uncertainty"},
+        "shape": {"enum": list(SHAPES), "description": "Shape of its distribution"},
+        "tolerance": {**TEXT, "description": "Leniency that is given beyond the limit"},
+    },
+    "additionalProperties": False,
+}
 _NARROWER: Mapping[tuple[str, str], Schema] = {
     ("RuleShape", "standing"): {"enum": list(STANDINGS)},
     ("RuleShape", "empty"): {"enum": list(EMPTY)},
@@ -69,7 +94,10 @@ _NARROWER: Mapping[tuple[str, str], Schema] = {
     ("RulesetShape", "zones"): ZONES,
     ("RulesetShape", "templates"): TEMPLATES,
     **{(shape, word): schema for word, schema in PLACES.items() for shape in ("RuleShape", "BranchShape")},
-    ("HouseShape", "decision"): {"enum": list(DECISIONS)},
+    ("HouseShape", "decision"): _DECISION,
+    ("RulesetShape", "decision"): _DECISION,
+    ("RuleShape", "decision"): _DECISION,
+    ("RuleShape", "scrutineer"): _SCRUTINEER,
 }
 """What the readers hold beyond the shapes, by shape and key."""
 

@@ -50,6 +50,7 @@ class Operation:
     Where `strict`, a reader hands in known values only: one unknown operand makes the result unknown. Else
     `exact` and `ball` see every operand, also `Unknown`, `Bounds` and `UNDECIDED`, and may give them.
     `bounds(values)` evaluates where an operand is `Bounds` and the others are exact; None where it cannot say.
+    `jumps` marks an operation whose partials are those between its jumps.
     `binds(floats)` says which operand decides the result (minimum, maximum), else None.
     `symbolic(sympy, values)` gives the sympy form. `script` is JavaScript with `{0}`, `{1}`
     for the operands, or the name of a function of `script_library` that takes them all where `many`.
@@ -68,6 +69,7 @@ class Operation:
     partials: Callable[[Any, Sequence[Any]], Sequence[Any]] | None = None
     binds: Callable[[Sequence[float]], int] | None = None
     bounds: Callable[[Sequence[Any]], Any] | None = None
+    jumps: bool = False
     strict: bool = True
     many: bool = False
     repeats: int = 1

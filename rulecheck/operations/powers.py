@@ -19,7 +19,7 @@ from rulecheck.operations.exact import (
     to_fraction,
 )
 from rulecheck.operations.operation import UNDECIDED, Undefined
-from rulecheck.operations.spaces import is_arrays, is_symbolic, logarithm, raised
+from rulecheck.operations.spaces import is_arrays, is_certain, is_symbolic, logarithm, raised
 
 FRACTIONAL = Undefined("a fractional power of a negative number")
 BY_ZERO = Undefined("division by zero")
@@ -96,6 +96,8 @@ def constant_power_partials(space: Any, base: Any, exponent: Fraction) -> Any:
         return space.Rational(exponent.numerator, exponent.denominator) * base ** space.Rational(
             lower.numerator, lower.denominator
         )
+    if is_certain(space):
+        return exponent * base**lower
     return float(exponent) * raised(space, base, int(lower) if lower.denominator == 1 else float(lower))
 
 

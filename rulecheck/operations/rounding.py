@@ -108,6 +108,7 @@ def _whole(name: str, meaning: str, way: Way, array: Any, symbolic: Any, script:
         symbolic=lambda sympy, values: symbolic(sympy, values[0]),
         script=f"{script}({{0}})",
         partials=lambda space, values: (0.0 * values[0],),
+        jumps=True,
         meaning=meaning,
     )
 
@@ -141,6 +142,7 @@ def _steps(name: str, meaning: str, way: Way, array: Any, symbolic: Any, script:
         symbolic=lambda sympy, values: values[1] * symbolic(sympy, values[0] / values[1]),
         script=f"steps({script}, {{0}}, {{1}})",
         partials=partials,
+        jumps=True,
         domain="the step is positive",
         meaning=meaning,
     )

@@ -1,6 +1,7 @@
 """What partial derivatives need from a name space beyond its functions: choices and safe quotients.
 
-A space is `math` (floats), `numpy` (arrays) or `sympy` (expressions). Handed in, never imported.
+A space is `math` (floats), `numpy` (arrays), `sympy` (expressions), or that of numbers which are certain. Handed in,
+never imported.
 """
 
 from __future__ import annotations
@@ -20,6 +21,11 @@ def is_arrays(space: Any) -> bool:
 def is_symbolic(space: Any) -> bool:
     """True for sympy."""
     return hasattr(space, "Piecewise")
+
+
+def is_certain(space: Any) -> bool:
+    """True for numbers that are exact or balls, for which a double in place of a fraction will not do."""
+    return hasattr(space, "certain")
 
 
 def choose(space: Any, condition: Any, then: Any, otherwise: Any) -> Any:

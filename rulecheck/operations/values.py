@@ -14,7 +14,7 @@ from typing import Any, Literal
 
 from rulecheck.diagnostics import Span
 
-ReasonKind = Literal["missing", "contradiction", "undefined", "tie", "budget"]
+ReasonKind = Literal["missing", "contradiction", "undefined", "tie", "budget", "uncertain"]
 
 
 @dataclass(frozen=True, slots=True)

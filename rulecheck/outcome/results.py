@@ -6,6 +6,25 @@ from collections.abc import Mapping
 from dataclasses import dataclass, field
 from typing import Literal
 
+from rulecheck.outcome.amount import Amount
+from rulecheck.outcome.spread import SpreadResult
+
+__all__ = [
+    "VERDICTS",
+    "Amount",
+    "BindingPart",
+    "ClosedFormResult",
+    "Finding",
+    "PartResult",
+    "Place",
+    "Report",
+    "RulesetInfo",
+    "Step",
+    "Verdict",
+    "Working",
+    "Workings",
+]
+
 Verdict = Literal["complies", "tight", "breach", "unproven", "open", "dispensed", "not applicable", "not followed"]
 VERDICTS: tuple[Verdict, ...] = (
     "complies",
@@ -17,19 +36,6 @@ VERDICTS: tuple[Verdict, ...] = (
     "not applicable",
     "not followed",
 )
-
-
-@dataclass(frozen=True, slots=True)
-class Amount:
-    """A number in a unit: `shown` for the screen, `exact` as a rational where it is one, `value` as a double."""
-
-    shown: str
-    unit: str
-    value: float | None = None
-    exact: str = ""
-
-    def __str__(self) -> str:
-        return self.shown if self.unit in ("", "1") else f"{self.shown} {self.unit}"
 
 
 @dataclass(frozen=True, slots=True)
@@ -102,6 +108,7 @@ class Finding:
     history: tuple[str, ...] = ()
     ruleset_name: str = ""
     counted: bool = False
+    spread: SpreadResult | None = None
 
 
 @dataclass(frozen=True, slots=True)

@@ -3,11 +3,13 @@
 from __future__ import annotations
 
 import json
-import math
 from dataclasses import fields, is_dataclass
 from typing import Protocol
 
 from rulecheck.outcome.results import Amount, BindingPart, Finding, PartResult, Place, Report, RulesetInfo, Workings
+from rulecheck.output.json_spread import amount_json, finite, spread_json
+
+__all__ = ["Json", "amount_json", "json_text", "report_json", "workings_json"]
 
 Json = dict[str, object]
 
@@ -104,7 +106,7 @@ def _finding(item: Finding) -> Json:
         "verdict": item.verdict,
         "reason": item.reason,
         "margin": _margin(item.margin, item.strict),
-        "relative_margin": _number(item.relative_margin),
+        "relative_margin": finite(item.relative_margin),
         "value": amount_json(item.value),
         "limit": amount_json(item.limit),
         "sense": item.sense,
@@ -117,6 +119,7 @@ def _finding(item: Finding) -> Json:
         "outside_validity": list(item.outside_validity),
         "notes": list(item.notes),
         "history": list(item.history),
+        "spread": spread_json(item.spread),
     }
 
 
@@ -138,7 +141,7 @@ def _part(item: PartResult) -> Json:
         "verdict": item.verdict,
         "reason": item.reason,
         "margin": _margin(item.margin, item.strict),
-        "relative_margin": _number(item.relative_margin),
+        "relative_margin": finite(item.relative_margin),
         "value": amount_json(item.value),
         "limit": amount_json(item.limit),
         "sense": item.sense,
@@ -152,23 +155,6 @@ def _part(item: PartResult) -> Json:
 def _margin(amount: Amount | None, strict: bool) -> Json | None:
     shown = amount_json(amount)
     return {**shown, "strict": strict} if shown is not None else None
-
-
-def amount_json(amount: Amount | None) -> Json | None:
-    """An amount, null where there is none."""
-    if amount is None:
-        return None
-    return {
-        "value": _number(amount.value),
-        "unit": amount.unit,
-        "exact": amount.exact or None,
-        "shown": amount.shown,
-    }
-
-
-def _number(value: float | None) -> float | None:
-    """A double, or null where there is none: JSON has no infinity."""
-    return value if value is not None and math.isfinite(value) else None
 
 
 def _place(place: Place | None) -> Json | None:

@@ -4,10 +4,23 @@ from __future__ import annotations
 
 from rulecheck.diagnostics import CODES
 from rulecheck.outcome.results import VERDICTS
+from rulecheck.output.schema_parts import DRAFT, Schema, list_of, object_of, or_null_of, text_of, verdict_of
+from rulecheck.output.spread_schema import spread_of
 
-Schema = dict[str, object]
-
-DRAFT = "https://json-schema.org/draft/2020-12/schema"
+__all__ = [
+    "DRAFT",
+    "Schema",
+    "diagnostics_schema",
+    "heading_of",
+    "list_of",
+    "object_of",
+    "or_null_of",
+    "report_schema",
+    "shared_of",
+    "text_of",
+    "verdict_of",
+    "workings_schema",
+]
 
 
 def report_schema() -> Schema:
@@ -194,6 +207,7 @@ def _rule() -> Schema:
         "outside_validity": list_of(text_of(), "Figures that are used outside their range of validity"),
         "notes": list_of(text_of(), "Such as a condition that is close to its own threshold"),
         "history": list_of(text_of(), "What the rule replaces"),
+        "spread": or_null_of(spread_of(), "What the spread of its inputs does to it; null where none has one"),
     }
 
 
@@ -246,34 +260,3 @@ def _closed_form() -> Schema:
         "solved": {"type": "object", "additionalProperties": list_of(text_of(), "Solutions on the limit")},
         "conditions": list_of(text_of(), "Where it holds"),
     }
-
-
-def text_of(description: str = "") -> Schema:
-    """A text."""
-    return {"description": description, "type": "string"} if description else {"type": "string"}
-
-
-def verdict_of(description: str) -> Schema:
-    """One of the verdicts."""
-    return {"description": description, "enum": list(VERDICTS)}
-
-
-def list_of(items: Schema, description: str) -> Schema:
-    """A list of items of one kind."""
-    return {"description": description, "type": "array", "items": items}
-
-
-def object_of(properties: Schema) -> Schema:
-    """An object that has just these keys, all of them."""
-    return {
-        "type": "object",
-        "properties": properties,
-        "required": list(properties),
-        "additionalProperties": False,
-    }
-
-
-def or_null_of(schema: Schema, description: str = "") -> Schema:
-    """A value, or null where there is none."""
-    told: Schema = {"description": description} if description else {}
-    return {**told, "oneOf": [schema, {"type": "null"}]}

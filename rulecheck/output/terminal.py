@@ -15,6 +15,7 @@ from rulecheck.output.rail import LENGTH, legend, rail
 from rulecheck.output.screen import PAPER, STYLES, Screen, draw, line, words
 from rulecheck.output.terminal_details import details
 from rulecheck.output.terminal_notes import notes
+from rulecheck.output.terminal_spread import spreads
 from rulecheck.output.wording import percent, short
 
 _NAMES_FROM = 108
@@ -36,6 +37,7 @@ def _parts(report: Report, screen: Screen) -> Iterable[RenderableType]:
         for told in legend(unicode=screen.unicode).splitlines():
             yield line(told, style="dim")
     yield from details(report)
+    yield from spreads(report)
     yield from notes(report)
     yield Text()
     yield from _total(report)

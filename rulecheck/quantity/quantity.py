@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from fractions import Fraction
 from typing import Literal
 
@@ -83,17 +83,57 @@ class Quantity:
                 return self.value + lower, self.value + upper
         return self.value, self.value
 
+    def spread_si(self) -> Uncertainty | Tolerance | None:
+        """The spread with its widths in SI units, without the power of pi that the value has too.
+
+        >>> from rulecheck.quantity.units import find_unit
+        >>> Quantity(Fraction(1895), find_unit("mm"), Tolerance(Fraction(0), Fraction(-2))).spread_si()
+        Tolerance(upper=Fraction(0, 1), lower=Fraction(-1, 500))
+        """
+        return spread_in_si(self.spread, self.unit)
+
     def __str__(self) -> str:
         """The value as the language writes it, exactly: `1895 mm ± 0.6 mm (k=2)`."""
-        unit = show_unit(self.unit)
-        parts = [show_exact(self.value), unit, self.pressure]
-        match self.spread:
-            case Uncertainty(half_width=width, coverage=coverage, shape=shape):
-                stated = f"(k={show_exact(coverage)})" if coverage is not None else ""
-                parts += ["±", show_exact(width), unit, stated or ("" if shape == "rectangular" else f"({shape})")]
-            case Tolerance(upper=upper, lower=lower):
-                parts += [f"{_signed(upper, '+')}/{_signed(lower, '-')}", unit]
+        parts = [show_exact(self.value), show_unit(self.unit), self.pressure, show_spread(self.spread, self.unit)]
         return " ".join(part for part in parts if part)
+
+
+def show_spread(spread: Uncertainty | Tolerance | None, unit: Unit) -> str:
+    """A spread as the language writes it behind a value, empty where there is none.
+
+    >>> from rulecheck.quantity.units import find_unit
+    >>> show_spread(Uncertainty(Fraction(3, 5), Fraction(2), "normal"), find_unit("mm"))
+    '± 0.6 mm (k=2)'
+    """
+    match spread:
+        case Uncertainty(half_width=width, coverage=coverage, shape=shape):
+            said = f"(k={show_exact(coverage)})" if coverage is not None else ""
+            parts = ["±", show_exact(width), show_unit(unit), said or ("" if shape == "rectangular" else f"({shape})")]
+        case Tolerance(upper=upper, lower=lower):
+            parts = [f"{_signed(upper, '+')}/{_signed(lower, '-')}", show_unit(unit)]
+        case _:
+            return ""
+    return " ".join(part for part in parts if part)
+
+
+def spread_of_si(spread: Uncertainty | Tolerance | None, unit: Unit) -> Uncertainty | Tolerance | None:
+    """A spread whose widths are in SI units with its widths in a unit."""
+    match spread:
+        case Uncertainty(half_width=width):
+            return replace(spread, half_width=unit.width_of_si(width)[0])
+        case Tolerance(upper=upper, lower=lower):
+            return Tolerance(unit.width_of_si(upper)[0], unit.width_of_si(lower)[0])
+    return None
+
+
+def spread_in_si(spread: Uncertainty | Tolerance | None, unit: Unit) -> Uncertainty | Tolerance | None:
+    """A spread that is stated in a unit with its widths in SI units."""
+    match spread:
+        case Uncertainty(half_width=width):
+            return replace(spread, half_width=unit.width_in_si(width)[0])
+        case Tolerance(upper=upper, lower=lower):
+            return Tolerance(unit.width_in_si(upper)[0], unit.width_in_si(lower)[0])
+    return None
 
 
 def _signed(value: Fraction, sign_of_zero: str) -> str:

@@ -10,7 +10,7 @@ from rulecheck.diagnostics import Faults
 from rulecheck.quantity.dimension import Dimension
 from rulecheck.quantity.quantity import SHAPES, Quantity, Shape, Tolerance, Uncertainty
 from rulecheck.quantity.reading_spread import in_unit_of, read_spread
-from rulecheck.quantity.reading_values import read_quantity
+from rulecheck.quantity.reading_values import read_point, read_quantity
 from rulecheck.quantity.units import NONE_OWN, Unit
 from rulecheck.quantity.value_parts import Pieces
 from rulecheck.reading.nodes import Located, Mapping, Node
@@ -51,6 +51,21 @@ def read_stated(
     basis, reference, definition = (_text(texts, key) for key in ("basis", "reference", "definition"))
     stated = spread or quantity.spread
     return replace(quantity, spread=stated, basis=basis, reference=reference, definition=definition)
+
+
+def read_stated_point(
+    node: Located | Mapping, own: Units[str, Dimension], faults: Faults
+) -> tuple[Quantity, Quantity, Quantity] | None:
+    """A point as text, or as `{value: 1250 0 310 mm, uncertainty: 1 mm}`: the spread is that of each coordinate."""
+    if isinstance(node, Located):
+        return read_point(node, own, faults)
+    before = len(faults.found)
+    texts = _texts(node, faults)
+    read = read_point(texts["value"], own, faults) if "value" in texts else None
+    if read is None:
+        return None
+    x, y, z = (replace(item, spread=_spread(texts, item, own, faults)) for item in read)
+    return (x, y, z) if len(faults.found) == before else None
 
 
 def _text(texts: dict[str, Located], key: str) -> str:

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from datetime import date
 from decimal import Decimal
 from fractions import Fraction
@@ -9,11 +10,13 @@ from fractions import Fraction
 from rulecheck.diagnostics import Span
 from rulecheck.graph.terms import Bank, Term
 from rulecheck.operations.arithmetic import divide
+from rulecheck.operations.exact import Ball, Rational, exact_number, to_fraction
 from rulecheck.operations.values import Bounds, Monomial, Reason, Unknown
 from rulecheck.outcome.results import Amount, Place
 from rulecheck.quantity.dimension_names import preferred
 from rulecheck.quantity.numbers import show_exact, show_number
 from rulecheck.quantity.units import Unit
+from rulecheck.readers.certain import Certain
 from rulecheck.readers.exact import ExactReader
 
 DIGITS = 6
@@ -45,6 +48,22 @@ def amount(reader: ExactReader, bank: Bank, term: Term, unit: Unit | None, *, wi
     if exact is not None:
         return Amount(show_number(exact, DIGITS), symbol, _double(exact), show_exact(exact))
     return _rounded(reader, bank, term, unit, symbol)
+
+
+def certain_amount(number: Certain, unit: Unit | None, digits: int = DIGITS) -> Amount:
+    """A width in SI units as an amount in a unit: exact where it is rational, else to so many figures."""
+    scaled = number if unit is None else number / Certain(exact_number(Monomial(unit.factor, unit.power)))
+    symbol = "" if unit is None else "K" if unit.offset else unit.symbol
+    if isinstance(scaled.value, Rational):
+        exact = to_fraction(scaled.value)
+        return Amount(show_number(exact, digits), symbol, _double(exact), show_exact(exact))
+    value = float(scaled)
+    return Amount(show_number(Fraction(value), digits) if math.isfinite(value) else "", symbol, value)
+
+
+def float_amount(value: float, unit: Unit | None, digits: int = 4) -> Amount:
+    """A width in SI units that is a double, in a unit."""
+    return certain_amount(Certain(Ball(value)), unit, digits)
 
 
 def _text(value: object) -> str:

@@ -10,16 +10,20 @@ from rulecheck.diagnostics import Span
 from rulecheck.graph.conditions import AnyOf, BoundRule, Case, Condition, Either, Part, every_part
 from rulecheck.graph.figures import Graph
 from rulecheck.graph.terms import Term
-from rulecheck.model.ruleset import Rule
+from rulecheck.model.ruleset import SIMPLE, Decision, Rule
 from rulecheck.operations.comparison import below
 from rulecheck.operations.values import Unknown
 from rulecheck.outcome.results import Amount, BindingPart, Finding, PartResult, Verdict
+from rulecheck.outcome.spread import SpreadResult
 from rulecheck.quantity.dimension import PURE
 from rulecheck.quantity.quantity import Quantity
 from rulecheck.quantity.units import Unit
 from rulecheck.readers.exact import ExactReader
 from rulecheck.studies.amounts import amount, place, reason_text
+from rulecheck.studies.deciding import Decider
 from rulecheck.studies.judging import Judge, Judged, all_of, verdict_of
+from rulecheck.studies.spread import Asked as AskedSpread
+from rulecheck.studies.spread import AtRandom, SpreadStudy
 
 NEAR = Fraction(1, 100)
 _NO_MEASURE = (
@@ -37,23 +41,36 @@ class Reserves:
 
 
 class Checker:
-    """Judges the rules of one graph, with one reader."""
+    """Judges the rules of one graph, with one reader.
 
-    def __init__(self, graph: Graph, reserves: Reserves | None = None) -> None:
+    `decision` is the decision rule of the house, for rules that have none of their own or of their rule book;
+    `at_random` gives Monte Carlo trials beside each uncertainty.
+    """
+
+    def __init__(
+        self,
+        graph: Graph,
+        reserves: Reserves | None = None,
+        decision: Decision = SIMPLE,
+        at_random: AtRandom | None = None,
+    ) -> None:
         self.graph, self.bank = graph, graph.bank
         self.reader = ExactReader(graph.bank, graph.inputs)
         self.judge = Judge(graph.bank, self.reader)
+        self.decider = Decider(graph, self.reader)
+        self.decision = decision
+        self._spread = SpreadStudy(graph, self.decider, at_random)
         self.reserves = reserves or Reserves()
         self._amounts: dict[tuple[int, Unit | None, bool], Amount | None] = {}
 
     def finding(self, bound: BoundRule, rule: Rule, ruleset_name: str = "") -> Finding:
         """One rule with its verdict."""
-        judged = [(case, *self._case(case)) for case in bound.cases]
-        verdict, binding, reason = self._rule(judged)
+        verdict, binding, reason = self._rule(self._cases(bound))
         verdict, reason, permit = self._settled(bound, rule, verdict, binding, reason)
         part = binding.part if binding else None
-        shown = part if part is not None and verdict not in ("open", "unproven") else None
+        shown = part if part is not None and self._is_shown(part, bound, verdict) else None
         relative = self.judge.relative(shown) if shown else None
+        spread = self._spread_of(bound, rule, binding) if shown else None
         return Finding(
             name=rule.name,
             ruleset=rule.ruleset,
@@ -61,7 +78,7 @@ class Checker:
             title=rule.title or rule.name.replace("_", " "),
             standing=rule.standing,
             verdict=verdict,
-            reason=reason,
+            reason=reason or self._at_worst(shown, verdict, spread),
             margin=self._amount(shown.margin, shown, width=True) if shown else None,
             strict=bool(shown and shown.strict),
             relative_margin=self.reader.approximate(relative) if relative is not None else None,
@@ -69,7 +86,7 @@ class Checker:
             limit=self._amount(part.limit, part) if part else None,
             sense=part.sense if part else "",
             binding=_binding(binding),
-            parts=tuple(self._parts(bound.cases)),
+            parts=tuple(self._parts(bound)),
             rule_place=place(part.span if part and part.span else rule.span) or place(rule.span),  # type: ignore[arg-type]
             value_place=place(self._value_place(part)),
             estimates=bound.estimated,
@@ -79,7 +96,12 @@ class Checker:
             history=tuple(f"{origin.what}: {origin.span}" for origin in rule.history),
             ruleset_name=ruleset_name,
             counted=bool(part and part.counted),
+            spread=spread,
         )
+
+    def decision_of(self, bound: BoundRule) -> Decision:
+        """The decision rule of a rule: its own, that of its rule book, or the house's."""
+        return bound.decision or self.decision
 
     def read_all(self) -> None:
         """Evaluate what every rule rests on, so that studies start from what is known."""
@@ -88,15 +110,51 @@ class Checker:
 
     def binding(self, bound: BoundRule) -> Judged | None:
         """What decides a rule."""
-        return self._rule([(case, *self._case(case)) for case in bound.cases])[1]
+        return self._rule(self._cases(bound))[1]
+
+    def _is_shown(self, part: Part, bound: BoundRule, verdict: Verdict) -> bool:
+        """True where a margin is shown: it is known, and not left out of account for something that is missing."""
+        if verdict not in ("open", "unproven"):
+            return True
+        return self.decision_of(bound).name != "simple" and not isinstance(self.reader.truth(part.holds), Unknown)
+
+    def _at_worst(self, part: Part | None, verdict: Verdict, spread: SpreadResult | None) -> str:
+        """Why a rule is in breach whose condition the values as stated meet."""
+        if part is None or verdict not in ("breach", "not followed") or self.reader.truth(part.holds) is not True:
+            return ""
+        least = spread.worst_case.margin if spread is not None and spread.worst_case is not None else None
+        return "its tolerances allow a breach" + (f": the least margin is {least}" if least is not None else "")
+
+    def _spread_of(self, bound: BoundRule, rule: Rule, binding: Judged | None) -> SpreadResult | None:
+        """The spread of what decides a rule."""
+        if binding is None or binding.part is None or binding.case is None:
+            return None
+        if not self.decider.sources and rule.scrutineer is None:
+            return None
+        asked = AskedSpread(binding.part, binding.case.condition, self.decision_of(bound), rule.scrutineer)
+        return self._spread.of(asked)
 
     # --- cases -------------------------------------------------------------------------------------------------------
 
-    def _case(self, case: Case) -> tuple[Verdict, Judged, str]:
-        applies = self.reader.truth(case.applies)
-        exempt = self.reader.truth(case.exempt)
-        found = self.judge.condition(case.condition)
-        found = replace(found, case=case)
+    def _cases(self, bound: BoundRule) -> list[tuple[Case, Verdict, Judged, str]]:
+        decision = self.decision_of(bound)
+        judge = self._judge_under(decision)
+        return [(case, *self._case(case, judge, decision)) for case in bound.cases]
+
+    def _judge_under(self, decision: Decision) -> Judge:
+        if decision.name == "simple":
+            return self.judge
+        return Judge(
+            self.bank,
+            self.reader,
+            lambda part: self.decider.part(part, decision),
+            lambda flag: self.decider.flag(flag, decision),
+        )
+
+    def _case(self, case: Case, judge: Judge, decision: Decision) -> tuple[Verdict, Judged, str]:
+        applies = self.decider.flag(case.applies, decision)
+        exempt = self.decider.flag(case.exempt, decision)
+        found = replace(judge.condition(case.condition), case=case)
         if applies is False:
             return "not applicable", found, case.because if case.applies is case.exempt else ""
         if isinstance(applies, Unknown):
@@ -183,12 +241,13 @@ class Checker:
             self._amounts[key] = amount(self.reader, self.bank, term, part.unit, width=width)
         return self._amounts[key]
 
-    def _parts(self, cases: Iterable[Case]) -> Iterable[PartResult]:
-        for case in cases:
+    def _parts(self, bound: BoundRule) -> Iterable[PartResult]:
+        decision = self.decision_of(bound)
+        for case in bound.cases:
             if self.reader.truth(case.applies) is False:
                 continue
             for part, branch in self._leaves(case.condition):
-                yield self.part_result(part, case, branch)
+                yield self.part_result(part, case, branch, decision)
 
     def _leaves(self, condition: Condition, branch: str = "") -> Iterable[tuple[Part, str]]:
         """The parts that are asked: of a conditional those of the arm that is taken, else what chooses."""
@@ -202,10 +261,10 @@ class Checker:
         for part, label in zip(condition.parts, own or (branch,) * len(condition.parts), strict=True):
             yield from self._leaves(part, label)
 
-    def part_result(self, part: Part, case: Case, branch: str) -> PartResult:
+    def part_result(self, part: Part, case: Case, branch: str, decision: Decision = SIMPLE) -> PartResult:
         """One part for the report."""
-        truth = self.reader.truth(part.holds)
-        known = not isinstance(truth, Unknown)
+        truth = self.decider.part(part, decision)
+        known = not isinstance(self.reader.truth(part.holds), Unknown)
         relative = self.judge.relative(part) if known else None
         return PartResult(
             part.text,

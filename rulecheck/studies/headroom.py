@@ -37,7 +37,11 @@ _PI = Fraction("3.14159265358979323846264338328")
 def headroom(checker: Checker, design: Design, names: Sequence[str], day: date) -> HeadroomReport:
     """The headroom of the inputs named, or of all that a rule reads. Raises `Refused` where a name is no input."""
     graph = checker.graph
-    numbers = {path: value for path, value in graph.inputs.items() if isinstance(value, Monomial)}
+    numbers = {
+        path: value
+        for path, value in graph.inputs.items()
+        if isinstance(value, Monomial) and not graph.facts[path].setting
+    }
     faults = Faults()
     for name in names:
         if name not in numbers:

@@ -7,7 +7,7 @@ relative margin, so that parts of several units can be held against each other.
 
 from __future__ import annotations
 
-from collections.abc import Sequence
+from collections.abc import Callable, Sequence
 from dataclasses import dataclass, replace
 from fractions import Fraction
 
@@ -39,17 +39,27 @@ class Judged:
 
 
 class Judge:
-    """Judges the conditions of one graph."""
+    """Judges the conditions of one graph.
 
-    def __init__(self, bank: Bank, reader: ExactReader) -> None:
+    `holds` says of one part whether it holds, `flag` whether a flag does; by default as values are stated.
+    """
+
+    def __init__(
+        self,
+        bank: Bank,
+        reader: ExactReader,
+        holds: Callable[[Part], Truth] | None = None,
+        flag: Callable[[Term], Truth] | None = None,
+    ) -> None:
         self.bank, self.reader = bank, reader
+        self.flag = flag or reader.truth
+        self.holds = holds or (lambda part: reader.truth(part.holds))
         self._rooms: dict[int, Fraction | float | None] = {}
 
     def part(self, part: Part) -> Judged:
         """One part: its truth, and its relative margin where it has one."""
-        truth = self.reader.truth(part.holds)
         room, measure = self._measured(part)
-        return Judged(truth, part, room=room, measure=measure)
+        return Judged(self.holds(part), part, room=room, measure=measure)
 
     def room(self, part: Part) -> Fraction | float | None:
         """What a part's margin is ordered by: the relative margin, else the margin itself (SI); None without number."""
@@ -99,7 +109,7 @@ class Judge:
 
     def taken(self, condition: Either) -> Condition | None:
         """The arm of a conditional that is asked; None where that is not known."""
-        truth = self.reader.truth(condition.chooses)
+        truth = self.flag(condition.chooses)
         if isinstance(truth, Unknown):
             return None
         return condition.then if truth else condition.otherwise
@@ -108,7 +118,7 @@ class Judge:
         arm = self.taken(condition)
         if arm is not None:
             return self.condition(arm)
-        return replace(self.condition(condition.gate), truth=self.reader.truth(condition.chooses), room=None)
+        return replace(self.condition(condition.gate), truth=self.flag(condition.chooses), room=None)
 
 
 def _on_branch(item: Judged, label: str) -> Judged:

@@ -29,7 +29,6 @@ class Asked:
     day: date
     changes: tuple[str, ...] = ()
     reserve: str = ""
-    decision: str = "simple"
 
 
 def report(
@@ -50,7 +49,7 @@ def report(
         rules=findings,
         counts=counts(findings),
         tightest=_tightest(findings),
-        notes=(*_decision(asked), *_notes(checker), *_stray(design, rulesets)),
+        notes=(*_notes(checker), *_stray(design, rulesets)),
         cautions=(CAUTION,),
         changes=asked.changes,
         reserve=asked.reserve,
@@ -84,14 +83,6 @@ def _info(ruleset: Ruleset, day: date) -> RulesetInfo:
         RulesetInfo(book.name, book.edition, book.file) for book in ruleset.books if book.file != ruleset.file
     )
     return RulesetInfo(ruleset.name, ruleset.edition, ruleset.file, withdrawn, note, extends)
-
-
-def _decision(asked: Asked) -> Iterable[str]:
-    if asked.decision != "simple":
-        yield (
-            f"the house asks for the decision rule '{asked.decision}'; this version judges every value as stated "
-            "(simple), and takes no account of its uncertainty or tolerance"
-        )
 
 
 def _stray(design: Design, rulesets: Sequence[Ruleset]) -> Iterable[str]:

@@ -11,13 +11,14 @@ from wrong_curves import WRONG_CURVES
 from wrong_designs import WRONG_DESIGNS
 from wrong_inputs import Wrong
 from wrong_rulesets import WRONG_RULESETS
+from wrong_spread import WRONG_SPREAD
 
 from rulecheck import cli
 from rulecheck.diagnostics import CODES, Refused
 from rulecheck.physics.modules import read_module
 from rulecheck.reading.workspace import Workspace
 
-WRONG = (*WRONG_DESIGNS, *WRONG_CURVES, *WRONG_RULESETS)
+WRONG = (*WRONG_DESIGNS, *WRONG_CURVES, *WRONG_RULESETS, *WRONG_SPREAD)
 _CODE = re.compile(r"^(?:\S.*?:\d+:\d+: )?([a-z0-9-]+): ")
 OF_THE_COMMAND = frozenset(("usage", "cannot-write", "internal"))
 OF_PHYSICS = frozenset(("bad-physics",))

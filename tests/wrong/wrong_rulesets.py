@@ -154,14 +154,14 @@ WRONG_RULESETS: tuple[Wrong, ...] = (
     Wrong(
         "a key of a rule with a slip",
         (
-            "cup.ruleset.yaml:5:8: unknown-key: there is no key 'requires' here; expected require or evidence or judgement or when or clause or title or note or standing or branches or each or empty or states or unless or scale or valid or measure or scrutineer or examples; did you mean 'require'?",
+            "cup.ruleset.yaml:5:8: unknown-key: there is no key 'requires' here; expected require or evidence or judgement or inside or outside or passes or stops or sight or cover or when or clause or title or note or standing or branches or each or empty or states or unless or scale or valid or measure or scrutineer or decision or examples; did you mean 'require'?",
         ),
         ruleset=NUMBERS + "rules:\n  it: {requires: a <= 10 mm}\n",
     ),
     Wrong(
         "a rule that asks for nothing",
         (
-            "cup.ruleset.yaml:5:3: missing-key: rule 'it' asks for nothing; expected require, branches, evidence or judgement",
+            "cup.ruleset.yaml:5:3: missing-key: rule 'it' asks for nothing; expected require, inside, outside, branches, evidence or judgement",
         ),
         ruleset=NUMBERS + "rules:\n  it: {title: Width}\n",
     ),
