@@ -417,12 +417,6 @@ _LISTED: tuple[tuple[str, str, str, Changes], ...] = (
     ),
     (
         "binding/tables.py",
-        "table_value",
-        "rows are all bound for every key, so a table that is asked again inside itself never ends either way",
-        ("table.name if key is None else f'{table.name}({show(key)})' -> table.name",),
-    ),
-    (
-        "binding/tables.py",
         "_chain",
         "a table without rows is refused when it is read",
         ("rows[0][1] if rows else None -> rows[0][1]",),
@@ -447,12 +441,6 @@ _LISTED: tuple[tuple[str, str, str, Changes], ...] = (
         "_chain",
         "here all values are numbers",
         ("isinstance(v, Number) and v.unit -> v.unit",),
-    ),
-    (
-        "binding/tables.py",
-        "_linear",
-        "all rows are of one dimension, or refused against the first or the second",
-        (("0 -> 1", 2),),
     ),
     (
         "operations/comparison.py",
