@@ -23,6 +23,7 @@ from rulecheck.operations.exact import (
     exact_number,
     precision,
     sign,
+    to_ball,
     to_fraction,
 )
 from rulecheck.operations.operation import UNDECIDED, Undecided
@@ -56,7 +57,15 @@ class ExactReader:
     1
     """
 
-    def __init__(self, bank: Bank, inputs: Inputs, *, start_bits: int = START_BITS, most_bits: int = MOST_BITS) -> None:
+    def __init__(
+        self,
+        bank: Bank,
+        inputs: Inputs,
+        *,
+        start_bits: int = START_BITS,
+        most_bits: int = MOST_BITS,
+        both_arms: bool = False,
+    ) -> None:
         if len(bank.terms) > MAXIMUM_TERMS:
             message = f"the graph has {len(bank.terms)} terms; {MAXIMUM_TERMS} is the bound"
             raise Refused([Diagnostic("too-large", message, advice="check fewer rules or elements at once")])
@@ -64,6 +73,8 @@ class ExactReader:
         self._inputs = inputs
         self._start = start_bits
         self._most = max(start_bits, most_bits)
+        # Where a ball cannot tell which arm a branch takes, both enclose its value: for balls that are wide on purpose.
+        self._both_arms = both_arms
         # Values that no precision changes, and for each precision balls and what is not known or not decided.
         self._exact: dict[int, Any] = {}
         self._levels: dict[int, dict[int, Any]] = {}
@@ -78,9 +89,10 @@ class ExactReader:
         """Forget what was found for some terms: an input that they rest on has changed."""
         self._solving.forget()
         tables = [self._exact, *self._levels.values()]
-        for index in indices:
-            for table in tables:
-                table.pop(index, None)
+        gone = indices if isinstance(indices, (set, frozenset)) else set(indices)
+        for table in tables:
+            for index in table.keys() & gone:
+                del table[index]
 
     def known(self) -> Iterable[tuple[int, Any]]:
         """All values that were found exactly, by the index of their term."""
@@ -222,11 +234,12 @@ class ExactReader:
                 if index in exact or index in rough:
                     continue
                 if operation is None:
-                    arm = self._arm(term, rough) if term.kind == "branch" else None
-                    if arm is not None and arm.index not in exact and arm.index not in rough:
-                        frames.append(iter([*self._order(arm, rough), term]))
+                    arms = self._arms(term, rough) if term.kind == "branch" else ()
+                    waiting = [arm for arm in arms if arm.index not in exact and arm.index not in rough]
+                    if waiting:
+                        frames.append(iter([*(part for arm in waiting for part in self._order(arm, rough)), term]))
                         break
-                    self._keep(term, self._leaf(term, arm, rough), rough)
+                    self._keep(term, self._leaf(term, arms, rough), rough)
                     continue
                 # The usual case on a short way: exact operands, and a rational of sane size.
                 parts = term.arguments
@@ -264,14 +277,21 @@ class ExactReader:
         found = self._exact.get(term.index)
         return rough.get(term.index) if found is None else found
 
-    def _arm(self, term: Term, rough: dict[int, Any]) -> Term | None:
-        """The arm that a branch takes, None where its condition is not known."""
+    def _arms(self, term: Term, rough: dict[int, Any]) -> tuple[Term, ...]:
+        """The arm that a branch takes; none where its condition is not known, or both where they enclose the value."""
         condition = self._look(term.arguments[0], rough)
-        return term.arguments[1 if condition else 2] if isinstance(condition, bool) else None
+        if isinstance(condition, bool):
+            return (term.arguments[1 if condition else 2],)
+        is_open = self._both_arms and isinstance(condition, Undecided | Unknown)
+        return term.arguments[1:] if is_open and term.sort == "number" and _is_tie(condition) else ()
 
-    def _leaf(self, term: Term, arm: Term | None, rough: dict[int, Any]) -> Any:
+    def _leaf(self, term: Term, arms: tuple[Term, ...], rough: dict[int, Any]) -> Any:
+        if len(arms) == 2:
+            found = [self._look(arm, rough) for arm in arms]
+            if all(isinstance(value, (Rational, PiNumber, Ball)) for value in found):
+                return to_ball(found[0]).union(to_ball(found[1]))
         if term.kind == "branch":
-            return self._look(term.arguments[0] if arm is None else arm, rough)
+            return self._look(arms[0] if len(arms) == 1 else term.arguments[0], rough)
         if term.kind == "solve":
             return self._solving.value(term, [self._look(part, rough) for part in term.arguments])
         if term.kind == "unknown":
@@ -280,6 +300,11 @@ class ExactReader:
         if value is None:
             return Unknown((Reason("missing", term.path, self._bank.spans[term.index]),))
         return exact_number(value) if isinstance(value, Monomial) else value
+
+
+def _is_tie(condition: Undecided | Unknown) -> bool:
+    """True where a condition is known but for the width of the balls in it."""
+    return isinstance(condition, Undecided) or all(reason.kind == "tie" for reason in condition.reasons)
 
 
 def _as_float(value: Fraction) -> float:

@@ -37,7 +37,7 @@ class SegmentReader:
         # One set of inputs for both readers, in which one value is exchanged.
         self._inputs: dict[str, Any] = dict(inputs)
         self._points = ExactReader(bank, self._inputs)
-        self._stretches = ExactReader(bank, self._inputs, start_bits=BITS, most_bits=BITS)
+        self._stretches = ExactReader(bank, self._inputs, start_bits=BITS, most_bits=BITS, both_arms=True)
         for reader in (self._points, self._stretches):
             reader.take(still)
 

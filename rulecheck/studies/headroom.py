@@ -112,12 +112,20 @@ class _Input:
     def _search(self, rules: Sequence[BoundRule], direction: int, *, holds: bool) -> Travel:
         """Go outwards while every rule certainly stays as it is."""
         flags = [rule.met for rule in rules]
+        # As far as each rule certainly stays: of a part of a stretch only those are asked that were not certain in all of it.
+        far = [Fraction(0)] * len(rules)
         reach = REACH * (abs(self.start) or self._one())
         inner, width, steps = Fraction(0), reach / 1024, 0
         while inner < reach:
             steps += 1
             outer = min(inner + width, reach)
-            truths = self._over(flags, direction, inner, outer)
+            asked = [place for place, edge in enumerate(far) if edge < outer]
+            told = self._over([flags[place] for place in asked], direction, inner, outer)
+            truths: list[bool | None] = [holds] * len(rules)
+            for place, truth in zip(asked, told, strict=True):
+                truths[place] = truth
+                if truth is holds:
+                    far[place] = outer
             if all(truth is holds for truth in truths):
                 inner, width = outer, width * 2
             elif width <= reach * FINENESS and not inner and self._holds_beside(flags, direction, outer, holds):

@@ -57,3 +57,29 @@ def test_only_what_rests_on_the_input_moves():
     both = bank.apply(add, [x, y], PURE)
     assert SegmentReader(bank, inputs, ExactReader(bank, inputs), "x").moves(both)
     assert not along.moves(y)
+
+
+def test_a_stretch_across_the_threshold_of_a_branch_is_between_both_arms():
+    """2 + x up to 1, 5 - x beyond: between 3 and 4 on the whole stretch, whichever arm is taken."""
+    bank = Bank()
+    x = bank.input("x", "number", PURE)
+
+    def of(operation, *terms):
+        return bank.apply(operation, terms, PURE)
+
+    first, second = of(add, bank.number(2), x), of(add, bank.number(5), of(multiply, bank.number(-1), x))
+    term = bank.branch(of(at_most, x, bank.number(1)), first, second)
+    inputs = {"x": Monomial(Fraction(1))}
+    along = SegmentReader(bank, inputs, ExactReader(bank, inputs), "x")
+    flags = [of(at_most, term, bank.number(limit)) for limit in (5, 3, 1)]
+    assert along.truths(flags, Fraction(1, 2), Fraction(3, 2)) == [True, None, False]
+
+
+def test_what_is_missing_in_a_condition_is_not_bridged_by_its_arms():
+    bank = Bank()
+    x, gone = bank.input("x", "number", PURE), bank.input("gone", "number", PURE)
+    flag = bank.apply(at_most, [gone, x], PURE)
+    term = bank.branch(flag, x, x)
+    inputs = {"x": Monomial(Fraction(1))}
+    along = SegmentReader(bank, inputs, ExactReader(bank, inputs), "x")
+    assert along.truths([bank.apply(at_most, [term, bank.number(9)], PURE)], Fraction(0), Fraction(2)) == [None]
