@@ -93,6 +93,14 @@ class _Draft:
                 self.items[f"{path}.{holder}"] = inner
 
 
+OTHER_FILES = (
+    ("set", "a change file", "lay it over a design with --change"),
+    ("ruleset", "a ruleset", "name the design first, and its rulesets in the design or with --rules"),
+    ("house", "a house file", "name the design; the house file at the root of its folder is read with it"),
+)
+"""What another file than a design has, what it is, and what to do with it."""
+
+
 def read_design(workspace: Workspace, file: str, asked: Span | None = None) -> Design:
     """Read a design file or a variant of one. Raises `Refused` with all faults of the files read."""
     return _read_design(workspace, file, asked, ())
@@ -112,11 +120,11 @@ def _read_design(workspace: Workspace, file: str, asked: Span | None, above: tup
     if base is not None:
         faults.add("bad-structure", "'changes' names one design", base.span, expected="changes: base.design.yaml")
         faults.settle()
-    if root.get("design") is None and root.get("set") is not None:
-        faults.add(
-            "missing-key", "this is a change file, not a design", root.span, advice="lay it over a design with --change"
-        )
-        faults.settle()
+    if root.get("design") is None:
+        for key, what, advice in OTHER_FILES:
+            if root.get(key) is not None:
+                faults.add("missing-key", f"this is {what}, not a design", root.span, advice=advice)
+                faults.settle()
     return _plain_design(workspace, file, root, faults)
 
 

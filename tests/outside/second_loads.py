@@ -5,6 +5,7 @@ from __future__ import annotations
 import math
 
 import numpy as np
+from scipy.optimize import brentq
 from second_computations import GRAVITY, Bench, second
 from second_layout import four_masses
 from whole_cars import ENDS
@@ -101,10 +102,13 @@ def roll(bench: Bench):
     return angle, *(moment / bench[f"dimensions.{end}_track"] for end, moment in zip(ENDS, moments, strict=True))
 
 
-def wheel_loads(bench: Bench) -> dict[str, np.ndarray]:
-    """Left and right wheel of each end: the axle's load halved, the offset of the mass, and the corner's transfer."""
+def wheel_loads(bench: Bench, harder: float = 1.0) -> dict[str, np.ndarray]:
+    """Left and right wheel of each end: the axle's load halved, the offset of the mass, and the corner's transfer.
+
+    Springs are straight: in a corner taken so many times harder that much more is moved.
+    """
     still = four_masses(bench) * GRAVITY
-    _, moments = rolled(bench)
+    moments = rolled(bench)[1] * harder
     wheels = {}
     for index, end in enumerate(ENDS):
         offset = (still[2 * index] - still[2 * index + 1]) / 2
@@ -162,9 +166,10 @@ def shares(bench: Bench):
     return rear / (front + rear) - mass, bench.driven[0] / bench.driven.sum()
 
 
-def steer(bench: Bench, speed: float, radius: float) -> float:
+def steer(bench: Bench, speed: float, radius: float, loads: np.ndarray | None = None) -> float:
     """Steer angle of a car with one wheel an axle on a circle: slip angles from forces, and both from the balance."""
-    front, rear = (2 * stiffness(bench, end, load / 2) for end, load in zip(ENDS, bench.driven, strict=True))
+    axles = bench.driven if loads is None else loads
+    front, rear = (2 * stiffness(bench, end, load / 2) for end, load in zip(ENDS, axles, strict=True))
     x, behind, mass = bench.centre[0], bench.wheelbase - bench.centre[0], bench.car.total
     rate = speed / radius
     # Unknown: steer angle and angle of drift.
@@ -176,10 +181,23 @@ def steer(bench: Bench, speed: float, radius: float) -> float:
     return float(np.linalg.solve(rows, right)[0])
 
 
-def gradient(bench: Bench) -> float:
+def gradient(bench: Bench, loads: np.ndarray | None = None) -> float:
     """Steer beyond that at walking pace, over lateral acceleration, in rad s^2/m."""
     speed, radius = 20.0, 100.0
-    return (steer(bench, speed, radius) - bench.wheelbase / radius) / (speed**2 / radius)
+    return (steer(bench, speed, radius, loads) - bench.wheelbase / radius) / (speed**2 / radius)
+
+
+@second("balance.front_stiffness_slope", "balance.rear_stiffness_slope", "balance.gradient_slope", closely=1e-5)
+def slopes(bench: Bench):
+    """By differences: over a little more load, and over a little more speed with the loads that the air then gives."""
+    step = 1.0
+    by_load = [
+        (stiffness(bench, end, load / 2 + step) - stiffness(bench, end, load / 2 - step)) / (2 * step)
+        for end, load in zip(ENDS, bench.driven, strict=True)
+    ]
+    braked, step = bench["vehicle.deceleration"], 0.05
+    by_speed = [gradient(bench, bench.loads(bench.air_speed + side * step, braked)) for side in (1, -1)]
+    return *by_load, (by_speed[0] - by_speed[1]) / (2 * step)
 
 
 @second(
@@ -209,3 +227,31 @@ def uses(bench: Bench):
     wheels = wheel_loads(bench)
     held = [sum(load * friction(bench, end, load) for load in wheels[end]) for end in ENDS]
     return needed / held
+
+
+def gives_way(bench: Bench, end: str) -> float | None:
+    """The least side acceleration, up to 10 gn, at which the wheels of an axle hold no more than its mass asks."""
+    share = bench.standing[ENDS.index(end)] / GRAVITY
+    given = bench["vehicle.lateral_acceleration"]
+
+    def left(side: float) -> float:
+        wheels = wheel_loads(bench, side / given)[end]
+        return float(sum(load * friction(bench, end, load) for load in wheels) - share * side)
+
+    tried = np.linspace(0, 10 * GRAVITY, 60)
+    signs = [left(side) for side in tried]
+    for low, high, one, other in zip(tried, tried[1:], signs, signs[1:], strict=False):
+        if one > 0 >= other:
+            return float(brentq(left, low, high, xtol=1e-13))
+    return None
+
+
+@second(
+    *(f"balance.{n}" for n in ("front_limit", "rear_limit", "limit", "limit_balance", "gives_way_first")), closely=1e-8
+)
+def limits(bench: Bench):
+    """In a corner to the right; the axle with the lower limit gives way first."""
+    front, rear = (gives_way(bench, end) for end in ENDS)
+    if front is None or rear is None:
+        return front, rear, None, None, None
+    return front, rear, min(front, rear), (rear - front) / min(front, rear), "front" if front <= rear else "rear"

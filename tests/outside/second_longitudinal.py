@@ -419,6 +419,24 @@ def slopes(bench: Bench):
     return held((0,)), held((1,)), held((0, 1)), brentq(lambda a: loads(a)[0], 0, 1.57, xtol=1e-14)
 
 
+@second("performance.top_speed", "performance.level_top_speed", closely=1e-8)
+def top_speeds(bench: Bench):
+    """Where the power at the wheels is what the road takes, between 10 and 600 km/h; on the grade and on the level."""
+    power = bench["powertrain.power"] * bench["powertrain.efficiency"]
+    level = (bench.car.total * GRAVITY, 0.0)
+
+    def left(speed: float, across: float, uphill: float) -> float:
+        air = speed + bench["air.wind"]
+        held = bench.drag(air) + bench["vehicle.rolling_resistance"] * (across + bench.downforce(air)) + uphill
+        return power - held * speed
+
+    ends = 10 / 3.6, 600 / 3.6
+    return [
+        brentq(left, *ends, args=weights, xtol=1e-11) if left(ends[0], *weights) > 0 > left(ends[1], *weights) else None
+        for weights in (slope_weight(bench), level)
+    ]
+
+
 @second("performance.corner_speed", closely=1e-8)
 def corner(bench: Bench):
     """What the corner asks against what the tyres give, still air; None where they give more at any speed."""

@@ -233,6 +233,7 @@ WORDS = {
         "each axle by itself",
     ),
     "braking": ENDS,
+    "balance": ENDS,
     "performance": ("grip", "power"),
 }
 Known = Mapping[str, float | str | None]

@@ -27,6 +27,20 @@ WRONG_DESIGNS: tuple[Wrong, ...] = (
         files={"car.design.yaml": "design: Heron 4\nrulesets: [../cup.ruleset.yaml]\n"},
     ),
     Wrong(
+        "a ruleset in the place of the design",
+        (
+            "car.design.yaml:1:1: missing-key: this is a ruleset, not a design; name the design first, and its rulesets in the design or with --rules",
+        ),
+        files={"car.design.yaml": "ruleset: Dunmere Cup\ninputs:\n  tub.depth: {unit: mm, meaning: Depth}\n"},
+    ),
+    Wrong(
+        "a house file in the place of the design",
+        (
+            "car.design.yaml:1:1: missing-key: this is a house file, not a design; name the design; the house file at the root of its folder is read with it",
+        ),
+        files={"car.design.yaml": "house: Heron office\n"},
+    ),
+    Wrong(
         "a number with an exponent too great",
         (
             "car.design.yaml:4:4: too-large: the exponent of '1e5000' is out of bounds; write an exponent from -999 to 999",
