@@ -22,6 +22,8 @@ from rulecheck.quantity.units import Unit, UnitFault, find_unit
 _OPERATIONS: dict[str, Operation] = {"+": add, "-": subtract, "*": multiply, "/": divide}
 _VERBS = {"+": "add", "-": "subtract", "*": "multiply", "/": "divide", "^": "raise"}
 _MOST_BITS = 256
+MOST_POWER = 10**9
+"""A constant exponent has at most this magnitude: beyond it nothing but 0 and 1 has a power that can be held."""
 
 
 def literal(scope: Scope, syntax: NumberSyntax) -> Bound:
@@ -143,6 +145,9 @@ def _power(scope: Scope, syntax: Binary, base: Number, exponent: Number) -> Boun
             syntax.right.span,
         )
     constant = constant_value(syntax.right)
+    if constant is not None and abs(constant) > MOST_POWER:
+        told = f"the exponent of '{show(syntax.left)}' is out of bounds"
+        return scope.fault("too-large", told, syntax.right.span, expected=f"at most {MOST_POWER:,} either way")
     if constant is not None:
         term = scope.apply(rational_power(constant), [base.term], syntax.span)
         unit = (

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Callable, Iterable
 from fractions import Fraction
 
-from rulecheck.binding import aggregates, curves, points, rules, scope, states
+from rulecheck.binding import aggregates, arithmetic, curves, points, rules, scope, states
 from rulecheck.binding.inputs import VALUE_KEYS
 from rulecheck.diagnostics import CODES
 from rulecheck.formula import lexer, token_reader
@@ -145,6 +145,7 @@ def bound_rows() -> str:
         ("variants of variants", design_reader.MOST_VARIANTS),
         ("rulesets that extend one another", ruleset_reader.MOST_LAYERS),
         ("turns of a loop", aggregates.MOST_ELEMENTS),
+        ("a constant exponent, either way", arithmetic.MOST_POWER),
         ("designs of a house file that are looked through for the name of a rule", house_rules.MOST_DESIGNS),
         ("inputs that stand in correlations", correlations.MOST_CORRELATED),
         ("boxes into which a range of values is bisected", worst_case.MOST_BOXES),

@@ -23,6 +23,10 @@ Leaf = Annotated[
 Leaves = dict[str, Leaf]
 
 
+MOST_NAMED = 12
+"""Where more keys than this are known, the nearest is named, and all of them only where none is near."""
+
+
 class Shape(BaseModel):
     """What all shapes have: unknown keys are refused, values do not change."""
 
@@ -210,8 +214,8 @@ def _note(item: Any, shape: type[Shape], root: Node, faults: Faults) -> None:
             "unknown-key",
             f"there is no key '{key}' here",
             _key_span(root, location) or place,
-            expected=" or ".join(names),
-            advice=nearest(key, names),
+            expected=" or ".join(names) if len(names) <= MOST_NAMED else "",
+            advice=nearest(key, names) or f"keys here are {', '.join(sorted(names))}",
         )
     elif item["type"] == "missing":
         faults.add("missing-key", f"'{key}:' is missing here", place, advice="add it")

@@ -13,6 +13,13 @@ WRONG_RULESETS: tuple[Wrong, ...] = (
         ruleset=rule("(" * 300 + "a" + ")" * 300 + " <= 10 mm"),
     ),
     Wrong(
+        "an exponent out of bounds",
+        (
+            "cup.ruleset.yaml:6:25: too-large: the exponent of 'sin(angle)' is out of bounds; expected at most 1,000,000,000 either way",
+        ),
+        ruleset=rule("sin(angle)^2.1e400 <= 10"),
+    ),
+    Wrong(
         "a formula with a colon",
         (
             "cup.ruleset.yaml:6:29: yaml-syntax: a second `: ` stands on this line, so YAML cannot tell key from value; expected one `: ` between key and value; put the value between quotes",
@@ -153,9 +160,7 @@ WRONG_RULESETS: tuple[Wrong, ...] = (
     ),
     Wrong(
         "a key of a rule with a slip",
-        (
-            "cup.ruleset.yaml:5:8: unknown-key: there is no key 'requires' here; expected require or evidence or judgement or inside or outside or passes or stops or sight or cover or when or clause or title or note or standing or branches or each or empty or states or unless or scale or valid or measure or scrutineer or decision or examples; did you mean 'require'?",
-        ),
+        ("cup.ruleset.yaml:5:8: unknown-key: there is no key 'requires' here; did you mean 'require'?",),
         ruleset=NUMBERS + "rules:\n  it: {requires: a <= 10 mm}\n",
     ),
     Wrong(
