@@ -33,9 +33,9 @@ from rulecheck.loading import (
     with_value,
 )
 from rulecheck.model.design import Design, Overlay
-from rulecheck.model.ruleset import SIMPLE, Decision
+from rulecheck.model.ruleset import SIMPLE, Decision, PhysicsModule
 from rulecheck.outcome.results import ClosedFormResult, Report, Workings
-from rulecheck.physics.modules import BUILT_IN, built_in
+from rulecheck.physics.library import Library, library
 from rulecheck.reading.nodes import Located
 from rulecheck.studies.check import Checker
 from rulecheck.studies.reporting import Asked, report
@@ -106,7 +106,7 @@ def workings(
     session = session or Session()
     day = on or date.today()
     loaded = load(session, design, rules, settings, changes, states, needs_rules=False)
-    graph = _bind(loaded, day, [name for name in names if name.partition(".")[0] in BUILT_IN])
+    graph = _bind(loaded, day, _figures_named(loaded, names))
     checker = Checker(graph, reserves_of(loaded, graph, None), _decision(loaded))
     describe = None
     if closed_form or solve_for:
@@ -203,7 +203,7 @@ def vary(
     day = on or date.today()
     loaded = load(session, design, rules, settings, changes, states, needs_rules=False)
     first, second = varyings_of(session, loaded, along)
-    wanted = [name for name in names if name.partition(".")[0] in BUILT_IN]
+    wanted = _figures_named(loaded, names)
     designs = [loaded.design]
     if second is not None:
         designs = [with_value(loaded.design, second, setting) for setting in second.settings]
@@ -262,7 +262,7 @@ def _column(loaded: Loaded, base: Loaded, change: Change, day: date) -> Column:
 
 def _checker(loaded: Loaded, day: date) -> Checker:
     """A design judged with every physics figure and the reserves of the house file."""
-    graph = _bind(loaded, day, BUILT_IN)
+    graph = _bind(loaded, day, _library(loaded).names)
     return Checker(graph, reserves_of(loaded, graph, None), _decision(loaded))
 
 
@@ -279,13 +279,40 @@ def _decision(loaded: Loaded) -> Decision:
     return (loaded.house.decision if loaded.house else None) or SIMPLE
 
 
+def _library(loaded: Loaded) -> Library:
+    """The physics modules of a question. Raises `Refused` where names of theirs clash."""
+    faults = Faults()
+    found = library(loaded.modules, _installed, faults)
+    faults.settle()
+    return found
+
+
+def _installed(name: str) -> PhysicsModule | None:
+    # Looking through installed packages takes long: only for a name that nothing else has.
+    from rulecheck.physics.installed import installed_module
+
+    return installed_module(name)
+
+
+def _figures_named(loaded: Loaded, names: Sequence[str]) -> list[str]:
+    """Those of the names that are physics figures or modules."""
+    known = {name for book in loaded.rulesets for name in (*book.rules, *book.derived)}
+    shelf = _library(loaded)
+    return [
+        name
+        for name in names
+        if (prefix := name.partition(".")[0]) in shelf.names or (name not in known and shelf.module(prefix))
+    ]
+
+
 def _bind(loaded: Loaded, day: date, figures: Sequence[str] = ()) -> Graph:
+    shelf = _library(loaded)
     return bind(
         loaded.design,
         loaded.rulesets,
         day=day,
-        physics=built_in,
-        physics_names=BUILT_IN,
+        physics=shelf,
+        validity_required=loaded.house is not None and loaded.house.validity == "required",
         also_known=loaded.also_known,
         figures=figures,
     )

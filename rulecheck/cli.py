@@ -36,7 +36,10 @@ if TYPE_CHECKING:
 
 Forms = dict[str, "Callable[[Screen], str]"]
 COMPLIES, BREACH, UNUSABLE, NOT_SETTLED, INTERRUPTED = 0, 1, 2, 3, 130
-SCHEMAS = ("design", "ruleset", "house", "change", "report", "workings", "varied", "whatif", "headroom", "diagnostics")
+SCHEMAS = (
+    "design", "ruleset", "physics", "house", "change", "report", "workings", "varied", "whatif", "headroom",
+    "diagnostics",
+)  # fmt: skip
 
 
 def main() -> NoReturn:
@@ -287,7 +290,7 @@ def _sources(session: Session) -> list[Path]:
 def handbook(page: str, what: str, rules: tuple[str, ...]) -> None:
     """Pages of the handbook; without a page, the list of them.
 
-    'handbook schema WHAT' prints the JSON Schema of a design, ruleset, house or change file, or of the report,
+    'handbook schema WHAT' prints the JSON Schema of a design, ruleset, physics, house or change file, or of the report,
     workings or diagnostics in JSON.
     """
     from rulecheck.handbook import pages
@@ -331,6 +334,7 @@ def _schema(what: str, rules: Sequence[str]) -> str:
             "change": lambda: schemas.change_schema(books),
             "ruleset": schemas.ruleset_schema,
             "house": schemas.house_schema,
+            "physics": schemas.physics_schema,
         }[what]()
     return json.dumps(found, indent=2, ensure_ascii=False) + "\n"
 

@@ -16,9 +16,10 @@ from rulecheck.model.design_reader import read_change, read_design
 from rulecheck.model.house import has_house, read_house
 from rulecheck.model.house_rules import house_rule_names, rule_names
 from rulecheck.model.names import is_name
-from rulecheck.model.ruleset import House, Ruleset
+from rulecheck.model.ruleset import House, PhysicsModule, Ruleset
 from rulecheck.model.ruleset_reader import read_ruleset
 from rulecheck.model.value_ranges import MOST_CURVES, Setting, Varying, read_varying
+from rulecheck.physics.modules import read_module
 from rulecheck.quantity.dimension_names import name_of
 from rulecheck.quantity.quantity import Quantity
 from rulecheck.quantity.reading_values import read_quantity
@@ -81,6 +82,7 @@ class Loaded:
     house: House | None
     changes: tuple[str, ...]
     workspace: Workspace
+    modules: tuple[PhysicsModule, ...] = ()
 
 
 def load(
@@ -107,6 +109,7 @@ def load(
     except Refused as refused:
         faults.take(refused)
     rulesets, also_known = _rulesets(session, workspace, design, house, rules, faults)
+    modules = _modules(session, rulesets, faults)
     overlay, told = overlay_of(session, settings, changes, faults)
     faults.settle()
     assert design is not None
@@ -121,7 +124,7 @@ def load(
     design = design.with_overlay(overlay)
     design, said = _in_states(design, states or {}, faults)
     faults.settle()
-    return Loaded(design, rulesets, also_known, house, (*told, *said), workspace)
+    return Loaded(design, rulesets, also_known, house, (*told, *said), workspace, modules)
 
 
 def _rulesets(
@@ -154,6 +157,21 @@ def _rulesets(
         except Refused as refused:
             faults.take(refused)
     return tuple(given), tuple(own)
+
+
+def _modules(session: Session, rulesets: Sequence[Ruleset], faults: Faults) -> tuple[PhysicsModule, ...]:
+    """The physics modules that the rulesets name, each read from beside the file that names it."""
+    found: dict[tuple[Path, str], PhysicsModule] = {}
+    for reference in (reference for ruleset in rulesets for reference in ruleset.physics):
+        beside = reference.span.file
+        workspace = next(space for space in session.workspaces if beside in space.texts)
+        try:
+            target = workspace.resolve(reference.text, beside, reference.span)
+            if (workspace.root, target) not in found:
+                found[workspace.root, target] = read_module(workspace, target, reference.span)
+        except Refused as refused:
+            faults.take(refused)
+    return tuple(found.values())
 
 
 def overlay_of(

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import sys
-from collections.abc import Callable, Iterator, Sequence
+from collections.abc import Iterator, Sequence
 from contextlib import contextmanager
 from datetime import date
 
@@ -25,10 +25,10 @@ from rulecheck.model.core_table import CORE
 from rulecheck.model.design import Design
 from rulecheck.model.ruleset import Formula, PhysicsModule, Ruleset
 from rulecheck.model.vocabulary import Vocabulary
+from rulecheck.physics.library import Library
 
 MOST_FRAMES = 250_000
 """What the longest chain of the most deeply nested formulas takes; such frames use no stack of the machine."""
-Loader = Callable[[str], PhysicsModule | None]
 
 
 def bind(
@@ -36,18 +36,21 @@ def bind(
     rulesets: Sequence[Ruleset],
     *,
     day: date,
-    physics: Loader,
-    physics_names: Sequence[str],
+    physics: Library,
+    validity_required: bool = False,
     also_known: Sequence[Ruleset] = (),
     figures: Sequence[str] = (),
 ) -> Graph:
     """Bind every rule of the rulesets for a design. Raises `Refused` with all faults.
 
     `also_known` are rulesets whose inputs the design may state though they are not checked; `figures` are physics
-    figures, or whole modules, that are wanted beside what the rules use.
+    figures, or whole modules, that are wanted beside what the rules use. With `validity_required` no rule may rest on a
+    figure outside its range of validity.
     """
     with deep_formulas():
-        return _bound(_shared(design, rulesets, day, physics, physics_names, also_known), figures)
+        shared = _shared(design, rulesets, day, physics, also_known)
+        shared.strict = validity_required
+        return _bound(shared, figures)
 
 
 @contextmanager
@@ -87,6 +90,7 @@ def _bound(shared: Shared, figures: Sequence[str]) -> Graph:
         tuple(shared.declared.values()),
         _cautions(shared),
         shared.base.design.correlations,
+        _replaced(shared),
     )
 
 
@@ -96,12 +100,18 @@ def _cautions(shared: Shared) -> dict[str, str]:
     return {module.name: module.caution for module in modules if isinstance(module, PhysicsModule) and module.caution}
 
 
+def _replaced(shared: Shared) -> dict[str, str]:
+    """The figures that stand in the place of others: by which file, and why."""
+    said = {path: f"replaced by {swap.module.file}: {swap.because}" for path, swap in shared.physics.replaced.items()}
+    bare = {name: name.partition(" [")[0].partition("(")[0] for name in shared.figures}
+    return {name: said[path] for name, path in bare.items() if path in said}
+
+
 def _shared(
     design: Design,
     rulesets: Sequence[Ruleset],
     day: date,
-    physics: Loader,
-    physics_names: Sequence[str],
+    physics: Library,
     also_known: Sequence[Ruleset],
 ) -> Shared:
     books = (*also_known, *rulesets)
@@ -112,7 +122,6 @@ def _shared(
         vocabulary=Vocabulary(CORE).extended(entries),
         rulesets=tuple(rulesets),
         physics=physics,
-        physics_names=tuple(physics_names),
         day=day,
         faults=Faults(),
         express=express,

@@ -99,9 +99,19 @@ def _joined(scope: Scope, syntax: Joined) -> Bound:
     return Truth(all_of(scope, terms) if syntax.word == "and" else any_of(scope, terms))
 
 
+def _arms(scope: Scope, syntax: Conditional, condition: Truth | Broken) -> tuple[Bound, Bound]:
+    """Both arms; one that a settled condition leaves aside is held against its dimensions, and nothing rests on it."""
+    settled = condition.term.value if isinstance(condition, Truth) and condition.term.kind == "constant" else None
+    if settled is not None and not scope.loop:
+        scope.arms[syntax] = syntax.then if settled else syntax.otherwise
+    aside = replace(scope, uses={}, touched=set(), figures=set())
+    then = (aside if settled is False else scope).express(syntax.then)
+    return then, (aside if settled is True else scope).express(syntax.otherwise)
+
+
 def _conditional(scope: Scope, syntax: Conditional) -> Bound:
     condition = flag(scope, syntax.condition, "'if'")
-    then, otherwise = scope.express(syntax.then), scope.express(syntax.otherwise)
+    then, otherwise = _arms(scope, syntax, condition)
     if isinstance(condition, Broken) or isinstance(then, Broken) or isinstance(otherwise, Broken):
         return BROKEN
     if isinstance(then, Number) and isinstance(otherwise, Number) and then.dimension != otherwise.dimension:

@@ -16,6 +16,7 @@ from rulecheck.formula.syntax import Call
 from rulecheck.graph.figures import Figure
 from rulecheck.graph.terms import Term
 from rulecheck.model.ruleset import Formula, PhysicsModule, Ruleset
+from rulecheck.operations.values import Reason
 from rulecheck.quantity.dimension_names import name_of
 from rulecheck.quantity.units import Unit, UnitFault, find_unit
 from rulecheck.reading.nodes import Located
@@ -37,9 +38,7 @@ def own_figure(scope: Scope, name: str, span: Span) -> Bound | None:
     """A derived figure, table or list of the owner by its bare name; None where it has none."""
     owner = scope.owner
     if isinstance(owner, PhysicsModule):
-        return (
-            figure(scope, owner, owner.figures[name], f"{owner.name}.{name}", span) if name in owner.figures else None
-        )
+        return module_figure(scope, owner, name, span) if name in owner.figures else None
     if name in owner.derived:
         return figure(scope, owner, owner.derived[name], name, span)
     if name in owner.tables:
@@ -59,7 +58,7 @@ def physics_module(scope: Scope, name: str) -> PhysicsModule | None:
     key = ("module", name)
     if key not in scope.shared.memo:
         try:
-            scope.shared.memo[key] = scope.shared.physics(name)
+            scope.shared.memo[key] = scope.shared.physics.module(name)
         except Refused as refused:
             scope.shared.faults.take(refused)
             scope.shared.memo[key] = None
@@ -67,18 +66,43 @@ def physics_module(scope: Scope, name: str) -> PhysicsModule | None:
     return module
 
 
+def standing(scope: Scope, module: PhysicsModule, name: str) -> tuple[PhysicsModule, Formula, str]:
+    """What stands under the name of a module's figure: its owner, its formula, and the name to show.
+
+    Where a figure is replaced, the file that replaces it still reads the old one under the old name.
+    """
+    path = f"{module.name}.{name}"
+    swap = scope.shared.physics.replaced.get(path)
+    if swap is None:
+        return module, module.figures[name], path
+    if swap.module.file == scope.owner.file:
+        return module, module.figures[name], f"{path} as it was"
+    return swap.module, swap.formula, path
+
+
+def replaced_module(scope: Scope, path: tuple[str, ...]) -> PhysicsModule | None:
+    """The module of a figure that another one replaces; None for every other path."""
+    return physics_module(scope, path[0]) if ".".join(path) in scope.shared.physics.replaced else None
+
+
+def module_figure(scope: Scope, module: PhysicsModule, name: str, span: Span) -> Bound:
+    """A figure of a module, or what replaces it."""
+    owner, formula, path = standing(scope, module, name)
+    return figure(scope, owner, formula, path, span)
+
+
 def physics_figure(scope: Scope, path: tuple[str, ...], span: Span) -> Bound | None:
     """`mass.total`: a figure of a physics module; None where there is none."""
     module = physics_module(scope, path[0]) if len(path) == 2 else None
     if module is None or path[1] not in module.figures:
         return None
-    bound = figure(scope, module, module.figures[path[1]], ".".join(path), span)
+    bound = module_figure(scope, module, path[1], span)
     name = ".".join(path)
     entry = scope.shared.vocabulary.entry(name)
     if entry is not None and entry.computed and isinstance(bound, Number) and states_value(scope, name):
         # What is declared is declared of the design as written, whatever the state that is judged.
         written = scope.fresh(scope.shared.base, scope.owner)
-        as_written = figure(written, module, module.figures[path[1]], name, span)
+        as_written = module_figure(written, module, path[1], span)
         if isinstance(as_written, Number):
             return declared_figure(scope, name, bound, as_written)
     return bound
@@ -92,7 +116,7 @@ def known_names(scope: Scope) -> list[str]:
         if isinstance(owner, PhysicsModule)
         else {**owner.derived, **owner.tables, **owner.lists, **owner.rules}
     )
-    modules = (physics_module(scope, name) for name in scope.shared.physics_names)
+    modules = (physics_module(scope, name) for name in scope.shared.physics.names)
     return [*own, *(f"{module.name}.{name}" for module in modules if module for name in module.figures)]
 
 
@@ -108,9 +132,14 @@ def callable_names(scope: Scope) -> list[str]:
 
 
 def called_figure(scope: Scope, syntax: Call) -> Bound | None:
-    """`usable(b)`, `minimum_mass(x)`; None where the owner has no such name."""
-    owner = scope.owner
-    name = syntax.function
+    """`usable(b)`, `minimum_mass(x)`, `mass.of(m)`; None where neither the owner nor a module has such a name."""
+    owner: Owner = scope.owner
+    prefix, dot, name = syntax.function.rpartition(".")
+    if dot:
+        module = physics_module(scope, prefix) if "." not in prefix else None
+        if module is None:
+            return None
+        owner = module
     if isinstance(owner, Ruleset) and name in owner.tables:
         table = owner.tables[name]
         due = len(table.over) if table.linear else 1
@@ -126,7 +155,10 @@ def called_figure(scope: Scope, syntax: Call) -> Bound | None:
     argument = scope.express(syntax.arguments[0])
     if isinstance(argument, Broken):
         return BROKEN
-    return _with_argument(scope, owner, formulas[name], argument, syntax.span)
+    formula, path = formulas[name], name
+    if isinstance(owner, PhysicsModule):
+        owner, formula, path = standing(scope, owner, name)
+    return _with_argument(scope, owner, formula, argument, syntax.span, path)
 
 
 def module_call(scope: Scope, module_name: str, name: str, argument: Bound, span: Span) -> Bound:
@@ -134,10 +166,11 @@ def module_call(scope: Scope, module_name: str, name: str, argument: Bound, span
     module = physics_module(scope, module_name)
     if module is None or name not in module.figures:
         return scope.fault("bad-physics", f"there is no figure '{module_name}.{name}'", span)
-    return _with_argument(scope, module, module.figures[name], argument, span)
+    owner, formula, path = standing(scope, module, name)
+    return _with_argument(scope, owner, formula, argument, span, path)
 
 
-def _with_argument(scope: Scope, owner: Owner, formula: Formula, argument: Bound, span: Span) -> Bound:
+def _with_argument(scope: Scope, owner: Owner, formula: Formula, argument: Bound, span: Span, path: str) -> Bound:
     if formula.of is not None:
         if not isinstance(argument, Place):
             return scope.fault(
@@ -152,13 +185,7 @@ def _with_argument(scope: Scope, owner: Owner, formula: Formula, argument: Bound
         return BROKEN
     if not isinstance(argument, Item):
         return scope.fault("kind-mismatch", f"'{formula.name}' takes an item, and this is {kind_of(argument)}", span)
-    return figure(
-        scope, owner, formula, f"{_full(owner, formula)}({argument.path})", span, {head.variables[0]: argument}
-    )
-
-
-def _full(owner: Owner, formula: Formula) -> str:
-    return f"{owner.name}.{formula.name}" if isinstance(owner, PhysicsModule) else formula.name
+    return figure(scope, owner, formula, f"{path}({argument.path})", span, {head.variables[0]: argument})
 
 
 # --- one figure ------------------------------------------------------------------------------------------------------
@@ -183,7 +210,7 @@ def _made(
     scope: Scope, owner: Owner, formula: Formula, name: str, span: Span, variables: Mapping[str, Bound] | None
 ) -> Made:
     shared, states = scope.shared, scope.view.states
-    key = ("figure", owner.file, name, states)
+    key = ("figure", owner.file, name, states, scope.strict)
     known: Made | None = shared.memo.get(key)
     if known is not None:
         return known
@@ -220,15 +247,26 @@ def _bind(scope: Scope, owner: Owner, formula: Formula, name: str) -> Made:
         full = _in_states(name, states)
         scope.shared.figures[full] = Figure(
             full, bound.term, getattr(bound, "unit", None), syntax, formula.meaning, _source(owner, formula),
-            formula.formula.span, tuple(scope.uses.values()), valid, how,
+            formula.formula.span, tuple(scope.uses.values()), valid, how, scope.arms,
         )  # fmt: skip
         scope.figures.add(full)
+        if scope.strict and valid is not None:
+            bound = _where_valid(scope, bound, valid, formula, name)
     return Made(bound, frozenset(scope.touched), frozenset(scope.figures))
 
 
 def _in_states(name: str, states: tuple[tuple[str, str], ...]) -> str:
     told = ",".join(f"{axis}={state}" for axis, state in states)
     return f"{name} [{told}]" if told else name
+
+
+def _where_valid(
+    scope: Scope, bound: Number | Truth | Words | Date, valid: Term, formula: Formula, name: str
+) -> Number | Truth | Words | Date:
+    """The figure within its range of validity; outside it, and where that is not known, it is not known either."""
+    outside = Reason("missing", f"{name} within its range of validity", formula.valid.span if formula.valid else None)
+    term = scope.bank.branch(valid, bound.term, scope.bank.unknown(outside, bound.term.sort, bound.term.dimension))
+    return replace(bound, term=term)
 
 
 def _source(owner: Owner, formula: Formula) -> str:
@@ -238,7 +276,7 @@ def _source(owner: Owner, formula: Formula) -> str:
 def _validity(scope: Scope, formula: Formula) -> Term | None:
     if formula.valid is None:
         return None
-    apart = replace(scope, uses={})
+    apart = replace(scope, uses={}, arms={})
     syntax = parsed(scope, formula.valid)
     bound = apart.express(syntax) if syntax is not None else BROKEN
     if isinstance(bound, (Truth, Broken)):

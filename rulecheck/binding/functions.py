@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Callable
 
 from rulecheck.binding import figures
+from rulecheck.binding.areas import front_area
 from rulecheck.binding.bound import (
     BROKEN,
     Bound,
@@ -48,7 +49,7 @@ _AGGREGATES = ("sum", "mean", "deviation", "count", "share", "every", "some")
 
 
 NAMES = (
-    "present", "rule", "margin", "end_of_year", "years_between", "atan2", "min", "max", "pairs", "standard_uncertainty", *_ONE, *_ROUND,
+    "present", "rule", "margin", "end_of_year", "years_between", "atan2", "min", "max", "pairs", "standard_uncertainty", "front_area", *_ONE, *_ROUND,
     *GEOMETRY, *_AGGREGATES,
 )  # fmt: skip
 """The names of all functions of the language."""
@@ -67,6 +68,7 @@ def call(scope: Scope, syntax: Call) -> Bound:
         "min": _extreme,
         "max": _extreme,
         "standard_uncertainty": standard_uncertainty,
+        "front_area": front_area,
     }
     if name in special:
         return special[name](scope, syntax)
@@ -83,7 +85,7 @@ def call(scope: Scope, syntax: Call) -> Bound:
             syntax.span,
             expected=f"{name}(… for x in collection)",
         )
-    own = figures.called_figure(scope, syntax) or curve_call(scope, syntax)
+    own = curve_call(scope, syntax) or figures.called_figure(scope, syntax)
     if own is not None:
         return own
     known = (*special, *_ONE, *_ROUND, *GEOMETRY, *_AGGREGATES, *figures.callable_names(scope), *_curves(scope))

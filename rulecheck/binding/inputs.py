@@ -8,6 +8,7 @@ from datetime import date
 from typing import Any
 
 from rulecheck.binding.bound import BROKEN, Bound, Date, Item, Items, Number, Truth, Words
+from rulecheck.binding.implied import IMPLIED, implied
 from rulecheck.binding.leaves import beside, leaf, scalar, without_basis
 from rulecheck.binding.scope import Scope
 from rulecheck.diagnostics import Faults, Span
@@ -43,7 +44,8 @@ def scope_units(scope: Scope) -> MappingOf[str, Dimension]:
 def bind_input(scope: Scope, path: str, entry: Entry, span: Span) -> Bound:
     """The value of an input that is no point: a number leaf, or a constant that is settled here."""
     scope.touched.add(path)
-    key = ("input", path, scope.view.states if scope.view.changes(path) else ())
+    moved = scope.view.changes(path) or (path in IMPLIED and scope.view.changes_any(IMPLIED[path][:1]))
+    key = ("input", path, scope.view.states if moved else ())
     bound: Bound | None = scope.shared.memo.get(key)
     if bound is None:
         bound = scope.shared.memo[key] = _bind_input(scope, path, entry, span)
@@ -191,9 +193,9 @@ def _words(scope: Scope, path: str, entry: Entry, node: LeafNode | None, span: S
     choices = entry.choices if entry.kind == "choice" else ()
     where = scalar(node)
     if where is None and node is None:
-        implied = _implied(path, entry) or entry.default
-        if implied:
-            return Words(scope.bank.text(implied), choices)
+        answer = implied(scope, path, entry) or entry.default
+        if answer:
+            return Words(scope.bank.text(answer), choices)
     none_is_choice = NONE in choices
     if where is None or (where.text == NONE and not none_is_choice):
         return Words(scope.bank.input(path, "text", PURE, span), choices)
@@ -206,14 +208,6 @@ def _words(scope: Scope, path: str, entry: Entry, node: LeafNode | None, span: S
             advice=nearest(where.text, choices),
         )
     return Words(scope.bank.text(where.text), choices)
-
-
-def _implied(path: str, entry: Entry) -> str:
-    """Tyres and corners carry their axle and side in their name."""
-    if entry.path in ("tyres.*.axle", "corners.*.axle", "corners.*.side"):
-        words = path.split(".")[1].split("_")
-        return next((word for word in words if word in entry.choices), "")
-    return ""
 
 
 def collection(scope: Scope, path: str, entry: Entry) -> Items:

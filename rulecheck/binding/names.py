@@ -40,8 +40,11 @@ def _target(scope: Scope, path: tuple[str, ...]) -> str:
     """The full name of what a name stands for, with loop variables written out."""
     variable = scope.variables.get(path[0])
     owner = scope.owner
-    if isinstance(owner, PhysicsModule) and len(path) == 1 and path[0] in owner.figures:
-        return f"{owner.name}.{path[0]}"
+    if variable is None and isinstance(owner, PhysicsModule) and len(path) == 1 and path[0] in owner.figures:
+        return figures.standing(scope, owner, path[0])[2]
+    module = figures.replaced_module(scope, path) if variable is None else None
+    if module is not None:
+        return figures.standing(scope, module, path[1])[2]
     return ".".join((variable.path, *path[1:])) if isinstance(variable, Item) else ".".join(path)
 
 

@@ -37,10 +37,15 @@ def bind_rule(shared: Shared, ruleset: Ruleset, name: str, span: Span | None = N
     if key not in shared.memo:
         if not shared.enter(f"rule({name})", span, "rules refer to each other"):
             return None
-        shared.memo[key] = _Binding(shared, ruleset, ruleset.rules[name], Scope(shared, shared.base, ruleset)).bound()
+        shared.memo[key] = _Binding(shared, ruleset, ruleset.rules[name], _record(shared, ruleset)).bound()
         shared.leave()
     rule: BoundRule | None = shared.memo[key]
     return rule
+
+
+def _record(shared: Shared, ruleset: Ruleset) -> Scope:
+    """Where a rule is bound, with a record of all that it rests on."""
+    return Scope(shared, shared.base, ruleset, strict=shared.strict or ruleset.validity == "required")
 
 
 @dataclass(frozen=True, slots=True)

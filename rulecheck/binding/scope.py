@@ -18,6 +18,7 @@ from rulecheck.model.ruleset import PhysicsModule, Ruleset
 from rulecheck.model.vocabulary import Vocabulary
 from rulecheck.operations.operation import DimensionFault, Operation
 from rulecheck.operations.values import Reason
+from rulecheck.physics.library import Library
 from rulecheck.quantity.dimension import PURE, Dimension
 from rulecheck.reading.nodes import Located
 
@@ -70,8 +71,7 @@ class Shared:
     base: View
     vocabulary: Vocabulary
     rulesets: tuple[Ruleset, ...]
-    physics: Callable[[str], PhysicsModule | None]
-    physics_names: tuple[str, ...]
+    physics: Library
     day: date
     faults: Faults
     express: Callable[[Scope, Syntax], Bound]
@@ -85,6 +85,7 @@ class Shared:
     parsed: dict[tuple[int, str], tuple[LeafNode, Any]] = field(default_factory=dict)
     stack: list[str] = field(default_factory=list)
     declared: dict[str, DeclaredCheck] = field(default_factory=dict)
+    strict: bool = False
 
     def enter(self, name: str, span: Span | None, what: str) -> bool:
         """Begin to bind a named thing; False, with the fault noted, where that would go round in a circle or too deep."""
@@ -106,7 +107,10 @@ class Shared:
 
 @dataclass(frozen=True, slots=True)
 class Scope:
-    """Where an expression is bound: the state, the file whose names hold, the variables of loops around it."""
+    """Where an expression is bound: the state, the file whose names hold, the variables of loops around it.
+
+    `arms` are the conditionals that are settled; where it is `strict`, a figure outside its range of validity is unknown.
+    """
 
     shared: Shared
     view: View
@@ -116,6 +120,8 @@ class Scope:
     touched: set[str] = field(default_factory=set)
     figures: set[str] = field(default_factory=set)
     loop: bool = False
+    arms: dict[Syntax, Syntax] = field(default_factory=dict)
+    strict: bool = False
 
     @property
     def bank(self) -> Bank:
@@ -135,18 +141,18 @@ class Scope:
         """The scope inside a loop."""
         inner = {**self.variables, **dict(variables)}
         return Scope(
-            self.shared, self.view, self.owner, inner, self.uses, self.touched, self.figures, self.loop or loop
+            self.shared, self.view, self.owner, inner, self.uses, self.touched, self.figures, self.loop or loop, self.arms, self.strict
         )  # fmt: skip
 
     def apart(self) -> Scope:
         """The same scope with a record of its own of what is read."""
         return Scope(
-            self.shared, self.view, self.owner, self.variables, self.uses, set(), self.figures, self.loop
+            self.shared, self.view, self.owner, self.variables, self.uses, set(), self.figures, self.loop, self.arms, self.strict
         )  # fmt: skip
 
     def fresh(self, view: View, owner: Owner, variables: Mapping[str, Bound] | None = None) -> Scope:
         """A scope for another formula, with its own record of what it uses."""
-        return Scope(self.shared, view, owner, variables or {})
+        return Scope(self.shared, view, owner, variables or {}, strict=self.strict)
 
     def fault(
         self,

@@ -29,7 +29,8 @@ class Solved:
 @dataclass(frozen=True, slots=True)
 class Figure:
     """A named value with the formula behind it. `valid` is a flag: within the range of validity, or None. Where it is
-    `solved`, the formula is zero at the value."""
+    `solved`, the formula is zero at the value. `arms` are the conditionals of the formula that are settled, each with
+    the arm that is taken."""
 
     name: str
     term: Term
@@ -41,6 +42,7 @@ class Figure:
     uses: tuple[Use, ...]
     valid: Term | None = None
     solved: Solved | None = None
+    arms: Mapping[Syntax, Syntax] = field(default_factory=dict)
 
 
 @dataclass(frozen=True, slots=True)
@@ -76,7 +78,10 @@ class DeclaredCheck:
 
 @dataclass(frozen=True, slots=True)
 class Graph:
-    """Everything that was bound: terms, values of inputs, figures and rules by name."""
+    """Everything that was bound: terms, values of inputs, figures and rules by name.
+
+    `replaced` says of a figure by which file it stands in the place of another, and why.
+    """
 
     bank: Bank
     inputs: Inputs
@@ -87,3 +92,4 @@ class Graph:
     declared: tuple[DeclaredCheck, ...] = field(default=())
     cautions: Mapping[str, str] = field(default_factory=dict)
     correlations: tuple[Correlation, ...] = ()
+    replaced: Mapping[str, str] = field(default_factory=dict)

@@ -111,6 +111,9 @@ FUNCTIONS: tuple[Row, ...] = (
         "depth(point(480 mm, 0 mm, 300 mm), hull([points.nose, points.left, points.roof]), side)",
         "20 mm",
     ),
+    Row(
+        "front_area(outlines)", "area of the front outlines together, each spot once", "front_area(outlines)", "1.5 m^2"
+    ),
     Row("above_ground(p)", "height above ground in the state", "above_ground(points.nose)", "150 mm"),
     Row(
         "standard_uncertainty(x)",

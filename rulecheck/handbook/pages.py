@@ -28,6 +28,7 @@ FIRST = (
     "spread",
     "what-if-and-headroom",
     "physics",
+    "own-physics",
     "diagnostics",
 )
 """The order of reading; a page that is not named here comes behind these."""

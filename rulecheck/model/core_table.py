@@ -6,8 +6,9 @@ numbers are left out, since they differ between editions).
 
 from __future__ import annotations
 
+from rulecheck.model.aero_table import AERO
 from rulecheck.model.operating_table import BALLASTING, COMPUTED, CONDITIONS, WEIGHING
-from rulecheck.model.shape_table import OUTLINES, extent_rows, outline_rows
+from rulecheck.model.shape_table import OUTLINES
 from rulecheck.model.vocabulary import Entry
 
 
@@ -82,6 +83,14 @@ MASSES = (
         "Axle whose unsprung mass it belongs to",
         choices=("front", "rear", "none"),
     ),
+    Entry(
+        "masses.*.taken_from",
+        "choice",
+        "Where the mass comes from: the row itself, the fuel in the tank (its place then counts from that of the row), "
+        "or what the driver lacks to the reference mass",
+        choices=("stated", "tank", "driver_ballast"),
+        default="stated",
+    ),
     Entry("masses.*.owner", "text", "Who answers for it"),
     Entry("masses.*.group", "text", "Group of the ledger"),
     *(
@@ -120,6 +129,18 @@ def _tyre_rows(collection: str) -> tuple[Entry, ...]:
         ),
         *_numbers(f"{collection}.*", "kN", grip_load="Load of the data", load_rating="Load that the maker allows"),
         *_numbers(f"{collection}.*", "km/h", speed_rating="Speed that the maker allows"),
+        *_numbers(
+            f"{collection}.*",
+            "bar",
+            pressure="Inflation pressure",
+            least_pressure="Least pressure that the maker allows",
+            greatest_pressure="Greatest pressure that the maker allows",
+        ),
+        *_numbers(
+            f"{collection}.*",
+            "deg",
+            greatest_camber="Greatest camber to either side that the maker allows",
+        ),
         Entry(f"{collection}.*.stiffness", "number", "Vertical stiffness", unit="N/mm"),
         Entry(f"{collection}.*.axle", "choice", "Axle that it stands on", choices=("front", "rear")),
         Entry(f"{collection}.*.camber", "number", "Camber at rest, negative where the top leans inwards", unit="deg"),
@@ -134,46 +155,6 @@ TYRES = (
     *_tyre_rows("corners"),
     Entry("corners.*.side", "choice", "Side of the car", choices=("left", "right")),
     Entry("corners.*.mass", "number", "What the scale under the wheel shows", unit="kg"),
-)
-
-AERO = (
-    Entry("aero_surfaces", "collection", "Surfaces that make downforce or drag"),
-    Entry(
-        "aero_surfaces.*.kind",
-        "choice",
-        "What it is",
-        choices=(
-            "wing",
-            "flap",
-            "splitter",
-            "diffuser",
-            "floor",
-            "body",
-            "dive_plane",
-            "louvre",
-            "duct",
-            "mirror",
-            "other",
-        ),
-    ),
-    Entry("aero_surfaces.*.at", "point", "Where its force acts", unit="mm"),
-    Entry("aero_surfaces.*.datum", "datum", "What the place is counted from", default="front_axle"),
-    *_numbers(
-        "aero_surfaces.*",
-        "m^2",
-        downforce_area="Downforce over dynamic pressure, positive down",
-        drag_area="Drag over dynamic pressure, positive rearward",
-    ),
-    *_numbers(
-        "aero_surfaces.*",
-        "mm",
-        span="Width across the car",
-        chord="Depth along the car",
-        height="Top above the reference plane",
-    ),
-    *outline_rows("aero_surfaces.*.outline"),
-    *extent_rows("aero_surfaces.*.extent"),
-    Entry("aero.reference_area", "number", "Area that coefficients are based on", unit="m^2"),
 )
 
 PLACES = (
@@ -234,6 +215,18 @@ SYSTEMS = (
     Entry("powertrain.final_drive", "number", "Ratio of the final drive", unit="1"),
     Entry("powertrain.efficiency", "number", "Efficiency from crank to wheels", unit="%"),
     Entry("powertrain.tank_volume", "number", "Usable volume of the tank", unit="L"),
+    Entry("tank.volume", "number", "Volume of fuel in the tank", unit="L"),
+    Entry("tank.density", "number", "Density of the fuel", unit="kg/m^3"),
+    *(
+        Entry(
+            f"tank.{axis}",
+            "curve",
+            f"{axis} of the fuel's centre over its volume, from the place of its row",
+            unit="mm",
+            over=("L",),
+        )
+        for axis in "xyz"
+    ),
     Entry("recovery.axle", "choice", "Axle on which the machine stands", choices=("front", "rear", "both", "none")),
     Entry("recovery.power", "number", "Power of the machine", unit="kW"),
     Entry("recovery.torque", "number", "Torque of the machine", unit="N*m"),
@@ -280,6 +273,8 @@ SYSTEMS = (
 )
 
 SAFETY = (
+    Entry("driver.mass", "number", "Mass of the driver with all equipment", unit="kg"),
+    Entry("driver.reference_mass", "number", "Mass to which a lighter driver is ballasted", unit="kg"),
     Entry("ballast", "collection", "Pieces of ballast"),
     Entry("ballast.*.mass", "number", "Mass of the piece", unit="kg"),
     Entry("ballast.*.at", "point", "Where it is fixed", unit="mm"),

@@ -131,6 +131,10 @@ class RulesetShape(Shape):
     valid: Leaves | None = Field(None, description="First and last day in force: from, until")
     extends: Leaf | list[Leaf] | None = Field(None, description="Rule books that this one adds to")
     withdrawn: Leaves | None = Field(None, description="Rules of those that no longer hold, with the reason")
+    physics: Leaf | list[Leaf] | None = Field(None, description="Files of physics modules, beside this one")
+    validity: Leaf | None = Field(
+        None, description="required: no rule may rest on a figure outside its range; noted where left out"
+    )
     units: Leaves | None = Field(None, description="Base units of its own: EUR: currency")
     definitions: dict[str, list[Leaf]] | None = Field(None, description="Rival definitions of a word")
     inputs: dict[str, InputShape] | None = Field(None, description="Inputs beyond the core vocabulary")
@@ -153,6 +157,9 @@ class PhysicsShape(Shape):
     sources: Leaves = Field(description="Books and standards, by short name")
     figures: dict[str, FigureShape] = Field(description="Figures")
     caution: Leaf | None = Field(None, description="Words of caution that outputs carry")
+    replaces: Leaves | None = Field(
+        None, description="Figures of other modules that those of the same name here take the place of, with the reason"
+    )
 
 
 class HouseShape(Shape):
@@ -163,6 +170,9 @@ class HouseShape(Shape):
     rulesets: list[Leaf] | None = Field(None, description="Rulesets that every design is checked against")
     reserves: Leaves | None = Field(None, description="Room kept beyond the rule book, by rule")
     decision: Any = Field(None, description="Decision rule where values have a spread")
+    validity: Leaf | None = Field(
+        None, description="required: no rule may rest on a figure outside its range; noted where left out"
+    )
     fails_on: list[Leaf] | None = Field(None, description="What fails the gate")
     eroded: Leaves | None = Field(None, description="share: how much of a margin may go in one change")
     ending: Leaves | None = Field(None, description="within: how long before its end a document is named")

@@ -53,6 +53,8 @@ def _over(base: Ruleset, top: Ruleset, faults: Faults) -> Ruleset:
         rules=rules,
         withdrawn=tuple(dict.fromkeys((*base.withdrawn, *top.withdrawn))),
         books=tuple(dict.fromkeys((*base.books, *top.books))),
+        validity="required" if "required" in (base.validity, top.validity) else "noted",
+        physics=(*base.physics, *top.physics),
     )
     _one_name_space(made, faults)
     return made

@@ -12,6 +12,8 @@ CONDITIONS = (
     Entry("vehicle.corner_radius", "number", "Radius of the path, positive to the right", unit="m"),
     Entry("vehicle.grip", "number", "Coefficient of friction, one for all wheels and loads", unit="1"),
     Entry("vehicle.rolling_resistance", "number", "Rolling resistance over load", unit="1"),
+    Entry("vehicle.yaw", "number", "Yaw of the car to the air that it meets", unit="deg"),
+    Entry("vehicle.roll", "number", "Roll of the car to the ground, right side down positive", unit="deg"),
     Entry("vehicle.grade", "number", "Rise of the road over its level length, positive uphill", unit="%"),
     Entry("air.altitude", "number", "Geopotential altitude", unit="m"),
     Entry("air.temperature", "number", "Temperature of the air", unit="degC"),
@@ -30,6 +32,15 @@ BALLASTING = (
     Entry("ballasting.at", "point", "Where that piece is tried", unit="mm"),
     Entry("ballasting.datum", "datum", "What the place is counted from", default="front_axle"),
     Entry("ballasting.front_share_aim", "number", "Front share of the mass that is aimed at", unit="%"),
+    *(
+        Entry(f"ballasting.{slot}_slot.{name}", kind, f"{meaning} of the {slot} slot", unit=unit, default=default)  # type: ignore[arg-type]
+        for slot in ("first", "second")
+        for name, kind, meaning, unit, default in (
+            ("at", "point", "Place", "mm", ""),
+            ("datum", "datum", "What the place is counted from,", "", "front_axle"),
+            ("capacity", "number", "Mass that fits into it, capacity", "kg", ""),
+        )
+    ),
     Entry("ballasting.total_aim", "number", "Total mass that is aimed at", unit="kg"),
 )
 

@@ -187,7 +187,9 @@ class Book:
 
 @dataclass(frozen=True, slots=True)
 class Ruleset:
-    """A rule book with what it extends already merged in; `needed` are the states by axis, with the paths they set;
+    """A rule book with what it extends already merged in; `physics` are the files of physics modules that it names,
+    each beside the file that names it; `validity` says whether figures outside their range are `noted`, or no rule may
+    rest on them (`required`); `needed` are the states by axis, with the paths they set;
     `books` are the files that it is made of, the most general first."""
 
     file: str
@@ -207,11 +209,21 @@ class Ruleset:
     span: Span = field(compare=False)
     zones: MappingOf[str, ZoneRule] = field(default_factory=dict)
     templates: MappingOf[str, Template] = field(default_factory=dict)
+    physics: tuple[Located, ...] = ()
+    validity: str = "noted"
+
+
+@dataclass(frozen=True, slots=True)
+class Replaces:
+    """A figure of another module that a module takes the place of, and why."""
+
+    path: Located
+    because: str
 
 
 @dataclass(frozen=True, slots=True)
 class PhysicsModule:
-    """A named set of formulas."""
+    """A named set of formulas; `replaces` are the figures of other modules that its own take the place of."""
 
     name: str
     file: str
@@ -219,6 +231,8 @@ class PhysicsModule:
     sources: MappingOf[str, str]
     figures: MappingOf[str, Formula]
     caution: str
+    replaces: tuple[Replaces, ...] = ()
+    span: Span | None = field(default=None, compare=False)
 
 
 @dataclass(frozen=True, slots=True)
@@ -234,3 +248,4 @@ class House:
     fails_on: tuple[Located, ...]
     eroded: MappingOf[str, Located]
     ending: MappingOf[str, Located]
+    validity: str = "noted"

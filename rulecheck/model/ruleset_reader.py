@@ -34,6 +34,7 @@ from rulecheck.reading.yaml_reader import read_yaml
 
 EXPIRING = frozenset(("certificate", "homologation", "licence"))
 STANDINGS = ("shall", "should", "may", "note")
+VALIDITIES = ("noted", "required")
 EMPTY = ("open", "complies", "breach", "not applicable")
 MOST_LAYERS = 20
 _SHARING = "rules, derived figures, tables, lists, zones and templates"
@@ -131,6 +132,8 @@ class _Reader:
             span=shape.ruleset.span,
             zones=self._nodes("zones", shape.zones, read_zone),
             templates=self._nodes("templates", shape.templates, read_template),
+            validity=self._word(shape.validity, VALIDITIES, "noted"),
+            physics=_references(self.root.get("physics")),
         )
 
     def _nodes(self, section: str, entries: dict[str, Any] | None, read: Any) -> dict[str, Any]:

@@ -7,8 +7,8 @@ from typing import Any
 
 from rulecheck.model.decisions import DECISIONS
 from rulecheck.model.declarations import KINDS
-from rulecheck.model.edge import HouseShape, RulesetShape, Shape
-from rulecheck.model.ruleset_reader import EMPTY, STANDINGS
+from rulecheck.model.edge import HouseShape, PhysicsShape, RulesetShape, Shape
+from rulecheck.model.ruleset_reader import EMPTY, STANDINGS, VALIDITIES
 from rulecheck.model.zone_schemas import PLACES, TEMPLATES, ZONE, ZONES
 from rulecheck.quantity.quantity import SHAPES
 
@@ -89,6 +89,8 @@ _NARROWER: Mapping[tuple[str, str], Schema] = {
     ("TableShape", "linear"): _ROWS,
     ("InputShape", "kind"): {"enum": list(KINDS)},
     ("InputShape", "at_least"): {"type": ["integer", "string"]},
+    ("RulesetShape", "validity"): {"enum": list(VALIDITIES)},
+    ("HouseShape", "validity"): {"enum": list(VALIDITIES)},
     ("RulesetShape", "valid"): _WINDOW,
     ("RulesetShape", "groups"): _GROUPS,
     ("RulesetShape", "zones"): ZONES,
@@ -111,6 +113,11 @@ def ruleset_schema() -> Schema:
 def house_schema() -> Schema:
     """The schema of a house file, `rulecheck.yaml`."""
     return _of(HouseShape, "House file")
+
+
+def physics_schema() -> Schema:
+    """The schema of a physics module."""
+    return _of(PhysicsShape, "Physics module")
 
 
 def _of(shape: type[Shape], title: str) -> Schema:

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from dataclasses import dataclass
 
-from rulecheck.outcome.results import Amount, Verdict
+from rulecheck.outcome.results import Amount, Mark, Verdict
 
 
 @dataclass(frozen=True, slots=True)
@@ -56,3 +56,4 @@ class WhatIf:
     unchanged: int
     cautions: tuple[str, ...]
     version: str
+    marks: tuple[Mark, ...] = ()

@@ -124,6 +124,17 @@ class RulesetInfo:
 
 
 @dataclass(frozen=True, slots=True)
+class Mark:
+    """What must be known of a figure: whether it is used outside its range of validity (as it stands, then under each
+    change), what it is replaced by and why (empty where it is not), and the rules that rest on it."""
+
+    figure: str
+    outside_validity: tuple[bool, ...]
+    replaced: str
+    rules: tuple[str, ...]
+
+
+@dataclass(frozen=True, slots=True)
 class Report:
     """The outcome of `check`."""
 
@@ -142,6 +153,7 @@ class Report:
     reserve: str
     version: str
     files: Mapping[str, str] = field(default_factory=dict)
+    marks: tuple[Mark, ...] = ()
 
 
 @dataclass(frozen=True, slots=True)
@@ -158,6 +170,7 @@ class Step:
     place: Place | None
     outside_validity: bool = False
     depth: int = 0
+    replaced: str = ""
 
 
 @dataclass(frozen=True, slots=True)

@@ -5,7 +5,7 @@ from __future__ import annotations
 from dataclasses import dataclass
 from typing import Literal
 
-from rulecheck.outcome.results import Amount
+from rulecheck.outcome.results import Amount, Mark
 
 Ending = Literal["stops", "opens", "mends", "free", "unsure"]
 
@@ -47,3 +47,4 @@ class HeadroomReport:
     breached: tuple[str, ...]
     cautions: tuple[str, ...]
     version: str
+    marks: tuple[Mark, ...] = ()

@@ -8,6 +8,7 @@ from typing import Protocol
 
 from rulecheck.outcome.results import Amount, BindingPart, Finding, PartResult, Place, Report, RulesetInfo, Workings
 from rulecheck.output.json_spread import amount_json, finite, spread_json
+from rulecheck.output.marks import marks_json
 
 __all__ = ["Json", "amount_json", "json_text", "report_json", "workings_json"]
 
@@ -27,6 +28,7 @@ def report_json(report: Report) -> str:
             "reserve": report.reserve,
             "rules": [_finding(item) for item in report.rules],
             "notes": list(report.notes),
+            "marks": marks_json(report.marks),
             "cautions": list(report.cautions),
             "files": dict(report.files),
         }

@@ -7,6 +7,7 @@ from typing import Any
 from rulecheck.outcome.changes import FigureChange, Moved, RuleChange, WhatIf
 from rulecheck.outcome.travel import HeadroomReport, Travel
 from rulecheck.output.json_report import amount_json, heading, json_text
+from rulecheck.output.marks import marks_json
 
 
 def whatif_json(outcome: WhatIf) -> str:
@@ -20,6 +21,7 @@ def whatif_json(outcome: WhatIf) -> str:
             "unchanged": outcome.unchanged,
             "rules": [_rule(change) for change in outcome.rules],
             "figures": [_figure(change) for change in outcome.figures],
+            "marks": marks_json(outcome.marks),
             "cautions": list(outcome.cautions),
         }
     )
@@ -74,6 +76,7 @@ def headroom_json(report: HeadroomReport) -> str:
                 for row in report.inputs
             ],
             "unrestrained": list(report.unread),
+            "marks": marks_json(report.marks),
             "cautions": list(report.cautions),
         }
     )

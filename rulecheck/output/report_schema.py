@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from rulecheck.diagnostics import CODES
 from rulecheck.outcome.results import VERDICTS
+from rulecheck.output.marks import marks_schema
 from rulecheck.output.schema_parts import DRAFT, Schema, list_of, object_of, or_null_of, text_of, verdict_of
 from rulecheck.output.spread_schema import spread_of
 
@@ -41,6 +42,7 @@ def report_schema() -> Schema:
         "reserve": text_of("The room that was kept beyond the limits, in words"),
         "rules": list_of({"$ref": "#/$defs/rule"}, "Every rule, in the order of the rule books"),
         "notes": list_of(text_of(), "What has to be said beside the rules, such as values that contradict each other"),
+        "marks": marks_schema(),
         "cautions": list_of(text_of(), "What the report cannot decide"),
         "files": {
             "description": "SHA-256 of every file that was read, by its name",
@@ -249,6 +251,7 @@ def _step() -> Schema:
         "source": text_of(),
         "place": or_null_of({"$ref": "#/$defs/place"}),
         "outside_validity": {"type": "boolean"},
+        "replaced": text_of("By which file it stands in the place of another figure, and why"),
         "depth": {"description": "How far below what was asked for", "type": "integer", "minimum": 0},
     }
 

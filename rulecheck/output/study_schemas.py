@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from rulecheck.output.marks import marks_schema
 from rulecheck.output.report_schema import (
     DRAFT,
     Schema,
@@ -45,6 +46,7 @@ def whatif_schema() -> Schema:
         "unchanged": {"description": "Rules that do not move", "type": "integer", "minimum": 0},
         "rules": list_of(object_of(rule), "Rules that move, most affected first"),
         "figures": list_of(object_of({**shared, "meaning": text_of()}), "Figures that move, most affected first"),
+        "marks": marks_schema(),
         "cautions": list_of(text_of(), "What the answer cannot decide"),
     }
     return {"$schema": DRAFT, "title": "What if", **object_of(properties), "$defs": shared_of()}
@@ -77,6 +79,7 @@ def headroom_schema() -> Schema:
         "breached": list_of(text_of(), "Rules in breach as it stands"),
         "inputs": list_of(row, "The least travel first"),
         "unrestrained": list_of(text_of(), "Inputs that no rule reads"),
+        "marks": marks_schema(),
         "cautions": list_of(text_of(), "What the answer cannot decide"),
     }
     return {"$schema": DRAFT, "title": "Headroom", **object_of(properties), "$defs": shared_of()}

@@ -9,6 +9,7 @@ from rich.table import Table
 from rich.text import Text
 
 from rulecheck.outcome.travel import Headroom, HeadroomReport, Travel
+from rulecheck.output.marks import mark_lines
 from rulecheck.output.screen import PAPER, Screen, draw, line, words
 from rulecheck.output.wording import short
 
@@ -37,6 +38,8 @@ def _parts(report: HeadroomReport) -> Iterable[RenderableType]:
     else:
         yield words("no rule reads these inputs")
     yield from _unread(report)
+    for told in mark_lines(report.marks):
+        yield line(told, 2)
     for caution in report.cautions:
         yield Text()
         yield line(f"caution: {caution}")

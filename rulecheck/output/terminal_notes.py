@@ -3,15 +3,15 @@
 from __future__ import annotations
 
 from collections.abc import Iterable
+from dataclasses import replace
 
 from rich.console import RenderableType
 from rich.text import Text
 
 from rulecheck.outcome.results import Finding, Report
+from rulecheck.output.marks import mark_lines, some
 from rulecheck.output.screen import line, words
 from rulecheck.output.wording import counted
-
-_MOST = 6
 
 
 def notes(report: Report) -> Iterable[RenderableType]:
@@ -30,6 +30,7 @@ def _told(report: Report) -> Iterable[str]:
         if book.note:
             yield f"{book.name}: {book.note}"
     yield from _outside(report)
+    yield from mark_lines([replace(mark, outside_validity=()) for mark in report.marks])
     for item in report.rules:
         yield from (f"{_rule(item)}: {note}" for note in item.notes)
     yield from _estimates(report)
@@ -49,7 +50,7 @@ def _outside(report: Report) -> Iterable[str]:
         for figure in item.outside_validity:
             by_figure.setdefault(figure, []).append(_rule(item))
     for figure, rules in by_figure.items():
-        yield f"{figure} is used outside its range of validity, in {_some(rules)}"
+        yield f"{figure} is used outside its range of validity, in {some(rules)}"
 
 
 def _estimates(report: Report) -> Iterable[str]:
@@ -57,10 +58,5 @@ def _estimates(report: Report) -> Iterable[str]:
     if not resting:
         return
     values = list(dict.fromkeys(path for item in resting for path in item.estimates))
-    yield f"{counted(len(resting), 'rule')} on estimates: {_some([_rule(item) for item in resting])}"
-    yield f"{counted(len(values), 'estimate')}: {_some(values)}"
-
-
-def _some(texts: list[str]) -> str:
-    more = f" and {len(texts) - _MOST} more" if len(texts) > _MOST else ""
-    return ", ".join(texts[:_MOST]) + more
+    yield f"{counted(len(resting), 'rule')} on estimates: {some([_rule(item) for item in resting])}"
+    yield f"{counted(len(values), 'estimate')}: {some(values)}"

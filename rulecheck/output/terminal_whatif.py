@@ -9,6 +9,7 @@ from rich.table import Table
 from rich.text import Text
 
 from rulecheck.outcome.changes import FigureChange, Moved, RuleChange, WhatIf
+from rulecheck.output.marks import mark_lines
 from rulecheck.output.screen import PAPER, STYLES, Screen, draw, line, words
 from rulecheck.output.wording import short
 
@@ -32,6 +33,8 @@ def _parts(outcome: WhatIf) -> Iterable[RenderableType]:
         yield from _figures(outcome)
     yield Text()
     yield from _totals(outcome)
+    for told in mark_lines(outcome.marks, [f"with {name}" for name, _ in outcome.columns]):
+        yield line(told, 2)
     for caution in outcome.cautions:
         yield Text()
         yield line(f"caution: {caution}")

@@ -71,6 +71,8 @@ def _step(number: int, step: Step) -> Iterable[RenderableType]:
         yield line(told, 5, "dim")
     if step.outside_validity:
         yield line("outside its range of validity", 5)
+    if step.replaced:
+        yield line(step.replaced, 5)
 
 
 def _conditions(item: Working) -> Iterable[RenderableType]:

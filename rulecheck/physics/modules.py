@@ -2,14 +2,15 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterator
 from pathlib import Path
 
-from rulecheck.diagnostics import Faults
+from rulecheck.diagnostics import Faults, Span
 from rulecheck.model.edge import PhysicsShape, shaped
 from rulecheck.model.names import check_name
-from rulecheck.model.ruleset import PhysicsModule
+from rulecheck.model.ruleset import PhysicsModule, Replaces
 from rulecheck.model.ruleset_reader import formula_of, text
-from rulecheck.reading.nodes import Mapping
+from rulecheck.reading.nodes import Located, Mapping, Node
 from rulecheck.reading.workspace import Workspace
 from rulecheck.reading.yaml_reader import read_yaml
 
@@ -28,9 +29,9 @@ def built_in(name: str) -> PhysicsModule | None:
     return read_module(Workspace(FOLDER.parent), f"{FOLDER.name}/{name}.yaml")
 
 
-def read_module(workspace: Workspace, file: str) -> PhysicsModule:
+def read_module(workspace: Workspace, file: str, asked: Span | None = None) -> PhysicsModule:
     """A module from a file. Raises `Refused`."""
-    root = read_yaml(workspace, file)
+    root = read_yaml(workspace, file, asked)
     faults = Faults()
     shape = shaped(PhysicsShape, root, faults)
     faults.settle()
@@ -49,6 +50,19 @@ def read_module(workspace: Workspace, file: str) -> PhysicsModule:
                     made.source.span,
                     expected=" or ".join(shape.sources),
                 )
+    replaces = tuple(_replaces(root.get("replaces"), faults))
+    check_name(shape.module, faults)
     faults.settle()
     sources = {name: where.text for name, where in shape.sources.items()}
-    return PhysicsModule(shape.module.text, file, shape.meaning.text, sources, figures, text(shape.caution))
+    return PhysicsModule(
+        shape.module.text, file, shape.meaning.text, sources, figures, text(shape.caution), replaces, shape.module.span
+    )
+
+
+def _replaces(node: Node | None, faults: Faults) -> Iterator[Replaces]:
+    for entry in node if isinstance(node, Mapping) else ():
+        because = entry.value.text.strip() if isinstance(entry.value, Located) else ""
+        if not because:
+            told = f"'{entry.key.text}' is replaced without a reason"
+            faults.add("bad-physics", told, entry.key.span, expected=f"{entry.key.text}: the reason")
+        yield Replaces(entry.key, because)

@@ -26,6 +26,7 @@ from rulecheck.quantity.units import Unit
 from rulecheck.readers.segment import SegmentReader
 from rulecheck.reading.nearest import nearest
 from rulecheck.studies.check import Checker
+from rulecheck.studies.marks import marks
 from rulecheck.studies.reporting import CAUTION
 
 REACH = 100
@@ -57,7 +58,7 @@ def headroom(checker: Checker, design: Design, names: Sequence[str], day: date) 
     breached = tuple(rule.name for rule in graph.rules if rule.binds and checker.reader.truth(rule.met) is False)
     return HeadroomReport(
         design.name, design.file, day.isoformat(), tuple(sorted(rows, key=_least)), tuple(unread), breached,
-        (CAUTION,), __version__,
+        (CAUTION,), __version__, marks([checker]),
     )  # fmt: skip
 
 

@@ -14,6 +14,7 @@ from rulecheck.outcome.results import VERDICTS, Finding, Report, RulesetInfo
 from rulecheck.reading.nodes import Located
 from rulecheck.studies.amounts import amount
 from rulecheck.studies.check import Checker
+from rulecheck.studies.marks import marks
 from rulecheck.studies.totals import binds, total
 
 CAUTION = (
@@ -55,6 +56,7 @@ def report(
         reserve=asked.reserve,
         version=__version__,
         files=dict(sorted(files.items())),
+        marks=marks([checker]),
     )
 
 

@@ -25,6 +25,7 @@ from rulecheck.quantity.units import Unit
 from rulecheck.readers.gradient import GradientReader
 from rulecheck.studies.amounts import amount
 from rulecheck.studies.check import Checker
+from rulecheck.studies.marks import marks
 from rulecheck.studies.reporting import CAUTION
 from rulecheck.studies.totals import total
 
@@ -59,6 +60,7 @@ def what_if(base: Checker, columns: Sequence[Column], design: Design, rulesets: 
         unchanged=len(before) - len(rules),
         cautions=(CAUTION,),
         version=__version__,
+        marks=marks([base, *(column.checker for column in columns)], whole=True),
     )
 
 

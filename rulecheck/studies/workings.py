@@ -2,13 +2,14 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Iterable, Sequence
+from collections.abc import Callable, Iterable, Mapping, Sequence
 from datetime import date
+from types import MappingProxyType
 
 from rulecheck import __version__
 from rulecheck.diagnostics import Faults
 from rulecheck.formula.printing import show, show_with
-from rulecheck.formula.syntax import Aggregate, Call, Name, Syntax
+from rulecheck.formula.syntax import Aggregate, Call, Name, Number, Syntax
 from rulecheck.graph.conditions import BoundRule, Part, Use
 from rulecheck.graph.figures import Figure
 from rulecheck.graph.terms import Term
@@ -108,6 +109,15 @@ def _formula(figure: Figure) -> str:
     return f"the least {solved.path} from {solved.low} to {solved.high} with {show(figure.syntax)} = 0"
 
 
+_WHOLE = (Name, Call, Aggregate, Number)
+
+
+def _taken(node: Syntax, arms: Mapping[Syntax, Syntax]) -> Syntax:
+    while node in arms:
+        node = arms[node]
+    return node
+
+
 class _Walk:
     """Figures with what they rest on, what comes first first; each once."""
 
@@ -181,11 +191,12 @@ class _Walk:
             place(figure.span),
             outside,
             depth,
+            self.checker.graph.replaced.get(figure.name, ""),
         )
 
     def _numbers(self, figure: Figure) -> str:
         """The formula with numbers; of a solve, with those at the solution, and what is left of zero there."""
-        numbers = self._with_numbers(figure.syntax, figure.uses)
+        numbers = self._with_numbers(figure.syntax, figure.uses, figure.arms)
         if figure.solved is None:
             return numbers
         rest = self.checker.reader.ball(figure.solved.residual, START_BITS)
@@ -195,10 +206,16 @@ class _Walk:
             return f"{numbers}, exactly zero"
         return f"{numbers}, which is zero to within {float(abs(rest).upper()):.1g} in SI units"
 
-    def _with_numbers(self, syntax: Syntax, names: Iterable[Use]) -> str:
+    def _with_numbers(
+        self, syntax: Syntax, names: Iterable[Use], arms: Mapping[Syntax, Syntax] = MappingProxyType({})
+    ) -> str:
+        """The formula with numbers for names; of a conditional that is settled, the arm that is taken."""
         uses = {use.text: use for use in names}
 
         def number(node: Syntax) -> str | None:
+            if node in arms:
+                text = show_with(_taken(node, arms), number)
+                return text if node is syntax or isinstance(_taken(node, arms), _WHOLE) else f"({text})"
             if not isinstance(node, (Name, Aggregate, Call)):
                 return None
             use = uses.get(show(node))

@@ -19,7 +19,7 @@ from rulecheck.diagnostics import Diagnostic, Refused, Span
 from rulecheck.formula.parser import parse_each, parse_formula
 from rulecheck.model.design import Design
 from rulecheck.model.ruleset import Ruleset
-from rulecheck.physics.modules import BUILT_IN, built_in
+from rulecheck.physics.library import Library
 from rulecheck.reading.nodes import Located
 from rulecheck.studies.check import Checker
 
@@ -140,7 +140,7 @@ def book_of(texts: list[Located]) -> Ruleset:
 
 def judged(book: Ruleset) -> None:
     """Every rule of a ruleset with its verdict."""
-    graph = bind(CAR_MADE, [book], day=DAY, physics=built_in, physics_names=BUILT_IN)
+    graph = bind(CAR_MADE, [book], day=DAY, physics=Library())
     checker = Checker(graph)
     for rule in graph.rules:
         finding = checker.finding(rule, book.rules[rule.name])

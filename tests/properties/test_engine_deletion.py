@@ -25,7 +25,7 @@ from rulecheck.model.core_table import CORE
 from rulecheck.model.design import Design, holders
 from rulecheck.model.ruleset import Rule, Ruleset
 from rulecheck.model.vocabulary import Vocabulary
-from rulecheck.physics.modules import BUILT_IN, built_in
+from rulecheck.physics.library import Library
 from rulecheck.reading.nodes import Located
 from rulecheck.reading.nodes import Mapping as MappingNode
 from rulecheck.studies.check import Checker
@@ -45,7 +45,7 @@ may do, and no more, is held by `test_what_striking_out_the_dates_of_a_document_
 
 def verdicts(design: Design, ruleset: Ruleset) -> dict[str, str]:
     """The verdict of every rule."""
-    graph = bind(design, [ruleset], day=DAY, physics=built_in, physics_names=BUILT_IN)
+    graph = bind(design, [ruleset], day=DAY, physics=Library())
     checker = Checker(graph)
     return {bound.name: checker.finding(bound, ruleset.rules[bound.name]).verdict for bound in graph.rules}
 

@@ -20,7 +20,7 @@ ROOT = Path(__file__).parents[2]
 TOP = frozenset(
     ("rulecheck", "rulesets_demo", "designs_demo", "tests", "README.md", "DEVELOPERS.md", "pyproject.toml", "LICENSE")
 )
-WITH_UNITS = ("number", "point", "outline", "range")
+WITH_UNITS = ("number", "point", "outline", "range", "curve", "map")
 MACHINE = re.compile(r"/(?:home|root|tmp|work|Users)/\w")
 """A path of somebody's machine."""
 

@@ -79,11 +79,14 @@ def test_inputs_of_a_ruleset_are_not_in_the_core_schema() -> None:
 
 
 SAMPLES = {"flag": "yes", "date": "2027-03-01", "point": "1 2 3 mm", "datum": "rear_axle", "text": "sheet 4", "outline": "0 0, 9 0, 9 9 mm", "range": ["1 mm", "2 mm"]}  # fmt: skip
+ROWS = {"rows": [["1 mm", "5 mm"], ["2 mm", "6 mm"]], "over": "vehicle.speed"}
 
 
 @pytest.mark.parametrize("entry", CORE, ids=lambda entry: entry.path)
 def test_every_input_may_be_stated_and_changed(entry: Any) -> None:
-    sample: Any = SAMPLES.get(entry.kind) or (entry.choices[0] if entry.choices else f"5 {entry.unit}")
+    sample: Any = (ROWS if entry.kind in ("curve", "map") else SAMPLES.get(entry.kind)) or (
+        entry.choices[0] if entry.choices else f"5 {entry.unit}"
+    )
     if entry.kind == "collection":
         sample = {}
     path = entry.path.replace("*", "some")
