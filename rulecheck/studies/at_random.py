@@ -52,7 +52,9 @@ def at_random_of(graph: Graph, most: int) -> AtRandom:
         while tally.trials + BLOCK <= max(most, BLOCK) and not tally.is_stable(_closeness(standard) / 5):
             values = [next(room) for room in rooms]
             tally.add(values[own], numpy.all([value >= 0 for value in values], axis=0))
-        return None if estimate is None or tally.lost == tally.trials else tally.result(estimate, standard, unit)
+        if estimate is None or tally.lost == tally.trials or not tally.is_finite:
+            return None
+        return tally.result(estimate, standard, unit)
 
     return at_random
 
@@ -88,6 +90,11 @@ class _Tally:
     def trials(self) -> int:
         return BLOCK * len(self.rows)
 
+    @property
+    def is_finite(self) -> bool:
+        """False where doubles cannot hold what the trials gave."""
+        return bool(numpy.all(numpy.isfinite(self.rows)))
+
     def add(self, values: Any, conforms: Any) -> None:
         known = values[numpy.isfinite(values)]
         self.lost += len(values) - len(known)
@@ -95,8 +102,9 @@ class _Tally:
         if not len(known):
             self.rows.append((math.nan,) * 4)
             return
-        low, high = numpy.quantile(known, [0.025, 0.975])
-        self.rows.append((float(known.mean()), float(known.std(ddof=1)), float(low), float(high)))
+        with numpy.errstate(all="ignore"):
+            low, high = numpy.quantile(known, [0.025, 0.975])
+            self.rows.append((float(known.mean()), float(known.std(ddof=1)), float(low), float(high)))
 
     def noise(self) -> float:
         """Twice the largest standard deviation of the four averages (JCGM 101:2008, 7.9.4)."""

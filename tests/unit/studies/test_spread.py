@@ -158,3 +158,9 @@ def test_trials_agree_where_the_margin_is_straight_and_part_where_it_is_not() ->
 
 def test_trials_repeat_to_the_last_figure() -> None:
     assert of(SUM, TRACKS, trials=20_000).trials == of(SUM, TRACKS, trials=20_000).trials
+
+
+def test_trials_that_doubles_cannot_hold_are_left_out() -> None:
+    tiny = "wing: {span: 1e-300 m ± 1e-300 m}\n"
+    rules = WING + "rules: {it: {require: 1 m^2 / wing.span <= 10 m}}\n"
+    assert spread(tiny, rules, trials=10_000).trials is None
