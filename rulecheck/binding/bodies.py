@@ -96,6 +96,15 @@ def _mirrored(scope: Scope, body: Body) -> Body:
     return Body(spans, outlines)
 
 
+def end_of_extent(scope: Scope, path: str, end: str, span: Span) -> Bound:
+    """`from` or `to` of an extent as a number, counted from the front axle and the reference plane."""
+    item, _, axis = path.rpartition(".")
+    bodies = bodies_of(scope, Item(item.removesuffix(".extent")), span)
+    if bodies is None or isinstance(bodies, Broken):
+        return BROKEN
+    return Number(bodies[0].spans[axis][end == "to"], find_unit("mm"))
+
+
 # --- outlines --------------------------------------------------------------------------------------------------------
 
 

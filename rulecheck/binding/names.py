@@ -5,6 +5,7 @@ from __future__ import annotations
 from typing import Any
 
 from rulecheck.binding import figures
+from rulecheck.binding.bodies import end_of_extent
 from rulecheck.binding.bound import BROKEN, Bound, Date, Item, Items, Number, Place, Truth, Words
 from rulecheck.binding.curves import bind_curve
 from rulecheck.binding.inputs import bind_input
@@ -162,6 +163,10 @@ def _guarded(scope: Scope, path: str, entry: Entry, span: Span) -> Bound:
         return place_of(scope, path, entry, span)
     if entry.kind in ("curve", "map"):
         return bind_curve(scope, path, entry)
+    holder, _, end = path.rpartition(".")
+    above = scope.shared.vocabulary.entry(holder) if holder else None
+    if above is not None and above.kind == "range":
+        return end_of_extent(scope, holder, end, span)
     bound = bind_input(scope, path, entry, span)
     if isinstance(bound, Number):
         return _checked(scope, path, bound, span)

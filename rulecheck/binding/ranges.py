@@ -10,6 +10,7 @@ from rulecheck.binding.scope import Scope
 from rulecheck.diagnostics import Span
 from rulecheck.model.design import NONE, LeafNode
 from rulecheck.model.vocabulary import Entry
+from rulecheck.operations.values import Monomial
 from rulecheck.quantity.units import find_unit
 from rulecheck.reading.nodes import Located, Mapping, Sequence
 
@@ -31,7 +32,19 @@ def bind_range(scope: Scope, path: str, entry: Entry, span: Span) -> tuple[Numbe
         held = replace(scope, view=replace(scope.view, set_paths=scope.view.set_paths | {f"{path}.{end}"}))
         bound = number_at(held if path in scope.view.set_paths else scope, f"{path}.{end}", single, given, span)
         ends.append(bound if isinstance(bound, Number) else Number(scope.missing(path, "number", unit.dimension), unit))
+    _check_order(scope, path, ends, node or own[1] or own[0])
     return ends[0], ends[1]
+
+
+def _check_order(scope: Scope, path: str, ends: list[Number], node: LeafNode | None) -> None:
+    values = []
+    for end in ends:
+        known = scope.shared.inputs.get(end.term.path) if end.term.kind == "input" else end.term.value
+        values.append(known.rational if isinstance(known, Monomial) else None)
+    low, high = values
+    if low is not None and high is not None and low > high:
+        told = f"the extent '{path}' ends before it begins"
+        scope.fault("bad-value", told, node.span if node is not None else None, expected="the lesser end first")
 
 
 def _two_lengths(scope: Scope, path: str, node: LeafNode) -> tuple[LeafNode, LeafNode] | None:

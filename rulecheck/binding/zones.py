@@ -13,9 +13,10 @@ from rulecheck.binding.points import plane_height
 from rulecheck.binding.scope import Scope
 from rulecheck.diagnostics import Span
 from rulecheck.geometry.bodies import VIEWS, Vector, in_view
+from rulecheck.geometry.convex import Corner
 from rulecheck.geometry.making import Maker, constant
 from rulecheck.geometry.outlines import fault_of
-from rulecheck.geometry.polygons import Corner, Polygon, is_simple
+from rulecheck.geometry.polygons import Polygon, is_simple
 from rulecheck.geometry.zones import Every, Half, Prism, Range, Some, Zone
 from rulecheck.graph.terms import Term
 from rulecheck.model.ruleset import Ruleset

@@ -5,7 +5,8 @@ from __future__ import annotations
 from collections.abc import Mapping
 from dataclasses import dataclass, field
 
-from rulecheck.geometry.polygons import Corner, Polygon, rectangle
+from rulecheck.geometry.convex import Corner
+from rulecheck.geometry.polygons import Polygon
 from rulecheck.graph.terms import Term
 
 AXES = "xyz"
@@ -38,7 +39,7 @@ class Body:
         if own is not None:
             return own
         (left, right), (low, high) = (self.spans[axis] for axis in VIEWS[view])
-        return rectangle((left, low), (right, high))
+        return ((left, low), (right, low), (right, high), (left, high))
 
     def corners(self) -> list[Vector]:
         """Points whose hull holds the body: corners of an outline at both ends of the axis across its view."""

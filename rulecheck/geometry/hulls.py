@@ -9,8 +9,9 @@ from collections.abc import Sequence
 from itertools import combinations
 
 from rulecheck.geometry.bodies import Vector
+from rulecheck.geometry.convex import Corner
 from rulecheck.geometry.making import Maker
-from rulecheck.geometry.polygons import Corner, to_segment
+from rulecheck.geometry.polygons import to_segment
 from rulecheck.geometry.rooms import Room
 from rulecheck.graph.terms import Term
 

@@ -9,7 +9,9 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 from dataclasses import dataclass
+from functools import partial
 
+from rulecheck.geometry.convex import Corner, Side, clear_of_sides
 from rulecheck.geometry.making import Maker, constant
 from rulecheck.geometry.outlines import area, is_convex
 from rulecheck.geometry.rooms import Room
@@ -19,9 +21,9 @@ from rulecheck.operations.statistics import count_where
 from rulecheck.quantity.dimension import LENGTH, PURE
 
 _AREA = LENGTH**2
-Corner = tuple[Term, Term]
 Polygon = tuple[Corner, ...]
 """Corners in order around it, in metres."""
+Ends = tuple[Term | None, Term | None]
 
 
 @dataclass(frozen=True, slots=True)
@@ -73,6 +75,9 @@ def room_clear(make: Maker, polygon: Polygon, other: Polygon) -> Room:
     Exact while they are apart. Else the depth of the deepest corner, or middle of a stretch of an edge, that lies
     inside: the deepest point may lie deeper.
     """
+    convex = as_convex(make, polygon)
+    if convex is not None:
+        return _clear_of_convex(make, convex, other)
     spots = [_spot(make, polygon, corner) for corner in other]
     deep = [(spot.inside, spot.square) for spot in spots]
     for spot, active in _stretches(make, polygon, other):
@@ -155,6 +160,59 @@ def _in_convex(make: Maker, polygon: Polygon, points: Sequence[Corner]) -> Room:
     return Room(make.choose(holds, make.least(depths), make.opposite(make.root(make.greatest_where(out)))), holds)
 
 
+def _clear_of_convex(make: Maker, polygon: Polygon, other: Polygon) -> Room:
+    sides = [Side(partial(_cross, make, a, b), make.root(_square_length(make, a, b))) for a, b in edges(polygon)]
+    middle = middle_of(make, polygon)
+    return clear_of_sides(make, sides, other, _apart(make, polygon, other), (middle, is_within(make, other, middle)))
+
+
+def clear_of_box(make: Maker, low: Ends, high: Ends, outline: Polygon) -> Room:
+    """The room of an outline clear of a box in its view; an end that is None is free."""
+    sides, ways = [], []
+    for axis in (0, 1):
+        least, most = low[axis], high[axis]
+        if least is not None:
+            sides.append(Side(partial(_over, make, axis, least)))
+        if most is not None:
+            sides.append(Side(partial(_under, make, axis, most)))
+    for corner in outline:
+        ways.append(make.total([make.square(_gap(make, low[axis], high[axis], corner[axis])) for axis in (0, 1)]))
+    corners = [(a, b) for a in (low[0], high[0]) for b in (low[1], high[1]) if a is not None and b is not None]
+    ways += [to_segment(make, a, b, corner) for a, b in edges(outline) for corner in corners]
+    middle = None
+    if len(corners) == 4:
+        point = middle_of(make, corners)
+        middle = (point, is_within(make, outline, point))
+    return clear_of_sides(make, sides, outline, make.least(ways), middle)
+
+
+def _over(make: Maker, axis: int, end: Term, corner: Corner) -> Term:
+    return make.minus(corner[axis], end)
+
+
+def _under(make: Maker, axis: int, end: Term, corner: Corner) -> Term:
+    return make.minus(end, corner[axis])
+
+
+def _gap(make: Maker, low: Term | None, high: Term | None, value: Term) -> Term:
+    """How far a value lies beside a range, zero within."""
+    ways = [make.number(0, value.dimension)]
+    ways += [make.minus(low, value)] if low is not None else []
+    return make.greatest([*ways, *([make.minus(value, high)] if high is not None else [])])
+
+
+def middle_of(make: Maker, corners: Sequence[Corner]) -> Corner:
+    """The mean of some corners: it lies inside of what is convex."""
+    count = make.number(len(corners))
+    across, up = (make.over(make.total([corner[axis] for corner in corners]), count) for axis in (0, 1))
+    return across, up
+
+
+def is_within(make: Maker, polygon: Polygon, point: Corner) -> Term:
+    """Whether a point lies strictly inside of a polygon."""
+    return _spot(make, polygon, point).inside
+
+
 # --- points ----------------------------------------------------------------------------------------------------------
 
 
@@ -196,7 +254,9 @@ def _off(make: Maker, sides: Sequence[tuple[Corner, Corner]], point: Corner) -> 
 def to_segment(make: Maker, a: Corner, b: Corner, point: Corner) -> Term:
     """The squared distance of a point to a segment."""
     along, to = _from_to(make, a, b), _from_to(make, a, point)
-    share = make.over(_dot(make, along, to), _square_length(make, a, b))
+    size = _square_length(make, a, b)
+    # A body without thickness has edges without length: there the end is the nearest point.
+    share = make.choose(make.is_above_zero(size), make.over(_dot(make, along, to), size), make.number(0))
     held = make.least([make.greatest([share, make.number(0)]), make.number(1)])
     rest = [make.minus(t, make.times(held, d)) for t, d in zip(to, along, strict=True)]
     return make.total([make.square(rest[0]), make.square(rest[1])])
@@ -242,14 +302,9 @@ def _cut(make: Maker, start: Corner, end: Corner, a: Corner, b: Corner) -> tuple
 
 
 def _middles_of_ears(make: Maker, polygon: Polygon) -> list[Corner]:
-    three = make.number(3)
     count = len(polygon)
-    found = []
-    for index in range(count):
-        corners = (polygon[index - 1], polygon[index], polygon[(index + 1) % count])
-        across, up = (make.over(make.total([corner[axis] for corner in corners]), three) for axis in (0, 1))
-        found.append((across, up))
-    return found
+    threes = ((polygon[index - 1], polygon[index], polygon[(index + 1) % count]) for index in range(count))
+    return [middle_of(make, three) for three in threes]
 
 
 # --- vectors ---------------------------------------------------------------------------------------------------------
@@ -279,8 +334,3 @@ def _cross(make: Maker, a: Corner, b: Corner, point: Corner) -> Term:
 def _square_length(make: Maker, a: Corner, b: Corner) -> Term:
     d = _from_to(make, a, b)
     return make.plus(make.square(d[0]), make.square(d[1]))
-
-
-def rectangle(low: Corner, high: Corner) -> Polygon:
-    """A rectangle by two opposite corners, anticlockwise."""
-    return (low, (high[0], low[1]), high, (low[0], high[1]))

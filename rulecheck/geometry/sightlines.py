@@ -3,8 +3,9 @@
 from __future__ import annotations
 
 from rulecheck.geometry.bodies import AXES, Body, Vector
+from rulecheck.geometry.convex import Corner
 from rulecheck.geometry.making import Maker
-from rulecheck.geometry.polygons import Corner, Polygon, room_clear
+from rulecheck.geometry.polygons import Polygon, room_clear
 from rulecheck.geometry.rooms import Room
 from rulecheck.graph.terms import Term
 

@@ -12,7 +12,7 @@ from dataclasses import dataclass
 from rulecheck.geometry.bodies import VIEWS, Body, Vector, in_view, point_body
 from rulecheck.geometry.cells import Cell, together
 from rulecheck.geometry.making import Maker
-from rulecheck.geometry.polygons import Polygon, point_room, rectangle, room_clear, room_inside
+from rulecheck.geometry.polygons import Polygon, clear_of_box, point_room, room_clear, room_inside
 from rulecheck.geometry.rooms import Room, crosswise, greatest, least, linear, turned
 from rulecheck.graph.terms import Term
 
@@ -158,9 +158,6 @@ def _flat(parts: Iterable[Zone]) -> Iterable[Zone]:
 
 # --- ranges ----------------------------------------------------------------------------------------------------------
 
-FAR = 1000
-"""Metres: where a free end of a range is put when it becomes a side of a rectangle; no car reaches so far."""
-
 
 def _inside_ranges(make: Maker, ranges: Sequence[Range], body: Body) -> Room:
     """Room inside of a box: of a body with an outline the room of its worst corner, else of its spans."""
@@ -177,21 +174,22 @@ def _clear_of_ranges(make: Maker, ranges: Sequence[Range], body: Body) -> Room:
     view = next((view for view in body.outlines if set(VIEWS[view]) <= across), None)
     rooms = []
     if view is not None:
-        rooms.append((frozenset(VIEWS[view]), clear(make, _rectangle(make, plain, view), body)))
+        rooms.append((frozenset(VIEWS[view]), _clear_in_view(make, plain, view, body)))
     rest = [part for part in ranges if view is None or part.lift is not None or part.axis not in VIEWS[view]]
     rooms += [(axes(part), clear(make, part, body)) for part in rest]
     return crosswise(make, [greatest(make, group) for group in _grouped(rooms)], inside=False)
 
 
-def _rectangle(make: Maker, ranges: Sequence[Range], view: str) -> Prism:
-    low, high = [], []
+def _clear_in_view(make: Maker, ranges: Sequence[Range], view: str, body: Body) -> Room:
+    low: list[Term | None] = []
+    high: list[Term | None] = []
     for axis in VIEWS[view]:
         own = [part for part in ranges if part.axis == axis]
         lows = [part.low for part in own if part.low is not None]
         highs = [part.high for part in own if part.high is not None]
-        low.append(make.greatest(lows) if lows else make.length(-FAR))
-        high.append(make.least(highs) if highs else make.length(FAR))
-    return Prism(view, rectangle((low[0], low[1]), (high[0], high[1])))
+        low.append(make.greatest(lows) if lows else None)
+        high.append(make.least(highs) if highs else None)
+    return clear_of_box(make, (low[0], low[1]), (high[0], high[1]), body.outlines[view])
 
 
 # --- one border ------------------------------------------------------------------------------------------------------

@@ -5,12 +5,13 @@ from __future__ import annotations
 from collections.abc import Callable, Iterable
 from fractions import Fraction
 
-from rulecheck.binding import aggregates, arithmetic, curves, points, rules, scope, states
+from rulecheck.binding import aggregates, arithmetic, curves, placing, points, rules, scope, states
 from rulecheck.binding.inputs import VALUE_KEYS
 from rulecheck.diagnostics import CODES
 from rulecheck.formula import lexer, token_reader
+from rulecheck.geometry import cells, hulls, outlines
 from rulecheck.handbook.functions import FUNCTIONS
-from rulecheck.model import correlations, design_reader, house_rules, ruleset_reader
+from rulecheck.model import correlations, design_reader, house_rules, ruleset_reader, zone_reader
 from rulecheck.model.core_table import CORE
 from rulecheck.model.ruleset import Formula
 from rulecheck.model.value_ranges import MOST_CURVES, MOST_VALUES
@@ -146,6 +147,12 @@ def bound_rows() -> str:
         ("rulesets that extend one another", ruleset_reader.MOST_LAYERS),
         ("turns of a loop", aggregates.MOST_ELEMENTS),
         ("a constant exponent, either way", arithmetic.MOST_POWER),
+        ("corners of an outline", outlines.MOST_CORNERS),
+        ("corners of a polygon of a zone", zone_reader.MOST_CORNERS),
+        ("zones under `all` or `any`", zone_reader.MOST_PARTS),
+        ("points of a hull", hulls.MOST_POINTS),
+        ("boxes that ranges under `any` leave free, before one part has to hold a thing as a whole", cells.MOST_CELLS),
+        ("corners of a zone, squared, times those of an outline, where corners point inward", placing.MOST_CUTS),
         ("designs of a house file that are looked through for the name of a rule", house_rules.MOST_DESIGNS),
         ("inputs that stand in correlations", correlations.MOST_CORRELATED),
         ("boxes into which a range of values is bisected", worst_case.MOST_BOXES),

@@ -8,6 +8,7 @@ from typing import Any
 from rulecheck.diagnostics import Faults, Span
 from rulecheck.model.edge import InputShape
 from rulecheck.model.names import RESERVED_KEYS, check_name, is_name
+from rulecheck.model.shape_table import extent_rows, outline_rows
 from rulecheck.model.vocabulary import Entry
 from rulecheck.quantity.dimension import Dimension
 from rulecheck.quantity.reading_records import BASES
@@ -16,7 +17,7 @@ from rulecheck.reading.nearest import nearest
 from rulecheck.reading.nodes import Located, Mapping, Node, Sequence
 
 WITH_BASIS = ("number", "flag", "choice", "text", "date")
-KINDS = ("number", "flag", "choice", "text", "date", "point", "item", "collection", "curve", "map")
+KINDS = ("number", "flag", "choice", "text", "date", "point", "item", "collection", "curve", "map", "outline", "extent")
 
 
 def own_units(declared: dict[str, Located], faults: Faults) -> dict[str, Dimension]:
@@ -63,6 +64,8 @@ def _rows(
     path: str, shape: InputShape, rivals: dict[str, tuple[str, ...]], file: str, span: Span | None, faults: Faults
 ) -> list[Entry]:
     kind = _kind(path, shape, span, faults)
+    if kind in ("outline", "extent"):
+        return _shape_rows(path, kind, file, span, faults)
     entry = Entry(
         path,
         kind,
@@ -84,7 +87,7 @@ def _rows(
     _whole(rows[0], shape, span, faults)
     for name, inner in (shape.element or {}).items():
         rows.extend(_rows(f"{path}.*.{name}", inner, rivals, file, span, faults))
-        if inner.kind is not None and inner.kind.text == "point":
+        if inner.kind is not None and inner.kind.text in ("point", "outline", "extent"):
             rows.append(
                 Entry(
                     f"{path}.*.datum",
@@ -96,6 +99,15 @@ def _rows(
                 )
             )
     return rows
+
+
+def _shape_rows(path: str, kind: str, file: str, span: Span | None, faults: Faults) -> list[Entry]:
+    """The rows of an outline or an extent, which an item has under that very name."""
+    if path.rpartition(".")[2] != kind:
+        told = f"'{path}' is an {kind}, and zones look for it under '{kind}'"
+        faults.add("bad-name", told, span, expected=f"{kind}: {{kind: {kind}, …}} among the fields of an item")
+    rows = outline_rows(path) if kind == "outline" else extent_rows(path)
+    return [replace(row, origin=file, span=span) for row in rows]
 
 
 def _kind(path: str, shape: InputShape, span: Span | None, faults: Faults) -> Any:

@@ -107,7 +107,7 @@ def _view(node: Mapping, faults: Faults) -> str:
     said = view.text if isinstance(view, Located) else "this"
     advice = nearest(said, VIEW_NAMES)
     faults.add("unknown-choice", f"'{said}' is not a view", view.span, expected=" or ".join(VIEW_NAMES), advice=advice)
-    return ""
+    return VIEW_NAMES[0]  # with the fault noted, so that nothing more is said of a view that is missing
 
 
 def _range(key: Located, node: Node, faults: Faults) -> RangePart | None:

@@ -161,6 +161,9 @@ def test_front_recovery_moves_the_share_towards_its_upper_limit(front_recovery: 
         ("insulation", "44", "kohm"),  # 520 - 0.7 * 680 = 520 - 476
         ("lap_energy", "0.1", "MJ"),  # 0.8 * 3 - 2.3
         ("fuel_flow", "0.7996", "kg/h"),  # (15 + 0.009 * 7600) * (1 - 0.02 * 240 / 800) - 82.1 = 83.4 * 0.994 - 82.1
+        ("wing_box", "7", "mm"),  # 905 - 898, both; flap to the rear: 890 - 862 = 28
+        ("dive_planes_clear", "18", "mm"),  # 372 - (684 / 2 + 12)
+        ("tank_place", "20", "mm"),  # 320 - 300; in side view 30 below
         ("mirror_area", "-4", "cm^2"),  # 101 - 105, dispensed
         ("width_in_hand", "-4", "mm"),  # 16 - 20, advice
         ("roll_hoop", "1766", "day"),  # 2027-03-01 to 2031-12-31

@@ -2,10 +2,15 @@
 
 from __future__ import annotations
 
+import tempfile
 from fractions import Fraction
+from pathlib import Path
 
 import pytest
-from small_files import check_texts, findings, margin, only, refused
+from small_files import CAR as HEAD
+from small_files import DAY, RULES, check_texts, findings, margin, only, refused, write_files
+
+from rulecheck import headroom
 
 CAR = """\
 dimensions: {wheelbase: 2800 mm, front_ride_height: 40 mm, rear_ride_height: 68 mm}
@@ -199,6 +204,40 @@ def test_scale_gives_a_relative_margin_and_lets_margins_be_mixed() -> None:
 def test_extents_one_end_at_a_time() -> None:
     changed = [("aero_surfaces.wing.extent.z.to", "900 mm")]
     assert margin(asked("{z: {to: 1000 mm}}", "aero_surfaces.wing", settings=changed)) == 100
+
+
+def test_a_formula_may_name_an_end_of_an_extent() -> None:
+    asks = "aero_surfaces.wing.extent.x.to <= dimensions.wheelbase + 750 mm"
+    assert margin(only(CAR, f"rules: {{it: {{require: {asks}}}}}\n")) == 50
+    each = "rules: {it: {each: s in aero_surfaces, require: s.extent.y.from >= -900 mm}}\n"
+    assert margin(only(CAR, each)) == 10
+
+
+def test_things_of_a_ruleset_may_have_shapes() -> None:
+    rules = """\
+inputs:
+  pods:
+    kind: collection
+    meaning: Pods
+    element: {outline: {kind: outline, meaning: Shape}, extent: {kind: extent, meaning: Reach}}
+zones: {low: {z: {to: 400 mm}}}
+rules: {it: {each: p in pods, inside: low}}
+"""
+    pods = 'pods:\n  left: {datum: rear_axle, outline: {side: "0 0, 9 0, 9 350 mm"}}\n  right: {extent: {z: [0 mm, 380 mm]}}\n'
+    assert margin(only(CAR + pods, rules)) == 20
+    wrong = rules.replace("{outline: {kind: outline", "{body: {kind: outline")
+    assert refused(CAR, wrong)[0].code == "bad-name"
+
+
+def test_headroom_reaches_the_border_of_a_zone() -> None:
+    rules = "zones: {box: {x: {to: dimensions.wheelbase + 750 mm}, z: {to: 950 mm}}}\nrules: {it: {each: s in aero_surfaces, inside: box}}\n"
+    with tempfile.TemporaryDirectory() as folder:
+        write_files(Path(folder), {"car.design.yaml": HEAD + CAR, "cup.ruleset.yaml": RULES + rules})
+        report = headroom(Path(folder, "car.design.yaml"), ["aero_surfaces.wing.extent.z.to"], on=DAY)
+    (row,) = report.inputs
+    assert row.up.travel is not None
+    assert row.up.travel.shown == "10"
+    assert row.up.rules == ("it",)
 
 
 def test_a_datum_moves_extents_and_outlines() -> None:

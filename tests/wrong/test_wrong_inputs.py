@@ -13,13 +13,14 @@ from wrong_inputs import Wrong
 from wrong_modules import WRONG_MODULES
 from wrong_rulesets import WRONG_RULESETS
 from wrong_spread import WRONG_SPREAD
+from wrong_zones import WRONG_ZONES
 
 from rulecheck import cli
 from rulecheck.diagnostics import CODES, Refused
 from rulecheck.physics.modules import read_module
 from rulecheck.reading.workspace import Workspace
 
-WRONG = (*WRONG_DESIGNS, *WRONG_CURVES, *WRONG_MODULES, *WRONG_RULESETS, *WRONG_SPREAD)
+WRONG = (*WRONG_DESIGNS, *WRONG_CURVES, *WRONG_MODULES, *WRONG_RULESETS, *WRONG_SPREAD, *WRONG_ZONES)
 _CODE = re.compile(r"^(?:\S.*?:\d+:\d+: )?([a-z0-9-]+): ")
 OF_THE_COMMAND = frozenset(("usage", "cannot-write", "internal"))
 OF_PHYSICS = frozenset(("bad-physics",))
