@@ -163,7 +163,6 @@ def test_front_recovery_moves_the_share_towards_its_upper_limit(front_recovery: 
         ("fuel_flow", "0.7996", "kg/h"),  # (15 + 0.009 * 7600) * (1 - 0.02 * 240 / 800) - 82.1 = 83.4 * 0.994 - 82.1
         ("wing_box", "7", "mm"),  # 905 - 898, both; flap to the rear: 890 - 862 = 28
         ("dive_planes_clear", "18", "mm"),  # 372 - (684 / 2 + 12)
-        ("tank_place", "20", "mm"),  # 320 - 300; in side view 30 below
         ("mirror_area", "-4", "cm^2"),  # 101 - 105, dispensed
         ("width_in_hand", "-4", "mm"),  # 16 - 20, advice
         ("roll_hoop", "1766", "day"),  # 2027-03-01 to 2031-12-31
@@ -220,6 +219,19 @@ def test_exhaust_stands_off_the_tank(base: Report) -> None:
     along = less(rear, front)
     room = math.hypot(*cross(along, less(tank, front))) / math.hypot(*along)
     assert near(base, "exhaust_to_tank") == pytest.approx(room - 120, rel=1e-9)
+
+
+def test_tank_stands_in_its_bay(base: Report) -> None:
+    # 320 - 300 across; in side view 30 below, 40 ahead and behind, 40 above
+    slope = math.hypot(160, 140)
+    roof = (160 * (470 - 430) - 140 * (1690 - 1700)) / slope
+    rear = (160 * (470 - 300) - 140 * (1820 - 1700)) / slope
+    assert near(base, "tank_place") == pytest.approx(min(20, 30, 40, roof, rear), rel=1e-9)
+
+
+def test_bodywork_stays_under_its_profile(base: Report) -> None:
+    # 1010 - 995 over the cockpit; the outline goes across all three parts of the zone.
+    assert near(base, "profile") == pytest.approx(15, rel=1e-9)
 
 
 def test_angles_in_side_view(base: Report) -> None:
