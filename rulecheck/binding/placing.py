@@ -159,7 +159,7 @@ def _fitting(scope: Scope, wanted: Fitting, scale: Term | None) -> Built:
     if template is None:
         return scope.fault(
             "unknown-name", f"there is no template '{wanted.template.text}'", wanted.template.span,
-            expected=" or ".join(templates), advice=nearest(wanted.template.text, templates),
+            expected=" or ".join(templates) or "templates: in this file", advice=nearest(wanted.template.text, templates),
         )  # fmt: skip
     scope.shared.memo[("template used", template.span)] = True
     outline = template_outline(scope, template)

@@ -256,7 +256,7 @@ WRONG_ZONES: tuple[Wrong, ...] = (
     ),
     Wrong(
         "a template that is not there",
-        ("cup.ruleset.yaml:4:33: unknown-name: there is no template 'probe'",),
+        ("cup.ruleset.yaml:4:33: unknown-name: there is no template 'probe'; expected templates: in this file",),
         design=CAR,
         ruleset="zones: {hole: {view: side, points: [[0 mm, 0 mm], [9 mm, 0 mm], [0 mm, 9 mm]]}}\nrules: {it: {passes: {template: probe, through: hole, at: points.a}}}\n",
     ),
