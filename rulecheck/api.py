@@ -16,6 +16,7 @@ from pathlib import Path
 from typing import TYPE_CHECKING
 
 from rulecheck.binding.bind import bind
+from rulecheck.binding.external import TRACK
 from rulecheck.diagnostics import Diagnostic, Faults, Refused
 from rulecheck.graph.figures import Graph
 from rulecheck.graph.terms import Term
@@ -29,6 +30,7 @@ from rulecheck.loading import (
     overlay_of,
     reserve_text,
     reserves_of,
+    tracks_of,
     varyings_of,
     with_value,
 )
@@ -36,6 +38,7 @@ from rulecheck.model.design import Design, Overlay
 from rulecheck.model.ruleset import SIMPLE, Decision, PhysicsModule
 from rulecheck.outcome.results import ClosedFormResult, Report, Workings
 from rulecheck.physics.library import Library, library
+from rulecheck.physics.solvers import OWN, solver_module
 from rulecheck.reading.nodes import Located
 from rulecheck.studies.check import Checker
 from rulecheck.studies.reporting import Asked, report
@@ -251,6 +254,11 @@ def kept_variant(design: File, columns: Sequence[Change], target: File, session:
     return variant_text(reference, overlay)
 
 
+def _modules(loaded: Loaded) -> tuple[str, ...]:
+    """Modules whose figures are compared: all that are known, and the lap where the design names a track."""
+    return (*_library(loaded).names, *(name for name in OWN if TRACK in loaded.design.leaves))
+
+
 def _column(loaded: Loaded, base: Loaded, change: Change, day: date) -> Column:
     from rulecheck.studies.whatif import Column
 
@@ -262,7 +270,7 @@ def _column(loaded: Loaded, base: Loaded, change: Change, day: date) -> Column:
 
 def _checker(loaded: Loaded, day: date) -> Checker:
     """A design judged with every physics figure and the reserves of the house file."""
-    graph = _bind(loaded, day, _library(loaded).names)
+    graph = _bind(loaded, day, _modules(loaded))
     return Checker(graph, reserves_of(loaded, graph, None), _decision(loaded))
 
 
@@ -288,10 +296,13 @@ def _library(loaded: Loaded) -> Library:
 
 
 def _installed(name: str) -> PhysicsModule | None:
+    """A solver of ours, else what an installed package brings: a module or a solver."""
+    if name in OWN:
+        return solver_module(name)
     # Looking through installed packages takes long: only for a name that nothing else has.
     from rulecheck.physics.installed import installed_module
 
-    return installed_module(name)
+    return installed_module(name) or solver_module(name)
 
 
 def _figures_named(loaded: Loaded, names: Sequence[str]) -> list[str]:
@@ -315,6 +326,7 @@ def _bind(loaded: Loaded, day: date, figures: Sequence[str] = ()) -> Graph:
         validity_required=loaded.house is not None and loaded.house.validity == "required",
         also_known=loaded.also_known,
         figures=figures,
+        tracks=tracks_of(loaded.workspace, loaded.design),
     )
 
 

@@ -37,8 +37,8 @@ if TYPE_CHECKING:
 Forms = dict[str, "Callable[[Screen], str]"]
 COMPLIES, BREACH, UNUSABLE, NOT_SETTLED, INTERRUPTED = 0, 1, 2, 3, 130
 SCHEMAS = (
-    "design", "ruleset", "physics", "house", "change", "report", "workings", "varied", "whatif", "headroom",
-    "diagnostics",
+    "design", "ruleset", "physics", "house", "change", "track",
+    "report", "workings", "varied", "whatif", "headroom", "diagnostics",
 )  # fmt: skip
 
 
@@ -290,7 +290,7 @@ def _sources(session: Session) -> list[Path]:
 def handbook(page: str, what: str, rules: tuple[str, ...]) -> None:
     """Pages of the handbook; without a page, the list of them.
 
-    'handbook schema WHAT' prints the JSON Schema of a design, ruleset, physics, house or change file, or of the report,
+    'handbook schema WHAT' prints the JSON Schema of a design, ruleset, physics, house, change or track file, or of the report,
     workings or diagnostics in JSON.
     """
     from rulecheck.handbook import pages
@@ -335,6 +335,7 @@ def _schema(what: str, rules: Sequence[str]) -> str:
             "ruleset": schemas.ruleset_schema,
             "house": schemas.house_schema,
             "physics": schemas.physics_schema,
+            "track": schemas.track_schema,
         }[what]()
     return json.dumps(found, indent=2, ensure_ascii=False) + "\n"
 

@@ -159,6 +159,8 @@ CODES: dict[str, str] = {
     "no-rules": "There is nothing to check the design against.",
     "bad-date": "This is not a date.",
     "bad-physics": "A physics module cannot be used.",
+    "bad-track": "A track cannot be driven as it is written.",
+    "no-closed-form": "A figure cannot be written as a formula of the inputs.",
     # the command line
     "usage": "The command line cannot be understood.",
     "cannot-write": "An output file cannot be written.",

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Mapping, Sequence
+from collections.abc import Callable, Iterable, Mapping, Sequence
 from dataclasses import dataclass, field
 from fractions import Fraction
 from os import PathLike
@@ -18,6 +18,8 @@ from rulecheck.model.house_rules import house_rule_names, rule_names
 from rulecheck.model.names import is_name
 from rulecheck.model.ruleset import House, PhysicsModule, Ruleset
 from rulecheck.model.ruleset_reader import read_ruleset
+from rulecheck.model.track import Track
+from rulecheck.model.track_reader import read_track
 from rulecheck.model.value_ranges import MOST_CURVES, Setting, Varying, read_varying
 from rulecheck.physics.modules import read_module
 from rulecheck.quantity.dimension_names import name_of
@@ -262,6 +264,16 @@ def with_value(design: Design, varying: Varying, setting: Setting) -> Design:
         value = Entry(Located("value", node.span), node)
         node = Keyed((value, Entry(kept, inner)), node.span)
     return design.with_overlay(Overlay.of([(varying.path, node)]))
+
+
+def tracks_of(workspace: Workspace, design: Design) -> Callable[[Located], Track]:
+    """A reader of the tracks that a design names: beside the file that names them, else beside the design itself."""
+
+    def read(where: Located) -> Track:
+        beside = where.span.file if where.span.file in workspace.texts else design.file
+        return read_track(workspace, workspace.resolve(where.text, beside, where.span), where.span)
+
+    return read
 
 
 def reserves_of(loaded: Loaded, graph: Graph, share: Fraction | None) -> Reserves:

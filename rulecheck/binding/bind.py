@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import sys
-from collections.abc import Iterator, Sequence
+from collections.abc import Callable, Iterator, Sequence
 from contextlib import contextmanager
 from datetime import date
 
@@ -24,11 +24,14 @@ from rulecheck.graph.figures import Graph
 from rulecheck.model.core_table import CORE
 from rulecheck.model.design import Design
 from rulecheck.model.ruleset import Formula, PhysicsModule, Ruleset
+from rulecheck.model.track import Track
 from rulecheck.model.vocabulary import Vocabulary
 from rulecheck.physics.library import Library
+from rulecheck.reading.nodes import Located
 
 MOST_FRAMES = 250_000
 """What the longest chain of the most deeply nested formulas takes; such frames use no stack of the machine."""
+Tracks = Callable[[Located], Track]
 
 
 def bind(
@@ -40,16 +43,17 @@ def bind(
     validity_required: bool = False,
     also_known: Sequence[Ruleset] = (),
     figures: Sequence[str] = (),
+    tracks: Tracks | None = None,
 ) -> Graph:
     """Bind every rule of the rulesets for a design. Raises `Refused` with all faults.
 
     `also_known` are rulesets whose inputs the design may state though they are not checked; `figures` are physics
-    figures, or whole modules, that are wanted beside what the rules use. With `validity_required` no rule may rest on a
-    figure outside its range of validity.
+    figures, or whole modules, that are wanted beside what the rules use; `tracks` reads the track that a design names.
+    With `validity_required` no rule may rest on a figure outside its range of validity.
     """
     with deep_formulas():
         shared = _shared(design, rulesets, day, physics, also_known)
-        shared.strict = validity_required
+        shared.strict, shared.tracks = validity_required, tracks
         return _bound(shared, figures)
 
 

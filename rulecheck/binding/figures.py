@@ -6,6 +6,7 @@ from collections.abc import Mapping
 from dataclasses import dataclass, replace
 
 from rulecheck.binding.bound import BROKEN, Bound, Broken, Date, Item, Number, Place, Truth, Words, kind_of
+from rulecheck.binding.external import method_of, solver_output
 from rulecheck.binding.parsing import parsed, parsed_each
 from rulecheck.binding.reconciling import declared_figure, states_value
 from rulecheck.binding.scope import Owner, Scope
@@ -13,10 +14,11 @@ from rulecheck.binding.solves import solved
 from rulecheck.binding.tables import list_of, table_value
 from rulecheck.diagnostics import Refused, Span
 from rulecheck.formula.syntax import Call
-from rulecheck.graph.figures import Figure
+from rulecheck.graph.figures import Figure, Solved
 from rulecheck.graph.terms import Term
 from rulecheck.model.ruleset import Formula, PhysicsModule, Ruleset
 from rulecheck.operations.values import Reason
+from rulecheck.physics.solvers import OWN
 from rulecheck.quantity.dimension_names import name_of
 from rulecheck.quantity.units import Unit, UnitFault, find_unit
 from rulecheck.reading.nodes import Located
@@ -116,7 +118,7 @@ def known_names(scope: Scope) -> list[str]:
         if isinstance(owner, PhysicsModule)
         else {**owner.derived, **owner.tables, **owner.lists, **owner.rules}
     )
-    modules = (physics_module(scope, name) for name in scope.shared.physics.names)
+    modules = (physics_module(scope, name) for name in (*scope.shared.physics.names, *OWN))
     return [*own, *(f"{module.name}.{name}" for module in modules if module for name in module.figures)]
 
 
@@ -234,11 +236,15 @@ def _of_points(variables: Mapping[str, Bound] | None) -> bool:
 
 def _bind(scope: Scope, owner: Owner, formula: Formula, name: str) -> Made:
     states = scope.view.states
+    solver = owner.solver if isinstance(owner, PhysicsModule) and formula.by_solver else None
     syntax = parsed(scope, formula.formula)
-    if formula.solve is not None or formula.between:
+    how: Solved | None = None
+    if solver is not None:
+        bound = solver_output(scope, solver, formula.name, formula.span)
+    elif formula.solve is not None or formula.between:
         scope, bound, how = solved(scope, formula, name, syntax)
     else:
-        how, bound = None, scope.express(syntax) if syntax is not None else BROKEN
+        bound = scope.express(syntax) if syntax is not None else BROKEN
     bound = _spoken(scope, formula, bound)
     if any(term.kind == "variable" for term in scope.view.given.values()):
         return Made(bound, frozenset(scope.touched), frozenset())
@@ -248,6 +254,7 @@ def _bind(scope: Scope, owner: Owner, formula: Formula, name: str) -> Made:
         scope.shared.figures[full] = Figure(
             full, bound.term, getattr(bound, "unit", None), syntax, formula.meaning, _source(owner, formula),
             formula.formula.span, tuple(scope.uses.values()), valid, how, scope.arms,
+            method_of(scope, solver) if solver else "",
         )  # fmt: skip
         scope.figures.add(full)
         if scope.strict and valid is not None:

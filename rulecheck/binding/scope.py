@@ -15,6 +15,7 @@ from rulecheck.graph.figures import DeclaredCheck, Figure, InputFact
 from rulecheck.graph.terms import Bank, Constant, Term
 from rulecheck.model.design import Design, LeafNode, holders
 from rulecheck.model.ruleset import PhysicsModule, Ruleset
+from rulecheck.model.track import Track
 from rulecheck.model.vocabulary import Vocabulary
 from rulecheck.operations.operation import DimensionFault, Operation
 from rulecheck.operations.values import Reason
@@ -86,6 +87,7 @@ class Shared:
     stack: list[str] = field(default_factory=list)
     declared: dict[str, DeclaredCheck] = field(default_factory=dict)
     strict: bool = False
+    tracks: Callable[[Located], Track] | None = None
 
     def enter(self, name: str, span: Span | None, what: str) -> bool:
         """Begin to bind a named thing; False, with the fault noted, where that would go round in a circle or too deep."""

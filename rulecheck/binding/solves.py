@@ -13,7 +13,7 @@ from rulecheck.binding.parsing import parsed
 from rulecheck.binding.scope import Scope, View
 from rulecheck.formula.syntax import Syntax
 from rulecheck.graph.figures import Solved
-from rulecheck.graph.terms import Term
+from rulecheck.graph.terms import Equation, Term
 from rulecheck.model.ruleset import Formula
 from rulecheck.model.vocabulary import Entry
 from rulecheck.quantity.dimension_names import name_of
@@ -50,6 +50,10 @@ def solved(scope: Scope, formula: Formula, name: str, syntax: Syntax | None) -> 
     if term is None:
         told = f"the formula does not rest on '{path}'"
         scope.fault("wrong-arguments", told, syntax.span, advice="solve for an input that it reads")
+        return scope, BROKEN, None
+    if isinstance(term.value, Equation) and any(part.kind == "external" for part in term.value.moving):
+        told = "the formula of a solve rests on a figure that a solver finds, along which nothing is certain"
+        scope.fault("kind-mismatch", told, syntax.span, advice="vary the input with --vary, and read the figure there")
         return scope, BROKEN, None
     at = _with(scope, path, term, "at", name)
     rest = at.express(syntax)

@@ -7,6 +7,7 @@ from dataclasses import replace
 from rulecheck.binding.bodies import corners_of
 from rulecheck.binding.bound import Broken
 from rulecheck.binding.curves import bind_curve
+from rulecheck.binding.external import TRACK, track_of
 from rulecheck.binding.inputs import VALUE_KEYS, bind_input
 from rulecheck.binding.points import from_datum, place_of, zero_place
 from rulecheck.binding.ranges import bind_range
@@ -25,6 +26,7 @@ READ_BY_THEMSELVES = ("number", "point", "outline", "range")
 def validate(scope: Scope) -> None:
     """Note every fault of the design as it stands, and of its states."""
     design = scope.view.design
+    track_of(scope)
     for path, node in design.leaves.items():
         _leaf(scope, path, node)
     for path, names in design.items.items():
@@ -37,6 +39,8 @@ def validate(scope: Scope) -> None:
     for axis in design.states.values():
         for state in axis.values():
             inner = replace(scope, view=combined_view(scope.shared, [state]))
+            if TRACK in state.overlay.paths:
+                track_of(inner)
             for path, node in state.overlay.settings:
                 _leaf(inner, path, node)
 

@@ -30,7 +30,7 @@ class Solved:
 class Figure:
     """A named value with the formula behind it. `valid` is a flag: within the range of validity, or None. Where it is
     `solved`, the formula is zero at the value. `arms` are the conditionals of the formula that are settled, each with
-    the arm that is taken."""
+    the arm that is taken. `method` says how a solver found it, where no formula stands behind it."""
 
     name: str
     term: Term
@@ -43,6 +43,7 @@ class Figure:
     valid: Term | None = None
     solved: Solved | None = None
     arms: Mapping[Syntax, Syntax] = field(default_factory=dict)
+    method: str = ""
 
 
 @dataclass(frozen=True, slots=True)

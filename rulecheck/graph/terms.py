@@ -5,7 +5,8 @@ A bank makes the terms of one graph. Equal terms of one bank are one object, so 
 Kinds: `constant`; `input` (a number a design gives under a path, or lacks); `apply` (an operation);
 `branch` (condition, then, otherwise: reads its condition and the arm that it takes); `unknown`;
 `variable` (what an equation is solved for; occurs in equations only); `solve` (the least solution of an equation
-in a range: arguments are the ends of the range, then what the equation takes from outside).
+in a range: arguments are the ends of the range, then what the equation takes from outside);
+`external` (an output of a solver, with what the solver is handed).
 """
 
 from __future__ import annotations
@@ -17,11 +18,12 @@ from fractions import Fraction
 from typing import Any, Literal
 
 from rulecheck.diagnostics import Span
+from rulecheck.model.solver import Question
 from rulecheck.operations.operation import Operation, Sort
 from rulecheck.operations.values import Monomial, Reason
 from rulecheck.quantity.dimension import PURE, Dimension
 
-Kind = Literal["constant", "input", "apply", "branch", "unknown", "variable", "solve"]
+Kind = Literal["constant", "input", "apply", "branch", "unknown", "variable", "solve", "external"]
 Constant = Monomial | bool | str
 
 
@@ -40,8 +42,18 @@ class Equation:
 
 
 @dataclass(frozen=True, slots=True, eq=False)
+class External:
+    """One output of a solver; `needs` says of each argument whether this output rests on it."""
+
+    question: Question
+    output: str
+    needs: tuple[bool, ...]
+
+
+@dataclass(frozen=True, slots=True, eq=False)
 class Term:
-    """One node of the graph. `value` is the constant, the reason it is unknown, or the equation that is solved."""
+    """One node of the graph. `value` is the constant, the reason it is unknown, the equation that is solved, or what a
+    solver is asked."""
 
     index: int
     kind: Kind
@@ -49,7 +61,7 @@ class Term:
     dimension: Dimension
     operation: Operation | None = None
     arguments: tuple[Term, ...] = ()
-    value: Constant | Reason | Equation | None = None
+    value: Constant | Reason | Equation | External | None = None
     path: str = ""
 
 
@@ -144,6 +156,14 @@ class Bank:
         key = ("branch", *(part.index for part in parts))
         return self._make(key, "branch", then.sort, then.dimension, span, arguments=parts)
 
+    def external(
+        self, asked: External, arguments: Iterable[Term], sort: Sort, dimension: Dimension, span: Span | None = None
+    ) -> Term:
+        """An output of a solver, of the arguments in the order of its inputs."""
+        parts = tuple(arguments)
+        key = ("external", id(asked.question), asked.output, *(part.index for part in parts))
+        return self._make(key, "external", sort, dimension, span, arguments=parts, value=asked)
+
     def _make(
         self,
         key: tuple[object, ...],
@@ -154,7 +174,7 @@ class Bank:
         *,
         operation: Operation | None = None,
         arguments: tuple[Term, ...] = (),
-        value: Constant | Reason | Equation | None = None,
+        value: Constant | Reason | Equation | External | None = None,
         path: str = "",
     ) -> Term:
         known = self._known.get(key)

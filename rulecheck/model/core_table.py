@@ -7,7 +7,7 @@ numbers are left out, since they differ between editions).
 from __future__ import annotations
 
 from rulecheck.model.aero_table import AERO
-from rulecheck.model.operating_table import BALLASTING, COMPUTED, CONDITIONS, WEIGHING
+from rulecheck.model.operating_table import BALLASTING, COMPUTED, CONDITIONS, LAP, WEIGHING
 from rulecheck.model.shape_table import OUTLINES
 from rulecheck.model.vocabulary import Entry
 
@@ -338,6 +338,7 @@ CORE: tuple[Entry, ...] = (
     *CONDITIONS,
     *WEIGHING,
     *BALLASTING,
+    *LAP,
     *SAFETY,
     *RECORDS,
     *COMPUTED,

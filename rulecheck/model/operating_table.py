@@ -57,3 +57,21 @@ COMPUTED = (
     Entry("platform.width_over_tyres", "number", "Declared width over the tyres", unit="mm", computed=True),
 )
 """What stands beside figures that the car's own parts give."""
+
+LAP = (
+    Entry("track", "text", "File of the track that a lap is driven on, beside this file"),
+    Entry(
+        "vehicle.grip_law",
+        "choice",
+        "Grip in a lap: one coefficient for all wheels, or each tyre's own law at its load",
+        choices=("constant", "load"),
+        default="constant",
+    ),
+    Entry(
+        "brakes.distribution_law",
+        "choice",
+        "How a lap shares the brake force: as brakes.distribution says, or so that both axles use their grip",
+        choices=("fixed", "ideal"),
+        default="fixed",
+    ),
+)

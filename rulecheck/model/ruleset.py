@@ -9,6 +9,7 @@ from fractions import Fraction
 from typing import Literal
 
 from rulecheck.diagnostics import Span
+from rulecheck.model.solver import Solver
 from rulecheck.model.vocabulary import Entry
 from rulecheck.model.zones import PlaceCondition, Template, ZoneRule
 from rulecheck.quantity.dimension import Dimension
@@ -152,7 +153,7 @@ class Table:
 
 @dataclass(frozen=True, slots=True)
 class Formula:
-    """A figure defined by a formula: derived in a ruleset, or of a physics module."""
+    """A figure defined by a formula: derived in a ruleset, or of a physics module; or what a solver gives."""
 
     name: str
     span: Span
@@ -165,6 +166,7 @@ class Formula:
     of: Located | None
     solve: Located | None = None
     between: tuple[Located, ...] = ()
+    by_solver: bool = False
 
 
 @dataclass(frozen=True, slots=True)
@@ -223,7 +225,8 @@ class Replaces:
 
 @dataclass(frozen=True, slots=True)
 class PhysicsModule:
-    """A named set of formulas; `replaces` are the figures of other modules that its own take the place of."""
+    """A named set of formulas; `replaces` are the figures of other modules that its own take the place of. Those that
+    `solver` gives have no formula of their own."""
 
     name: str
     file: str
@@ -233,6 +236,7 @@ class PhysicsModule:
     caution: str
     replaces: tuple[Replaces, ...] = ()
     span: Span | None = field(default=None, compare=False)
+    solver: Solver | None = None
 
 
 @dataclass(frozen=True, slots=True)

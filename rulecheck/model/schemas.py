@@ -17,12 +17,21 @@ from urllib.parse import quote
 from rulecheck.model.core_table import CORE
 from rulecheck.model.design import NONE
 from rulecheck.model.ruleset import Ruleset
-from rulecheck.model.shape_schemas import DAY, DIALECT, TEXT, Schema, house_schema, physics_schema, ruleset_schema
+from rulecheck.model.shape_schemas import (
+    DAY,
+    DIALECT,
+    TEXT,
+    Schema,
+    house_schema,
+    physics_schema,
+    ruleset_schema,
+    track_schema,
+)
 from rulecheck.model.vocabulary import Entry, Vocabulary
 from rulecheck.quantity.quantity import SHAPES
 from rulecheck.quantity.reading_records import BASES
 
-__all__ = ["change_schema", "design_schema", "house_schema", "physics_schema", "ruleset_schema"]
+__all__ = ["change_schema", "design_schema", "house_schema", "physics_schema", "ruleset_schema", "track_schema"]
 
 _NUMBER = r"[+-]?[0-9][^ ]*"
 _FILES: Schema = {"anyOf": [{"type": "string"}, {"type": "array", "items": {"type": "string"}}]}

@@ -9,6 +9,8 @@ from rulecheck.model.decisions import DECISIONS
 from rulecheck.model.declarations import KINDS
 from rulecheck.model.edge import HouseShape, PhysicsShape, RulesetShape, Shape
 from rulecheck.model.ruleset_reader import EMPTY, STANDINGS, VALIDITIES
+from rulecheck.model.track_reader import DIRECTIONS, SegmentShape, TrackShape
+from rulecheck.model.track_reader import KINDS as TRACK_KINDS
 from rulecheck.model.zone_schemas import PLACES, TEMPLATES, ZONE, ZONES
 from rulecheck.quantity.quantity import SHAPES
 
@@ -96,6 +98,8 @@ _NARROWER: Mapping[tuple[str, str], Schema] = {
     ("RulesetShape", "zones"): ZONES,
     ("RulesetShape", "templates"): TEMPLATES,
     **{(shape, word): schema for word, schema in PLACES.items() for shape in ("RuleShape", "BranchShape")},
+    (TrackShape.__name__, "kind"): {"enum": list(TRACK_KINDS)},
+    (SegmentShape.__name__, "direction"): {"enum": list(DIRECTIONS)},
     ("HouseShape", "decision"): _DECISION,
     ("RulesetShape", "decision"): _DECISION,
     ("RuleShape", "decision"): _DECISION,
@@ -108,6 +112,11 @@ def ruleset_schema() -> Schema:
     """The schema of a ruleset file."""
     made = _of(RulesetShape, "Ruleset")
     return {**made, "$defs": {**made["$defs"], "zone": ZONE}}
+
+
+def track_schema() -> Schema:
+    """The schema of a track file."""
+    return _of(TrackShape, "Track")
 
 
 def house_schema() -> Schema:

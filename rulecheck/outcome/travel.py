@@ -37,7 +37,10 @@ class Headroom:
 
 @dataclass(frozen=True, slots=True)
 class HeadroomReport:
-    """The outcome of `headroom`: the least travel first; inputs that no rule reads are named apart."""
+    """The outcome of `headroom`: the least travel first; inputs that no rule reads are named apart.
+
+    `left_out` are rules that rest on a solver, each with the inputs that move it: along these nothing is certain.
+    """
 
     design: str
     file: str
@@ -48,3 +51,4 @@ class HeadroomReport:
     cautions: tuple[str, ...]
     version: str
     marks: tuple[Mark, ...] = ()
+    left_out: tuple[tuple[str, tuple[str, ...]], ...] = ()

@@ -77,6 +77,7 @@ def headroom_json(report: HeadroomReport) -> str:
             ],
             "unrestrained": list(report.unread),
             "marks": marks_json(report.marks),
+            "left_out": [{"rule": rule, "inputs": list(paths)} for rule, paths in report.left_out],
             "cautions": list(report.cautions),
         }
     )

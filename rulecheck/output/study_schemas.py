@@ -80,6 +80,10 @@ def headroom_schema() -> Schema:
         "inputs": list_of(row, "The least travel first"),
         "unrestrained": list_of(text_of(), "Inputs that no rule reads"),
         "marks": marks_schema(),
+        "left_out": list_of(
+            object_of({"rule": text_of(), "inputs": list_of(text_of(), "Inputs that move it")}),
+            "Rules that rest on a solver, along which nothing is certain",
+        ),
         "cautions": list_of(text_of(), "What the answer cannot decide"),
     }
     return {"$schema": DRAFT, "title": "Headroom", **object_of(properties), "$defs": shared_of()}

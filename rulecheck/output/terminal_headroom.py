@@ -37,6 +37,7 @@ def _parts(report: HeadroomReport) -> Iterable[RenderableType]:
         yield _table(report)
     else:
         yield words("no rule reads these inputs")
+    yield from _left_out(report)
     yield from _unread(report)
     for told in mark_lines(report.marks):
         yield line(told, 2)
@@ -72,6 +73,13 @@ def _stops(row: Headroom) -> Iterable[str]:
             continue
         more = f" and {len(travel.rules) - _MOST_RULES} more" if len(travel.rules) > _MOST_RULES else ""
         yield f"{way} to {short(travel.at)} {_WORDS[travel.ending]} {', '.join(travel.rules[:_MOST_RULES])}{more}"
+
+
+def _left_out(report: HeadroomReport) -> Iterable[RenderableType]:
+    for rule, paths in report.left_out:
+        more = f" and {len(paths) - _MOST_UNREAD} more" if len(paths) > _MOST_UNREAD else ""
+        yield Text()
+        yield line(f"left out, since a solver stands between: {rule}, by {', '.join(paths[:_MOST_UNREAD])}{more}")
 
 
 def _unread(report: HeadroomReport) -> Iterable[RenderableType]:

@@ -104,8 +104,9 @@ def _judged(part: PartResult) -> str:
 def _closed_form(found: ClosedFormResult) -> Iterable[RenderableType]:
     yield Text()
     yield line("as one formula of the inputs, in SI units:", 2)
-    yield line(f"margin = {found.formula}", 5)
+    if found.formula:
+        yield line(f"margin = {found.formula}", 5)
     yield from (line(f"change with {path}: {text}", 5) for path, text in found.derivatives.items())
     for path, texts in found.solved.items():
         yield from (line(f"on the limit: {path} = {text}", 5) for text in texts)
-    yield from (line(f"where {text}", 5) for text in found.conditions)
+    yield from (line(f"where {text}" if found.formula else text, 5) for text in found.conditions)

@@ -13,12 +13,16 @@ _DOWN = Context(prec=4, rounding=ROUND_DOWN)
 def short(amount: Amount | None) -> str:
     """An amount for a narrow column: four figures, cut and not rounded, so that no room is promised that is not there.
 
+    A bound is left out: the figures before it are those that it leaves sure.
+
     >>> short(Amount("0.00935039", "in")), short(Amount("13.66", "kg")), short(Amount("123456", "mm"))
     ('0.00935 in', '13.66 kg', '123456 mm')
+    >>> short(Amount("69.265 ± 0.002", "s"))
+    '69.26 s'
     """
     if amount is None:
         return ""
-    return str(Amount(_four_figures(amount.shown), amount.unit))
+    return str(Amount(_four_figures(amount.shown.partition(" ±")[0]), amount.unit))
 
 
 def _four_figures(shown: str) -> str:

@@ -12,6 +12,7 @@ from dataclasses import dataclass, field
 from rulecheck.diagnostics import Faults, Related
 from rulecheck.model.ruleset import Formula, PhysicsModule
 from rulecheck.physics.modules import BUILT_IN, built_in
+from rulecheck.physics.solvers import OWN
 from rulecheck.quantity.dimension import Dimension
 from rulecheck.quantity.units import UnitFault, find_unit
 from rulecheck.reading.nearest import nearest
@@ -58,7 +59,7 @@ def library(modules: Iterable[PhysicsModule], installed: Installed, faults: Faul
         other = own.get(module.name)
         if other is not None and other.file == module.file:
             continue
-        if other is not None or module.name in BUILT_IN:
+        if other is not None or module.name in (*BUILT_IN, *OWN):
             there = other.file if other is not None else "the built-in modules"
             faults.add(
                 "name-taken",

@@ -12,6 +12,7 @@ from rulecheck.operations.exact import BITS, Ball, PiNumber, Rational, size, to_
 from rulecheck.operations.operation import UNDECIDED, Operation, Undecided, Undefined
 from rulecheck.operations.values import Bounds, Reason, Unknown, merged
 from rulecheck.readers.algebraic import Algebraic
+from rulecheck.readers.external import solver_behind
 
 # From this precision on a proof that roots cancel is tried before the precision is doubled again.
 PROOF_BITS = 256
@@ -82,7 +83,7 @@ class Applying:
         if isinstance(found, Ball) and not found.is_finite():
             return self._outgrown(term) if bits >= self._most else UNDECIDED
         if found is UNDECIDED and bits >= self._most:
-            return tie(bits, self._bank.spans[term.index])
+            return tie(bits, self._bank.spans[term.index], term)
         return found
 
     def _outgrown(self, term: Term) -> Unknown:
@@ -90,8 +91,11 @@ class Applying:
         return Unknown((Reason("budget", text, self._bank.spans[term.index]),))
 
 
-def tie(bits: int, span: Span | None) -> Unknown:
-    """Not decided at the highest precision: `a tie at 1233 digits`."""
+def tie(bits: int, span: Span | None, term: Term) -> Unknown:
+    """Not decided at the highest precision: `a tie at 1233 digits`, or within the bound of a solver."""
+    solver = solver_behind(term)
+    if solver:
+        return Unknown((Reason("tie", f"within the bound of solver '{solver}'", span),))
     return Unknown((Reason("tie", f"a tie at {int(bits * math.log10(2))} digits", span),))
 
 

@@ -31,6 +31,7 @@ from rulecheck.operations.values import Bounds, Monomial, Reason, Unknown
 from rulecheck.readers.applying import EXACT_KINDS, Applying, tie
 from rulecheck.readers.decimals import in_digits, rounded
 from rulecheck.readers.enclosing import Enclosing
+from rulecheck.readers.external import answered
 from rulecheck.readers.solving import Solving
 
 # A graph with more terms is refused: a count, so that verdicts are reproducible.
@@ -104,7 +105,7 @@ class ExactReader:
             found = self._at(term, bits)
             if found is not UNDECIDED:
                 return found  # type: ignore[no-any-return]
-        return tie(self._most, self._bank.spans[term.index])
+        return tie(self._most, self._bank.spans[term.index], term)
 
     def sign(self, term: Term) -> int | Unknown:
         """-1, 0 or 1, certain; or why it cannot be had (`tie` where the most precise ball still holds zero)."""
@@ -130,7 +131,7 @@ class ExactReader:
                 return Unknown(found.reasons)
             if found is not UNDECIDED:
                 return at_precision(found, bits)
-        return tie(self._most, self._bank.spans[term.index])
+        return tie(self._most, self._bank.spans[term.index], term)
 
     def exact_fraction(self, term: Term) -> Fraction | None:
         """The value where it is rational and known to be, else None."""
@@ -185,7 +186,7 @@ class ExactReader:
                 decision = decide(term, found, bits)
             if decision is not UNDECIDED:
                 return decision
-        return tie(self._most, self._bank.spans[term.index])
+        return tie(self._most, self._bank.spans[term.index], term)
 
     def _sign_at(self, term: Term, value: Any, bits: int) -> int | Unknown | Undecided:
         if isinstance(value, (Rational, PiNumber)):
@@ -294,6 +295,8 @@ class ExactReader:
             return self._look(arms[0] if len(arms) == 1 else term.arguments[0], rough)
         if term.kind == "solve":
             return self._solving.value(term, [self._look(part, rough) for part in term.arguments])
+        if term.kind == "external":
+            return answered(term, [self._look(argument, rough) for argument in term.arguments])
         if term.kind == "unknown":
             return Unknown((term.value,)) if isinstance(term.value, Reason) else Unknown(())
         value = term.value if term.kind == "constant" else self._inputs.get(term.path)  # a variable has no value

@@ -13,8 +13,10 @@ from collections.abc import Iterable, Mapping
 from dataclasses import dataclass, field
 
 from rulecheck.graph.terms import Bank, Term, cone
+from rulecheck.model.solver import Argument
 from rulecheck.operations.exact import Ball, to_ball
 from rulecheck.readers.exact import START_BITS, ExactReader
+from rulecheck.readers.external import slopes
 from rulecheck.readers.implicit import implicit_partials, local_partials
 from rulecheck.readers.kinks import Kinks
 
@@ -25,12 +27,14 @@ class Gradient:
 
     Where `kinked`, `left` and `right` have the slopes towards smaller and larger values of those inputs whose two
     slopes differ; `slopes` has that of the operand which binds. A slope that is infinite says that the number jumps.
+    `differenced` says that a solver stands behind the number, whose own slopes are central differences.
     """
 
     slopes: dict[str, float] = field(default_factory=dict)
     kinked: bool = False
     left: dict[str, float] = field(default_factory=dict)
     right: dict[str, float] = field(default_factory=dict)
+    differenced: bool = False
 
     def sides(self, path: str) -> tuple[float, float]:
         """The slopes towards smaller and towards larger values of an input.
@@ -74,6 +78,7 @@ class GradientReader:
         slopes: dict[int, float] = {root.index: 1.0}
         found: dict[str, float] = {}
         kinked: list[Term] = []
+        differenced = False
         for term in reversed(terms):
             slope = slopes.get(term.index, 0.0)
             if not slope:
@@ -81,6 +86,7 @@ class GradientReader:
             if term.kind == "input" and term.sort == "number":
                 found[term.path] = found.get(term.path, 0.0) + slope
                 continue
+            differenced = differenced or term.kind == "external"
             if self._kinks.at(term):
                 kinked.append(term)
             for argument, partial in zip(term.arguments, self.partials(term), strict=True):
@@ -89,7 +95,7 @@ class GradientReader:
         if any(math.isnan(slope) for slope in found.values()):
             return None
         left, right = self._kinks.sides(root, terms, kinked, found) if kinked else ({}, {})
-        return Gradient(dict(sorted(found.items())), bool(kinked), left, right)
+        return Gradient(dict(sorted(found.items())), bool(kinked), left, right, differenced)
 
     def along(self, root: Term, steps: Mapping[str, float]) -> float | None:
         """The first-order change of a number when several inputs move together; None where it has no slope.
@@ -118,7 +124,16 @@ class GradientReader:
         if term.kind == "branch":
             taken = self._reader.truth(term.arguments[0])
             return (0.0, 1.0 if taken is True else 0.0, 1.0 if taken is False else 0.0)
+        if term.kind == "external":
+            return slopes(term, [self._argument(argument) for argument in term.arguments])
         return local_partials(term, [self.value(argument) for argument in term.arguments])
+
+    def _argument(self, term: Term) -> Argument:
+        """What a solver is handed; None where it is not known."""
+        if term.sort == "number":
+            return self._reader.approximate(term)
+        found = self._reader.value(term)
+        return found if isinstance(found, (str, bool)) else None
 
     def value(self, term: Term) -> float:
         """A term as a double; not a number where it is not known."""

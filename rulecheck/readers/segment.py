@@ -6,10 +6,11 @@ from collections.abc import Iterable
 from fractions import Fraction
 from typing import Any
 
-from rulecheck.graph.terms import Bank, Inputs, Term
+from rulecheck.graph.terms import Bank, Inputs, Term, cone
 from rulecheck.operations.exact import Ball, from_fraction
 from rulecheck.operations.values import Monomial, Unknown
 from rulecheck.readers.exact import ExactReader
+from rulecheck.readers.external import operands
 
 BITS = 64
 
@@ -45,6 +46,10 @@ class SegmentReader:
         """True where a term rests on the input."""
         return term.index in self._moving
 
+    def is_certain(self, term: Term) -> bool:
+        """False where a solver stands between the input and the term: along a stretch it is never certain."""
+        return not any(part.kind == "external" and part.index in self._moving for part in cone([term]))
+
     def truths(self, flags: Iterable[Term], low: Fraction, high: Fraction) -> list[bool | None]:
         """What each flag certainly is from `low` to `high` (SI, without the power of pi); None where it is not certain."""
         middle, radius = from_fraction((low + high) / 2), from_fraction((high - low) / 2)
@@ -77,6 +82,6 @@ def resting_on(bank: Bank, path: str) -> set[int]:
     """All terms that rest on an input; arguments come first, so one pass is enough."""
     found: set[int] = set()
     for term in bank.terms:
-        if (term.kind == "input" and term.path == path) or any(part.index in found for part in term.arguments):
+        if (term.kind == "input" and term.path == path) or any(part.index in found for part in operands(term)):
             found.add(term.index)
     return found

@@ -139,6 +139,9 @@ class _Forms:
 
     def _cone(self, root: Term) -> list[Term]:
         terms = cone([root])
+        if any(term.kind == "external" for term in terms):
+            message = "there is no closed form: a solver stands behind this figure"
+            raise Refused([Diagnostic("no-closed-form", message, advice="ask for workings without a closed form")])
         widest = max(len(term.arguments) for term in terms)
         if len(terms) > MOST_TERMS or widest > MOST_OPERANDS:
             message = f"a closed form of {len(terms)} terms would help no reader; {MOST_TERMS} is the bound"

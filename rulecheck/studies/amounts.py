@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import math
 from datetime import date
-from decimal import Decimal
+from decimal import ROUND_CEILING, Decimal
 from fractions import Fraction
 
 from rulecheck.diagnostics import Span
@@ -18,8 +18,11 @@ from rulecheck.quantity.numbers import show_exact, show_number
 from rulecheck.quantity.units import Unit
 from rulecheck.readers.certain import Certain
 from rulecheck.readers.exact import ExactReader
+from rulecheck.readers.external import solver_behind
 
 DIGITS = 6
+_SHOWN_BITS = 20
+"""A number that is known more closely than this is shown with its six digits alone."""
 MOST_DIGITS = 10_000
 """A number with more digits before or behind the point is shown from its decimal form."""
 
@@ -101,10 +104,33 @@ def _rounded(reader: ExactReader, bank: Bank, term: Term, unit: Unit | None, sym
     if abs(digits.adjusted()) > MOST_DIGITS:
         # As a fraction such a number would fill the memory.
         return Amount(_far(digits), symbol, reader.approximate(scaled))
-    rational = Fraction(digits)
-    if unit is not None and unit.offset and symbol != "K":
-        rational -= unit.offset / unit.factor
-    return Amount(show_number(rational, DIGITS), symbol, reader.approximate(scaled))
+    offset = unit.offset / unit.factor if unit is not None and symbol != "K" else Fraction(0)
+    value, bound = reader.approximate(scaled), _bound(reader, scaled)
+    if bound and value is not None:
+        return Amount(_with_bound(Fraction(value) - offset, bound), symbol, value)
+    return Amount(show_number(Fraction(digits) - offset, DIGITS), symbol, value)
+
+
+def _bound(reader: ExactReader, term: Term) -> Decimal:
+    """The bound of a number that a solver found, where it shows in the digits of the screen; else 0."""
+    if not solver_behind(term):
+        return Decimal(0)
+    found = reader.value(term)
+    if not isinstance(found, Ball) or found.rel_accuracy_bits() > _SHOWN_BITS:
+        return Decimal(0)
+    return Decimal(float(found.rad()))
+
+
+def _with_bound(value: Fraction, bound: Decimal) -> str:
+    """A number with its bound, both to the place of the bound's first digit, and the bound rounded up.
+
+    >>> _with_bound(Fraction("66.38413"), Decimal("0.001796"))
+    '66.384 ± 0.002'
+    """
+    place = Decimal(1).scaleb(bound.adjusted())
+    wide = bound.quantize(place, rounding=ROUND_CEILING)
+    steps = math.floor(value / Fraction(place) + Fraction(1, 2))
+    return f"{Decimal(steps) * place:f} ± {wide:f}"
 
 
 def _far(digits: Decimal) -> str:

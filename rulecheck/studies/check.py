@@ -292,7 +292,7 @@ class Checker:
         if term is None:
             return None
         while term.arguments and term.kind != "input":
-            inputs = [argument for argument in term.arguments if argument.kind in ("input", "apply", "branch", "solve")]
+            inputs = [argument for argument in term.arguments if argument.kind not in ("constant", "unknown")]
             if not inputs:
                 break
             term = inputs[0]

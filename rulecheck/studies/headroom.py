@@ -48,17 +48,22 @@ def headroom(checker: Checker, design: Design, names: Sequence[str], day: date) 
         if name not in numbers:
             faults.add("unknown-name", f"the design gives no number under '{name}'", advice=nearest(name, numbers))
     faults.settle()
-    rows, unread = [], []
+    rows: list[Headroom] = []
+    unread: list[str] = []
+    left_out: dict[str, list[str]] = {}
     for path in names or numbers:
-        found = _Input(checker, path).headroom()
+        moved = _Input(checker, path)
+        found = moved.headroom()
+        for rule in moved.left_out:
+            left_out.setdefault(rule.name, []).append(path)
         if found is None:
-            unread.append(path)
+            unread.extend(() if moved.left_out else (path,))
         else:
             rows.append(found)
     breached = tuple(rule.name for rule in graph.rules if rule.binds and checker.reader.truth(rule.met) is False)
     return HeadroomReport(
         design.name, design.file, day.isoformat(), tuple(sorted(rows, key=_least)), tuple(unread), breached,
-        (CAUTION,), __version__, marks([checker]),
+        (CAUTION,), __version__, marks([checker]), tuple((rule, tuple(paths)) for rule, paths in left_out.items()),
     )  # fmt: skip
 
 
@@ -93,7 +98,9 @@ class _Input:
         assert isinstance(value, Monomial)
         self.start = value.rational
         self.along = SegmentReader(graph.bank, graph.inputs, checker.reader, path)
-        rules = [rule for rule in graph.rules if rule.binds and self.along.moves(rule.met)]
+        moved = [rule for rule in graph.rules if rule.binds and self.along.moves(rule.met)]
+        rules = [rule for rule in moved if self.along.is_certain(rule.met)]
+        self.left_out = [rule for rule in moved if rule not in rules] if len(rules) < len(moved) else []
         self.met = [rule for rule in rules if checker.reader.truth(rule.met) is True]
         self.broken = [rule for rule in rules if checker.reader.truth(rule.met) is False]
 

@@ -102,8 +102,10 @@ def _figure(checker: Checker, figure: Figure, describe: Describe | None, caution
 
 
 def _formula(figure: Figure) -> str:
-    """The formula of a step; of a solve, what is looked for."""
+    """The formula of a step; of a solve, what is looked for; of a solver's figure, how it was found."""
     solved = figure.solved
+    if figure.method:
+        return figure.method
     if solved is None:
         return show(figure.syntax)
     return f"the least {solved.path} from {solved.low} to {solved.high} with {show(figure.syntax)} = 0"
@@ -196,7 +198,7 @@ class _Walk:
 
     def _numbers(self, figure: Figure) -> str:
         """The formula with numbers; of a solve, with those at the solution, and what is left of zero there."""
-        numbers = self._with_numbers(figure.syntax, figure.uses, figure.arms)
+        numbers = "" if figure.method else self._with_numbers(figure.syntax, figure.uses, figure.arms)
         if figure.solved is None:
             return numbers
         rest = self.checker.reader.ball(figure.solved.residual, START_BITS)

@@ -4,7 +4,33 @@ from __future__ import annotations
 
 from wrong_inputs import NUMBERS, Wrong, rule
 
+_HILL = "track: Combe\nkind: hill\naltitude: 90 m\nsegments:\n"
+
 WRONG_DESIGNS: tuple[Wrong, ...] = (
+    Wrong(
+        "a track that is not there",
+        (
+            "car.design.yaml:4:8: no-such-file: there is no file combe.track.yml; expected the name of a file, relative to the file that names it; did you mean 'combe.track.yaml'?",
+        ),
+        design="track: combe.track.yml\n",
+        files={"combe.track.yaml": _HILL + "  - {length: 90 m}\n"},
+    ),
+    Wrong(
+        "a track outside the folder",
+        (
+            "car.design.yaml:4:8: outside-root: ../combe.track.yaml lies outside the design's own folder, which is the root where no git work tree and no rulecheck.yaml is above it; expected a file below that folder, named relative to the file that names it; put a file 'rulecheck.yaml' with the line 'house: NAME' into the folder above, or make that a git work tree",
+        ),
+        design="track: ../combe.track.yaml\n",
+    ),
+    Wrong(
+        "a track that a state names, with two faults",
+        (
+            "combe.track.yaml:5:31: bad-track: a straight has no direction; add its radius, or take the key out",
+            "combe.track.yaml:6:14: bad-track: '0 m' is too small; expected at least 0.1 m",
+        ),
+        design="states: {place: {here: {track: combe.track.yaml}}}\n",
+        files={"combe.track.yaml": _HILL + "  - {length: 90 m, direction: left}\n  - {length: 0 m}\n"},
+    ),
     Wrong(
         "a ruleset that is not there",
         (

@@ -37,7 +37,7 @@ def test_a_figure_is_the_solution_of_its_equation() -> None:
     assert found.value.value == pytest.approx(50)
 
 
-def test_the_input_that_is_solved_for_need_not_be_stated_and_does_not_count() -> None:
+def test_the_input_that_by_solver_for_need_not_be_stated_and_does_not_count() -> None:
     stated = only(CAR + "vehicle: {speed: 7 m/s}\n", rules("require: top <= 50 m/s"))
     assert stated.verdict == "complies"
     beside = only(CAR + "vehicle: {speed: 7 m/s}\n", rules("require: resistance <= 49 N"))

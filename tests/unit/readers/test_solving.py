@@ -137,7 +137,7 @@ def test_neither_a_touch_nor_a_jump_nor_a_pole_is_taken_for_a_solution() -> None
         assert "touches zero, jumps or has no value near" in text
 
 
-def test_a_formula_with_kinks_is_solved_across_them() -> None:
+def test_a_formula_with_kinks_by_solver_across_them() -> None:
     e = Equations()
     low, high = e.of(multiply, e.x, e.number(2)), e.of(add, e.x, e.number(1))
     least = e.of(subtract, e.of(minimum, low, high), e.number(2))
@@ -148,7 +148,7 @@ def test_a_formula_with_kinks_is_solved_across_them() -> None:
     assert e.reader().value(e.solve(away)) == 3
 
 
-def test_a_branch_is_solved_in_the_arm_that_holds() -> None:
+def test_a_branch_by_solver_in_the_arm_that_holds() -> None:
     e = Equations()
     arms = e.bank.branch(e.of(at_most, e.x, e.number(2)), e.number(7), e.of(subtract, e.number(6), e.x))
     assert e.reader().value(e.solve(arms)) == 6
