@@ -15,8 +15,9 @@ from typing import NamedTuple
 from rulecheck.physics.lap.car import Car, Tyre
 from rulecheck.physics.lap.road import Piece
 
-_ROUNDS = 3
-"""Rounds in which the grip of a tyre that fades with load follows the load that it makes; each leaves about a twentieth."""
+_ROUNDS = 12
+"""So many rounds may the grip of a tyre that fades with load follow the load that it makes; each leaves about a twentieth."""
+_CLOSE = 1e-7
 _NEWTON = 40
 _UNLIMITED = 1e12
 _LEAST_SQUARE = 1e-12
@@ -99,12 +100,15 @@ class Forces:
         car, moved = self.car, -self.arm * at.resistance
         if self._constant:
             return find(at, at.front - moved, at.rear + moved, car.front.grip, car.rear.grip)
-        force = 0.0
-        for _ in range(_ROUNDS + (self.piece.curved and 2)):
+        force = before = 0.0
+        for _ in range(_ROUNDS):
             shifted = moved + sense * self.arm * force
             front = _grip(car.front, at.front - shifted, at.sideways)
             rear = _grip(car.rear, at.rear + shifted, at.sideways)
             force = min(find(at, at.front - moved, at.rear + moved, front, rear), _UNLIMITED)
+            if abs(force - before) <= _CLOSE * force:
+                break
+            before = force
         return force
 
     def _drive(self, at: Stand, front: float, rear: float, front_grip: float, rear_grip: float) -> float:
