@@ -49,9 +49,14 @@ def leaf(
         shown = scalar(node)
         scope.shared.facts[name] = InputFact(
             name, unit, node.span, basis_of(scope, path, node), beside(node, "reference"),
-            shown.text if shown else "", setting, spread,
+            shown.text if shown else "", setting, spread, _sign(scope, path),
         )  # fmt: skip
     return scope.bank.input(name, "number", unit.dimension, node.span)
+
+
+def _sign(scope: Scope, path: str) -> str:
+    entry = scope.shared.vocabulary.entry(path)
+    return entry.sign if entry is not None else ""
 
 
 def _setting(scope: Scope, path: str) -> str:

@@ -8,7 +8,8 @@ from rulecheck.binding.bodies import corners_of
 from rulecheck.binding.bound import Broken
 from rulecheck.binding.curves import bind_curve
 from rulecheck.binding.external import TRACK, track_of
-from rulecheck.binding.inputs import VALUE_KEYS, bind_input
+from rulecheck.binding.inputs import VALUE_KEYS, bind_input, quantity
+from rulecheck.binding.leaves import scalar
 from rulecheck.binding.points import from_datum, place_of, zero_place
 from rulecheck.binding.ranges import bind_range
 from rulecheck.binding.scope import Scope
@@ -107,6 +108,20 @@ def _value(scope: Scope, path: str, entry: Entry, node: LeafNode) -> None:
         bind_range(scope, path, entry, node.span)
     elif not isinstance(bind_input(scope, path, entry, node.span), Broken):
         _definition(scope, path, entry, node)
+        _sign(scope, path, entry, node)
+
+
+def _sign(scope: Scope, path: str, entry: Entry, node: LeafNode) -> None:
+    """A mass below zero, a wheelbase of zero: a slip that might even mend a rule."""
+    read = quantity(scope, entry, node) if entry.sign and entry.kind == "number" else None
+    if read is None:
+        return
+    size = read.si()[0]
+    if size < 0 or (size == 0 and entry.sign == "more than 0"):
+        shown = scalar(node)
+        said = "is below zero" if size < 0 else "is zero"
+        told = f"'{path}' {said}" + (f": {shown.text}" if shown else "")
+        scope.fault("bad-value", told, node.span, expected=f"a value that is {entry.sign}")
 
 
 def _is_single(scope: Scope, path: str, node: LeafNode) -> bool:

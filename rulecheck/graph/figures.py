@@ -51,6 +51,7 @@ class InputFact:
     """What is known of an input beside its value; the widths of its spread are in SI, without the value's power of pi.
 
     `setting` is the state that sets it: such an input goes by its path and that state, and is nobody's to move.
+    `sign` is what it must be: `more than 0`, `0 or more`, or nothing.
     """
 
     path: str
@@ -61,6 +62,7 @@ class InputFact:
     text: str = ""
     setting: str = ""
     spread: Uncertainty | Tolerance | None = None
+    sign: str = ""
 
 
 @dataclass(frozen=True, slots=True)

@@ -71,6 +71,8 @@ def meaning(entry: Entry) -> str:
     parts = [entry.meaning]
     if entry.term:
         parts.append(entry.term)
+    if entry.sign:
+        parts.append(entry.sign)
     if entry.default:
         parts.append(f"`{entry.default}` where not stated")
     return "; ".join(parts)

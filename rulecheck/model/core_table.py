@@ -9,6 +9,7 @@ from __future__ import annotations
 from rulecheck.model.aero_table import AERO
 from rulecheck.model.operating_table import BALLASTING, COMPUTED, CONDITIONS, LAP, WEIGHING
 from rulecheck.model.shape_table import OUTLINES
+from rulecheck.model.value_signs import signed
 from rulecheck.model.vocabulary import Entry
 
 
@@ -326,20 +327,22 @@ RECORDS = (
     Entry("claims.*", "text", "Branch that is claimed for a rule"),
 )
 
-CORE: tuple[Entry, ...] = (
-    *DIMENSIONS,
-    *OPTIONS,
-    *MASSES,
-    *TYRES,
-    *AERO,
-    *PLACES,
-    *OUTLINES,
-    *SYSTEMS,
-    *CONDITIONS,
-    *WEIGHING,
-    *BALLASTING,
-    *LAP,
-    *SAFETY,
-    *RECORDS,
-    *COMPUTED,
+CORE: tuple[Entry, ...] = signed(
+    (
+        *DIMENSIONS,
+        *OPTIONS,
+        *MASSES,
+        *TYRES,
+        *AERO,
+        *PLACES,
+        *OUTLINES,
+        *SYSTEMS,
+        *CONDITIONS,
+        *WEIGHING,
+        *BALLASTING,
+        *LAP,
+        *SAFETY,
+        *RECORDS,
+        *COMPUTED,
+    )
 )

@@ -205,6 +205,8 @@ def _said(entry: Entry) -> str:
         parts.append(f"by the definition '{entry.definition}'")
     if entry.basis:
         parts.append(f"with the basis '{entry.basis}'" + (" and a reference" if entry.basis == "supplier" else ""))
+    if entry.sign:
+        parts.append(entry.sign)
     if entry.default:
         parts.append(f"{entry.default} where not stated")
     return "; ".join(part for part in parts if part)

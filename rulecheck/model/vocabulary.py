@@ -19,7 +19,8 @@ class Entry:
 
     `unit` is the unit in which the value is spoken of (`1` for a pure number); `default` the text that holds where
     nothing is stated; `items` and `at_least` say what a collection must hold; `definition` is the definition that a
-    ruleset asks for, `definitions` those that rival; `basis` is where a ruleset asks the value to come from; `over` the units of the keys of a curve or map. `computed` marks a declared value beside a computed figure.
+    ruleset asks for, `definitions` those that rival; `basis` is where a ruleset asks the value to come from; `over` the units of the keys of a curve or map.
+    `computed` marks a declared value beside a computed figure; `sign` is what a stated number must be.
     """
 
     path: str
@@ -39,6 +40,7 @@ class Entry:
     origin: str = ""
     computed: bool = False
     over: tuple[str, ...] = ()
+    sign: Literal["", "more than 0", "0 or more"] = ""
     span: Span | None = field(default=None, compare=False)
 
 

@@ -88,4 +88,5 @@ def _unread(report: HeadroomReport) -> Iterable[RenderableType]:
     more = f" and {len(report.unread) - _MOST_UNREAD} more" if len(report.unread) > _MOST_UNREAD else ""
     yield Text()
     yield line(f"no rule restrains: {', '.join(report.unread[:_MOST_UNREAD])}{more}")
-    yield line("free: nothing stops it as far as 100 times its value; ~ known to a billionth of that", style="dim")
+    yield line("free: nothing stops it as far as 100 times its value, nor down to zero where", style="dim")
+    yield line("lower values are no values; ~ known to a billionth of that", style="dim")

@@ -122,7 +122,7 @@ class _Input:
         flags = [rule.met for rule in rules]
         # As far as each rule certainly stays: of a part of a stretch only those are asked that were not certain in all of it.
         far = [Fraction(0)] * len(rules)
-        reach = REACH * (abs(self.start) or self._one())
+        reach = self._reach(direction)
         inner, width, steps = Fraction(0), reach / 1024, 0
         while inner < reach:
             steps += 1
@@ -145,6 +145,12 @@ class _Input:
             else:
                 width /= 2
         return Travel("free", None, None, (), False)
+
+    def _reach(self, direction: int) -> Fraction:
+        """How far is looked: a hundred times the value, and never to where the value would be a slip."""
+        if direction < 0 and self.fact.sign:
+            return self.start if self.fact.sign == "0 or more" else self.start * (1 - FINENESS)
+        return REACH * (abs(self.start) or self._one())
 
     def _holds_beside(self, flags: Sequence[Term], direction: int, outer: Fraction, holds: bool) -> bool:
         points = (outer / 8, outer / 2, outer)
