@@ -304,8 +304,8 @@ def handbook(page: str, what: str, rules: tuple[str, ...]) -> None:
         raise click.UsageError("WHAT and --rules go with 'handbook schema'", click.get_current_context())
     elif not page:
         text = page_text(pages.page("index"), screen)
-    elif page in pages.names():
-        text = page_text(pages.page(page), screen)
+    elif pages.meant(page) in pages.names():
+        text = page_text(pages.page(pages.meant(page)), screen)
     else:
         raise click.UsageError(
             f"the handbook has no page '{page}'; it has {', '.join(pages.names())}", click.get_current_context()

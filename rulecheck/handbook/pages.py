@@ -12,6 +12,7 @@ import re
 import shlex
 from pathlib import Path
 
+from rulecheck.handbook.module_pages import PREFIX, module_names, module_page
 from rulecheck.handbook.tables import TABLES
 
 FOLDER = Path(__file__).parent
@@ -38,15 +39,31 @@ _EXAMPLE = re.compile(r"^```(\w+) (.+)$", re.MULTILINE)
 
 
 def names() -> tuple[str, ...]:
-    """The names of all pages, in the order of reading."""
-    there = sorted(path.stem for path in FOLDER.glob("*.md"))
-    return tuple(sorted(there, key=lambda name: FIRST.index(name) if name in FIRST else len(FIRST)))
+    """The names of all pages, in the order of reading; those of the physics modules stand behind `physics`."""
+    there = [path.stem for path in FOLDER.glob("*.md")] + list(module_names())
+    return tuple(sorted(there, key=_place))
+
+
+def _place(name: str) -> tuple[int, str]:
+    first = name if name in FIRST else "physics" if name.startswith(PREFIX) else ""
+    return (FIRST.index(first) if first else len(FIRST), "" if name in FIRST else name)
+
+
+def meant(name: str) -> str:
+    """The page that a name stands for: a module's name alone stands for its page.
+
+    >>> meant("mass"), meant("units")
+    ('physics-mass', 'units')
+    """
+    return f"{PREFIX}{name}" if f"{PREFIX}{name}" in module_names() else name
 
 
 def page(name: str) -> str:
     """The Markdown of a page. Raises `KeyError` where there is no such page."""
     if name not in names():
         raise KeyError(name)
+    if name in module_names():
+        return module_page(name.removeprefix(PREFIX))
     text = (FOLDER / f"{name}.md").read_text(encoding="utf-8")
     return _MARKER.sub(lambda found: TABLES[found[1]](), _EXAMPLE.sub(_captioned, text))
 
@@ -68,5 +85,5 @@ def title(name: str) -> str:
     >>> title("units")
     'Units'
     """
-    first, _, _ = (FOLDER / f"{name}.md").read_text(encoding="utf-8").partition("\n")
+    first, _, _ = page(name).partition("\n")
     return first.removeprefix("# ")

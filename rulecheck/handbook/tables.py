@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Iterable
+from collections.abc import Callable
 from fractions import Fraction
 
 from rulecheck.binding import aggregates, arithmetic, curves, placing, points, rules, scope, states
@@ -11,34 +11,17 @@ from rulecheck.diagnostics import CODES
 from rulecheck.formula import lexer, token_reader
 from rulecheck.geometry import cells, hulls, outlines
 from rulecheck.handbook.functions import FUNCTIONS
+from rulecheck.handbook.markdown import table
+from rulecheck.handbook.module_pages import modules_table
 from rulecheck.model import correlations, design_reader, house_rules, ruleset_reader, zone_reader
 from rulecheck.model.core_table import CORE
-from rulecheck.model.ruleset import Formula
 from rulecheck.model.value_ranges import MOST_CURVES, MOST_VALUES
 from rulecheck.model.vocabulary import Entry
-from rulecheck.physics.modules import BUILT_IN, built_in
 from rulecheck.quantity import numbers, unit_table, value_parts
 from rulecheck.readers import exact
 from rulecheck.reading import bounds
 from rulecheck.reading.ledger import COLUMNS, REQUIRED
 from rulecheck.studies import varying, worst_case
-
-
-def table(head: Iterable[str], rows: Iterable[Iterable[str]]) -> str:
-    """A Markdown table; upright lines in cells are escaped.
-
-    >>> print(table(["a", "b"], [["1", "x|y"]]))
-    | a | b |
-    | --- | --- |
-    | 1 | x\\|y |
-    """
-    names = list(head)
-    lines = [_line(names), _line(["---"] * len(names)), *(_line(row) for row in rows)]
-    return "\n".join(lines)
-
-
-def _line(cells: Iterable[str]) -> str:
-    return "| " + " | ".join(cell.replace("|", "\\|") for cell in cells) + " |"
 
 
 def vocabulary() -> str:
@@ -199,36 +182,6 @@ def value_key_rows() -> str:
     return ", ".join(f"`{key}`" for key in VALUE_KEYS)
 
 
-def physics_rows() -> str:
-    """Every figure of every built-in physics module."""
-    parts = []
-    for name in BUILT_IN:
-        module = built_in(name)
-        assert module is not None
-        rows = (
-            [
-                f"`{name}.{figure.name}`",
-                figure.meaning,
-                f"{_solved(figure)}`{figure.formula.text}`{' = 0' if figure.solve else ''}",
-                f"`{figure.valid.text}`" if figure.valid else "",
-            ]
-            for figure in module.figures.values()
-        )
-        sources = "\n".join(f"- {text}" for text in module.sources.values())
-        caution = f"\n\nCaution: {module.caution}" if module.caution else ""
-        head = f"## {name}\n\n{module.meaning}.{caution}"
-        parts.append(f"{head}\n\n{table(['figure', 'meaning', 'formula', 'valid for'], rows)}\n\nSources:\n\n{sources}")
-    return "\n\n".join(parts)
-
-
-def _solved(figure: Formula) -> str:
-    """What a figure is solved for."""
-    if figure.solve is None:
-        return ""
-    low, high = figure.between
-    return f"the least `{figure.solve.text}` from {low.text} to {high.text} with "
-
-
 TABLES: dict[str, Callable[[], str]] = {
     "vocabulary": vocabulary,
     "units": unit_rows,
@@ -240,5 +193,5 @@ TABLES: dict[str, Callable[[], str]] = {
     "functions": function_rows,
     "ledger": ledger_rows,
     "value-keys": value_key_rows,
-    "physics": physics_rows,
+    "physics": modules_table,
 }

@@ -160,6 +160,7 @@ class PhysicsShape(Shape):
     replaces: Leaves | None = Field(
         None, description="Figures of other modules that those of the same name here take the place of, with the reason"
     )
+    traps: list[Leaf] | None = Field(None, description="Mistakes that practitioners make with these figures")
 
 
 class HouseShape(Shape):

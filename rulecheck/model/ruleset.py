@@ -237,6 +237,7 @@ class PhysicsModule:
     replaces: tuple[Replaces, ...] = ()
     span: Span | None = field(default=None, compare=False)
     solver: Solver | None = None
+    traps: tuple[str, ...] = ()
 
 
 @dataclass(frozen=True, slots=True)

@@ -36,10 +36,11 @@ class Scale:
         >>> [Scale(0, 10, 11).place(value) for value in (0, 4.4, 10)], Scale(3, 3, 11).place(3)
         ([0, 4, 10], 0)
         """
-        if self.high <= self.low:
-            return 0
         # Halves first: the whole width of the greatest doubles would not be one.
-        share = (value / 2 - self.low / 2) / (self.high / 2 - self.low / 2)
+        width = self.high / 2 - self.low / 2
+        if width <= 0:
+            return 0
+        share = (value / 2 - self.low / 2) / width
         return min(max(round(share * (self.length - 1)), 0), self.length - 1)
 
     def beside_post(self, value: float) -> int:

@@ -54,8 +54,17 @@ def read_module(workspace: Workspace, file: str, asked: Span | None = None) -> P
     check_name(shape.module, faults)
     faults.settle()
     sources = {name: where.text for name, where in shape.sources.items()}
+    traps = tuple(where.text for where in shape.traps or ())
     return PhysicsModule(
-        shape.module.text, file, shape.meaning.text, sources, figures, text(shape.caution), replaces, shape.module.span
+        shape.module.text,
+        file,
+        shape.meaning.text,
+        sources,
+        figures,
+        text(shape.caution),
+        replaces,
+        shape.module.span,
+        traps=traps,
     )
 
 

@@ -20,10 +20,10 @@ from rulecheck.diagnostics import CODES
 from rulecheck.formula.tokens import AGGREGATES
 from rulecheck.handbook import pages, tables
 from rulecheck.handbook.functions import FUNCTIONS, Row
+from rulecheck.handbook.module_pages import module_names
 from rulecheck.model.core_table import CORE
 from rulecheck.model.edge import RulesetShape, RuleShape
 from rulecheck.outcome.results import VERDICTS
-from rulecheck.physics.modules import BUILT_IN, built_in
 from rulecheck.quantity import unit_table
 
 DAY = date(2027, 3, 1)
@@ -34,16 +34,16 @@ def _first_column(table: str) -> list[str]:
 
 
 def test_every_marker_is_filled_and_every_table_is_shown() -> None:
-    written = {name: (pages.FOLDER / f"{name}.md").read_text("utf-8") for name in pages.names()}
+    written = {name: (pages.FOLDER / f"{name}.md").read_text("utf-8") for name in pages.FIRST}
     marked = re.findall(r"<!-- table: (\S+) -->", "".join(written.values()))
     assert sorted(marked) == sorted(tables.TABLES)
     assert all("<!--" not in pages.page(name) for name in pages.names())
 
 
 def test_every_page_has_its_place_and_is_named_by_the_index() -> None:
-    assert pages.names() == pages.FIRST
+    assert tuple(name for name in pages.names() if name not in module_names()) == pages.FIRST
     index = pages.page("index")
-    assert [name for name in pages.names() if name != "index"] == re.findall(r"^\| `([a-z-]+)` \|", index, re.MULTILINE)
+    assert [name for name in pages.FIRST if name != "index"] == re.findall(r"^\| `([a-z-]+)` \|", index, re.MULTILINE)
 
 
 def test_heads_of_examples_are_for_readers() -> None:
@@ -60,7 +60,7 @@ def test_an_unknown_page() -> None:
 
 
 def test_pages_keep_to_their_width() -> None:
-    for name in pages.names():
+    for name in pages.FIRST:
         inside = False
         for line in (pages.FOLDER / f"{name}.md").read_text("utf-8").splitlines():
             inside ^= line.startswith("```")
@@ -84,14 +84,14 @@ def test_sizes_of_units_are_exact() -> None:
     assert Fraction("745.69987158227022") == Fraction(sizes["hp"].split()[0])
 
 
-def test_every_physics_figure_is_shown_with_its_sources() -> None:
-    shown = pages.page("physics")
-    for name in BUILT_IN:
-        module = built_in(name)
-        assert module is not None
-        assert all(f"| `{name}.{figure}` |" in shown for figure in module.figures)
-        assert all(f"- {source}" in shown for source in module.sources.values())
-        assert module.caution in shown
+def test_signs_of_axes_follow_from_the_turns() -> None:
+    """A turn by half about one axis: products of two coordinates change sign where one of them does alone."""
+    rows = dict(re.findall(r"^\| (product of inertia \w+) \| (.*) \|$", pages.page("design-files"), re.MULTILINE))
+    turns = ({"x": -1, "y": -1, "z": 1}, {"x": -1, "y": 1, "z": -1})  # to ISO 8855, to SAE J1594
+    for pair in ("xy", "xz", "yz"):
+        signs = [turn[pair[0]] * turn[pair[1]] for turn in turns]
+        told = ["stays" if sign > 0 else "changes sign" for sign in signs]
+        assert rows[f"product of inertia {pair}"] == " | ".join(told)
 
 
 def test_every_verdict_is_explained() -> None:
