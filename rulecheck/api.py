@@ -265,7 +265,7 @@ def _column(loaded: Loaded, base: Loaded, change: Change, day: date) -> Column:
     checker = _checker(loaded, day)
     name = ", ".join(Path(path).name.removesuffix(".change.yaml") for path in change.changes)
     structural = _structure(loaded.design) != _structure(base.design)
-    return Column(name or "change", loaded.changes, checker, structural)
+    return Column(name or "change", loaded.changes, checker, structural, loaded.design)
 
 
 def _checker(loaded: Loaded, day: date) -> Checker:

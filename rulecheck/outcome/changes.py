@@ -42,8 +42,27 @@ class FigureChange:
 
 
 @dataclass(frozen=True, slots=True)
+class InputChange:
+    """An input that is not as it was: its text before, and under each change; empty where nothing is stated."""
+
+    path: str
+    before: str
+    after: tuple[str, ...]
+
+
+@dataclass(frozen=True, slots=True)
+class LimitChange:
+    """A figure that is a word, such as the limit that binds or the axle that locks first; empty where not known."""
+
+    name: str
+    meaning: str
+    before: str
+    after: tuple[str, ...]
+
+
+@dataclass(frozen=True, slots=True)
 class WhatIf:
-    """Every rule and figure that moves, most affected first."""
+    """Every rule and figure that moves, most affected first; `limits` also where they stay."""
 
     design: str
     file: str
@@ -53,6 +72,8 @@ class WhatIf:
     verdicts: tuple[Verdict, ...]
     rules: tuple[RuleChange, ...]
     figures: tuple[FigureChange, ...]
+    inputs: tuple[InputChange, ...]
+    limits: tuple[LimitChange, ...]
     unchanged: int
     cautions: tuple[str, ...]
     version: str

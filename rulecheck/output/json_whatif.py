@@ -19,6 +19,13 @@ def whatif_json(outcome: WhatIf) -> str:
             "verdict": outcome.verdict,
             "verdicts": list(outcome.verdicts),
             "unchanged": outcome.unchanged,
+            "inputs": [
+                {"path": item.path, "before": item.before, "after": list(item.after)} for item in outcome.inputs
+            ],
+            "limits": [
+                {"name": item.name, "meaning": item.meaning, "before": item.before, "after": list(item.after)}
+                for item in outcome.limits
+            ],
             "rules": [_rule(change) for change in outcome.rules],
             "figures": [_figure(change) for change in outcome.figures],
             "marks": marks_json(outcome.marks),

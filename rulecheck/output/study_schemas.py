@@ -38,8 +38,20 @@ def whatif_schema() -> Schema:
         "verdict": verdict_of("Verdict before"),
         "binding": text_of("The part that decides before"),
     }
+    after = list_of(text_of(), "One for each change; empty where it is not stated or not known")
+    put: Schema = {"path": text_of(), "before": text_of("As stated, empty where it is not"), "after": after}
+    limit: Schema = {
+        "name": text_of(),
+        "meaning": text_of(),
+        "before": text_of("Empty where not known"),
+        "after": after,
+    }
     properties: Schema = {
         **heading_of("whatif"),
+        "inputs": list_of(object_of(put), "Inputs that are not as they were"),
+        "limits": list_of(
+            object_of(limit), "Figures that are words, such as the limit that binds; also where they stay"
+        ),
         "changes": list_of(object_of(change), "The changes, side by side"),
         "verdict": verdict_of("The total before"),
         "verdicts": list_of(verdict_of("The total with the change"), "One for each change"),

@@ -88,3 +88,15 @@ def with_unit(name: str, unit: str) -> str:
     ('vehicle.speed [km/h]', 'aero.downforce_to_drag')
     """
     return name if unit in ("", "1") else f"{name} [{unit}]"
+
+
+def folded(name: str, room: int) -> str:
+    """A name for a narrow column: what does not fit goes on behind a dot or an underscore, set apart by a blank.
+
+    >>> folded("aero.coasting_rear_downforce_area", 30), folded("mass.x", 30)
+    ('aero.coasting_rear_downforce_ area', 'mass.x')
+    """
+    if len(name) <= room:
+        return name
+    cut = max(name.rfind(".", 0, room), name.rfind("_", 0, room)) + 1
+    return f"{name[:cut]} {name[cut:]}" if 0 < cut < len(name) else name

@@ -18,17 +18,20 @@ from rulecheck.graph.terms import Inputs, Term
 from rulecheck.model.design import Design
 from rulecheck.model.ruleset import Ruleset
 from rulecheck.operations.values import Monomial
-from rulecheck.outcome.changes import FigureChange, Moved, RuleChange, WhatIf
+from rulecheck.outcome.changes import FigureChange, InputChange, LimitChange, Moved, RuleChange, WhatIf
 from rulecheck.outcome.results import Amount, Finding
 from rulecheck.quantity.numbers import show_exact, show_number
 from rulecheck.quantity.units import Unit
 from rulecheck.readers.gradient import GradientReader
+from rulecheck.reading.nodes import Located
+from rulecheck.reading.nodes import Mapping as Mapped
 from rulecheck.studies.amounts import amount
 from rulecheck.studies.check import Checker
 from rulecheck.studies.marks import marks
 from rulecheck.studies.reporting import CAUTION
 from rulecheck.studies.totals import total
 
+_AXES = ("x", "y", "z")
 _PI = Fraction("3.14159265358979323846264338328")
 
 
@@ -40,6 +43,7 @@ class Column:
     settings: tuple[str, ...]
     checker: Checker
     structural: bool
+    design: Design
 
 
 def what_if(base: Checker, columns: Sequence[Column], design: Design, rulesets: Sequence[Ruleset], day: date) -> WhatIf:
@@ -57,6 +61,8 @@ def what_if(base: Checker, columns: Sequence[Column], design: Design, rulesets: 
         verdicts=tuple(total(found.values()) for found in after),
         rules=tuple(sorted(rules, key=lambda change: -comparing.weight(change))),
         figures=tuple(sorted(figures, key=lambda change: -_relative(change.before, change.moved))),
+        inputs=tuple(_inputs(design, [column.design for column in columns])),
+        limits=tuple(comparing.limits()),
         unchanged=len(before) - len(rules),
         cautions=(CAUTION,),
         version=__version__,
@@ -113,7 +119,7 @@ class _Comparing:
     def figures(self) -> Iterable[FigureChange | None]:
         """Every figure without an argument and outside states that moves."""
         for name, figure in self.base.graph.figures.items():
-            if "(" in name or "[" in name:
+            if "(" in name or "[" in name or figure.term.sort == "text":
                 continue
             before = self._figure(self.base, figure)
             moved = [self._moved_figure(name, figure, before, column) for column in self.columns]
@@ -121,6 +127,21 @@ class _Comparing:
                 yield FigureChange(
                     name, figure.meaning, before, tuple(item or Moved(None, None, None, None) for item in moved)
                 )
+
+    def limits(self) -> Iterable[LimitChange]:
+        """Every figure that is a word and known before or after a change, also where it stays as it is."""
+        for name, figure in self.base.graph.figures.items():
+            if "(" in name or "[" in name or figure.term.sort != "text":
+                continue
+            before = self._word(self.base, name)
+            after = tuple(self._word(column.checker, name) for column in self.columns)
+            if before or any(after):
+                yield LimitChange(name, figure.meaning, before, after)
+
+    def _word(self, checker: Checker, name: str) -> str:
+        figure = checker.graph.figures.get(name)
+        shown = self._figure(checker, figure) if figure is not None else None
+        return shown.shown if shown is not None else ""
 
     def _figure(self, checker: Checker, figure: Figure) -> Amount | None:
         return amount(checker.reader, checker.bank, figure.term, figure.unit)
@@ -151,6 +172,26 @@ class _Comparing:
         return Amount(
             show_number(Fraction(repr(shown)), 4) if shown == shown else "?", unit.symbol if unit else "", shown
         )
+
+
+def _inputs(before: Design, after: Sequence[Design]) -> Iterable[InputChange]:
+    """Every input whose text differs, in the order of the changed design."""
+    paths = dict.fromkeys(path for design in (*after, before) for path in design.leaves)
+    for path in paths:
+        point, _, axis = path.rpartition(".")
+        if axis in _AXES and point in paths:
+            continue  # a point that is written in one piece on one side
+        first, others = _text(before, path), tuple(_text(design, path) for design in after)
+        if any(other != first for other in others):
+            yield InputChange(path, first, others)
+
+
+def _text(design: Design, path: str) -> str:
+    node = design.leaves.get(path)
+    if node is None and f"{path}.x" in design.leaves:
+        return " ".join(_text(design, f"{path}.{axis}") or "?" for axis in _AXES)
+    value = node.get("value") if isinstance(node, Mapped) else node
+    return value.text if isinstance(value, Located) else "" if node is None else "…"
 
 
 def _steps(before: Inputs, after: Inputs) -> Mapping[str, Fraction]:

@@ -10,6 +10,8 @@ import pytest
 from rulecheck import api
 from rulecheck.api import Change
 from rulecheck.diagnostics import Refused
+from rulecheck.output.screen import Screen
+from rulecheck.output.terminal_whatif import whatif_text
 
 DAY = date(2027, 3, 1)
 BOOK = """\
@@ -117,3 +119,56 @@ def test_a_design_that_is_tight_already(car):
     assert outcome.verdict == "tight"
     assert outcome.rules[0].name == "x"
     assert (outcome.rules[0].verdict, outcome.rules[0].moved[0].verdict) == ("tight", "complies")
+
+
+def test_inputs_that_change_are_told_with_what_they_were(car: Path) -> None:
+    settings = (("v.x", "280mm"), ("masses.fuel.at", "1 2 3 mm"))
+    car.write_text(CAR + "masses: {fuel: {mass: 1 kg, at: {x: 1 mm, y: 0 mm, z: 5 mm}}}\n", encoding="utf-8")
+    outcome = api.whatif(car, [Change((), settings), Change((), (("v.y", "160 mm"),))], on=DAY)
+    assert [(item.path, item.before, item.after) for item in outcome.inputs] == [
+        ("v.x", "200 mm", ("280mm", "200 mm")),
+        ("v.y", "150 mm", ("150 mm", "160 mm")),
+        ("masses.fuel.at", "1 mm 0 mm 5 mm", ("1 2 3 mm", "1 mm 0 mm 5 mm")),
+    ]
+
+
+def test_what_binds_is_named_before_and_after_and_where_it_stays(car: Path) -> None:
+    book = BOOK.replace(
+        "rules:\n",
+        '  limit: {formula: \'"width" if v.x > v.y else "height"\', meaning: What binds}\n'
+        '  other: {formula: \'"tall" if v.y > 10 mm else "flat"\', meaning: Shape}\n'
+        "rules:\n",
+    )
+    car.with_name("cup.ruleset.yaml").write_text(book, encoding="utf-8")
+    outcome = api.whatif(car, [Change((), (("v.x", "100mm"),))], on=DAY)
+    assert [(item.name, item.before, item.after) for item in outcome.limits] == [
+        ("limit", "width", ("height",)),
+        ("other", "tall", ("tall",)),
+    ]
+    assert "limit" not in {figure.name for figure in outcome.figures}
+    text = whatif_text(outcome)
+    assert "  limit: width → height\n" in text
+    assert "  other: tall, as before\n" in text
+    assert "  limit: width -> height\n" in whatif_text(outcome, Screen(unicode=False, encoding="ascii"))
+
+
+def test_without_a_slope_no_column_is_kept_for_it(car: Path) -> None:
+    numbers = whatif_text(api.whatif(car, [Change((), (("v.y", "160mm"),))], on=DAY))
+    choice = whatif_text(api.whatif(car, [Change((), (("v.kind", "closed"),))], on=DAY))
+    assert "foretold" in numbers
+    assert "foretold" not in choice
+
+
+def test_the_move_of_the_machine_names_what_binds() -> None:
+    """The demonstration: grip of the rear axle gives way to the power of the machine that the rule allows in front."""
+    root = Path(__file__).parents[3]
+    change = root / "designs_demo" / "front-recovery.change.yaml"
+    outcome = api.whatif(root / "designs_demo" / "marram-p2.design.yaml", [Change((str(change),))], on=DAY)
+    limits = {item.name: (item.before, *item.after) for item in outcome.limits}
+    assert limits["recovery.limit"] == ("grip", "machine power")
+    assert limits["braking.locks_first"] == ("rear", "rear")
+    moved = {figure.name: figure.moved[0].difference for figure in outcome.figures}
+    # At a given width over the tyres a rear tyre that is 20 mm narrower frees twice that.
+    assert str(moved["diffuser.width_between_tyres"]) == "+40 mm"
+    assert {"mass.front_share", "aero.centre_of_pressure", "recovery.bus_power"} <= set(moved)
+    assert outcome.verdicts == ("complies",)
