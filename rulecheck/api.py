@@ -221,7 +221,7 @@ def _run(loaded: Loaded, varying: Varying, day: date, wanted: Sequence[str]) -> 
     def bound(place: int) -> Checker:
         changed = replace(loaded, design=with_value(loaded.design, varying, varying.settings[place]))
         graph = _bind(changed, day, wanted)
-        return Checker(graph, reserves_of(loaded, graph, None))
+        return Checker(graph, reserves_of(loaded, graph, None), _decision(loaded))
 
     base = bound(0)
     if varying.unit is not None and varying.path in base.graph.inputs:

@@ -88,7 +88,7 @@ def exchanged(base: Checker, varying: Varying) -> Iterator[Checker]:
     for setting in varying.settings[1:]:
         assert setting.number is not None
         inputs = {**graph.inputs, varying.path: Monomial(*unit.in_si(setting.number))}
-        checker = Checker(replace(graph, inputs=inputs), base.reserves)
+        checker = Checker(replace(graph, inputs=inputs), base.reserves, base.decision)
         checker.reader.take(still)
         yield checker
 

@@ -189,3 +189,16 @@ def test_what_is_refused(car: Path, along: dict[str, str], said: str) -> None:
 def test_an_unknown_name(car: Path) -> None:
     with pytest.raises(Refused, match="there is no rule, figure or module 'tunel'; did you mean 'tunnel'"):
         vary(car, ["tunel"], {"tyres.rear.width": "1..2mm"}, on=DAY)
+
+
+def test_the_decision_of_the_house_holds_at_every_value(car: Path) -> None:
+    """A spread of another input guards every verdict along the way, as in a check."""
+    car.with_name("rulecheck.yaml").write_text("house: Fen office\ndecision: {rule: guarded, coverage: 2}\n", "utf-8")
+    settings = {"dimensions.rear_track": "{value: 1480 mm ± 4 mm (k=2), definition: contact centres}"}
+    curve = points(car, "tunnel", "tyres.rear.width", "304..312mm:2mm", settings=settings)
+    told = [
+        check(car, settings={**settings, "tyres.rear.width": f"{width} mm"}, on=DAY).rules[0]
+        for width in (304, 306, 308, 310, 312)
+    ]
+    assert [(point.amount, point.verdict) for point in curve] == [(rule.margin, rule.verdict) for rule in told]
+    assert [point.verdict for point in curve] == ["complies", "complies", "unproven", "unproven", "unproven"]
