@@ -6,6 +6,7 @@ least between any two points). Sides are compared wherever the distance is above
 
 from __future__ import annotations
 
+import math
 import random
 
 import pytest
@@ -74,7 +75,9 @@ def _clear(bench: Bench, borders: object, outline: object, zone: Polygon, body: 
     if holds:
         assert margin == pytest.approx(zone.distance(body), abs=1e-9)
     else:
-        assert 0 < -margin <= min(zone.length, body.length)
+        corners = [zone.exterior.distance(place) for place in _corners(body) if zone.covers(place)]
+        assert max([0.0, *corners]) - 1e-9 <= -margin, "at least the deepest corner"
+        assert 0 < -margin <= math.sqrt(zone.area / math.pi) + 1e-9, "no circle inside has more area than the zone"
 
 
 def test_points() -> None:

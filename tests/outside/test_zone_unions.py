@@ -61,7 +61,7 @@ def test_a_box_in_a_union_of_ranges() -> None:
 
 @pytest.mark.long
 def test_many_boxes_in_unions_of_ranges() -> None:
-    _in_unions(2, 3000)
+    _in_unions(2, 1500)
 
 
 def test_hulls_in_a_view() -> None:
