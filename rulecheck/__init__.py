@@ -14,8 +14,9 @@ from rulecheck.diagnostics import Diagnostic, Refused, Span
 __version__ = "0.1.0"
 
 if TYPE_CHECKING:
-    from rulecheck.api import Change, check, headroom, load_design, load_ruleset, vary, whatif, workings
+    from rulecheck.api import Change, check, headroom, load_design, load_ruleset, proofread, vary, whatif, workings
     from rulecheck.outcome.changes import WhatIf
+    from rulecheck.outcome.proofreading import Proofreading
     from rulecheck.outcome.results import Finding, Report, Workings
     from rulecheck.outcome.travel import HeadroomReport
     from rulecheck.outcome.varied import Varied
@@ -28,8 +29,10 @@ _LATE = {
     "whatif": "rulecheck.api",
     "headroom": "rulecheck.api",
     "vary": "rulecheck.api",
+    "proofread": "rulecheck.api",
     "Change": "rulecheck.api",
     "WhatIf": "rulecheck.outcome.changes",
+    "Proofreading": "rulecheck.outcome.proofreading",
     "HeadroomReport": "rulecheck.outcome.travel",
     "Varied": "rulecheck.outcome.varied",
     "Finding": "rulecheck.outcome.results",
@@ -42,6 +45,7 @@ __all__ = [
     "Diagnostic",
     "Finding",
     "HeadroomReport",
+    "Proofreading",
     "Refused",
     "Report",
     "Span",
@@ -53,6 +57,7 @@ __all__ = [
     "headroom",
     "load_design",
     "load_ruleset",
+    "proofread",
     "vary",
     "whatif",
     "workings",

@@ -15,7 +15,7 @@ from os.path import relpath
 from pathlib import Path
 from typing import TYPE_CHECKING
 
-from rulecheck.binding.bind import bind
+from rulecheck.binding.bind import bind, bind_stand_ins
 from rulecheck.binding.external import TRACK
 from rulecheck.diagnostics import Diagnostic, Faults, Refused
 from rulecheck.graph.figures import Graph
@@ -25,27 +25,30 @@ from rulecheck.loading import (
     Loaded,
     Session,
     load,
+    load_books,
     load_design,
     load_ruleset,
+    modules_of,
     overlay_of,
     reserve_text,
     reserves_of,
+    structure_of,
     tracks_of,
     varyings_of,
     with_value,
 )
-from rulecheck.model.design import Design, Overlay
+from rulecheck.model.design import Overlay
 from rulecheck.model.ruleset import SIMPLE, Decision, PhysicsModule
 from rulecheck.outcome.results import ClosedFormResult, Report, Workings
 from rulecheck.physics.library import Library, library
 from rulecheck.physics.solvers import OWN, solver_module
-from rulecheck.reading.nodes import Located
 from rulecheck.studies.check import Checker
 from rulecheck.studies.reporting import Asked, report
 
 if TYPE_CHECKING:
     from rulecheck.model.value_ranges import Varying
     from rulecheck.outcome.changes import WhatIf
+    from rulecheck.outcome.proofreading import Proofreading
     from rulecheck.outcome.travel import HeadroomReport
     from rulecheck.outcome.varied import Varied
     from rulecheck.studies.whatif import Column
@@ -83,6 +86,27 @@ def check(
     checker = Checker(graph, reserves_of(loaded, graph, reserve), _decision(loaded), at_random)
     asked = Asked(day, loaded.changes, reserve_text(loaded.house, reserve))
     return report(checker, loaded.design, loaded.rulesets, asked, session.digests)
+
+
+def proofread(
+    rules: Sequence[File], *, on: date | None = None, listed: bool = False, session: Session | None = None
+) -> Proofreading:
+    """Hold rule books against themselves, without a design. Raises `Refused` where one of them cannot be read.
+
+    Names, dimensions, limits that contradict or imply each other, conditions that never hold, tables, and the coverage
+    of the register of clauses. With `listed` also the effective rule book of the day, rule by rule.
+    """
+    from rulecheck.studies.proofread import BoundBook, proofreading
+
+    session = session or Session()
+    day = on or date.today()
+    faults, books = Faults(), []
+    for ruleset in load_books(rules, session):
+        modules = modules_of(session, (ruleset,), faults)
+        shelf = library(modules, _installed, faults)
+        faults.settle()
+        books.append(BoundBook(ruleset, bind_stand_ins((ruleset,), day=day, physics=shelf), modules))
+    return proofreading(books, day, session.digests, listed=listed)
 
 
 def workings(
@@ -264,7 +288,7 @@ def _column(loaded: Loaded, base: Loaded, change: Change, day: date) -> Column:
 
     checker = _checker(loaded, day)
     name = ", ".join(Path(path).name.removesuffix(".change.yaml") for path in change.changes)
-    structural = _structure(loaded.design) != _structure(base.design)
+    structural = structure_of(loaded.design) != structure_of(base.design)
     return Column(name or "change", loaded.changes, checker, structural, loaded.design)
 
 
@@ -272,14 +296,6 @@ def _checker(loaded: Loaded, day: date) -> Checker:
     """A design judged with every physics figure and the reserves of the house file."""
     graph = _bind(loaded, day, _modules(loaded))
     return Checker(graph, reserves_of(loaded, graph, None), _decision(loaded))
-
-
-def _structure(design: Design) -> tuple[object, ...]:
-    """What a design has beside its numbers: names, and the texts of leaves that are no numbers."""
-    words = {
-        path: node for path, node in design.leaves.items() if isinstance(node, Located) and node.text[:1].isalpha()
-    }
-    return (sorted(design.leaves), sorted((path, node.text) for path, node in words.items()))
 
 
 def _decision(loaded: Loaded) -> Decision:
@@ -330,4 +346,4 @@ def _bind(loaded: Loaded, day: date, figures: Sequence[str] = ()) -> Graph:
     )
 
 
-__all__ = ["Session", "check", "headroom", "load_design", "load_ruleset", "vary", "whatif", "workings"]
+__all__ = ["Session", "check", "headroom", "load_design", "load_ruleset", "proofread", "vary", "whatif", "workings"]

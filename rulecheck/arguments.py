@@ -18,7 +18,7 @@ import click
 
 from rulecheck.diagnostics import Diagnostic
 
-FORMS = ("terminal", "json", "csv", "svg")
+FORMS = ("terminal", "json", "csv", "svg", "markdown")
 
 Command = TypeVar("Command", bound=Callable[..., Any])
 
@@ -157,6 +157,18 @@ _OPTIONS = (
 )
 
 
+def delivery(command: Command) -> Command:
+    """The options of an answer that is about no design: on which day, and in which forms."""
+    for option in reversed(_OPTIONS[-3:]):
+        command = option(command)
+    return command
+
+
+def deliveries_of(given: dict[str, Any]) -> tuple[tuple[str, Path | None], ...]:
+    """The forms that were asked for. Raises a usage error where they do not go together."""
+    return deliveries(given["form"], given["output"], click.get_current_context().meta["order"])
+
+
 def question(command: Command) -> Command:
     """The options of a question, in this order in the help."""
     for option in reversed(_OPTIONS):
@@ -198,7 +210,7 @@ def asked_from(design: str, given: dict[str, Any]) -> Asked:
         given["changes"],
         _states(given["states"]),
         given["on"],
-        deliveries(given["form"], given["output"], click.get_current_context().meta["order"]),
+        deliveries_of(given),
     )
 
 

@@ -7,9 +7,9 @@ The engine is loaded by the command that needs it, so that `--help` and `--versi
 from __future__ import annotations
 
 import gc
-import os
 import sys
-from collections.abc import Callable, Sequence
+from collections.abc import Sequence
+from datetime import date
 from fractions import Fraction
 from pathlib import Path
 from typing import TYPE_CHECKING, Any, NoReturn
@@ -17,10 +17,13 @@ from typing import TYPE_CHECKING, Any, NoReturn
 import click
 
 from rulecheck import __version__
+from rulecheck.answering import UNUSABLE, Forms, deliver, refuse, say
 from rulecheck.arguments import (
     Asked,
     Question,
     asked_from,
+    deliveries_of,
+    delivery,
     own_fault,
     question,
     reserve_option,
@@ -28,17 +31,15 @@ from rulecheck.arguments import (
     usage_fault,
     vary_option,
 )
-from rulecheck.diagnostics import Diagnostic, Refused
+from rulecheck.diagnostics import Refused
 
 if TYPE_CHECKING:
     from rulecheck.api import Session
-    from rulecheck.output.screen import Screen
 
-Forms = dict[str, "Callable[[Screen], str]"]
-COMPLIES, BREACH, UNUSABLE, NOT_SETTLED, INTERRUPTED = 0, 1, 2, 3, 130
+COMPLIES, BREACH, NOT_SETTLED, INTERRUPTED = 0, 1, 3, 130
 SCHEMAS = (
     "design", "ruleset", "physics", "house", "change", "track",
-    "report", "workings", "varied", "whatif", "headroom", "diagnostics",
+    "report", "workings", "varied", "whatif", "headroom", "proofreading", "diagnostics",
 )  # fmt: skip
 
 
@@ -55,41 +56,15 @@ def run(arguments: Sequence[str]) -> int:
     try:
         answer = rulecheck.main(list(arguments), prog_name="rulecheck", standalone_mode=False)
     except click.ClickException as error:
-        return _refuse([usage_fault(error)])
+        return refuse([usage_fault(error)])
     except Refused as refused:
-        return _refuse(refused.diagnostics)
+        return refuse(refused.diagnostics)
     except (KeyboardInterrupt, click.Abort):
         click.echo("interrupted", err=True)
         return INTERRUPTED
     except Exception as error:  # noqa: BLE001 - a crash must not be taken for a breach, whose exit code it would have
-        return _refuse([own_fault(error)])
+        return refuse([own_fault(error)])
     return answer if isinstance(answer, int) else COMPLIES
-
-
-def _say(text: str, encoding: str) -> None:
-    """Text on standard output. Whoever reads it may close it before the end, which is no fault."""
-    from rulecheck.output.escaping import encodable
-
-    try:
-        click.echo(encodable(text, encoding), nl=False)
-        sys.stdout.flush()
-    except BrokenPipeError:
-        # What Python would still write at exit has nowhere to go.
-        os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
-    except OSError as error:
-        raise Refused([Diagnostic("cannot-write", f"standard output cannot be written: {error.strerror}")]) from error
-
-
-def _refuse(diagnostics: Sequence[Diagnostic], session: Session | None = None, *, as_json: bool = False) -> int:
-    from rulecheck.output.diagnostics_json import diagnostics_json
-    from rulecheck.output.diagnostics_text import diagnostics_text
-    from rulecheck.output.escaping import encodable
-
-    text = diagnostics_text(diagnostics, session.texts if session else {})
-    click.echo(encodable(text, sys.stderr.encoding or "utf-8"), err=True, nl=False)
-    if as_json:
-        _say(diagnostics_json(diagnostics), sys.stdout.encoding or "utf-8")
-    return UNUSABLE
 
 
 # --- commands --------------------------------------------------------------------------------------------------------
@@ -125,11 +100,13 @@ def check(design: str, reserve: Fraction | None, trials: int | None, **given: An
     asked, session = asked_from(design, given), api.Session()
     try:
         report = api.check(asked.design, reserve=reserve, trials=trials or 0, session=session, **asked.options)
-        _deliver(
-            asked, session, {"terminal": lambda on: report_text(report, on), "json": lambda _: report_json(report)}
+        deliver(
+            asked.deliveries,
+            session,
+            {"terminal": lambda on: report_text(report, on), "json": lambda _: report_json(report)},
         )
     except Refused as refused:
-        return _refuse(refused.diagnostics, session, as_json=asked.json_on_stream)
+        return refuse(refused.diagnostics, session, as_json=asked.json_on_stream)
     return {"breach": BREACH, "open": NOT_SETTLED, "unproven": NOT_SETTLED}.get(report.verdict, COMPLIES)
 
 
@@ -171,11 +148,13 @@ def workings(
             session=session,
             **asked.options,
         )
-        _deliver(
-            asked, session, {"terminal": lambda on: workings_text(found, on), "json": lambda _: workings_json(found)}
+        deliver(
+            asked.deliveries,
+            session,
+            {"terminal": lambda on: workings_text(found, on), "json": lambda _: workings_json(found)},
         )
     except Refused as refused:
-        return _refuse(refused.diagnostics, session, as_json=asked.json_on_stream)
+        return refuse(refused.diagnostics, session, as_json=asked.json_on_stream)
     return COMPLIES
 
 
@@ -195,9 +174,9 @@ def _varied(asked: Asked, session: Session, names: Sequence[str], along: Sequenc
             "csv": lambda _: varied_csv(found),
             "svg": lambda _: varied_svg(found),
         }
-        _deliver(asked, session, forms)
+        deliver(asked.deliveries, session, forms)
     except Refused as refused:
-        return _refuse(refused.diagnostics, session, as_json=asked.json_on_stream)
+        return refuse(refused.diagnostics, session, as_json=asked.json_on_stream)
     return COMPLIES
 
 
@@ -224,9 +203,9 @@ def whatif(design: str, keep: str, **given: Any) -> int:
         )  # fmt: skip
         kept = api.kept_variant(asked.design, columns, Path(keep), session) if keep else ""
         forms: Forms = {"terminal": lambda on: whatif_text(found, on), "json": lambda _: whatif_json(found)}
-        _deliver(asked, session, forms, (keep, kept))
+        deliver(asked.deliveries, session, forms, (keep, kept))
     except Refused as refused:
-        return _refuse(refused.diagnostics, session, as_json=asked.json_on_stream)
+        return refuse(refused.diagnostics, session, as_json=asked.json_on_stream)
     return COMPLIES
 
 
@@ -243,42 +222,45 @@ def headroom(design: str, names: tuple[str, ...], **given: Any) -> int:
     asked, session = asked_from(design, given), api.Session()
     try:
         found = api.headroom(asked.design, names, session=session, **asked.options)
-        _deliver(
-            asked, session, {"terminal": lambda on: headroom_text(found, on), "json": lambda _: headroom_json(found)}
+        deliver(
+            asked.deliveries,
+            session,
+            {"terminal": lambda on: headroom_text(found, on), "json": lambda _: headroom_json(found)},
         )
     except Refused as refused:
-        return _refuse(refused.diagnostics, session, as_json=asked.json_on_stream)
+        return refuse(refused.diagnostics, session, as_json=asked.json_on_stream)
     return COMPLIES
 
 
-def _deliver(
-    asked: Asked,
-    session: Session,
-    forms: Forms,
-    kept: tuple[str, str] = ("", ""),
-) -> None:
-    """Files first, so that nothing is said where one of them cannot be written. `forms` writes each form for a screen."""
-    from rulecheck.output.screen import PAPER, screen_of
-    from rulecheck.output.writing import write_files
+@rulecheck.command(cls=Question, short_help="Hold rule books against themselves, without a design.")
+@click.argument("rulesets", metavar="RULESET...", nargs=-1, required=True)
+@click.option(
+    "--listing", is_flag=True, help="Also the effective rule book of the day: each rule and where it is from."
+)
+@click.option("--strict", is_flag=True, help="Exit code 1 where there is a fault.")
+@delivery
+def proofread(rulesets: tuple[str, ...], listing: bool, strict: bool, on: date | None, **given: Any) -> int:
+    """Find what is wrong with rule books themselves, and which clauses have no rule yet.
 
-    files: dict[Path, str] = {Path(kept[0]): kept[1]} if kept[0] else {}
-    shown = ""
-    for form, path in asked.deliveries:
-        screen = PAPER if path is not None else screen_of(sys.stdout)
-        if form not in forms:
-            message = f"there is no form '{form}' of this answer"
-            raise Refused([Diagnostic("usage", message, expected=" or ".join(forms))])
-        text = forms[form](screen)
-        if path is None:
-            shown = text
-        else:
-            files[path] = text
-    write_files(files, sources=_sources(session))
-    _say(shown, sys.stdout.encoding or "utf-8")
+    Exit code: 0 it was read, 1 with --strict where there is a fault, 2 unusable input.
+    """
+    from rulecheck import api
+    from rulecheck.output.json_proofreading import proofreading_json
+    from rulecheck.output.markdown_proofreading import proofreading_markdown
+    from rulecheck.output.terminal_proofreading import proofreading_text
 
-
-def _sources(session: Session) -> list[Path]:
-    return [Path(space.root, file) for space in session.workspaces for file in space.texts]
+    asked, session = deliveries_of(given), api.Session()
+    try:
+        found = api.proofread(rulesets, on=on, listed=listing, session=session)
+        forms: Forms = {
+            "terminal": lambda on: proofreading_text(found, on),
+            "json": lambda _: proofreading_json(found),
+            "markdown": lambda _: proofreading_markdown(found),
+        }
+        deliver(asked, session, forms)
+    except Refused as refused:
+        return refuse(refused.diagnostics, session, as_json=("json", None) in asked)
+    return BREACH if strict and found.counts["fault"] else COMPLIES
 
 
 @rulecheck.command()
@@ -290,8 +272,8 @@ def _sources(session: Session) -> list[Path]:
 def handbook(page: str, what: str, rules: tuple[str, ...]) -> None:
     """Pages of the handbook; without a page, the list of them.
 
-    'handbook schema WHAT' prints the JSON Schema of a design, ruleset, physics, house, change or track file, or of the report,
-    workings or diagnostics in JSON.
+    'handbook schema WHAT' prints the JSON Schema of a design, ruleset, physics, house, change or track file, or of what a
+    command gives in JSON: report, workings, varied, whatif, headroom, proofreading, diagnostics.
     """
     from rulecheck.handbook import pages
     from rulecheck.output.pages import page_text
@@ -310,7 +292,7 @@ def handbook(page: str, what: str, rules: tuple[str, ...]) -> None:
         raise click.UsageError(
             f"the handbook has no page '{page}'; it has {', '.join(pages.names())}", click.get_current_context()
         )
-    _say(text, screen.encoding)
+    say(text, screen.encoding)
 
 
 def _schema(what: str, rules: Sequence[str]) -> str:

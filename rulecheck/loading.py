@@ -74,6 +74,18 @@ def load_ruleset(path: File, *, session: Session | None = None) -> Ruleset:
     return read_ruleset(workspace, workspace.name(Path(path)))
 
 
+def load_books(paths: Sequence[File], session: Session) -> tuple[Ruleset, ...]:
+    """Read several rulesets. Raises `Refused` with the faults of all of them."""
+    faults, books = Faults(), []
+    for path in paths:
+        try:
+            books.append(load_ruleset(path, session=session))
+        except Refused as refused:
+            faults.take(refused)
+    faults.settle()
+    return tuple(books)
+
+
 @dataclass(slots=True)
 class Loaded:
     """What a question is put to."""
@@ -111,7 +123,7 @@ def load(
     except Refused as refused:
         faults.take(refused)
     rulesets, also_known = _rulesets(session, workspace, design, house, rules, faults)
-    modules = _modules(session, rulesets, faults)
+    modules = modules_of(session, rulesets, faults)
     overlay, told = overlay_of(session, settings, changes, faults)
     faults.settle()
     assert design is not None
@@ -161,7 +173,7 @@ def _rulesets(
     return tuple(given), tuple(own)
 
 
-def _modules(session: Session, rulesets: Sequence[Ruleset], faults: Faults) -> tuple[PhysicsModule, ...]:
+def modules_of(session: Session, rulesets: Sequence[Ruleset], faults: Faults) -> tuple[PhysicsModule, ...]:
     """The physics modules that the rulesets name, each read from beside the file that names it."""
     found: dict[tuple[Path, str], PhysicsModule] = {}
     for reference in (reference for ruleset in rulesets for reference in ruleset.physics):
@@ -328,3 +340,11 @@ def reserve_text(house: House | None, share: Fraction | None) -> str:
         return ""
     count = len(house.reserves)
     return f"{count} rule{'s' if count > 1 else ''}, in {house.file}"
+
+
+def structure_of(design: Design) -> tuple[object, ...]:
+    """What a design has beside its numbers: names, and the texts of leaves that are no numbers."""
+    words = {
+        path: node for path, node in design.leaves.items() if isinstance(node, Located) and node.text[:1].isalpha()
+    }
+    return (sorted(design.leaves), sorted((path, node.text) for path, node in words.items()))

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
+from collections.abc import Iterable, Sequence
 from dataclasses import dataclass, replace
 from fractions import Fraction
 from itertools import combinations
@@ -95,6 +95,15 @@ def loop(scope: Scope, variables: Sequence[str], collection: Syntax, where: Synt
     return Loop(tuple(elements), items.lacking, items.missing, items.items is None, stand_in)
 
 
+def stand_ins(loops: Iterable[Loop]) -> list[tuple[str, Bound]]:
+    """An item for each variable of loops that no item stands behind; no two are the same."""
+    pairs = [pair for item in loops for pair in item.empty_name]
+    return [
+        (name, Item(bound.path + "'" * place) if isinstance(bound, Item) else bound)
+        for place, (name, bound) in enumerate(pairs)
+    ]
+
+
 def _there(scope: Scope, pairs: tuple[tuple[str, Bound], ...], items: Items, span: Span) -> Term | None:
     """None where the design states the items; a required item that it does not state may or may not be there."""
     gone = [bound.path for _, bound in pairs if isinstance(bound, Item) and bound.path in items.gone]
@@ -164,10 +173,21 @@ def aggregate(scope: Scope, syntax: Aggregate) -> Bound:
     if isinstance(turns, Broken):
         return BROKEN
     bound = _folded_turns(scope, syntax, turns)
+    if scope.shared.stand_ins and turns.absent:
+        bound = _standing_in(scope, syntax, bound)
     if isinstance(bound, (Number, Truth)) and not scope.loop:
         text = show(syntax)
         scope.uses.setdefault(text, Use(text, "", bound.term, bound.unit if isinstance(bound, Number) else None))
     return bound
+
+
+def _standing_in(scope: Scope, syntax: Aggregate, bound: Bound) -> Bound:
+    """What an aggregate over unknown items gives goes by its text: the same text is the same value."""
+    items = ", ".join(f"{name} in {item.path}" for name, item in scope.variables.items() if isinstance(item, Item))
+    label = f"{show(syntax)} [{scope.owner.file}; {items}]"
+    if isinstance(bound, Number):
+        return replace(bound, term=scope.bank.input(label, "number", bound.dimension, syntax.span))
+    return Truth(scope.bank.input(label, "flag", PURE, syntax.span)) if isinstance(bound, Truth) else bound
 
 
 def _folded_turns(scope: Scope, syntax: Aggregate, turns: Loop) -> Bound:

@@ -5,6 +5,7 @@ from __future__ import annotations
 import sys
 from collections.abc import Callable, Iterator, Sequence
 from contextlib import contextmanager
+from dataclasses import replace
 from datetime import date
 
 from rulecheck.binding.bound import Broken, Item, Items, kind_of
@@ -20,6 +21,7 @@ from rulecheck.binding.tables import list_of, table_value
 from rulecheck.binding.validate import validate
 from rulecheck.diagnostics import Faults
 from rulecheck.formula.syntax import Each
+from rulecheck.graph.conditions import Case
 from rulecheck.graph.figures import Graph
 from rulecheck.model.core_table import CORE
 from rulecheck.model.design import Design
@@ -68,7 +70,28 @@ def deep_formulas() -> Iterator[None]:
         sys.setrecursionlimit(before)
 
 
-def _bound(shared: Shared, figures: Sequence[str]) -> Graph:
+def bind_stand_ins(rulesets: Sequence[Ruleset], *, day: date, physics: Library) -> Shared:
+    """Bind rulesets for no design at all: inputs are unknown, and items stand in for those that a car would have.
+
+    Nothing is raised: the faults are among what is given. `stand_in` finds a rule in it.
+    """
+    nothing = Design("", "", "", "", (), {}, {}, frozenset(), frozenset(), {}, {})
+    with deep_formulas():
+        shared = _shared(nothing, rulesets, day, physics, ())
+        shared.stand_ins = True
+        # What holds where nothing is stated is not what holds for every car.
+        shared.vocabulary = Vocabulary(replace(entry, default="") for entry in shared.vocabulary)
+        _bind_all(shared, ())
+    return shared
+
+
+def stand_in(shared: Shared, ruleset: Ruleset, name: str) -> Case | None:
+    """A rule bound for stand-ins; None where it is at fault."""
+    case: Case | None = shared.memo.get(("stand-in", ruleset.file, name))
+    return case
+
+
+def _bind_all(shared: Shared, figures: Sequence[str]) -> None:
     rulesets = shared.rulesets
     base = Scope(shared, shared.base, rulesets[0] if rulesets else NO_RULES)
     check_declarations(base, rulesets)
@@ -81,6 +104,11 @@ def _bound(shared: Shared, figures: Sequence[str]) -> Graph:
         check_unused_places(Scope(shared, shared.base, ruleset), ruleset)
     for name in figures:
         _wanted(base, name)
+
+
+def _bound(shared: Shared, figures: Sequence[str]) -> Graph:
+    rulesets = shared.rulesets
+    _bind_all(shared, figures)
     shared.faults.settle()
     rules = [rule for book in rulesets for name in book.rules if (rule := bind_rule(shared, book, name)) is not None]
     assert all(rule.cases for rule in rules), "a rule without cases would pass unseen"

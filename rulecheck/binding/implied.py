@@ -15,7 +15,7 @@ IMPLIED = {
 
 def implied(scope: Scope, path: str, entry: Entry) -> str:
     """Tyres and corners carry their axle and side in their name; some choices have one answer."""
-    if path in IMPLIED:
+    if path in IMPLIED and not scope.shared.stand_ins:
         other, answer = IMPLIED[path]
         scope.touched.add(other)
         design = scope.view.design

@@ -56,4 +56,6 @@ def presence(scope: Scope, path: str, span: Span) -> Term:
     closed = (holder in design.complete for holder in holders(path) if holder != path)
     if any(closed):
         return scope.bank.flag(False)
+    if scope.shared.stand_ins:
+        return scope.bank.input(f"present({path})", "flag", PURE, span)
     return scope.missing(f"whether {path} is there", "flag", PURE, span)

@@ -5,7 +5,7 @@ from __future__ import annotations
 from dataclasses import dataclass, replace
 from itertools import product
 
-from rulecheck.binding.aggregates import Loop, loop
+from rulecheck.binding.aggregates import Loop, loop, stand_ins
 from rulecheck.binding.bound import Bound, Broken, Element, Number, Truth, kind_of
 from rulecheck.binding.comparing import all_of, any_of, opposite
 from rulecheck.binding.conditions import Builder, certain, holds, open_part, scales_agree
@@ -72,6 +72,8 @@ class _Binding:
             return None
         if not any(numeric_parts(case.condition) for case in cases):
             self._note_shape()
+        elif self.shared.stand_ins:
+            self._note_stand_in(cases)
         check_scrutineer(self.record, self.rule, cases)
         touched = sorted(self.record.touched)
         permit = dispensation(self.record, self.rule.name)
@@ -88,10 +90,25 @@ class _Binding:
     def _note_shape(self) -> None:
         """What the rule asks of an element and state that are not there: the kind of margin that it would have."""
         scope = replace(self.record, touched=set(), figures=set())
-        pairs = [pair for head in self._heads(scope) if (item := self._loop(scope, head)) for pair in item.empty_name]
-        case = self._case(scope.inside(pairs, loop=False), "", None)
+        heads = self._heads(scope)
+        pairs = stand_ins(item for head in heads if (item := self._loop(scope, head)))
+        inner = scope.inside(pairs, loop=False)
+        case = self._case(inner, "", self._where(inner, heads) if self.shared.stand_ins else None)
         if case is not None:
             self.shared.memo[("shape", self.ruleset.file, self.rule.name)] = case.condition
+            self.shared.memo[("stand-in", self.ruleset.file, self.rule.name)] = case
+
+    def _note_stand_in(self, cases: list[Case]) -> None:
+        """The rule of any element, for proofreading."""
+        if self.rule.each or self.rule.states is not None or len(cases) != 1:
+            self._note_shape()
+        else:
+            self.shared.memo[("stand-in", self.ruleset.file, self.rule.name)] = cases[0]
+
+    def _where(self, scope: Scope, heads: list[Each]) -> Term:
+        """Whether the stand-ins take part."""
+        flags = [scope.express(head.where) for head in heads if head.where is not None]
+        return all_of(scope, [flag.term for flag in flags if isinstance(flag, Truth)])
 
     def _in_stance(self, stance: Stance) -> list[Case]:
         scope = self.record
@@ -321,7 +338,7 @@ class _Binding:
             if any(isinstance(part, Broken) for part in parts):
                 return Broken()
             whole = tuple(part for part in parts if not isinstance(part, Broken))
-            if claim is None and _rests_on_papers(branch):
+            if claim is None and _rests_on_papers(branch) and not self.shared.stand_ins:
                 whole = (certain(scope, False, f"branch '{branch.name}' is not claimed", self.rule.span),)
             made.append(whole[0] if len(whole) == 1 else AllOf(whole))
         return AnyOf(tuple(made), tuple(branch.name for branch in branches))

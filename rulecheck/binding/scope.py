@@ -67,7 +67,8 @@ MOST_DEEP = 200
 
 @dataclass(slots=True)
 class Shared:
-    """One binding: what it reads, and what it makes."""
+    """One binding: what it reads, and what it makes. With `stand_ins` no design stands behind it, and nothing may be
+    taken for settled that only a design could settle."""
 
     base: View
     vocabulary: Vocabulary
@@ -88,6 +89,7 @@ class Shared:
     declared: dict[str, DeclaredCheck] = field(default_factory=dict)
     strict: bool = False
     tracks: Callable[[Located], Track] | None = None
+    stand_ins: bool = False
 
     def enter(self, name: str, span: Span | None, what: str) -> bool:
         """Begin to bind a named thing; False, with the fault noted, where that would go round in a circle or too deep."""

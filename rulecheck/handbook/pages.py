@@ -22,6 +22,7 @@ FIRST = (
     "design-files",
     "curves-and-maps",
     "rulesets",
+    "proofreading",
     "language",
     "zones",
     "units",

@@ -77,6 +77,7 @@ class RuleShape(BranchShape):
     scrutineer: Any = Field(None, description="The scrutineer's own uncertainty and tolerance")
     decision: Any = Field(None, description="Decision rule where values have a spread")
     examples: list[Any] | None = Field(None, description="The rule's own tests")
+    answers: Any = Field(None, description="What officials answered about it: reference, date, text")
 
 
 class TableShape(Shape):
@@ -145,6 +146,7 @@ class RulesetShape(Shape):
     derived: dict[str, FigureShape] | None = Field(None, description="Derived figures")
     states_needed: dict[str, Any] | None = Field(None, description="States that a design must define, by axis")
     groups: dict[str, Any] | None = Field(None, description="Rules that share a condition")
+    clauses: Any = Field(None, description="Register of the rule book's clauses by number, with titles and kinds")
     decision: Any = Field(None, description="Decision rule of every rule that has none of its own")
     rules: dict[str, RuleShape] | None = Field(None, description="Rules")
 

@@ -55,6 +55,7 @@ def _over(base: Ruleset, top: Ruleset, faults: Faults) -> Ruleset:
         books=tuple(dict.fromkeys((*base.books, *top.books))),
         validity="required" if "required" in (base.validity, top.validity) else "noted",
         physics=(*base.physics, *top.physics),
+        clauses={**base.clauses, **top.clauses},
     )
     _one_name_space(made, faults)
     return made

@@ -9,6 +9,7 @@ from fractions import Fraction
 from typing import Literal
 
 from rulecheck.diagnostics import Span
+from rulecheck.model.clauses import Answer, Clause
 from rulecheck.model.solver import Solver
 from rulecheck.model.vocabulary import Entry
 from rulecheck.model.zones import PlaceCondition, Template, ZoneRule
@@ -127,6 +128,7 @@ class Rule:
     decision: Decision | None = None
     examples: tuple[Node, ...] = ()
     history: tuple[Origin, ...] = ()
+    answers: tuple[Answer, ...] = ()
 
 
 @dataclass(frozen=True, slots=True)
@@ -192,7 +194,7 @@ class Ruleset:
     """A rule book with what it extends already merged in; `physics` are the files of physics modules that it names,
     each beside the file that names it; `validity` says whether figures outside their range are `noted`, or no rule may
     rest on them (`required`); `needed` are the states by axis, with the paths they set;
-    `books` are the files that it is made of, the most general first."""
+    `books` are the files that it is made of, the most general first; `clauses` is the register of the rule book."""
 
     file: str
     name: str
@@ -213,6 +215,7 @@ class Ruleset:
     templates: MappingOf[str, Template] = field(default_factory=dict)
     physics: tuple[Located, ...] = ()
     validity: str = "noted"
+    clauses: MappingOf[str, Clause] = field(default_factory=dict)
 
 
 @dataclass(frozen=True, slots=True)

@@ -6,6 +6,7 @@ from dataclasses import replace
 from typing import Any
 
 from rulecheck.diagnostics import Faults, Refused, Related, Span
+from rulecheck.model.clauses import read_answers, read_clauses
 from rulecheck.model.decisions import read_decision, read_scrutineer
 from rulecheck.model.declarations import declared_entries, needed_states, own_units
 from rulecheck.model.edge import BranchShape, EvidenceShape, FigureShape, RulesetShape, RuleShape, shaped
@@ -134,6 +135,7 @@ class _Reader:
             templates=self._nodes("templates", shape.templates, read_template),
             validity=self._word(shape.validity, VALIDITIES, "noted"),
             physics=_references(self.root.get("physics")),
+            clauses=read_clauses(self.root.get("clauses"), faults),
         )
 
     def _nodes(self, section: str, entries: dict[str, Any] | None, read: Any) -> dict[str, Any]:
@@ -206,6 +208,7 @@ class _Reader:
             scrutineer=read_scrutineer(_inside(inner, "scrutineer"), self.units, self.faults),
             decision=read_decision(_inside(inner, "decision"), self.faults),
             examples=tuple(_inside(inner, "examples") or ()),  # type: ignore[arg-type]
+            answers=read_answers(_inside(inner, "answers"), self.faults),
         )
 
     def _word(self, where: Located | None, known: tuple[str, ...], default: str) -> str:

@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Mapping
 from typing import Any
 
+from rulecheck.model.clauses import CLAUSE_KINDS
 from rulecheck.model.decisions import DECISIONS
 from rulecheck.model.declarations import KINDS
 from rulecheck.model.edge import HouseShape, PhysicsShape, RulesetShape, Shape
@@ -81,6 +82,36 @@ _SCRUTINEER: Schema = {
     },
     "additionalProperties": False,
 }
+_CLAUSES: Schema = {
+    "type": "object",
+    "additionalProperties": {
+        "anyOf": [
+            TEXT,
+            {
+                "type": "object",
+                "properties": {
+                    "title": {**TEXT, "description": "A few words on what it says"},
+                    "kind": {"enum": list(CLAUSE_KINDS), "description": "What it is; rule where left out"},
+                    "note": {**TEXT, "description": "A remark"},
+                },
+                "additionalProperties": False,
+            },
+        ]
+    },
+}
+_ANSWERS: Schema = {
+    "type": "array",
+    "items": {
+        "type": "object",
+        "properties": {
+            "reference": {**TEXT, "description": "Number of the answer"},
+            "date": {**DAY, "description": "Day of the answer"},
+            "text": {**TEXT, "description": "What it says"},
+        },
+        "required": ["reference", "text"],
+        "additionalProperties": False,
+    },
+}
 _NARROWER: Mapping[tuple[str, str], Schema] = {
     ("RuleShape", "standing"): {"enum": list(STANDINGS)},
     ("RuleShape", "empty"): {"enum": list(EMPTY)},
@@ -103,6 +134,8 @@ _NARROWER: Mapping[tuple[str, str], Schema] = {
     ("HouseShape", "decision"): _DECISION,
     ("RulesetShape", "decision"): _DECISION,
     ("RuleShape", "decision"): _DECISION,
+    ("RuleShape", "answers"): _ANSWERS,
+    ("RulesetShape", "clauses"): _CLAUSES,
     ("RuleShape", "scrutineer"): _SCRUTINEER,
 }
 """What the readers hold beyond the shapes, by shape and key."""

@@ -16,6 +16,7 @@ from jsonschema import Draft202012Validator
 from rulecheck import __version__
 from rulecheck.cli import run
 from rulecheck.output.json_varied import varied_schema
+from rulecheck.output.proofreading_schema import proofreading_schema
 from rulecheck.output.report_schema import diagnostics_schema, report_schema, workings_schema
 from rulecheck.output.study_schemas import headroom_schema, whatif_schema
 
@@ -63,6 +64,9 @@ SHOWN = [
     ("varied.json", 0, [*VARIED, *CURVES, "--form", "json"]),
     ("varied.csv", 0, [*VARIED, *CURVES, "--form", "csv"]),
     ("varied.svg", 0, [*VARIED, *CURVES, "--form", "svg"]),
+    ("proofread.txt", 1, ["proofread", "tern-bulletin.ruleset.yaml", "--listing", "--strict"]),
+    ("proofread.json", 0, ["proofread", "tern-bulletin.ruleset.yaml", "--listing", "--form", "json"]),
+    ("proofread.md", 0, ["proofread", "tern-bulletin.ruleset.yaml", "--listing", "--form", "markdown"]),
     ("refused.json", 2, ["check", "faulty.design.yaml", "--form", "json"]),
 ]
 
@@ -90,6 +94,7 @@ def test_diagnostics_on_standard_error(capsys: pytest.CaptureFixture[str], golde
         ("varied.json", varied_schema()),
         ("whatif.json", whatif_schema()),
         ("headroom.json", headroom_schema()),
+        ("proofread.json", proofreading_schema()),
         ("refused.json", diagnostics_schema()),
     ],
 )

@@ -21,7 +21,7 @@ LONGER_FILES = {
     # Each with the lines that it may have, and the reason why it is one file.
     "binding/comparing.py": (400, "one pair of a comparison by kind; its cases lean on each other"),
 }
-LATE_IMPORTS = ("__init__.py", "api.py", "cli.py")
+LATE_IMPORTS = ("__init__.py", "answering.py", "api.py", "cli.py")
 """Only these load heavy parts when they are used."""
 
 
