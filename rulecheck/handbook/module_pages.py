@@ -6,6 +6,7 @@ import re
 import textwrap
 from collections.abc import Iterable, Iterator, Mapping
 
+from rulecheck.diagnostics import Span
 from rulecheck.formula.parser import parse_formula
 from rulecheck.formula.syntax import Aggregate, Call, Name, Syntax
 from rulecheck.formula.walk import walk
@@ -14,8 +15,12 @@ from rulecheck.model.core_table import CORE
 from rulecheck.model.ruleset import Formula, PhysicsModule
 from rulecheck.model.vocabulary import Vocabulary
 from rulecheck.physics.modules import BUILT_IN, built_in
+from rulecheck.physics.solvers import OWN, solver_module
+from rulecheck.reading.nodes import Located
 
 PREFIX = "physics-"
+MODULES: tuple[str, ...] = tuple(sorted((*BUILT_IN, *OWN)))
+"""Every module that comes with the program: of formulas, and of a solver."""
 _WIDTH = 110
 _LOOP = re.compile(r"(\w+) in (\S+)")
 
@@ -26,7 +31,15 @@ def module_names() -> tuple[str, ...]:
     >>> "physics-mass" in module_names()
     True
     """
-    return tuple(f"{PREFIX}{name}" for name in BUILT_IN)
+    return tuple(f"{PREFIX}{name}" for name in MODULES)
+
+
+def module_of(name: str) -> PhysicsModule:
+    """A module that comes with the program. Raises `KeyError` where there is none of this name."""
+    module = built_in(name) if name in BUILT_IN else solver_module(name) if name in OWN else None
+    if module is None:
+        raise KeyError(name)
+    return module
 
 
 def module_page(name: str) -> str:
@@ -35,11 +48,11 @@ def module_page(name: str) -> str:
     >>> module_page("mass").splitlines()[0]
     '# Physics: mass'
     """
-    module = built_in(name)
-    if module is None:
-        raise KeyError(name)
+    module = module_of(name)
     uses = _Uses(module)
     parts = [f"# Physics: {name}", _wrapped(f"{module.meaning}.")]
+    if module.solver is not None:
+        parts.append(_wrapped(f"A solver finds its figures, value ± bound: {module.solver.method}."))
     if module.caution:
         parts.append(_wrapped(f"Caution: {module.caution}"))
     if module.traps:
@@ -64,7 +77,11 @@ def _figure(module: PhysicsModule, figure: Formula) -> str:
     head = f"### `{module.name}.{figure.name}`" + (f" in `{unit}`" if unit not in ("", "1") else "")
     meaning = f"{figure.meaning}." + (f" For `{argument}`." if argument else "")
     valid = f" Valid for `{figure.valid.text}`." if figure.valid is not None else ""
-    formula = _wrapped(f"{figure.formula.text}{' = 0' if figure.solve else ''}", "    ")
+    formula = (
+        "The solver finds it."
+        if figure.by_solver
+        else _wrapped(f"{figure.formula.text}{' = 0' if figure.solve else ''}", "    ")
+    )
     if figure.solve is not None:
         low, high = figure.between
         formula = f"The least `{figure.solve.text}` from `{low.text}` to `{high.text}` with\n\n{formula}"
@@ -101,8 +118,13 @@ class _Uses:
         self.modules: set[str] = set()
         for figure in module.figures.values():
             loops = dict(_LOOP.findall(figure.loop.text)) if figure.loop else {}
-            for formula in filter(None, (figure.formula, figure.valid, *figure.between)):
+            own = () if figure.by_solver else (figure.formula,)
+            for formula in filter(None, (*own, figure.valid, *figure.between)):
                 self._note(parse_formula(formula), loops)
+
+        for item in module.solver.inputs if module.solver is not None else ():
+            where = Located(item.formula, Span(module.file, 0, len(item.formula), 1, 1))
+            self._note(parse_formula(where), {})
 
     def _note(self, syntax: Syntax, loops: Mapping[str, str]) -> None:
         inner = dict(loops)
@@ -117,12 +139,13 @@ class _Uses:
         first, rest = path[0], path[1:]
         if first in loops:
             self._input((*loops[first].split("."), "*", *rest))
-        elif len(path) == 2 and first in BUILT_IN and first != self.module.name:
-            other = built_in(first)
-            if other is not None and rest[0] in other.figures:
-                self.modules.add(first)
-                return
+        elif len(path) == 2 and self._is_of_another(first, rest[0]):
+            self.modules.add(first)
+            return
         self._input(path)
+
+    def _is_of_another(self, module: str, figure: str) -> bool:
+        return module in MODULES and module != self.module.name and figure in module_of(module).figures
 
     def _input(self, path: tuple[str, ...]) -> None:
         """The path, or what holds it where it is a coordinate."""
@@ -147,7 +170,6 @@ def modules_table() -> str:
 
 
 def _module_rows() -> Iterable[list[str]]:
-    for name in BUILT_IN:
-        module = built_in(name)
-        assert module is not None
+    for name in MODULES:
+        module = module_of(name)
         yield [f"`{PREFIX}{name}`", module.meaning]

@@ -86,6 +86,7 @@ class Solver:
     formulas: tuple[SolverFormula, ...] = ()
     valid: str = ""
     drives_track: bool = False
+    traps: tuple[str, ...] = ()
 
     def __post_init__(self) -> None:
         """Hold the facts against each other."""

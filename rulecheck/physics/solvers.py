@@ -75,4 +75,6 @@ def as_module(solver: Solver) -> PhysicsModule:
             output.name, full.span, full, unit, output.meaning, output.source, valid, None, None, by_solver=True
         )
     assert all(is_name(name) for name in figures)
-    return PhysicsModule(solver.name, file, solver.meaning, solver.sources, figures, solver.caution, solver=solver)
+    return PhysicsModule(
+        solver.name, file, solver.meaning, solver.sources, figures, solver.caution, solver=solver, traps=solver.traps
+    )

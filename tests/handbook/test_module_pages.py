@@ -8,43 +8,37 @@ import pytest
 
 from rulecheck.cli import run
 from rulecheck.handbook import pages
-from rulecheck.handbook.module_pages import module_names, module_page
-from rulecheck.model.ruleset import PhysicsModule
-from rulecheck.physics.modules import BUILT_IN, built_in
-
-
-def module(name: str) -> PhysicsModule:
-    found = built_in(name)
-    assert found is not None
-    return found
+from rulecheck.handbook.module_pages import MODULES, module_names, module_of, module_page
+from rulecheck.physics.modules import BUILT_IN
+from rulecheck.physics.solvers import OWN
 
 
 def flat(text: str) -> str:
     return " ".join(text.split())
 
 
-@pytest.mark.parametrize("name", BUILT_IN)
+@pytest.mark.parametrize("name", MODULES)
 def test_the_page_says_all_that_the_file_says(name: str) -> None:
-    page, said = flat(pages.page(f"physics-{name}")), module(name)
+    page, said = flat(pages.page(f"physics-{name}")), module_of(name)
     assert said.meaning in page
     assert said.caution in page
     for figure in said.figures.values():
         assert f"### `{name}.{figure.name}`" in page
-        assert flat(figure.formula.text) in page
+        assert figure.by_solver or flat(figure.formula.text) in page
         assert flat(figure.meaning) in page
         assert figure.valid is None or f"Valid for `{flat(figure.valid.text)}`" in page
     assert all(f"`{key}`: {flat(text)}" in page for key, text in said.sources.items())
 
 
-@pytest.mark.parametrize("name", BUILT_IN)
+@pytest.mark.parametrize("name", MODULES)
 def test_every_module_names_its_traps(name: str) -> None:
-    """Where this fails: the file of the module has no `traps:`, mistakes that practitioners make with its figures."""
-    traps = module(name).traps
+    """Where this fails: the file or solver of the module has no `traps:`, mistakes that practitioners make with its figures."""
+    traps = module_of(name).traps
     assert traps
     assert all(trap.endswith(".") and flat(f"- {trap}") in flat(module_page(name)) for trap in traps)
 
 
-@pytest.mark.parametrize("name", BUILT_IN)
+@pytest.mark.parametrize("name", MODULES)
 def test_pages_are_listed_and_of_readable_width(name: str) -> None:
     assert f"| `physics-{name}` |" in pages.page("physics")
     lines = module_page(name).splitlines()
@@ -61,6 +55,14 @@ def test_inputs_are_those_that_the_formulas_read() -> None:
     } <= set(read)  # fmt: skip
     assert not {path for path in read if path.startswith(("tyres.", "aero_surfaces.", "vehicle."))}
     assert "`physics-aero`, `physics-mass`" in flat(module_page("load_transfer"))
+
+
+def test_every_module_has_a_page_also_that_of_a_solver() -> None:
+    assert set(module_names()) == {f"physics-{name}" for name in (*BUILT_IN, *OWN)}
+    page = flat(module_page("lap"))
+    assert "quasi-steady" in page
+    assert "| `vehicle.rolling_resistance` |" in page
+    assert "`physics-mass`" in page
 
 
 def test_the_name_of_a_module_alone_shows_its_page(capsys: pytest.CaptureFixture[str]) -> None:

@@ -153,4 +153,12 @@ LAP = Solver(
     run=drive,
     valid="abs(air.wind) <= 0 m/s and vehicle.rolling_resistance >= 0",
     drives_track=True,
+    traps=(
+        "A point mass cannot tell the axles apart; here each axle has its own load and grip, and the one that gives way "
+        "first holds the car back.",
+        "The bound is that of the calculation. What the model leaves out, a driver, warm tyres, kerbs, is not in it: "
+        "compare layouts by the difference of two laps, and not a lap with a stopwatch.",
+        "Recovered energy depends on the track: a machine that is held back by its power gains nothing from load, one "
+        "that is held back by grip does. Read it beside the limits.",
+    ),
 )
