@@ -46,17 +46,19 @@ def bind(
     also_known: Sequence[Ruleset] = (),
     figures: Sequence[str] = (),
     tracks: Tracks | None = None,
+    only: Sequence[str] = (),
 ) -> Graph:
     """Bind every rule of the rulesets for a design. Raises `Refused` with all faults.
 
     `also_known` are rulesets whose inputs the design may state though they are not checked; `figures` are physics
     figures, or whole modules, that are wanted beside what the rules use; `tracks` reads the track that a design names.
+    `only` are the rules that are bound, where not all are; what they do not use is then not looked at.
     With `validity_required` no rule may rest on a figure outside its range of validity.
     """
     with deep_formulas():
         shared = _shared(design, rulesets, day, physics, also_known)
         shared.strict, shared.tracks = validity_required, tracks
-        return _bound(shared, figures)
+        return _bound(shared, figures, only)
 
 
 @contextmanager
@@ -91,26 +93,33 @@ def stand_in(shared: Shared, ruleset: Ruleset, name: str) -> Case | None:
     return case
 
 
-def _bind_all(shared: Shared, figures: Sequence[str]) -> None:
+def _bind_all(shared: Shared, figures: Sequence[str], only: Sequence[str] = ()) -> None:
     rulesets = shared.rulesets
     base = Scope(shared, shared.base, rulesets[0] if rulesets else NO_RULES)
     check_declarations(base, rulesets)
     validate(base)
-    for ruleset in rulesets:
+    wanted = _chosen(rulesets, only)
+    for ruleset in () if only else rulesets:
         _unused_formulas(Scope(shared, shared.base, ruleset), ruleset)
-        for name in ruleset.rules:
-            bind_rule(shared, ruleset, name)
-    for ruleset in rulesets:
+    for ruleset, name in wanted:
+        bind_rule(shared, ruleset, name)
+    for ruleset in () if only else rulesets:
         check_unused_places(Scope(shared, shared.base, ruleset), ruleset)
     for name in figures:
         _wanted(base, name)
 
 
-def _bound(shared: Shared, figures: Sequence[str]) -> Graph:
-    rulesets = shared.rulesets
-    _bind_all(shared, figures)
+def _chosen(rulesets: Sequence[Ruleset], only: Sequence[str]) -> list[tuple[Ruleset, str]]:
+    """The rules that are bound: those that are named, else all."""
+    return [(book, name) for book in rulesets for name in book.rules if not only or name in only]
+
+
+def _bound(shared: Shared, figures: Sequence[str], only: Sequence[str]) -> Graph:
+    _bind_all(shared, figures, only)
     shared.faults.settle()
-    rules = [rule for book in rulesets for name in book.rules if (rule := bind_rule(shared, book, name)) is not None]
+    rules = [
+        rule for book, name in _chosen(shared.rulesets, only) if (rule := bind_rule(shared, book, name)) is not None
+    ]
     assert all(rule.cases for rule in rules), "a rule without cases would pass unseen"
     return Graph(
         shared.bank,

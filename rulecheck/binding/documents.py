@@ -22,7 +22,7 @@ from rulecheck.reading.nodes import Located
 
 def evidence(scope: Scope, wanted: EvidenceWanted) -> Condition | Broken:
     """A document of the kind asked for, in force on the evaluation date."""
-    name = _name(scope, wanted.name)
+    name = document_name(scope, wanted.name)
     text = f"{wanted.kind.text} '{name}'" if name else f"{wanted.kind.text} named by {wanted.name.text}"
     due = _due(scope, wanted)
     if isinstance(due, Broken):
@@ -34,14 +34,14 @@ def evidence(scope: Scope, wanted: EvidenceWanted) -> Condition | Broken:
     scope.touched.add(base)
     if design.names(base) is None or design.states_none(base):
         return _absent(scope, text, due, wanted)
-    kind = _words(scope, f"{base}.kind", wanted.kind.span)
+    kind = stated_words(scope, f"{base}.kind", wanted.kind.span)
     if kind != wanted.kind.text:
         found = f"'{name}' is a {kind}" if kind else f"the kind of '{name}'"
         return open_part(scope, f"{text} ({found})", design.keys.get(base), text)
     return _in_force(scope, wanted, base, text)
 
 
-def _name(scope: Scope, where: Located) -> str | None:
+def document_name(scope: Scope, where: Located) -> str | None:
     """The name of the document; under `each` a field of the element that names it."""
     first, _, rest = where.text.partition(".")
     variable = scope.variables.get(first)
@@ -49,10 +49,10 @@ def _name(scope: Scope, where: Located) -> str | None:
         return where.text
     if not rest:
         return variable.name
-    return _words(scope, f"{variable.path}.{rest}", where.span)
+    return stated_words(scope, f"{variable.path}.{rest}", where.span)
 
 
-def _words(scope: Scope, path: str, span: Span) -> str | None:
+def stated_words(scope: Scope, path: str, span: Span) -> str | None:
     """A stated text or choice, or None."""
     entry = scope.shared.vocabulary.entry(path)
     if entry is None:
@@ -94,13 +94,13 @@ def _ordinals(scope: Scope, *days: Term) -> list[Term]:
 def _in_force(scope: Scope, wanted: EvidenceWanted, base: str, text: str) -> Condition:
     place = scope.view.design.keys.get(base)
     parts: list[Condition] = []
-    issued = _date(scope, f"{base}.issued", wanted.name.span)
-    if issued is not None and _after(scope, issued):
+    issued = stated_day(scope, f"{base}.issued", wanted.name.span)
+    if issued is not None and is_later(scope, issued):
         return open_part(scope, f"{text} (issued after the evaluation date)", place, text)
     if issued is None:
         # Not asked for by rules, so not missing: but nobody is to think that it was held against the day of judging.
         text += ", day of issue not stated"
-    until = _date(scope, f"{base}.until", wanted.name.span)
+    until = stated_day(scope, f"{base}.until", wanted.name.span)
     if until is None:
         if wanted.expires:
             return open_part(scope, f"the last day ('until') of {text}", place, text)
@@ -116,14 +116,15 @@ def _in_force(scope: Scope, wanted: EvidenceWanted, base: str, text: str) -> Con
     return parts[0] if len(parts) == 1 else AllOf(tuple(parts))
 
 
-def _date(scope: Scope, path: str, span: Span) -> Term | None:
+def stated_day(scope: Scope, path: str, span: Span) -> Term | None:
+    """A stated date, or None."""
     entry = scope.shared.vocabulary.entry(path)
     assert entry is not None
     bound = bind_input(scope, path, entry, span)
     return bound.term if isinstance(bound, Date) and bound.term.kind == "constant" else None
 
 
-def _after(scope: Scope, day: Term) -> bool:
+def is_later(scope: Scope, day: Term) -> bool:
     """True where a stated day lies after the evaluation date."""
     return isinstance(day.value, Monomial) and day.value.rational > scope.shared.day.toordinal()
 
@@ -137,8 +138,10 @@ def judgement(scope: Scope, rule: str, element: str | None, question: Located) -
     whole = f"judgements.{rule}"
     base = whole if element is None else f"{whole}.{_key(element)}"
     scope.touched.add(base)
-    missing = [name for name in ("verdict", "role", "reason") if _words(scope, f"{base}.{name}", question.span) is None]
-    day = _date(scope, f"{base}.date", question.span)
+    missing = [
+        name for name in ("verdict", "role", "reason") if stated_words(scope, f"{base}.{name}", question.span) is None
+    ]
+    day = stated_day(scope, f"{base}.date", question.span)
     if day is None:
         missing.append("date")
     text = f"judgement: {question.text}"
@@ -147,14 +150,14 @@ def judgement(scope: Scope, rule: str, element: str | None, question: Located) -
         told = _unjudged(base, missing, element, is_said_of_rule)
         gone = scope.bank.unknown(Reason("missing", told, question.span), "flag")
         return Part("judgement", text, gone, span=question.span)
-    if day is not None and _after(scope, day):
+    if day is not None and is_later(scope, day):
         return Part(
             "judgement",
             text,
             scope.missing("a judgement that is not of a later day", "flag", PURE, question.span),
             span=question.span,
         )
-    verdict = _words(scope, f"{base}.verdict", question.span)
+    verdict = stated_words(scope, f"{base}.verdict", question.span)
     return Part(
         "judgement", text, scope.bank.flag(verdict == "complies"), span=question.span, place=design.keys.get(base)
     )

@@ -7,6 +7,7 @@ from itertools import product
 
 from rulecheck.binding.aggregates import Loop, loop, stand_ins
 from rulecheck.binding.bound import Bound, Broken, Element, Number, Truth, kind_of
+from rulecheck.binding.claims import claimed, rests_on_papers
 from rulecheck.binding.comparing import all_of, any_of, opposite
 from rulecheck.binding.conditions import Builder, certain, holds, open_part, scales_agree
 from rulecheck.binding.dispensations import dispensation
@@ -14,6 +15,8 @@ from rulecheck.binding.documents import evidence, judgement
 from rulecheck.binding.meeting import met_by
 from rulecheck.binding.parsing import parsed, parsed_each
 from rulecheck.binding.placing import place_condition
+from rulecheck.binding.records import record
+from rulecheck.binding.ruling import ruled_parts
 from rulecheck.binding.scope import Scope, Shared
 from rulecheck.binding.scrutineers import check_scrutineer
 from rulecheck.binding.states import Stance, stances
@@ -25,7 +28,6 @@ from rulecheck.graph.terms import Term
 from rulecheck.model.ruleset import Alternative, Rule, Ruleset
 from rulecheck.operations.values import Monomial
 from rulecheck.quantity.dimension_names import name_of
-from rulecheck.reading.nearest import nearest
 from rulecheck.reading.nodes import Located
 
 MOST_CASES = 20_000
@@ -283,6 +285,10 @@ class _Binding:
             parts.append(Broken() if syntax is None else Builder(scope, self._scale(scope)).build(syntax))
         for wanted in alternative.places:
             parts.append(place_condition(scope, wanted, self._about(scope), self._scale(scope)))
+        ruling = alternative.ruling.within(self.rule.own.ruling)
+        parts = ruled_parts(scope, parts, ruling)
+        if alternative.record is not None:
+            parts.append(record(scope, alternative.record, self._scale(scope), ruling))
         if alternative.evidence is not None:
             parts.append(evidence(scope, alternative.evidence))
         if alternative.judgement is not None:
@@ -316,21 +322,11 @@ class _Binding:
         return None
 
     def _branches(self, scope: Scope, element: str) -> Condition | Broken:
-        claim = scope.view.design.leaves.get(f"claims.{self.rule.name}")
-        branches = self.rule.branches
-        if isinstance(claim, Located):
-            scope.touched.add(f"claims.{self.rule.name}")
-            names = tuple(branch.name for branch in branches)
-            if claim.text not in names:
-                return scope.fault(
-                    "unknown-choice",
-                    f"rule '{self.rule.name}' has no branch '{claim.text}'",
-                    claim.span,
-                    expected=" or ".join(names),
-                    advice=nearest(claim.text, names),
-                )
-            branches = tuple(branch for branch in branches if branch.name == claim.text)
-        if claim is None and all(_rests_on_papers(branch) for branch in branches):
+        found = claimed(scope, self.rule)
+        if isinstance(found, Broken):
+            return found
+        branches, claim = found
+        if claim is None and all(rests_on_papers(branch) for branch in branches):
             return open_part(scope, f"claims.{self.rule.name}, which says the branch that is used", self.rule.span)
         made: list[Condition] = []
         for branch in branches:
@@ -338,12 +334,7 @@ class _Binding:
             if any(isinstance(part, Broken) for part in parts):
                 return Broken()
             whole = tuple(part for part in parts if not isinstance(part, Broken))
-            if claim is None and _rests_on_papers(branch) and not self.shared.stand_ins:
+            if claim is None and rests_on_papers(branch) and not self.shared.stand_ins:
                 whole = (certain(scope, False, f"branch '{branch.name}' is not claimed", self.rule.span),)
             made.append(whole[0] if len(whole) == 1 else AllOf(whole))
         return AnyOf(tuple(made), tuple(branch.name for branch in branches))
-
-
-def _rests_on_papers(branch: Alternative) -> bool:
-    """True for a branch that counts only where the design claims it."""
-    return branch.evidence is not None or branch.judgement is not None

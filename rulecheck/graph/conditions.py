@@ -23,7 +23,18 @@ class Use:
     unit: Unit | None
 
 
-PartKind = Literal["comparison", "flag", "evidence", "judgement", "zone"]
+PartKind = Literal["comparison", "flag", "evidence", "judgement", "zone", "record"]
+
+
+@dataclass(frozen=True, slots=True)
+class Ruled:
+    """What the rule book's tolerance and rounding, in its words, did to a part: its margin without them, and the
+    rounded value."""
+
+    margin: Term
+    value: Term | None
+    tolerance: str
+    rounding: str
 
 
 @dataclass(frozen=True, slots=True)
@@ -49,6 +60,7 @@ class Part:
     place: Span | None = field(default=None, compare=False)
     formula: Syntax | None = field(default=None, compare=False)
     counted: bool = False
+    ruled: Ruled | None = None
 
 
 @dataclass(frozen=True, slots=True)

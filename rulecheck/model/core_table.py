@@ -8,6 +8,7 @@ from __future__ import annotations
 
 from rulecheck.model.aero_table import AERO
 from rulecheck.model.operating_table import BALLASTING, COMPUTED, CONDITIONS, LAP, WEIGHING
+from rulecheck.model.record_table import RECORDS
 from rulecheck.model.shape_table import OUTLINES
 from rulecheck.model.value_signs import signed
 from rulecheck.model.vocabulary import Entry
@@ -285,46 +286,6 @@ SAFETY = (
     Entry("safety.escape_time", "number", "Time for the driver to leave the car", unit="s"),
     Entry("electrical.system_voltage", "number", "Greatest voltage of the system", unit="V"),
     Entry("electrical.insulation", "number", "Insulation resistance", unit="kohm"),
-)
-
-RECORDS = (
-    Entry("evidence", "collection", "Certificates, drawings, measurement sheets and inspections"),
-    Entry(
-        "evidence.*.kind",
-        "choice",
-        "What it is",
-        choices=(
-            "certificate",
-            "homologation",
-            "licence",
-            "drawing",
-            "measurement",
-            "calculation",
-            "inspection",
-            "declaration",
-            "data_sheet",
-        ),
-    ),
-    Entry("evidence.*.reference", "text", "Number or title of the document"),
-    Entry("evidence.*.issuer", "text", "Who issued it"),
-    Entry("evidence.*.part", "text", "Part that it covers"),
-    Entry("evidence.*.issued", "date", "Day of issue"),
-    Entry("evidence.*.made", "date", "Day of making on the label"),
-    Entry("evidence.*.until", "date", "Last day on which it is good"),
-    *(
-        Entry(f"judgements.{stars}.{name}", kind, meaning, choices=choices)  # type: ignore[arg-type]
-        for stars in ("*", "*.*")
-        for name, kind, meaning, choices in (
-            ("verdict", "choice", "What the person decided", ("complies", "breach")),
-            ("role", "text", "In which role", ()),
-            ("date", "date", "When", ()),
-            ("reason", "text", "Why", ()),
-        )
-    ),
-    Entry("dispensations.*.rule", "text", "Rule that it departs from"),
-    Entry("dispensations.*.reference", "text", "Number of the letter"),
-    Entry("dispensations.*.until", "date", "Last day on which it is good"),
-    Entry("claims.*", "text", "Branch that is claimed for a rule"),
 )
 
 CORE: tuple[Entry, ...] = signed(

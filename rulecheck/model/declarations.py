@@ -8,6 +8,7 @@ from typing import Any
 from rulecheck.diagnostics import Faults, Span
 from rulecheck.model.edge import InputShape
 from rulecheck.model.names import RESERVED_KEYS, check_name, is_name
+from rulecheck.model.record_table import RECORDS
 from rulecheck.model.shape_table import extent_rows, outline_rows
 from rulecheck.model.vocabulary import Entry
 from rulecheck.quantity.dimension import Dimension
@@ -57,7 +58,23 @@ def declared_entries(
             )
             continue
         entries.extend(_rows(path, shape, rivals, file, span, faults))
-    return tuple(entries)
+    return tuple(row for entry in entries for row in (entry, *_of_records(entry)))
+
+
+def _of_records(entry: Entry) -> tuple[Entry, ...]:
+    """What goes with a field of a test: the same field of each of its runs, and what every record has."""
+    parts = entry.path.split(".")
+    if len(parts) < 3 or parts[0] != "records":
+        return ()
+    rows = []
+    if len(parts) > 3 and parts[2] in ("setup", "result"):
+        rows.append(replace(entry, path=".".join((*parts[:2], "runs", "*", *parts[2:]))))
+    if parts[1] != "*":
+        # A name with rows of its own would hide those of every record.
+        common = (row for row in RECORDS if row.path.startswith("records.*."))
+        own = (replace(row, path=row.path.replace("records.*", f"records.{parts[1]}", 1)) for row in common)
+        rows.extend(replace(row, origin=entry.origin, span=entry.span) for row in own)
+    return tuple(row for row in rows if row.path != entry.path)
 
 
 def _rows(

@@ -48,6 +48,9 @@ class BranchShape(Shape):
     require: Leaf | None = Field(None, description="Condition")
     evidence: EvidenceShape | None = Field(None, description="Document that is asked for")
     judgement: Leaf | None = Field(None, description="Question that a person answers")
+    record: Any = Field(None, description="Test that is recorded: name, setup, require, runs")
+    tolerance: Leaf | None = Field(None, description="The rule book's tolerance on the limit: 3 mm, +0/-5 deg, 3 %")
+    rounding: Any = Field(None, description="How the value is rounded before it is compared: to, how")
     inside: Any = Field(None, description="Zone that the element, or what is named, lies inside of")
     outside: Any = Field(None, description="Zone that the element, or what is named, stays clear of")
     passes: Any = Field(None, description="Template that fits an opening at a place: template, through, at")
@@ -76,6 +79,7 @@ class RuleShape(BranchShape):
     measure: Any = Field(None, description="The rule book's procedure, for the measuring sheet")
     scrutineer: Any = Field(None, description="The scrutineer's own uncertainty and tolerance")
     decision: Any = Field(None, description="Decision rule where values have a spread")
+    consequence: Any = Field(None, description="What follows a breach: kind, points, amount, text")
     examples: list[Any] | None = Field(None, description="The rule's own tests")
     answers: Any = Field(None, description="What officials answered about it: reference, date, text")
 

@@ -10,6 +10,10 @@ from typing import Literal
 
 from rulecheck.diagnostics import Span
 from rulecheck.model.clauses import Answer, Clause
+from rulecheck.model.consequences import Consequence
+from rulecheck.model.examples import Example
+from rulecheck.model.records import RecordWanted
+from rulecheck.model.rulings import NO_RULING, Ruling
 from rulecheck.model.solver import Solver
 from rulecheck.model.vocabulary import Entry
 from rulecheck.model.zones import PlaceCondition, Template, ZoneRule
@@ -59,6 +63,8 @@ class Alternative:
     judgement: Located | None
     when: Located | None
     places: tuple[PlaceCondition, ...] = ()
+    record: RecordWanted | None = None
+    ruling: Ruling = NO_RULING
 
 
 @dataclass(frozen=True, slots=True)
@@ -126,7 +132,8 @@ class Rule:
     measure: Node | None = None
     scrutineer: Scrutineer | None = None
     decision: Decision | None = None
-    examples: tuple[Node, ...] = ()
+    examples: tuple[Example, ...] = ()
+    consequence: Consequence | None = None
     history: tuple[Origin, ...] = ()
     answers: tuple[Answer, ...] = ()
 

@@ -7,12 +7,16 @@ from typing import Any
 
 from rulecheck.diagnostics import Faults, Refused, Related, Span
 from rulecheck.model.clauses import read_answers, read_clauses
+from rulecheck.model.consequences import read_consequence
 from rulecheck.model.decisions import read_decision, read_scrutineer
 from rulecheck.model.declarations import declared_entries, needed_states, own_units
 from rulecheck.model.edge import BranchShape, EvidenceShape, FigureShape, RulesetShape, RuleShape, shaped
+from rulecheck.model.examples import read_examples
 from rulecheck.model.groups import group_conditions
 from rulecheck.model.layers import layered
 from rulecheck.model.names import check_name
+from rulecheck.model.records import read_record
+from rulecheck.model.rule_parts import read_states, read_unless
 from rulecheck.model.ruleset import (
     Alternative,
     Book,
@@ -22,9 +26,9 @@ from rulecheck.model.ruleset import (
     Rule,
     Ruleset,
     Standing,
-    Unless,
     Window,
 )
+from rulecheck.model.rulings import read_ruling
 from rulecheck.model.table_reader import read_table
 from rulecheck.model.zone_reader import place_conditions, read_template, read_zone
 from rulecheck.quantity.reading_values import read_day
@@ -185,7 +189,7 @@ class _Reader:
                 "missing-key",
                 f"rule '{name}' asks for nothing",
                 key.span,
-                expected="require, inside, outside, branches, evidence or judgement",
+                expected="require, inside, outside, branches, evidence, record or judgement",
             )
         return Rule(
             name=name,
@@ -199,16 +203,17 @@ class _Reader:
             branches=branches,
             each=self._each(shape.each, name, key),
             empty=self._word(shape.empty, EMPTY, "open"),  # type: ignore[arg-type]
-            states=self._states(shape.states, key),
+            states=read_states(shape.states, key, self.faults),
             when=(*groups.get(name, ()), *((shape.when,) if shape.when else ())),
-            unless=self._unless(shape.unless, inner),
+            unless=read_unless(shape.unless, inner, self.faults),
             scale=shape.scale,
             valid=window(shape.valid, self.faults),
             measure=_inside(inner, "measure"),
             scrutineer=read_scrutineer(_inside(inner, "scrutineer"), self.units, self.faults),
             decision=read_decision(_inside(inner, "decision"), self.faults),
-            examples=tuple(_inside(inner, "examples") or ()),  # type: ignore[arg-type]
+            consequence=read_consequence(_inside(inner, "consequence"), self.faults),
             answers=read_answers(_inside(inner, "answers"), self.faults),
+            examples=read_examples(_inside(inner, "examples"), self.faults),
         )
 
     def _word(self, where: Located | None, known: tuple[str, ...], default: str) -> str:
@@ -236,7 +241,7 @@ class _Reader:
                 "missing-key",
                 f"branch '{label}' of rule '{rule}' asks for nothing",
                 self.key("rules", rule, "branches", label).span,
-                expected="require, inside, outside, evidence or judgement",
+                expected="require, inside, outside, evidence, record or judgement",
             )
         node = self.root.get("rules")
         for part in (rule, "branches", label):
@@ -248,7 +253,9 @@ class _Reader:
         self._said(shape.judgement, "the question")
         wanted = self._evidence(shape.evidence) if shape.evidence else None
         places = place_conditions(node, self.faults)
-        return Alternative(name, shape.require, wanted, shape.judgement, shape.when, places)
+        record = read_record(_inside(node, "record"), self.units, self.faults)
+        ruling = read_ruling(node, self.units, self.faults)
+        return Alternative(name, shape.require, wanted, shape.judgement, shape.when, places, record, ruling)
 
     def _evidence(self, shape: EvidenceShape) -> EvidenceWanted:
         self._said(shape.kind, "the kind of document")
@@ -258,51 +265,11 @@ class _Reader:
             expires = self._word(shape.expires, ("yes", "no"), "no") == "yes"
         return EvidenceWanted(shape.kind, shape.name, shape.due, expires)
 
-    def _states(self, node: Any, key: Located) -> tuple[tuple[str, tuple[Located, ...]], ...] | None:
-        if node is None:
-            return None
-        if isinstance(node, Located):
-            if node.text != "every":
-                self.faults.add(
-                    "bad-value",
-                    f"'{node.text}' does not say which states",
-                    node.span,
-                    expected="every, or {axis: every} or {axis: [names]}",
-                )
-            return ()
-        if not node or not all(isinstance(names, Located) or names for names in node.values()):
-            # An empty choice must be read neither as every state nor as none.
-            self.faults.add(
-                "bad-structure", f"rule '{key.text}' does not say which states", key.span,
-                expected="every, or {axis: every} or {axis: [names]}",
-            )  # fmt: skip
-        chosen = []
-        for axis, names in node.items():
-            if isinstance(names, Located):
-                chosen.append((axis, () if names.text == "every" else (names,)))
-            else:
-                chosen.append((axis, tuple(names)))
-        return tuple(chosen)
-
-    def _unless(self, shape: dict[str, Located] | None, inner: Node | None) -> Unless | None:
-        if shape is None:
-            return None
-        if "when" not in shape or set(shape) - {"when", "because"}:
-            node = _inside(inner, "unless")
-            self.faults.add(
-                "bad-structure",
-                "an exemption has a condition and a reason",
-                node.span if node is not None else None,
-                expected="{when: condition, because: text}",
-            )
-            return None
-        return Unless(shape["when"], text(shape.get("because")))
-
 
 def asks(shape: BranchShape) -> bool:
     """True where a rule or branch has a condition of its own."""
     plain = shape.require or shape.evidence or shape.judgement
-    return bool(plain) or any(getattr(shape, word) is not None for word in PLACES)
+    return bool(plain) or shape.record is not None or any(getattr(shape, word) is not None for word in PLACES)
 
 
 PLACES = ("inside", "outside", "passes", "stops", "sight", "cover")

@@ -9,7 +9,9 @@ from rulecheck.model.clauses import CLAUSE_KINDS
 from rulecheck.model.decisions import DECISIONS
 from rulecheck.model.declarations import KINDS
 from rulecheck.model.edge import HouseShape, PhysicsShape, RulesetShape, Shape
+from rulecheck.model.examples import EXPECTED
 from rulecheck.model.ruleset_reader import EMPTY, STANDINGS, VALIDITIES
+from rulecheck.model.rulings import HOW
 from rulecheck.model.track_reader import DIRECTIONS, SegmentShape, TrackShape
 from rulecheck.model.track_reader import KINDS as TRACK_KINDS
 from rulecheck.model.zone_schemas import PLACES, TEMPLATES, ZONE, ZONES
@@ -112,6 +114,59 @@ _ANSWERS: Schema = {
         "additionalProperties": False,
     },
 }
+_ROUNDING: Schema = {
+    "type": "object",
+    "properties": {
+        "to": {**TEXT, "description": "Step, such as 1 kg"},
+        "how": {
+            "enum": list(HOW),
+            "description": "up, down, to the nearest (ties away from zero), ties to the even one",
+        },
+    },
+    "required": ["to", "how"],
+    "additionalProperties": False,
+}
+_RECORD: Schema = {
+    "type": "object",
+    "properties": {
+        "name": {**TEXT, "description": "Name under records: in the design; under each, a field such as o.proof"},
+        "of": {**TEXT, "description": "In the place of a name: variable of each whose own records are meant"},
+        "setup": {**TEXT, "description": "Condition on the set-up; a run that does not meet it is void"},
+        "require": {**TEXT, "description": "Condition on the result"},
+        "runs": {"type": ["integer", "string"], "description": "How many valid runs there must be; 1 where left out"},
+        "tolerance": {**TEXT, "description": "The rule book's tolerance on the limit of the result"},
+        "rounding": {**_ROUNDING, "description": "How the result is rounded before it is compared"},
+    },
+    "required": ["require"],
+    "oneOf": [{"required": ["name"]}, {"required": ["of"]}],
+    "additionalProperties": False,
+}
+_CONSEQUENCE: Schema = {
+    "type": "object",
+    "properties": {
+        "kind": {**TEXT, "description": "Such as penalty or not admitted"},
+        "points": {"type": ["number", "string"], "description": "How many points"},
+        "amount": {**TEXT, "description": "A sum of money"},
+        "time": {**TEXT, "description": "Time that is added"},
+        "text": {**TEXT, "description": "In the words of the rule book"},
+    },
+    "required": ["kind"],
+    "additionalProperties": False,
+}
+_EXAMPLES: Schema = {
+    "type": "array",
+    "items": {
+        "type": "object",
+        "properties": {
+            "given": {"type": "object", "description": "Values by path: the whole design of the example"},
+            "margin": {**TEXT, "description": "Margin that must come of them, with its unit"},
+            "verdict": {"enum": list(EXPECTED), "description": "Verdict that must come of them"},
+            "on": {**DAY, "description": "Evaluation date"},
+        },
+        "anyOf": [{"required": ["margin"]}, {"required": ["verdict"]}],
+        "additionalProperties": False,
+    },
+}
 _NARROWER: Mapping[tuple[str, str], Schema] = {
     ("RuleShape", "standing"): {"enum": list(STANDINGS)},
     ("RuleShape", "empty"): {"enum": list(EMPTY)},
@@ -137,6 +192,13 @@ _NARROWER: Mapping[tuple[str, str], Schema] = {
     ("RuleShape", "answers"): _ANSWERS,
     ("RulesetShape", "clauses"): _CLAUSES,
     ("RuleShape", "scrutineer"): _SCRUTINEER,
+    ("RuleShape", "consequence"): _CONSEQUENCE,
+    ("RuleShape", "examples"): _EXAMPLES,
+    **{
+        (shape, word): schema
+        for word, schema in (("record", _RECORD), ("rounding", _ROUNDING))
+        for shape in ("RuleShape", "BranchShape")
+    },
 }
 """What the readers hold beyond the shapes, by shape and key."""
 

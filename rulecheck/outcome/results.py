@@ -18,6 +18,7 @@ __all__ = [
     "PartResult",
     "Place",
     "Report",
+    "RuledResult",
     "RulesetInfo",
     "Step",
     "Verdict",
@@ -51,6 +52,16 @@ class Place:
 
 
 @dataclass(frozen=True, slots=True)
+class RuledResult:
+    """What the rule book's tolerance and rounding, in its words, did: the margin as measured, and the rounded value."""
+
+    margin: Amount | None
+    value: Amount | None
+    tolerance: str
+    rounding: str
+
+
+@dataclass(frozen=True, slots=True)
 class PartResult:
     """One condition of a rule, for one element in one case."""
 
@@ -68,6 +79,7 @@ class PartResult:
     state: Mapping[str, str]
     place: Place | None
     branch: str = ""
+    ruled: RuledResult | None = None
 
 
 @dataclass(frozen=True, slots=True)
@@ -109,6 +121,8 @@ class Finding:
     ruleset_name: str = ""
     counted: bool = False
     spread: SpreadResult | None = None
+    ruled: RuledResult | None = None
+    consequence: str = ""
 
 
 @dataclass(frozen=True, slots=True)

@@ -6,7 +6,17 @@ import json
 from dataclasses import fields, is_dataclass
 from typing import Protocol
 
-from rulecheck.outcome.results import Amount, BindingPart, Finding, PartResult, Place, Report, RulesetInfo, Workings
+from rulecheck.outcome.results import (
+    Amount,
+    BindingPart,
+    Finding,
+    PartResult,
+    Place,
+    Report,
+    RuledResult,
+    RulesetInfo,
+    Workings,
+)
 from rulecheck.output.json_spread import amount_json, finite, spread_json
 from rulecheck.output.marks import marks_json
 
@@ -122,6 +132,8 @@ def _finding(item: Finding) -> Json:
         "notes": list(item.notes),
         "history": list(item.history),
         "spread": spread_json(item.spread),
+        "ruled": _ruled(item.ruled),
+        "consequence": item.consequence,
     }
 
 
@@ -151,6 +163,18 @@ def _part(item: PartResult) -> Json:
         "branch": item.branch,
         "case": {"state": dict(item.state)},
         "place": _place(item.place),
+        "ruled": _ruled(item.ruled),
+    }
+
+
+def _ruled(item: RuledResult | None) -> Json | None:
+    if item is None:
+        return None
+    return {
+        "tolerance": item.tolerance,
+        "rounding": item.rounding,
+        "margin": amount_json(item.margin),
+        "value": amount_json(item.value),
     }
 
 

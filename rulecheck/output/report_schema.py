@@ -184,6 +184,18 @@ def _judged() -> Schema:
         "value": or_null_of({"$ref": "#/$defs/amount"}),
         "limit": or_null_of({"$ref": "#/$defs/amount"}),
         "sense": text_of("How value and limit are held against each other"),
+        "ruled": or_null_of(
+            object_of(_ruled()), "What the rule book's tolerance and rounding did; null where nothing was done"
+        ),
+    }
+
+
+def _ruled() -> Schema:
+    return {
+        "tolerance": text_of("The tolerance on the limit as the rule book writes it, empty without one"),
+        "rounding": text_of("How the value was rounded, empty where it was not"),
+        "margin": or_null_of({"$ref": "#/$defs/amount"}, "The margin without either"),
+        "value": or_null_of({"$ref": "#/$defs/amount"}, "The rounded value"),
     }
 
 
@@ -209,6 +221,7 @@ def _rule() -> Schema:
         "outside_validity": list_of(text_of(), "Figures that are used outside their range of validity"),
         "notes": list_of(text_of(), "Such as a condition that is close to its own threshold"),
         "history": list_of(text_of(), "What the rule replaces"),
+        "consequence": text_of("What the rule book says follows a breach; it is no part of the verdict"),
         "spread": or_null_of(spread_of(), "What the spread of its inputs does to it; null where none has one"),
     }
 

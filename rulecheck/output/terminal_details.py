@@ -7,7 +7,7 @@ from collections.abc import Iterable
 from rich.console import RenderableType
 from rich.text import Text
 
-from rulecheck.outcome.results import Amount, Finding, PartResult, Report, Verdict
+from rulecheck.outcome.results import Amount, Finding, PartResult, Report, RuledResult, Verdict
 from rulecheck.output.screen import STYLES, line, words
 from rulecheck.output.wording import state_words
 
@@ -48,9 +48,20 @@ def _lines(item: Finding) -> Iterable[str]:
         yield from _named("in state", state_words(binding.state))
     yield from _numbers(item)
     yield from _others(item)
+    yield from _named("consequence in the rule book:", item.consequence)
     yield f"rule at {item.rule_place}"
     if item.value_place is not None:
         yield f"value at {item.value_place}"
+
+
+def ruled_words(item: RuledResult | None) -> str:
+    """What the rule book's tolerance and rounding did, and the margin without them; empty where nothing was done."""
+    if item is None:
+        return ""
+    rounded = f"value rounded {item.rounding}: {item.value}" if item.rounding and item.value else ""
+    allowed = f"tolerance {item.tolerance} on the limit" if item.tolerance else ""
+    raw = f"margin without {'them' if rounded and allowed else 'it'}: {item.margin}" if item.margin else ""
+    return "; ".join(filter(None, (rounded, allowed, raw)))
 
 
 def _named(label: str, text: str) -> Iterable[str]:
@@ -63,6 +74,9 @@ def _numbers(item: Finding) -> Iterable[str]:
     margin = f"margin {item.margin}" if item.margin else ""
     if told or margin:
         yield "; ".join(filter(None, (told, margin)))
+    ruled = ruled_words(item.ruled)
+    if ruled:
+        yield ruled
 
 
 def compared(value: Amount | None, sense: str, limit: Amount | None) -> str:

@@ -11,6 +11,7 @@ from rich.text import Text
 from rulecheck.outcome.results import Finding, Report
 from rulecheck.output.marks import mark_lines, some
 from rulecheck.output.screen import line, words
+from rulecheck.output.terminal_details import SHOWN, ruled_words
 from rulecheck.output.wording import counted
 
 
@@ -32,7 +33,7 @@ def _told(report: Report) -> Iterable[str]:
     yield from _outside(report)
     yield from mark_lines([replace(mark, outside_validity=()) for mark in report.marks])
     for item in report.rules:
-        yield from (f"{_rule(item)}: {note}" for note in item.notes)
+        yield from (f"{_rule(item)}: {note}" for note in (*item.notes, *_ruled(item)))
     yield from _estimates(report)
     for item in report.rules:
         yield from (f"{_rule(item)}: {told}" for told in item.history)
@@ -42,6 +43,13 @@ def _told(report: Report) -> Iterable[str]:
 
 def _rule(item: Finding) -> str:
     return " ".join(filter(None, (item.clause, item.name)))
+
+
+def _ruled(item: Finding) -> Iterable[str]:
+    """The margin as measured, where the details above do not say it."""
+    told = ruled_words(item.ruled) if item.verdict not in SHOWN else ""
+    if told:
+        yield told
 
 
 def _outside(report: Report) -> Iterable[str]:

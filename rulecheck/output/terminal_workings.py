@@ -10,7 +10,7 @@ from rich.text import Text
 
 from rulecheck.outcome.results import VERDICTS, BindingPart, ClosedFormResult, PartResult, Step, Working, Workings
 from rulecheck.output.screen import PAPER, STYLES, Screen, draw, line, words
-from rulecheck.output.terminal_details import compared
+from rulecheck.output.terminal_details import compared, ruled_words
 from rulecheck.output.wording import state_words
 
 _MOST_CONDITIONS = 12
@@ -77,7 +77,7 @@ def _step(number: int, step: Step) -> Iterable[RenderableType]:
 
 def _conditions(item: Working) -> Iterable[RenderableType]:
     """All conditions where there are several, or where no step shows the only one."""
-    if len(item.conditions) == 1 and item.steps:
+    if len(item.conditions) == 1 and item.steps and item.conditions[0].ruled is None:
         return
     for text, parts in _by_text(item.conditions).items():
         yield line(text, 2)
@@ -97,7 +97,7 @@ def _judged(part: PartResult) -> str:
     where = ", ".join(filter(None, (part.element, state_words(part.state), part.branch)))
     numbers = compared(part.value, part.sense, part.limit)
     margin = f"margin {part.margin}" if part.margin else ""
-    told = "; ".join(filter(None, (part.verdict, numbers, margin, part.reason)))
+    told = "; ".join(filter(None, (part.verdict, numbers, margin, ruled_words(part.ruled), part.reason)))
     return f"{where}: {told}" if where else told
 
 

@@ -7,29 +7,24 @@ from dataclasses import dataclass, field, replace
 from fractions import Fraction
 
 from rulecheck.diagnostics import Span
-from rulecheck.graph.conditions import AnyOf, BoundRule, Case, Condition, Either, Part, every_part
+from rulecheck.graph.conditions import AnyOf, BoundRule, Case, Condition, Either, Part
 from rulecheck.graph.figures import Graph
 from rulecheck.graph.terms import Term
 from rulecheck.model.ruleset import SIMPLE, Decision, Rule
 from rulecheck.operations.comparison import below
 from rulecheck.operations.values import Unknown
-from rulecheck.outcome.results import Amount, BindingPart, Finding, PartResult, Verdict
+from rulecheck.outcome.results import Amount, BindingPart, Finding, PartResult, RuledResult, Verdict
 from rulecheck.outcome.spread import SpreadResult
 from rulecheck.quantity.dimension import PURE
 from rulecheck.quantity.quantity import Quantity
 from rulecheck.quantity.units import Unit
 from rulecheck.readers.exact import ExactReader
 from rulecheck.studies.amounts import amount, place, reason_text
+from rulecheck.studies.beside import NO_MEASURE, near_turning
 from rulecheck.studies.deciding import Decider
 from rulecheck.studies.judging import Judge, Judged, all_of, verdict_of
 from rulecheck.studies.spread import Asked as AskedSpread
 from rulecheck.studies.spread import AtRandom, SpreadStudy
-
-NEAR = Fraction(1, 100)
-_NO_MEASURE = (
-    "no margin stands for the rule: those that could decide have no common measure, since a limit comes to zero "
-    "or is of another kind; 'scale' gives one"
-)
 
 
 @dataclass(frozen=True, slots=True)
@@ -91,12 +86,17 @@ class Checker:
             value_place=place(self._value_place(part)),
             estimates=bound.estimated,
             outside_validity=self._outside(bound),
-            notes=(*self._near(bound.cases), *([_NO_MEASURE] if binding is not None and binding.mixed else [])),
+            notes=(
+                *near_turning(self.judge, bound.cases),
+                *([NO_MEASURE] if binding is not None and binding.mixed else []),
+            ),
             dispensation=permit,
             history=tuple(f"{origin.what}: {origin.span}" for origin in rule.history),
             ruleset_name=ruleset_name,
             counted=bool(part and part.counted),
             spread=spread,
+            ruled=self._ruled(shown),
+            consequence=str(rule.consequence or ""),
         )
 
     def decision_of(self, bound: BoundRule) -> Decision:
@@ -281,7 +281,16 @@ class Checker:
             dict(case.states),
             place(part.span),
             branch,
+            self._ruled(part if known else None),
         )
+
+    def _ruled(self, part: Part | None) -> RuledResult | None:
+        """What tolerance and rounding did to a part."""
+        said = part.ruled if part is not None else None
+        if said is None or part is None:
+            return None
+        margin = self._amount(said.margin, part, width=True)
+        return RuledResult(margin, self._amount(said.value, part), said.tolerance, said.rounding)
 
     def _value_place(self, part: Part | None) -> Span | None:
         if part is None:
@@ -307,35 +316,12 @@ class Checker:
                 names.append(name)
         return tuple(names)
 
-    def _near(self, cases: Iterable[Case]) -> Iterable[str]:
-        """Conditions that are close to their own threshold: a small change would turn whether the rule applies."""
-        seen = set()
-        for case in cases:
-            for gate in (*case.gates, *_choices(case.condition)):
-                for part in every_part(gate):
-                    if part.margin is None or part.text in seen or part.scale is None:
-                        continue
-                    seen.add(part.text)
-                    room = self.judge.room(part)
-                    if room is not None and -NEAR <= room <= NEAR:
-                        yield f"its condition '{part.text}' is within 1 % of turning"
-
 
 def _inside_reserve(tight: Sequence[Case], binding: Judged | None) -> str:
     """The reason, with the element where it is another one than that which binds."""
     elements = [case.element for case in tight]
     bound = binding.case.element if binding is not None and binding.case is not None else ""
     return "inside the house reserve" + ("" if bound in elements else f": {', '.join(elements[:4])}")
-
-
-def _choices(condition: Condition) -> Iterable[Condition]:
-    """The conditions that choose between the arms of conditionals."""
-    if isinstance(condition, Either):
-        yield condition.gate
-        yield from (*_choices(condition.then), *_choices(condition.otherwise))
-    elif not isinstance(condition, Part):
-        for part in condition.parts:
-            yield from _choices(part)
 
 
 def _binding(judged: Judged | None) -> BindingPart | None:

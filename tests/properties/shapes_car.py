@@ -13,6 +13,8 @@ inputs:
   nose.tip: {kind: point, meaning: Foremost point}
   options.traction_control: {kind: flag, meaning: Fitted}
   bolt: {unit: mm, meaning: Bolt}
+  records.*.setup.mass: {unit: kg, meaning: Mass of the sledge}
+  records.*.result.pull: {unit: kN, meaning: Greatest pull}
   lamps:
     kind: collection
     meaning: Lamps
@@ -90,6 +92,11 @@ rules:
   margin_of: {require: margin(least_length) >= 100 mm}
   either: {require: bolt >= 6 mm or bolt >= 0.25 in or options.traction_control == no}
   computed: {require: mass.total >= 700 kg and mass.front_share >= 30 %}
+  tolerance: {require: dimensions.overall_height <= 990 mm, tolerance: 15 mm}
+  rounding: {require: electrical.system_voltage <= 685 V, rounding: {to: 10 V, how: down}, tolerance: 1 %}
+  impact: {record: {name: nose, setup: setup.mass >= 300 kg, require: result.pull <= 20 kN}}
+  impacts: {record: {name: rear, setup: setup.mass >= 300 kg, require: result.pull <= 20 kN, runs: 2}}
+  pulls: {each: l in lamps, record: {of: l, require: result.pull >= 5 kN}}
   advice: {standing: should, require: dimensions.overall_height <= 1100 mm}
 """.replace('  ground: {states: "{}", require', "  ground: {require")
 
@@ -127,6 +134,11 @@ evidence:
   belt: {kind: declaration, made: 2024-05-05}
   p1: {kind: inspection, reference: A}
   p2: {kind: inspection, reference: B}
+records:
+  nose: {date: 2027-01-10, report: T1, setup: {mass: 302 kg}, result: {pull: 18 kN}}
+  rear: {date: 2027-01-11, report: T2, runs: {a: {setup: {mass: 301 kg}, result: {pull: 18 kN}}, b: {setup: {mass: 305 kg}, result: {pull: 19 kN}}}}
+  lamp_one: {of: left, date: 2027-01-12, report: T3, result: {pull: 6 kN}}
+  lamp_two: {of: right, date: 2027-01-12, report: T3, result: {pull: 7 kN}}
 judgements:
   judged: {verdict: complies, role: scrutineer, date: 2027-02-01, reason: felt}
   judged_each:
@@ -139,6 +151,8 @@ states:
 """
 
 BAD = {
+    "302 kg}, result: {pull: 18": "302 kg}, result: {pull: 28", "305 kg}, result: {pull: 19": "305 kg}, result: {pull: 29",
+    "result: {pull: 6": "result: {pull: 4",
     "wheelbase: 2800": "wheelbase: 1500", "front_track: 1590": "front_track: 900", "distribution: 50": "distribution: 60",
     "displacement: 2 L": "displacement: 2.5 L", "power: 350": "power: 420", "fuel_flow: 79": "fuel_flow: 85",
     "tank_volume: 65": "tank_volume: 90", "axle: rear, power: 100": "axle: rear, power: 120", "voltage: 650": "voltage: 800",

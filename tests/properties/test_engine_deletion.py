@@ -90,6 +90,7 @@ def takeable(design: Design, ruleset: Ruleset) -> list[str]:
     made = [path for path in design.leaves if _is_needed(vocabulary, path)]
     made.extend(f"states.{axis}.{name}" for axis, named in ruleset.needed.items() for name in named)
     made.extend(f"evidence.{name}" for name in design.items.get("evidence", ()))
+    made.extend(f"records.{name}" for name in design.items.get("records", ()))
     made.extend(f"judgements.{name}" for name in design.items.get("judgements", ()))
     made.extend(f"{path}.complete" for path in design.complete)
     for entry in vocabulary:
