@@ -9,7 +9,7 @@ from fractions import Fraction
 
 from rulecheck.graph.conditions import AllOf, Condition, Either, Part, every_part
 from rulecheck.graph.figures import Graph
-from rulecheck.graph.terms import Term
+from rulecheck.graph.terms import Term, cone
 from rulecheck.model.ruleset import SIMPLE, Decision, Scrutineer
 from rulecheck.operations.exact import exact_number
 from rulecheck.operations.values import Monomial
@@ -103,11 +103,15 @@ class SpreadStudy:
             worst_case=self._worst(margin, room.unit, paths),
             contributors=tuple(sorted(self._contributors(paths, room, propagated), key=lambda item: -item.share)),
             trials=trials,
-            notes=tuple(self._notes(uncertain, propagated, paths)),
+            notes=tuple(self._notes(margin, uncertain, propagated, paths)),
         )
 
-    def _notes(self, uncertain: Sequence[str], propagated: Propagated | None, paths: Sequence[str]) -> Iterable[str]:
-        if paths and propagated is None:
+    def _notes(
+        self, margin: Term, uncertain: Sequence[str], propagated: Propagated | None, paths: Sequence[str]
+    ) -> Iterable[str]:
+        if paths and _asks_solver(margin):
+            yield "the margin rests on a solver: neither first-order figures nor a worst case are given"
+        elif paths and propagated is None:
             yield "the margin jumps or is not smooth here: first-order figures are not given"
         elif propagated is not None and propagated.slopes.bent:
             yield "the margin has a kink here: the uncertainty is what it is at most, and no probability is given"
@@ -137,7 +141,7 @@ class SpreadStudy:
         return measured, [path for path in paths if path not in measured]
 
     def _worst(self, margin: Term, unit: Unit, paths: Sequence[str]) -> WorstCase | None:
-        if not paths:
+        if not paths or _asks_solver(margin):
             return None
         found = self._decider.least(margin, paths, box_of(self._sources, self._graph, paths))
         drawn = len(self._kinds(paths)[1])
@@ -188,6 +192,11 @@ class SpreadStudy:
             share,
             of_squares,
         )
+
+
+def _asks_solver(term: Term) -> bool:
+    """True where a number rests on a solver, which gives points and would have to run for each box of a search."""
+    return any(part.kind == "external" for part in cone([term]))
 
 
 class _Margin:
