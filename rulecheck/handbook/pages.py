@@ -30,6 +30,7 @@ FIRST = (
     "spread",
     "what-if-and-headroom",
     "physics",
+    "tracks-and-laps",
     "own-physics",
     "diagnostics",
 )

@@ -13,7 +13,7 @@ from rulecheck.geometry import cells, hulls, outlines
 from rulecheck.handbook.functions import FUNCTIONS
 from rulecheck.handbook.markdown import table
 from rulecheck.handbook.module_pages import modules_table
-from rulecheck.model import correlations, design_reader, house_rules, ruleset_reader, zone_reader
+from rulecheck.model import correlations, design_reader, house_rules, ruleset_reader, solver, track_reader, zone_reader
 from rulecheck.model.core_table import CORE
 from rulecheck.model.value_ranges import MOST_CURVES, MOST_VALUES
 from rulecheck.model.vocabulary import Entry
@@ -143,6 +143,9 @@ def bound_rows() -> str:
         ("boxes into which a range of values is bisected", worst_case.MOST_BOXES),
         ("combinations of states of a rule", states.MOST_COMBINATIONS),
         ("cases of a rule: elements times states", rules.MOST_CASES),
+        ("segments of a track", track_reader.MOST_SEGMENTS),
+        ("steps of a lap", track_reader.MOST_STEPS),
+        ("runs of a solver that are remembered", solver.MOST_KEPT),
         ("terms of everything that is computed", exact.MAXIMUM_TERMS),
         ("values of a `--vary`", MOST_VALUES),
         ("values of a `--vary` that is settled before anything is computed, such as a choice", varying.MOST_BOUND),

@@ -18,7 +18,9 @@ from rulecheck.physics.lap.road import Piece
 FASTEST = 150.0 * 150.0
 """No corner holds the car back beyond this u, in m²/s²."""
 _MOST_ROUNDS = 40
-_SETTLED = 1e-12
+_LONGEST_ROUNDS = 100_000.0
+"""So many laps at the most, and on a short circuit so many m, until the speed is the same from lap to lap."""
+_SETTLED = 1e-11
 _STEADY = 1e-7
 _ROOT_STEPS = 100
 _ROOM = 1e-9
@@ -54,7 +56,8 @@ def run(car: Car, pieces: Sequence[Piece], masses: Sequence[float], *, closed: b
     slowest = min(range(len(stretches)), key=lambda place: stretches[place].cap)
     order = [*stretches[slowest:], *stretches[:slowest]]
     speed = min(order[0].cap, FASTEST)
-    for _ in range(_MOST_ROUNDS):
+    rounds = max(_MOST_ROUNDS, math.ceil(_LONGEST_ROUNDS / sum(piece.length for piece in pieces)))
+    for _ in range(rounds):
         end = min(_forward(order, speed), order[0].cap)
         if abs(end - speed) <= _SETTLED * end:
             break
@@ -62,7 +65,7 @@ def run(car: Car, pieces: Sequence[Piece], masses: Sequence[float], *, closed: b
     else:
         raise ValueError("the speed does not settle from lap to lap")
     speed = min(speed, order[0].cap)
-    for _ in range(_MOST_ROUNDS):
+    for _ in range(rounds):
         start = min(_backward(order, speed), order[-1].cap, speed)
         if abs(start - speed) <= _SETTLED * speed:
             return stretches
