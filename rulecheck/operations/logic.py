@@ -101,7 +101,9 @@ def _reconcile(values: Sequence[Any]) -> Any:
         return declared
     if agrees is False:
         return CONTRADICTION
-    # An unknown flag counts as agreement: nothing is known that contradicts.
+    if isinstance(agrees, Unknown) and any(reason.kind == "tie" for reason in agrees.reasons):
+        return agrees  # not decided, as where a stretch holds both: that is no agreement
+    # Another unknown flag counts as agreement: nothing is known that contradicts.
     return UNDECIDED if declared is UNDECIDED or agrees is UNDECIDED else declared
 
 

@@ -6,7 +6,7 @@ from collections.abc import Iterable
 from fractions import Fraction
 from typing import Any
 
-from rulecheck.graph.terms import Bank, Inputs, Term, cone
+from rulecheck.graph.terms import Bank, Inputs, Term
 from rulecheck.operations.exact import Ball, from_fraction
 from rulecheck.operations.values import Monomial, Unknown
 from rulecheck.readers.exact import ExactReader
@@ -28,12 +28,15 @@ class SegmentReader:
     ([True], [None])
     """
 
-    def __init__(self, bank: Bank, inputs: Inputs, base: ExactReader, path: str) -> None:
+    def __init__(
+        self, bank: Bank, inputs: Inputs, base: ExactReader, path: str, moving: set[int] | None = None
+    ) -> None:
+        """`moving` are the indices of what rests on the input, where the caller knows them of all that it asks for."""
         self._path = path
         value = inputs[path]
         assert isinstance(value, Monomial)
         self._power = value.power
-        self._moving = resting_on(bank, path)
+        self._moving = resting_on(bank, path) if moving is None else moving
         still = [(index, found) for index, found in base.known() if index not in self._moving]
         # One set of inputs for both readers, in which one value is exchanged.
         self._inputs: dict[str, Any] = dict(inputs)
@@ -45,10 +48,6 @@ class SegmentReader:
     def moves(self, term: Term) -> bool:
         """True where a term rests on the input."""
         return term.index in self._moving
-
-    def is_certain(self, term: Term) -> bool:
-        """False where a solver stands between the input and the term: along a stretch it is never certain."""
-        return not any(part.kind == "external" and part.index in self._moving for part in cone([term]))
 
     def truths(self, flags: Iterable[Term], low: Fraction, high: Fraction) -> list[bool | None]:
         """What each flag certainly is from `low` to `high` (SI, without the power of pi); None where it is not certain."""
@@ -64,10 +63,10 @@ class SegmentReader:
         self._exchange(self._points, Monomial(point, self._power))
         return [_certain(self._points.truth(flag)) for flag in flags]
 
-    def number(self, term: Term, point: Fraction) -> Fraction | None:
-        """A number at one point, where it is rational."""
+    def numbers(self, terms: Iterable[Term], point: Fraction) -> list[Fraction | None]:
+        """Numbers at one point, each where it is rational."""
         self._exchange(self._points, Monomial(point, self._power))
-        return self._points.exact_fraction(term)
+        return [self._points.exact_fraction(term) for term in terms]
 
     def _exchange(self, reader: ExactReader, value: object) -> None:
         self._inputs[self._path] = value

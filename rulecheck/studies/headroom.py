@@ -1,8 +1,10 @@
 """`headroom`: how far one input can move each way before the first rule breaks, and which.
 
 The stretch from the value to the answer is covered without a gap by intervals on each of which every rule is certainly
-met, so that no earlier breach is jumped over (interval exclusion by bisection); where the value stands on a limit the first billionth is bridged by exact points. Where a margin is linear in the input
-the end itself is found exactly; else it is known to one part in a billion of the stretch that was looked at.
+met, so that no earlier breach is jumped over (interval exclusion by bisection): intervals of doubles for all inputs
+together as far as they are certain, then the exact reader. Where the value stands on a limit the first billionth is
+bridged by exact points. Where a margin is linear in the input the end itself is found exactly; else it is known to one
+part in a billion of the stretch that was looked at.
 """
 
 from __future__ import annotations
@@ -11,6 +13,7 @@ from collections.abc import Iterable, Sequence
 from dataclasses import dataclass
 from datetime import date
 from fractions import Fraction
+from functools import cached_property
 
 from rulecheck import __version__
 from rulecheck.diagnostics import Faults
@@ -24,7 +27,9 @@ from rulecheck.outcome.travel import Headroom, HeadroomReport, Travel
 from rulecheck.quantity.numbers import show_exact, show_number
 from rulecheck.quantity.units import Unit
 from rulecheck.readers.segment import SegmentReader
+from rulecheck.readers.stretches import Movement
 from rulecheck.reading.nearest import nearest
+from rulecheck.studies.certain_stretches import CELLS, Ask, Sure, certain_stretches
 from rulecheck.studies.check import Checker
 from rulecheck.studies.marks import marks
 from rulecheck.studies.reporting import CAUTION
@@ -51,8 +56,12 @@ def headroom(checker: Checker, design: Design, names: Sequence[str], day: date) 
     rows: list[Headroom] = []
     unread: list[str] = []
     left_out: dict[str, list[str]] = {}
-    for path in names or numbers:
-        moved = _Input(checker, path)
+    paths = list(names or numbers)
+    roots = [root for rule in graph.rules if rule.binds for root in (rule.met, *_margins(rule))]
+    movement = Movement(roots, paths)
+    moves = [_Input(checker, movement, place, path) for place, path in enumerate(paths)]
+    _look_ahead(checker, movement, paths, moves)
+    for path, moved in zip(paths, moves, strict=True):
         found = moved.headroom()
         for rule in moved.left_out:
             left_out.setdefault(rule.name, []).append(path)
@@ -65,6 +74,16 @@ def headroom(checker: Checker, design: Design, names: Sequence[str], day: date) 
         design.name, design.file, day.isoformat(), tuple(sorted(rows, key=_least)), tuple(unread), breached,
         (CAUTION,), __version__, marks([checker]), tuple((rule, tuple(paths)) for rule, paths in left_out.items()),
     )  # fmt: skip
+
+
+def _look_ahead(checker: Checker, movement: Movement, paths: Sequence[str], moves: Sequence[_Input]) -> None:
+    """How far intervals of doubles are certain, for all inputs together; the exact reader goes on from there."""
+    graph = checker.graph
+    for again in (False, True):
+        asked = [(moved, ask) for moved in moves for way in (-1, 1) if (ask := moved.ask(way, again=again)) is not None]
+        found = certain_stretches(graph.inputs, checker.reader, movement, paths, [ask for _, ask in asked])
+        for (moved, ask), sure in zip(asked, found, strict=True):
+            moved.sure[-1 if ask.step < 0 else 1] = sure
 
 
 def _least(row: Headroom) -> float:
@@ -90,19 +109,40 @@ class _Found:
 class _Input:
     """The search along one input."""
 
-    def __init__(self, checker: Checker, path: str) -> None:
+    def __init__(self, checker: Checker, movement: Movement, place: int, path: str) -> None:
         graph = checker.graph
-        self.checker, self.path = checker, path
+        self.checker, self.movement, self.place, self.path = checker, movement, place, path
         self.fact: InputFact = graph.facts[path]
         value = graph.inputs[path]
         assert isinstance(value, Monomial)
-        self.start = value.rational
-        self.along = SegmentReader(graph.bank, graph.inputs, checker.reader, path)
-        moved = [rule for rule in graph.rules if rule.binds and self.along.moves(rule.met)]
-        rules = [rule for rule in moved if self.along.is_certain(rule.met)]
-        self.left_out = [rule for rule in moved if rule not in rules] if len(rules) < len(moved) else []
+        self.start, self.power = value.rational, value.power
+        moved = [rule for rule in graph.rules if rule.binds and movement.moves(rule.met, place)]
+        self.left_out = [rule for rule in moved if movement.is_solved_outside(rule.met, place)]
+        rules = [rule for rule in moved if rule not in self.left_out] if self.left_out else moved
         self.met = [rule for rule in rules if checker.reader.truth(rule.met) is True]
         self.broken = [rule for rule in rules if checker.reader.truth(rule.met) is False]
+        self.sure: dict[int, Sure] = {}
+
+    @cached_property
+    def along(self) -> SegmentReader:
+        """The exact reader; made where intervals of doubles do not give the whole answer."""
+        graph = self.checker.graph
+        moving = self.movement.moving(self.place)
+        return SegmentReader(graph.bank, graph.inputs, self.checker.reader, self.path, moving)
+
+    def ask(self, direction: int, *, again: bool) -> Ask | None:
+        """What is asked of intervals; again from the first cell on, where exact points bridge that one."""
+        rules, holds = (self.broken, False) if self.broken else (self.met, True)
+        flags = tuple(rule.met for rule in rules if self.movement.answers(rule.met, self.place))
+        reach = self._reach(direction)
+        if not flags or not reach:
+            return None
+        if again:
+            sure = self.sure[direction]
+            doubtful = [flags[place] for place in sure.doubtful]
+            if sure.cells or not self._holds_beside(doubtful, direction, reach / CELLS, holds):
+                return None
+        return Ask(self.place, self.start, self.power, direction * reach / CELLS, flags, holds, int(again))
 
     def headroom(self) -> Headroom | None:
         """The travel both ways; None where no rule reads the input."""
@@ -120,20 +160,21 @@ class _Input:
     def _search(self, rules: Sequence[BoundRule], direction: int, *, holds: bool) -> Travel:
         """Go outwards while every rule certainly stays as it is."""
         flags = [rule.met for rule in rules]
-        # As far as each rule certainly stays: of a part of a stretch only those are asked that were not certain in all of it.
-        far = [Fraction(0)] * len(rules)
         reach = self._reach(direction)
-        inner, width, steps = Fraction(0), reach / 1024, 0
+        # As far as each rule certainly stays: of a part of a stretch only those are asked that were not certain in all of it.
+        far = self._surely(flags, direction, reach / CELLS)
+        known = [edge for edge, flag in zip(far, flags, strict=True) if self.movement.answers(flag, self.place)]
+        stop = min(known, default=reach) if direction in self.sure else reach
+        inner, width, steps = min(far), reach / 1024, 0
         while inner < reach:
             steps += 1
+            if inner == stop:
+                # Intervals of doubles were certain up to here, and not in the finest step beyond.
+                width = min(width, reach / CELLS)
             outer = min(inner + width, reach)
-            asked = [place for place, edge in enumerate(far) if edge < outer]
-            told = self._over([flags[place] for place in asked], direction, inner, outer)
-            truths: list[bool | None] = [holds] * len(rules)
-            for place, truth in zip(asked, told, strict=True):
-                truths[place] = truth
-                if truth is holds:
-                    far[place] = outer
+            if inner < stop:
+                outer = min(outer, stop)
+            truths = self._told(flags, far, direction, (inner, outer), holds)
             if all(truth is holds for truth in truths):
                 inner, width = outer, width * 2
             elif width <= reach * FINENESS and not inner and self._holds_beside(flags, direction, outer, holds):
@@ -145,6 +186,29 @@ class _Input:
             else:
                 width /= 2
         return Travel("free", None, None, (), False)
+
+    def _surely(self, flags: Sequence[Term], direction: int, cell: Fraction) -> list[Fraction]:
+        """As far as intervals of doubles are certain of each flag; nowhere where they were not asked."""
+        sure = self.sure.get(direction)
+        answered = [flag.index for flag in flags if self.movement.answers(flag, self.place)]
+        if sure is None:
+            return [Fraction(0)] * len(flags)
+        doubtful = {answered[place] for place in sure.doubtful}
+        edges = {index: cell * min(sure.cells + (index not in doubtful), CELLS) for index in answered}
+        return [edges.get(flag.index, Fraction(0)) for flag in flags]
+
+    def _told(
+        self, flags: Sequence[Term], far: list[Fraction], direction: int, ends: tuple[Fraction, Fraction], holds: bool
+    ) -> list[bool | None]:
+        """What each flag certainly is over a part of the travel; those that are as they were are known so far."""
+        truths: list[bool | None] = [holds] * len(flags)
+        asked = [place for place, edge in enumerate(far) if edge < ends[1]]
+        told = self._over([flags[place] for place in asked], direction, *ends)
+        for place, truth in zip(asked, told, strict=True):
+            truths[place] = truth
+            if truth is holds:
+                far[place] = ends[1]
+        return truths
 
     def _reach(self, direction: int) -> Fraction:
         """How far is looked: a hundred times the value, and never to where the value would be a slip."""
@@ -182,9 +246,7 @@ class _Input:
 
     def _exact_end(self, rules: Sequence[BoundRule], direction: int, found: _Found, *, holds: bool) -> Fraction | None:
         """The end itself, where the margin that turns is linear between two points: it is zero there, exactly."""
-        ends = [
-            end for rule in rules for term in _margins(rule) if (end := self._zero(term, direction, found)) is not None
-        ]
+        ends = self._zeros([term for rule in rules for term in _margins(rule)], direction, found)
         flags = [rule.met for rule in rules]
         for end in sorted(ends, key=abs):
             step = direction * max(found.outer - found.inner, FINENESS) / 1024
@@ -197,16 +259,19 @@ class _Input:
                 return end
         return None
 
-    def _zero(self, term: Term, direction: int, found: _Found) -> Fraction | None:
-        if not self.along.moves(term):
-            return None
+    def _zeros(self, margins: Sequence[Term], direction: int, found: _Found) -> list[Fraction]:
+        """Where margins that are linear between two points are zero, as travel."""
+        moved = [term for term in margins if self.movement.moves(term, self.place)]
         first, second = self.start + direction * found.inner, self.start + direction * found.outer
-        a, b = self.along.number(term, first), self.along.number(term, second)
-        if a is None or b is None or a == b:
-            return None
-        end = first - a * (second - first) / (b - a)
-        inside = min(first, second) <= end <= max(first, second)
-        return end - self.start if inside and self.along.number(term, end) == 0 else None
+        ends: list[Fraction] = []
+        at_first, at_second = (self.along.numbers(moved, point) for point in (first, second))
+        for term, a, b in zip(moved, at_first, at_second, strict=True):
+            if a is None or b is None or a == b:
+                continue
+            end = first - a * (second - first) / (b - a)
+            if min(first, second) <= end <= max(first, second) and self.along.numbers([term], end) == [0]:
+                ends.append(end - self.start)
+        return ends
 
     def _made(self, ending: str, travel: Fraction, rules: tuple[str, ...], *, is_exact: bool) -> Travel:
         shown = self._amount(travel, width=True, is_exact=is_exact)

@@ -22,6 +22,7 @@ from rulecheck.readers.exact import ExactReader
 from rulecheck.readers.gradient import GradientReader
 from rulecheck.readers.program import Program
 from rulecheck.readers.segment import SegmentReader
+from rulecheck.readers.stretches import Movement
 
 BOUND = 0.01
 
@@ -165,7 +166,9 @@ def test_along_a_stretch_nothing_is_certain_but_at_points() -> None:
     assert along.truths([flag, other], Fraction(5), Fraction(6)) == [None, True]
     assert along.at([flag], Fraction(12)) == [True]
     assert along.at([flag], Fraction(13)) == [False]
-    assert not along.is_certain(flag)
+    movement = Movement([flag, other], ["x", "y"])
+    assert [movement.is_solved_outside(flag, place) for place in (0, 1)] == [True, True]
+    assert [movement.is_solved_outside(other, place) for place in (0, 1)] == [True, False]
     assert (along.moves(flag), along.moves(other)) == (True, False)
 
 

@@ -5,6 +5,7 @@ from __future__ import annotations
 from datetime import date
 from fractions import Fraction
 from pathlib import Path
+from unittest import mock
 
 import pytest
 from hypothesis import given, settings
@@ -84,6 +85,30 @@ def test_an_unknown_input_is_refused_with_the_nearest(tmp_path):
     design = write(tmp_path, "  width: {require: v.x <= 9}\n", "v: {x: 4, y: 1}\n")
     with pytest.raises(Refused, match=r"unknown-name: the design gives no number under 'v\.z'; did you mean 'v\.[xy]'"):
         api.headroom(design, ["v.z"], on=DAY)
+
+
+def test_a_declared_value_that_begins_to_contradict_ends_the_travel():
+    # Declared 4670 mm agree with the parts that make them up as far as 1.5 mm apart, and rules are open beyond.
+    demo = Path(__file__).parents[3] / "designs_demo" / "marram-p2.design.yaml"
+    item = row(api.headroom(demo, ["dimensions.wheelbase"], on=DAY), "dimensions.wheelbase")
+    for side in (item.down, item.up):
+        assert side.ending == "opens"
+        assert abs(side.travel.value) == pytest.approx(1.5, abs=1e-3)
+
+
+def test_without_the_look_ahead_the_exact_reader_finds_the_same(tmp_path):
+    rules = (
+        "  far: {require: v.x * v.y <= 9}\n  near: {require: 'max(v.x, 2) / (1 + v.y * v.y) <= 3'}\n"
+        "  kept: {require: (v.x if v.x > 5 else 5) <= 6}\n  stands: {require: v.y >= 1}\n"
+    )
+    design = write(tmp_path, rules, "v: {x: 4, y: 1}\n")
+    quick = api.headroom(design, on=DAY)
+    with mock.patch("rulecheck.studies.headroom._look_ahead"):
+        assert api.headroom(design, on=DAY).inputs == quick.inputs
+    assert [(item.path, item.up.rules, item.up.travel.exact) for item in quick.inputs] == [
+        ("v.y", ("far",), "1.25"),
+        ("v.x", ("near", "kept"), "2"),
+    ]
 
 
 def test_roots_and_degrees(tmp_path):
