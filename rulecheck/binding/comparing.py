@@ -313,7 +313,7 @@ def _others(
             syntax.span,
             expected="numbers of one dimension, or dates",
         )
-    flag = _same(scope, a, b)
+    flag = same(scope, a, b)
     if flag is None:
         advice = "quote the text" if isinstance(a, Words) != isinstance(b, Words) else ""
         return scope.fault(
@@ -328,7 +328,8 @@ def _others(
     return Compared(text, syntax.span, flag)
 
 
-def _same(scope: Scope, a: Bound, b: Bound) -> Term | None:
+def same(scope: Scope, a: Bound, b: Bound) -> Term | None:
+    """Whether two texts, flags, items or dates are the same; None for what cannot be held against each other."""
     if isinstance(a, Words) and isinstance(b, Words):
         if a.term.kind == "constant" and b.term.kind == "constant":
             return scope.bank.flag(a.term.value == b.term.value)
@@ -359,7 +360,7 @@ def _membership(scope: Scope, left: Side, right: Side, text: str, negated: bool)
     for member in right.bound.members:
         if isinstance(member, Broken):
             return BROKEN
-        flag = _same(scope, left.bound, member)
+        flag = same(scope, left.bound, member)
         if (
             flag is None
             and isinstance(left.bound, Number)

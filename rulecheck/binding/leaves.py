@@ -63,7 +63,8 @@ def _setting(scope: Scope, path: str) -> str:
     """The state that sets a path, in words."""
     stated = scope.shared.base.design.states
     for axis, name in scope.view.states:
-        if any(holder in stated[axis][name].overlay.paths for holder in holders(path)):
+        state = stated.get(axis, {}).get(name)
+        if state is not None and any(holder in state.overlay.paths for holder in holders(path)):
             return f"{axis} {name}"
     return ", ".join(f"{axis} {name}" for axis, name in scope.view.states)
 

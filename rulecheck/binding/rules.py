@@ -12,6 +12,7 @@ from rulecheck.binding.comparing import all_of, any_of, opposite
 from rulecheck.binding.conditions import Builder, certain, holds, open_part, scales_agree
 from rulecheck.binding.dispensations import dispensation
 from rulecheck.binding.documents import evidence, judgement
+from rulecheck.binding.frozen import frozen
 from rulecheck.binding.meeting import met_by
 from rulecheck.binding.parsing import parsed, parsed_each
 from rulecheck.binding.placing import place_condition
@@ -289,6 +290,8 @@ class _Binding:
         parts = ruled_parts(scope, parts, ruling)
         if alternative.record is not None:
             parts.append(record(scope, alternative.record, self._scale(scope), ruling))
+        if alternative.frozen is not None:
+            parts.append(frozen(scope, alternative.frozen))
         if alternative.evidence is not None:
             parts.append(evidence(scope, alternative.evidence))
         if alternative.judgement is not None:

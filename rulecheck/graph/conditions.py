@@ -23,7 +23,7 @@ class Use:
     unit: Unit | None
 
 
-PartKind = Literal["comparison", "flag", "evidence", "judgement", "zone", "record"]
+PartKind = Literal["comparison", "flag", "evidence", "judgement", "zone", "record", "frozen"]
 
 
 @dataclass(frozen=True, slots=True)

@@ -104,10 +104,19 @@ class Correlation:
 
 
 @dataclass(frozen=True, slots=True)
+class Baseline:
+    """An older design that this one is held against: the file as it is named, and what stands in it."""
+
+    reference: str
+    design: Design
+
+
+@dataclass(frozen=True, slots=True)
 class Design:
     """One car. `leaves` has what is stated by path, `items` the names directly below each inner path in order.
 
     `complete` are the collections that are closed, `absent` what is stated `none`, `keys` where each key stands.
+    `baselines` are the older designs by name.
     `chosen` are the states, by axis, that are laid over it for one run, and `plain` is the design without them.
     """
 
@@ -125,6 +134,7 @@ class Design:
     chosen: MappingOf[str, State] = field(default_factory=dict)
     plain: Design | None = None
     correlations: tuple[Correlation, ...] = ()
+    baselines: MappingOf[str, Baseline] = field(default_factory=dict)
 
     def with_overlay(self, overlay: Overlay) -> Design:
         """The design with the changes laid over it; the design itself stays."""

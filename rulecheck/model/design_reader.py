@@ -7,7 +7,7 @@ from dataclasses import dataclass, field, replace
 from rulecheck.diagnostics import Faults, Refused, Related, Span
 from rulecheck.model.correlations import read_correlations
 from rulecheck.model.curve_files import CurveFiles
-from rulecheck.model.design import NONE, Design, LeafNode, Overlay, State, is_leaf
+from rulecheck.model.design import NONE, Baseline, Design, LeafNode, Overlay, State, is_leaf
 from rulecheck.model.names import RESERVED_KEYS, check_name, check_path
 from rulecheck.reading.ledger import LedgerRow, read_ledger
 from rulecheck.reading.nearest import nearest
@@ -103,7 +103,26 @@ OTHER_FILES = (
 
 def read_design(workspace: Workspace, file: str, asked: Span | None = None) -> Design:
     """Read a design file or a variant of one. Raises `Refused` with all faults of the files read."""
-    return _read_design(workspace, file, asked, ())
+    design = _read_design(workspace, file, asked, ())
+    names = design.names("baselines")
+    return replace(design, baselines=_baselines(workspace, design, names)) if names else design
+
+
+def _baselines(workspace: Workspace, design: Design, names: tuple[str, ...]) -> dict[str, Baseline]:
+    """The older designs that a design names, each beside the file that names it; theirs are not read."""
+    faults = Faults()
+    found: dict[str, Baseline] = {}
+    for name in names:
+        said = design.leaves.get(f"baselines.{name}.design")
+        if not isinstance(said, Located) or said.text == NONE:
+            continue
+        try:
+            target = workspace.resolve(said.text, said.span.file, said.span)
+            found[name] = Baseline(said.text, _read_design(workspace, target, said.span, ()))
+        except Refused as refused:
+            faults.take(refused)
+    faults.settle()
+    return found
 
 
 def _read_design(workspace: Workspace, file: str, asked: Span | None, above: tuple[str, ...]) -> Design:

@@ -49,6 +49,9 @@ class BranchShape(Shape):
     evidence: EvidenceShape | None = Field(None, description="Document that is asked for")
     judgement: Leaf | None = Field(None, description="Question that a person answers")
     record: Any = Field(None, description="Test that is recorded: name, setup, require, runs")
+    frozen: Any = Field(
+        None, description="What stays as in a baseline: baseline, since, paths, tolerance, changes_allowed"
+    )
     tolerance: Leaf | None = Field(None, description="The rule book's tolerance on the limit: 3 mm, +0/-5 deg, 3 %")
     rounding: Any = Field(None, description="How the value is rounded before it is compared: to, how")
     inside: Any = Field(None, description="Zone that the element, or what is named, lies inside of")

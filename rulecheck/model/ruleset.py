@@ -12,6 +12,7 @@ from rulecheck.diagnostics import Span
 from rulecheck.model.clauses import Answer, Clause
 from rulecheck.model.consequences import Consequence
 from rulecheck.model.examples import Example
+from rulecheck.model.frozen import FrozenWanted
 from rulecheck.model.records import RecordWanted
 from rulecheck.model.rulings import NO_RULING, Ruling
 from rulecheck.model.solver import Solver
@@ -64,6 +65,7 @@ class Alternative:
     when: Located | None
     places: tuple[PlaceCondition, ...] = ()
     record: RecordWanted | None = None
+    frozen: FrozenWanted | None = None
     ruling: Ruling = NO_RULING
 
 

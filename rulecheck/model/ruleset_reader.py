@@ -12,6 +12,7 @@ from rulecheck.model.decisions import read_decision, read_scrutineer
 from rulecheck.model.declarations import declared_entries, needed_states, own_units
 from rulecheck.model.edge import BranchShape, EvidenceShape, FigureShape, RulesetShape, RuleShape, shaped
 from rulecheck.model.examples import read_examples
+from rulecheck.model.frozen import read_frozen
 from rulecheck.model.groups import group_conditions
 from rulecheck.model.layers import layered
 from rulecheck.model.names import check_name
@@ -189,7 +190,7 @@ class _Reader:
                 "missing-key",
                 f"rule '{name}' asks for nothing",
                 key.span,
-                expected="require, inside, outside, branches, evidence, record or judgement",
+                expected="require, inside, outside, branches, evidence, record, frozen or judgement",
             )
         return Rule(
             name=name,
@@ -241,7 +242,7 @@ class _Reader:
                 "missing-key",
                 f"branch '{label}' of rule '{rule}' asks for nothing",
                 self.key("rules", rule, "branches", label).span,
-                expected="require, inside, outside, evidence, record or judgement",
+                expected="require, inside, outside, evidence, record, frozen or judgement",
             )
         node = self.root.get("rules")
         for part in (rule, "branches", label):
@@ -254,8 +255,9 @@ class _Reader:
         wanted = self._evidence(shape.evidence) if shape.evidence else None
         places = place_conditions(node, self.faults)
         record = read_record(_inside(node, "record"), self.units, self.faults)
+        kept = read_frozen(_inside(node, "frozen"), self.units, self.faults)
         ruling = read_ruling(node, self.units, self.faults)
-        return Alternative(name, shape.require, wanted, shape.judgement, shape.when, places, record, ruling)
+        return Alternative(name, shape.require, wanted, shape.judgement, shape.when, places, record, kept, ruling)
 
     def _evidence(self, shape: EvidenceShape) -> EvidenceWanted:
         self._said(shape.kind, "the kind of document")
@@ -269,7 +271,12 @@ class _Reader:
 def asks(shape: BranchShape) -> bool:
     """True where a rule or branch has a condition of its own."""
     plain = shape.require or shape.evidence or shape.judgement
-    return bool(plain) or shape.record is not None or any(getattr(shape, word) is not None for word in PLACES)
+    return (
+        bool(plain)
+        or shape.record is not None
+        or shape.frozen is not None
+        or any(getattr(shape, word) is not None for word in PLACES)
+    )
 
 
 PLACES = ("inside", "outside", "passes", "stops", "sight", "cover")

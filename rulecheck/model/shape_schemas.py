@@ -167,6 +167,21 @@ _EXAMPLES: Schema = {
         "additionalProperties": False,
     },
 }
+_FROZEN: Schema = {
+    "type": "object",
+    "properties": {
+        "baseline": {**TEXT, "description": "Name under baselines: in the design"},
+        "since": {**DAY, "description": "Day from which on it is frozen"},
+        "paths": {
+            "anyOf": [TEXT, {"type": "array", "items": TEXT, "minItems": 1}],
+            "description": "What is frozen; * for any name, ** for all below",
+        },
+        "tolerance": {**TEXT, "description": "By how much a number of its kind may change"},
+        "changes_allowed": {"type": ["integer", "string"], "description": "How many values may change"},
+    },
+    "required": ["baseline", "paths"],
+    "additionalProperties": False,
+}
 _NARROWER: Mapping[tuple[str, str], Schema] = {
     ("RuleShape", "standing"): {"enum": list(STANDINGS)},
     ("RuleShape", "empty"): {"enum": list(EMPTY)},
@@ -196,7 +211,7 @@ _NARROWER: Mapping[tuple[str, str], Schema] = {
     ("RuleShape", "examples"): _EXAMPLES,
     **{
         (shape, word): schema
-        for word, schema in (("record", _RECORD), ("rounding", _ROUNDING))
+        for word, schema in (("record", _RECORD), ("rounding", _ROUNDING), ("frozen", _FROZEN))
         for shape in ("RuleShape", "BranchShape")
     },
 }

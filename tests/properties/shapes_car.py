@@ -97,6 +97,8 @@ rules:
   impact: {record: {name: nose, setup: setup.mass >= 300 kg, require: result.pull <= 20 kN}}
   impacts: {record: {name: rear, setup: setup.mass >= 300 kg, require: result.pull <= 20 kN, runs: 2}}
   pulls: {each: l in lamps, record: {of: l, require: result.pull >= 5 kN}}
+  kept: {frozen: {baseline: homologated, paths: ["members.hoop.**"], tolerance: 1 mm}}
+  kept_but_one: {frozen: {baseline: homologated, paths: ["members.hoop.**"], changes_allowed: 1}}
   advice: {standing: should, require: dimensions.overall_height <= 1100 mm}
 """.replace('  ground: {states: "{}", require', "  ground: {require")
 
@@ -126,6 +128,7 @@ members: {complete: yes, hoop: {material: "25CrMo4", wall: 2.5 mm, outer_diamete
 aero_surfaces: {wing: {kind: wing}, fan: none}
 options: {traction_control: no, power_steering: no}
 bolt: 6 mm
+baselines: {homologated: {design: old.design.yaml}}
 tub: {material: "25CrMo4"}
 evidence:
   hoop: {kind: certificate, until: 2028-01-31}
@@ -148,6 +151,11 @@ judgements:
 states:
   fuel: {empty: {masses.fuel.mass: 0 kg}, full: {}}
   load: {low: {tyres.front.loaded_radius: 320 mm, tyres.rear.loaded_radius: 330 mm}}
+"""
+
+OLD = """\
+design: Heron 3
+members: {hoop: {material: "25CrMo4", wall: 2.5 mm, outer_diameter: 45 mm}}
 """
 
 BAD = {

@@ -16,7 +16,7 @@ from pathlib import Path
 from tempfile import TemporaryDirectory
 
 import pytest
-from shapes_car import GOOD, SHAPES, bad
+from shapes_car import GOOD, OLD, SHAPES, bad
 
 from rulecheck.api import load_design, load_ruleset
 from rulecheck.binding.bind import bind
@@ -123,6 +123,7 @@ def shapes(design: str) -> tuple[Design, Ruleset]:
     with TemporaryDirectory() as folder:
         place = Path(folder)
         (place / "car.design.yaml").write_text(design, encoding="utf-8")
+        (place / "old.design.yaml").write_text(OLD, encoding="utf-8")
         (place / "cup.ruleset.yaml").write_text(SHAPES, encoding="utf-8")
         return load_design(place / "car.design.yaml"), load_ruleset(place / "cup.ruleset.yaml")
 

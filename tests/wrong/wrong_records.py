@@ -17,6 +17,11 @@ def tested(said: str) -> str:
     return f"{TEST}rules:\n  it:\n    record: {said}\n"
 
 
+def kept(said: str) -> str:
+    """A ruleset of one rule on what is frozen."""
+    return f"{NUMBERS}rules:\n  it:\n    frozen: {said}\n"
+
+
 CASES = (
     ("a tolerance of another dimension", ruled("tolerance: 3 kg")),
     ("a tolerance below zero", ruled("tolerance: -3 mm")),
@@ -41,6 +46,14 @@ CASES = (
     ("a test of no element", tested("{of: o, require: result.pull >= 1 kN}")),
     ("a test with an unknown field", tested("{name: t, require: result.push >= 1 kN}")),
     ("a test that is a word", tested("nose")),
+    ("what is frozen without a baseline", kept('{paths: ["tub.**"]}')),
+    ("what is frozen without paths", kept("{baseline: old}")),
+    ("nothing frozen", kept("{baseline: old, paths: []}")),
+    ("a frozen path that is none", kept('{baseline: old, paths: ["tub.***"]}')),
+    ("what is frozen with a tolerance below zero", kept("{baseline: old, paths: a, tolerance: -1 mm}")),
+    ("what is frozen with changes that are no count", kept("{baseline: old, paths: a, changes_allowed: few}")),
+    ("what is frozen from no day", kept("{baseline: old, paths: a, since: 2027-02-30}")),
+    ("what is frozen with an unknown key", kept("{baseline: old, paths: a, until: 2027-02-03}")),
     ("a consequence without a kind", ruled("consequence: {points: 3}")),
     ("a consequence with points that are none", ruled("consequence: {kind: penalty, points: many}")),
     ("a consequence with an unknown key", ruled("consequence: {kind: penalty, point: 3}")),
@@ -114,6 +127,28 @@ SAID: dict[str, tuple[str, ...]] = {
     ),
     "a test that is a word": (
         "cup.ruleset.yaml:6:13: bad-structure: a test has keys; expected {name: nose_impact, setup: setup.mass >= 300 kg, require: result.mean_deceleration <= 20 gn}",
+    ),
+    "what is frozen without a baseline": (
+        "cup.ruleset.yaml:6:13: missing-key: 'baseline:' is missing here; expected {baseline: homologated, since: 2027-02-01, paths: [\"tub.**\"]}",
+    ),
+    "what is frozen without paths": (
+        "cup.ruleset.yaml:6:13: missing-key: 'paths:' is missing here; expected {baseline: homologated, since: 2027-02-01, paths: [\"tub.**\"]}",
+    ),
+    "nothing frozen": ('cup.ruleset.yaml:6:36: bad-structure: nothing is frozen here; expected paths: ["tub.**"]',),
+    "a frozen path that is none": (
+        'cup.ruleset.yaml:6:37: bad-name: this is no path that could be frozen; expected names joined by dots, * for any, ** for all below: ["tub.**"]',
+    ),
+    "what is frozen with a tolerance below zero": (
+        "cup.ruleset.yaml:6:50: bad-value: the tolerance of what is frozen is a width that is not negative; expected such as '1 mm'",
+    ),
+    "what is frozen with changes that are no count": (
+        "cup.ruleset.yaml:6:56: bad-number: 'changes_allowed' is a count; expected 0 to 10000",
+    ),
+    "what is frozen from no day": (
+        "cup.ruleset.yaml:6:46: bad-date: the calendar has no 2027-02-30; expected a day of the calendar",
+    ),
+    "what is frozen with an unknown key": (
+        "cup.ruleset.yaml:6:39: unknown-key: what is frozen has no key 'until'; expected baseline or since or paths or tolerance or changes_allowed",
     ),
     "a consequence without a kind": (
         "cup.ruleset.yaml:7:18: missing-key: 'kind:' is missing here; expected {kind: penalty, points: 20}",

@@ -166,7 +166,7 @@ WRONG_RULESETS: tuple[Wrong, ...] = (
     Wrong(
         "a rule that asks for nothing",
         (
-            "cup.ruleset.yaml:5:3: missing-key: rule 'it' asks for nothing; expected require, inside, outside, branches, evidence, record or judgement",
+            "cup.ruleset.yaml:5:3: missing-key: rule 'it' asks for nothing; expected require, inside, outside, branches, evidence, record, frozen or judgement",
         ),
         ruleset=NUMBERS + "rules:\n  it: {title: Width}\n",
     ),
