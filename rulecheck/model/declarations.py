@@ -68,12 +68,12 @@ def _of_records(entry: Entry) -> tuple[Entry, ...]:
         return ()
     rows = []
     if len(parts) > 3 and parts[2] in ("setup", "result"):
-        rows.append(replace(entry, path=".".join((*parts[:2], "runs", "*", *parts[2:]))))
+        rows.append(replace(entry, path=".".join((*parts[:2], "runs", "*", *parts[2:])), origin=""))
     if parts[1] != "*":
         # A name with rows of its own would hide those of every record.
         common = (row for row in RECORDS if row.path.startswith("records.*."))
         own = (replace(row, path=row.path.replace("records.*", f"records.{parts[1]}", 1)) for row in common)
-        rows.extend(replace(row, origin=entry.origin, span=entry.span) for row in own)
+        rows.extend(own)
     return tuple(row for row in rows if row.path != entry.path)
 
 

@@ -305,3 +305,18 @@ def test_wet_setting_lifts_the_centre_of_gravity() -> None:
         _, x, _, z = centre([*pieces(), fuel(f), driver(90)])
         heights.append(z + 47 + (66 - 47) * x / WHEELBASE)
     assert exact(report, "mass_height") == (385 - max(heights), "mm")
+
+
+def test_homologation_sheet() -> None:
+    """20 - 18.6 gn; 61.2 - 60 kN; 3.95 - 98 % of 4 kN; 2870 - (2871 - 2) mm; whole kilograms of the ledger; no change."""
+    sheet = checked("marram-p2-homologation")
+    due = {
+        "nose_impact": (Fraction(14, 10), "gn"),
+        "hoop_pull": (Fraction(12, 10), "kN"),
+        "rivet_sample": (Fraction(3, 100), "kN"),
+        "wheelbase_sheet": (Fraction(1), "mm"),
+        "weighed_mass": (Fraction(3), "kg"),
+        "hoop_frozen": (Fraction(1, 10), "mm"),
+    }
+    assert {name: exact(sheet, name) for name in due} == due
+    assert {found(sheet, name).verdict for name in due} == {"complies"}

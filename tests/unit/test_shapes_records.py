@@ -3,9 +3,12 @@
 from __future__ import annotations
 
 from datetime import date
+from pathlib import Path
 
 import pytest
 from small_files import check_texts, findings, margin, only
+
+from rulecheck.api import proofread
 
 INPUTS = (
     "inputs:\n"
@@ -122,3 +125,8 @@ def test_a_declaration_for_one_record_leaves_the_fields_of_every_record() -> Non
         inputs + NOSE.replace("setup: setup.mass >= 300 kg, ", ""),
     )
     assert (found.verdict, margin(found)) == ("complies", 2)
+
+
+def test_what_every_record_has_is_not_an_unused_input_of_the_rule_book() -> None:
+    book = Path(__file__).parents[2] / "rulesets_demo" / "homologation.ruleset.yaml"
+    assert [item for part in proofread([book]).books for item in part.findings if item.code == "unused-name"] == []
