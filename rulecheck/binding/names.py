@@ -19,6 +19,7 @@ from rulecheck.graph.terms import Term
 from rulecheck.model.ruleset import PhysicsModule
 from rulecheck.model.vocabulary import Entry
 from rulecheck.physics.declared import DECLARED
+from rulecheck.quantity.dimension import PURE
 from rulecheck.quantity.units import find_unit
 from rulecheck.reading.nearest import nearest
 
@@ -68,6 +69,8 @@ def _bind(scope: Scope, path: tuple[str, ...], span: Span) -> Bound:
 def _single(scope: Scope, name: str, span: Span) -> Bound | None:
     if name == "pi":
         return Number(scope.bank.number(1, power=1), find_unit("1"))
+    if name == "on" and scope.shared.stand_ins:
+        return Date(scope.bank.input("on", "date", PURE, span))  # what holds on one day says nothing of others
     if name == "on":
         return Date(scope.bank.day(scope.shared.day))
     if name in DIRECTIONS:

@@ -22,6 +22,7 @@ FIRST = (
     "design-files",
     "curves-and-maps",
     "rulesets",
+    "from-paper",
     "proofreading",
     "language",
     "zones",

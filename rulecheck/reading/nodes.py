@@ -71,20 +71,23 @@ class Mapping:
 
     entries: tuple[Entry, ...]
     span: Span = field(compare=False)
+    _by_key: dict[str, Entry] = field(default_factory=dict, compare=False, repr=False)
 
     def get(self, name: str) -> Node | None:
         """The value of a key, or None."""
-        for entry in self.entries:
-            if entry.key.text == name:
-                return entry.value
-        return None
+        entry = self._entry(name)
+        return entry.value if entry is not None else None
 
     def key(self, name: str) -> Located | None:
         """The key itself with its place, or None."""
-        for entry in self.entries:
-            if entry.key.text == name:
-                return entry.key
-        return None
+        entry = self._entry(name)
+        return entry.key if entry is not None else None
+
+    def _entry(self, name: str) -> Entry | None:
+        # A long mapping is asked for each of its keys: it is gone through once.
+        if not self._by_key:
+            self._by_key.update((entry.key.text, entry) for entry in self.entries)
+        return self._by_key.get(name)
 
     def __iter__(self) -> Iterator[Entry]:
         return iter(self.entries)

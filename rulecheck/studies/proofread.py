@@ -13,9 +13,11 @@ from rulecheck.diagnostics import Diagnostic
 from rulecheck.model.ruleset import PhysicsModule, Rule, Ruleset
 from rulecheck.outcome.proofreading import WEIGHTS, Proof, ProofBook, ProofPlace, Proofreading
 from rulecheck.studies.amounts import place
+from rulecheck.studies.contradictions import contradictions
 from rulecheck.studies.coverage import coverage, register_findings, totals
 from rulecheck.studies.reporting import CAUTION
 from rulecheck.studies.rule_listing import listing, window_text
+from rulecheck.studies.table_proofs import table_findings
 from rulecheck.studies.unused_names import unused
 
 
@@ -77,6 +79,8 @@ def _findings(book: BoundBook, day: date) -> Iterator[Proof]:
     starts = _starts(ruleset)
     for fault in shared.faults.found:
         yield _of_fault(fault, starts)
+    yield from contradictions(shared, ruleset)
+    yield from table_findings(shared, ruleset)
     yield from unused(ruleset, book.modules, _touched(shared))
 
 

@@ -18,9 +18,9 @@ def _made() -> set[tuple[str, str]]:
     found = set()
     for path in sorted((ROOT / "rulecheck" / "studies").glob("*.py")):
         for node in ast.walk(ast.parse(path.read_text("utf-8"))):
-            if isinstance(node, ast.Call) and getattr(node.func, "id", "") == "Proof":
-                texts = [item.value for item in node.args[:2] if isinstance(item, ast.Constant)]
-                if len(texts) == 2:
+            if isinstance(node, ast.Call) and getattr(node.func, "id", "") in ("Proof", "_about"):
+                texts = [item.value for item in node.args[:3] if isinstance(item, ast.Constant)]
+                if len(texts) >= 2:
                     found.add((str(texts[0]), str(texts[1])))
     return found
 
