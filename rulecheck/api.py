@@ -32,12 +32,11 @@ from rulecheck.loading import (
     overlay_of,
     reserve_text,
     reserves_of,
-    structure_of,
     tracks_of,
     varyings_of,
     with_value,
 )
-from rulecheck.model.design import Overlay
+from rulecheck.model.design import Overlay, structure_of
 from rulecheck.model.ruleset import SIMPLE, Decision, PhysicsModule
 from rulecheck.outcome.results import ClosedFormResult, Report, Workings
 from rulecheck.physics.library import Library, library
@@ -74,7 +73,7 @@ def check(
     Carlo trials at most are held against each first-order uncertainty, none if 0.
     """
     session = session or Session()
-    day = on or date.today()
+    day = session.day = on or date.today()
     loaded = load(session, design, rules, settings, changes, states)
     graph = _bind(loaded, day)
     at_random = None
@@ -99,7 +98,7 @@ def proofread(
     from rulecheck.studies.proofread import BoundBook, proofreading
 
     session = session or Session()
-    day = on or date.today()
+    day = session.day = on or date.today()
     faults, books = Faults(), []
     for ruleset in load_books(rules, session):
         modules = modules_of(session, (ruleset,), faults)
@@ -131,7 +130,7 @@ def workings(
     from rulecheck.studies.workings import workings_of
 
     session = session or Session()
-    day = on or date.today()
+    day = session.day = on or date.today()
     loaded = load(session, design, rules, settings, changes, states, needs_rules=False)
     graph = _bind(loaded, day, _figures_named(loaded, names))
     checker = Checker(graph, reserves_of(loaded, graph, None), _decision(loaded))
@@ -171,7 +170,7 @@ def whatif(
     from rulecheck.studies.whatif import what_if
 
     session = session or Session()
-    day = on or date.today()
+    day = session.day = on or date.today()
     base = load(session, design, rules, (), (), states)
     made = []
     for change in columns:
@@ -198,7 +197,7 @@ def headroom(
     from rulecheck.studies.headroom import headroom as travels
 
     session = session or Session()
-    day = on or date.today()
+    day = session.day = on or date.today()
     loaded = load(session, design, rules, settings, changes, states)
     checker = Checker(_bind(loaded, day), decision=_decision(loaded))
     checker.read_all()
@@ -227,7 +226,7 @@ def vary(
     from rulecheck.studies.varying import vary as along_values
 
     session = session or Session()
-    day = on or date.today()
+    day = session.day = on or date.today()
     loaded = load(session, design, rules, settings, changes, states, needs_rules=False)
     first, second = varyings_of(session, loaded, along)
     wanted = _figures_named(loaded, names)

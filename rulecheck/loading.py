@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Callable, Iterable, Mapping, Sequence
 from dataclasses import dataclass, field
+from datetime import date
 from fractions import Fraction
 from os import PathLike
 from pathlib import Path
@@ -37,10 +38,11 @@ File = str | PathLike[str]
 
 @dataclass(slots=True)
 class Session:
-    """Files read for one question: where they lie, and their texts for diagnostics."""
+    """Files read for one question, on its day: where they lie, and their texts for diagnostics."""
 
     workspaces: list[Workspace] = field(default_factory=list)
     extra: dict[str, str] = field(default_factory=dict)
+    day: date | None = None
 
     def workspace(self, path: Path) -> Workspace:
         """The workspace of a file; one for each root."""
@@ -70,20 +72,27 @@ def load_design(path: File, *, session: Session | None = None) -> Design:
 
 def load_ruleset(path: File, *, session: Session | None = None) -> Ruleset:
     """Read a ruleset with what it extends. Raises `Refused` with every fault of the files read."""
-    workspace = (session or Session()).workspace(Path(path))
-    return read_ruleset(workspace, workspace.name(Path(path)))
+    session = session or Session()
+    workspace = session.workspace(Path(path))
+    return read_ruleset(workspace, workspace.name(Path(path)), None, session.day)
 
 
 def load_books(paths: Sequence[File], session: Session) -> tuple[Ruleset, ...]:
     """Read several rulesets. Raises `Refused` with the faults of all of them."""
-    faults, books = Faults(), []
+    faults = Faults()
+    books = _given(paths, session, faults)
+    faults.settle()
+    return books
+
+
+def _given(paths: Sequence[File], session: Session, faults: Faults) -> tuple[Ruleset, ...]:
+    found: list[Ruleset] = []
     for path in paths:
         try:
-            books.append(load_ruleset(path, session=session))
+            found.append(load_ruleset(path, session=session))
         except Refused as refused:
             faults.take(refused)
-    faults.settle()
-    return tuple(books)
+    return tuple(found)
 
 
 @dataclass(slots=True)
@@ -159,18 +168,12 @@ def _rulesets(
     for reference in named:
         try:
             target = workspace.resolve(reference.text, beside, reference.span)
-            own.append(read_ruleset(workspace, target, reference.span))
+            own.append(read_ruleset(workspace, target, reference.span, session.day))
         except Refused as refused:
             (quiet if rules else faults).take(refused)
     if not rules:
         return tuple(own), ()
-    given: list[Ruleset] = []
-    for path in rules:
-        try:
-            given.append(load_ruleset(path, session=session))
-        except Refused as refused:
-            faults.take(refused)
-    return tuple(given), tuple(own)
+    return _given(rules, session, faults), tuple(own)
 
 
 def modules_of(session: Session, rulesets: Sequence[Ruleset], faults: Faults) -> tuple[PhysicsModule, ...]:
@@ -340,11 +343,3 @@ def reserve_text(house: House | None, share: Fraction | None) -> str:
         return ""
     count = len(house.reserves)
     return f"{count} rule{'s' if count > 1 else ''}, in {house.file}"
-
-
-def structure_of(design: Design) -> tuple[object, ...]:
-    """What a design has beside its numbers: names, and the texts of leaves that are no numbers."""
-    words = {
-        path: node for path, node in design.leaves.items() if isinstance(node, Located) and node.text[:1].isalpha()
-    }
-    return (sorted(design.leaves), sorted((path, node.text) for path, node in words.items()))

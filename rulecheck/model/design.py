@@ -210,3 +210,11 @@ def _register(path: str, items: dict[str, tuple[str, ...]]) -> None:
         if name not in known:
             items[holder] = (*known, name)
         path = holder
+
+
+def structure_of(design: Design) -> tuple[object, ...]:
+    """What a design has beside its numbers: names, and the texts of leaves that are no numbers."""
+    words = {
+        path: node for path, node in design.leaves.items() if isinstance(node, Located) and node.text[:1].isalpha()
+    }
+    return (sorted(design.leaves), sorted((path, node.text) for path, node in words.items()))

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 from dataclasses import replace
+from datetime import date
 
 from rulecheck.diagnostics import Faults, Related
 from rulecheck.model.ruleset import Origin, Rule, Ruleset, Withdrawn
@@ -11,8 +12,13 @@ from rulecheck.reading.nearest import nearest
 from rulecheck.reading.nodes import Located, Mapping, Node
 
 
-def layered(bases: Sequence[Ruleset], top: Ruleset, withdrawn: Node | None, faults: Faults) -> Ruleset:
-    """`top` over all its bases, the first of them lowest, without the rules that it withdraws."""
+def layered(
+    bases: Sequence[Ruleset], top: Ruleset, withdrawn: Node | None, faults: Faults, day: date | None = None
+) -> Ruleset:
+    """`top` over all its bases, the first of them lowest, without the rules that it withdraws.
+
+    On a day on which the bases are in force and `top` is not, nothing of it counts but its name.
+    """
     if not bases:
         for key, _ in _withdrawals(withdrawn, faults):
             faults.add(
@@ -23,8 +29,13 @@ def layered(bases: Sequence[Ruleset], top: Ruleset, withdrawn: Node | None, faul
     ground = bases[0]
     for base in bases[1:]:
         ground = _over(ground, base, faults)
-    made = _over(ground, top, faults)
-    return _without(made, ground, top, withdrawn, faults)
+    made = _without(_over(ground, top, faults), ground, top, withdrawn, faults)
+    if day is None or top.valid.holds(day) or not (ground.idle or ground.valid.holds(day)):
+        return made
+    return replace(
+        ground, file=top.file, name=top.name, edition=top.edition, note=top.note, valid=top.valid, span=top.span,
+        books=made.books, idle=(*ground.idle, top.file),
+    )  # fmt: skip
 
 
 def _over(base: Ruleset, top: Ruleset, faults: Faults) -> Ruleset:
@@ -56,6 +67,7 @@ def _over(base: Ruleset, top: Ruleset, faults: Faults) -> Ruleset:
         validity="required" if "required" in (base.validity, top.validity) else "noted",
         physics=(*base.physics, *top.physics),
         clauses={**base.clauses, **top.clauses},
+        idle=(*base.idle, *top.idle),
     )
     _one_name_space(made, faults)
     return made

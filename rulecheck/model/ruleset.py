@@ -203,7 +203,8 @@ class Ruleset:
     """A rule book with what it extends already merged in; `physics` are the files of physics modules that it names,
     each beside the file that names it; `validity` says whether figures outside their range are `noted`, or no rule may
     rest on them (`required`); `needed` are the states by axis, with the paths they set;
-    `books` are the files that it is made of, the most general first; `clauses` is the register of the rule book."""
+    `books` are the files that it is made of, the most general first; `clauses` is the register of the rule book; `idle` are
+    the files that are not in force on the day for which it was read, so that nothing of them counts."""
 
     file: str
     name: str
@@ -225,6 +226,7 @@ class Ruleset:
     physics: tuple[Located, ...] = ()
     validity: str = "noted"
     clauses: MappingOf[str, Clause] = field(default_factory=dict)
+    idle: tuple[str, ...] = ()
 
 
 @dataclass(frozen=True, slots=True)

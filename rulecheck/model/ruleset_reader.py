@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from dataclasses import replace
+from datetime import date
 from typing import Any
 
 from rulecheck.diagnostics import Faults, Refused, Related, Span
@@ -46,12 +47,12 @@ MOST_LAYERS = 20
 _SHARING = "rules, derived figures, tables, lists, zones and templates"
 
 
-def read_ruleset(workspace: Workspace, file: str, asked: Span | None = None) -> Ruleset:
-    """Read a ruleset and all that it extends. Raises `Refused` with the faults of all these files."""
-    return _read(workspace, file, asked, ())
+def read_ruleset(workspace: Workspace, file: str, asked: Span | None = None, day: date | None = None) -> Ruleset:
+    """Read a ruleset and all that it extends, as `layered` on the day. Raises `Refused` with the faults of all files."""
+    return _read(workspace, file, asked, (), day)
 
 
-def _read(workspace: Workspace, file: str, asked: Span | None, above: tuple[str, ...]) -> Ruleset:
+def _read(workspace: Workspace, file: str, asked: Span | None, above: tuple[str, ...], day: date | None) -> Ruleset:
     faults = Faults()
     if file in above or len(above) >= MOST_LAYERS:
         faults.add("cycle", f"rulesets extend each other: {' extends '.join((*above, file))}", asked)
@@ -62,12 +63,12 @@ def _read(workspace: Workspace, file: str, asked: Span | None, above: tuple[str,
     for reference in _references(root.get("extends")):
         try:
             target = workspace.resolve(reference.text, file, reference.span)
-            bases.append(_read(workspace, target, reference.span, (*above, file)))
+            bases.append(_read(workspace, target, reference.span, (*above, file), day))
         except Refused as refused:
             faults.take(refused)
     faults.settle()
     assert shape is not None
-    made = layered(bases, _Reader(file, root, shape, faults).ruleset(), root.get("withdrawn"), faults)
+    made = layered(bases, _Reader(file, root, shape, faults).ruleset(), root.get("withdrawn"), faults, day)
     decision = read_decision(root.get("decision"), faults)
     faults.settle()
     return made if decision is None else _decided(made, decision)

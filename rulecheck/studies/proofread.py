@@ -54,13 +54,17 @@ def _book(book: BoundBook, day: date, *, listed: bool) -> ProofBook:
         name=ruleset.name,
         edition=ruleset.edition,
         file=ruleset.file,
-        layers=tuple(layer.file for layer in ruleset.books),
+        layers=tuple(_layer(layer.file, ruleset, day) for layer in ruleset.books),
         findings=tuple(_in_order(found)),
         coverage=covered,
         totals=totals(covered),
         rules=listing(ruleset, day) if listed else (),
         window=window_text(ruleset.valid),
     )
+
+
+def _layer(file: str, ruleset: Ruleset, day: date) -> str:
+    return f"{file} (not in force on {day.isoformat()})" if file in ruleset.idle else file
 
 
 def _in_order(found: Iterable[Proof]) -> list[Proof]:
