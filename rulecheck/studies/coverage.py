@@ -58,6 +58,8 @@ def _covers(rule: Rule) -> Iterator[Cover]:
             yield "computed"
         if alternative.evidence is not None:
             yield "evidence"
+        if alternative.record is not None:
+            yield "record"
         if alternative.judgement is not None:
             yield "judgement"
 

@@ -15,6 +15,7 @@ from rulecheck.outcome.proofreading import WEIGHTS, Proof, ProofBook, ProofPlace
 from rulecheck.studies.amounts import place
 from rulecheck.studies.contradictions import contradictions
 from rulecheck.studies.coverage import coverage, register_findings, totals
+from rulecheck.studies.examples import run_examples
 from rulecheck.studies.reporting import CAUTION
 from rulecheck.studies.rule_listing import listing, window_text
 from rulecheck.studies.table_proofs import table_findings
@@ -85,6 +86,7 @@ def _findings(book: BoundBook, day: date) -> Iterator[Proof]:
         yield _of_fault(fault, starts)
     yield from contradictions(shared, ruleset)
     yield from table_findings(shared, ruleset)
+    yield from _failed_examples(book, day)
     yield from unused(ruleset, book.modules, _touched(shared))
 
 
@@ -99,6 +101,16 @@ def _starts(ruleset: Ruleset) -> Starts:
     others += [entry.span for entry in ruleset.inputs if entry.span is not None]
     rules.extend((span.file, span.start, None) for span in others)
     return sorted(rules, key=lambda item: item[:2])
+
+
+def _failed_examples(book: BoundBook, day: date) -> Iterator[Proof]:
+    """Examples of rules that come to another verdict or margin than they say."""
+    for item in run_examples(book.ruleset, book.shared.physics, day):
+        if not item.agrees:
+            reason = f" ({item.reason})" if item.reason else ""
+            told = f"an example of rule '{item.rule}' expects {item.expected}, and gives {item.found}{reason}"
+            advice = "mend the rule, or the example"
+            yield Proof("failed-example", "fault", item.rule, item.clause, told, advice, item.place)
 
 
 def _touched(shared: Shared) -> set[str]:

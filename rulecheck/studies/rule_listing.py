@@ -60,6 +60,8 @@ def _of_alternative(alternative: Alternative) -> Iterator[str]:
     if alternative.evidence is not None:
         wanted = alternative.evidence
         yield f"{wanted.kind.text}: {wanted.name.text}" + (f", due {wanted.due.text}" if wanted.due else "")
+    if alternative.record is not None:
+        yield f"record {alternative.record.called.text}: {' '.join(alternative.record.require.text.split())}"
     if alternative.judgement is not None:
         yield f"judgement: {alternative.judgement.text}"
 

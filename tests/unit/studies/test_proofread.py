@@ -114,6 +114,13 @@ def test_no_default_counts_as_stated(tmp_path: Path) -> None:
     assert found(tmp_path, text) == []
 
 
+@pytest.mark.parametrize(("margin", "expected"), [("10 mm", []), ("11 mm", [("fault", "failed-example", "width")])])
+def test_examples_are_run(tmp_path: Path, margin: str, expected: list[tuple[str, str, str]]) -> None:
+    examples = f"[{{given: {{dimensions.overall_width: 1890 mm}}, margin: {margin}}}]"
+    text = SOUND.replace("1900 mm}", f"1900 mm, examples: {examples}}}")
+    assert found(tmp_path, HEAD + text) == expected
+
+
 # --- the command -----------------------------------------------------------------------------------------------------
 
 
