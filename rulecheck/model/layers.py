@@ -47,7 +47,7 @@ def _over(base: Ruleset, top: Ruleset, faults: Faults) -> Ruleset:
         if (rule.ruleset, rule.span) in gone or (old is not None and _is_older(rule, old)):
             continue  # both stand on one rule book, and the lower has changed or withdrawn this rule of it
         if old is not None and (old.ruleset, old.span) != (rule.ruleset, rule.span):
-            rule = replace(rule, history=(*old.history, Origin(old.ruleset, old.span, "replaced")))
+            rule = replace(rule, history=(*old.history, Origin(old.ruleset, old.span, "replaced", old.clause)))
         rules[name] = rule
     made = replace(
         top,

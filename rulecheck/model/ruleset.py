@@ -79,11 +79,12 @@ class Unless:
 
 @dataclass(frozen=True, slots=True)
 class Origin:
-    """Where an older form of a rule stood, and what became of it."""
+    """Where an older form of a rule stood, what became of it, and the clause that it stood for."""
 
     ruleset: str
     span: Span
     what: str
+    clause: str = ""
 
 
 @dataclass(frozen=True, slots=True)

@@ -22,7 +22,9 @@ def coverage(ruleset: Ruleset) -> tuple[ClauseCover, ...]:
     """Each clause of the register with what covers it, in the order of the register."""
     rules: dict[str, list[Rule]] = {}
     for rule in ruleset.rules.values():
-        rules.setdefault(rule.clause, []).append(rule)
+        # A rule that takes the place of another stands for the clause of that one too.
+        for clause in dict.fromkeys((rule.clause, *(origin.clause for origin in rule.history))):
+            rules.setdefault(clause, []).append(rule)
     gone = {item.rule.clause for item in ruleset.withdrawn}
     return tuple(_cover(clause, rules.get(clause.number, []), gone) for clause in ruleset.clauses.values())
 

@@ -6,6 +6,18 @@ from wrong_inputs import NUMBERS, OK, Wrong, rule
 
 WRONG_RULESETS: tuple[Wrong, ...] = (
     Wrong(
+        "a clause of a kind that is none",
+        (
+            "cup.ruleset.yaml:7:39: unknown-choice: 'definiton' is no kind of clause; expected rule or definition or procedure or information or heading; did you mean 'definition'?",
+        ),
+        ruleset=f'{rule("a <= 10 mm")}clauses: {{"1.1": {{title: Width, kind: definiton}}}}\n',
+    ),
+    Wrong(
+        "an answer without a reference",
+        ("cup.ruleset.yaml:7:15: missing-key: this answer has no 'reference'; expected {reference, date, text}",),
+        ruleset=f"{rule('a <= 10 mm')}    answers: [{{text: Mirrors do not count}}]\n",
+    ),
+    Wrong(
         "brackets too deep",
         (
             "cup.ruleset.yaml:6:114: too-large: the formula has more than 100 levels; split it into derived figures, or take an aggregate for a long sum",

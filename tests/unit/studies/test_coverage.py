@@ -98,3 +98,18 @@ def test_a_word_of_judgement_where_a_person_is_asked_or_nothing_is(tmp_path: Pat
 def test_a_clause_without_a_title(tmp_path: Path) -> None:
     text = TEXT.replace("{title: What a wing is, kind: definition}", "{kind: definition}")
     assert ("no-title", "1.1") in [(item.code, item.clause) for item in _book(tmp_path, text).findings]
+
+
+def test_a_rule_that_replaces_another_covers_its_clause_too(tmp_path: Path) -> None:
+    top = "ruleset: Event\nextends: cup.ruleset.yaml\nclauses: {E.1: Local width}\nrules:\n"
+    top += "  width: {clause: E.1, title: Width, require: dimensions.overall_width <= 1800 mm}\n"
+    top += "  width_paper: {clause: E.1, title: Width, require: dimensions.overall_width >= 1 m}\n"
+    covers = {clause.number: clause.rules for clause in _book(tmp_path, TEXT, top).coverage}
+    assert covers["E.1"] == covers["2.1"] == ("width", "width_paper")
+
+
+def test_a_test_record_covers_its_clause(tmp_path: Path) -> None:
+    record = "{name: impact, require: result.load >= 10 kN}"
+    inputs = "inputs: {records.*.result.load: {unit: kN, meaning: Load}}\n"
+    text = f'{inputs}{TEXT}  impact: {{clause: "2.6", title: Impact, record: {record}}}\n'
+    assert [clause.covers for clause in _book(tmp_path, text).coverage if clause.number == "2.6"] == [("record",)]
