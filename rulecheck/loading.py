@@ -31,7 +31,7 @@ from rulecheck.reading.nodes import Entry, Located
 from rulecheck.reading.nodes import Mapping as Keyed
 from rulecheck.reading.workspace import Workspace
 from rulecheck.reading.yaml_reader import parse_yaml
-from rulecheck.studies.check import Reserves
+from rulecheck.studies.reserves import Reserves
 
 File = str | PathLike[str]
 

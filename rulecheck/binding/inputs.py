@@ -57,6 +57,8 @@ def _bind_input(scope: Scope, path: str, entry: Entry, span: Span) -> Bound:
         return collection(scope, path, entry)
     node = stated(scope, path)
     bound = _of_kind(scope, path, entry, node, span)
+    if path in scope.view.given:
+        return bound  # its value does not come from the design
     gap = without_basis(scope, path, entry, node)
     if not gap or node is None or not isinstance(bound, (Number, Truth, Words, Date)):
         return bound

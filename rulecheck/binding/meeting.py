@@ -17,5 +17,6 @@ def met_by(scope: Scope, cases: Sequence[Case]) -> Term:
     for case in cases:
         asked = any_of(scope, [case.exempt, holds(scope, case.condition)])
         # Where it is unknown whether a rule applies it is open, whatever it would come to (a branch says so).
-        flags.append(scope.bank.branch(case.applies, asked, scope.bank.flag(True)))
+        met = scope.bank.branch(case.applies, asked, scope.bank.flag(True))
+        flags.append(scope.bank.throughout(met, case.envelope.axes) if case.envelope is not None else met)
     return all_of(scope, flags)

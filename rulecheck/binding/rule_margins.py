@@ -36,6 +36,9 @@ def margin_term(scope: Scope, rule: BoundRule, span: Span) -> Bound:
     """`margin(x)` as a number. Undefined where the rule does not apply or is decided without a number."""
     rooms: list[_Room] = []
     unsettled: list[Term] = []
+    if any(case.envelope is not None for case in rule.cases):
+        told = f"rule '{rule.name}' has an envelope, and its margin at the worst point of it is no number of a formula"
+        return scope.fault("kind-mismatch", told, span, expected=f"rule({rule.name}), which says whether it is met")
     try:
         for case in rule.cases:
             room = _room(scope, case.condition, span)

@@ -12,6 +12,7 @@ from rulecheck.binding.comparing import all_of, any_of, opposite
 from rulecheck.binding.conditions import Builder, certain, holds, open_part, scales_agree
 from rulecheck.binding.dispensations import dispensation
 from rulecheck.binding.documents import evidence, judgement
+from rulecheck.binding.envelopes import envelope_of, in_envelope
 from rulecheck.binding.frozen import frozen
 from rulecheck.binding.meeting import met_by
 from rulecheck.binding.parsing import parsed, parsed_each
@@ -62,7 +63,11 @@ class _Binding:
 
     def bound(self) -> BoundRule | None:
         faults = len(self.shared.faults.found)
-        cases = [case for stance in stances(self.shared, self.ruleset, self.rule) for case in self._in_stance(stance)]
+        envelope = envelope_of(self.record, self.rule)
+        every = stances(self.shared, self.ruleset, self.rule)
+        cases = [
+            case for stance in every for case in in_envelope(self.record, self.rule, stance, envelope, self._in_stance)
+        ]
         if len(self.shared.faults.found) > faults:
             return None
         if not all(scales_agree(case.condition) for case in cases):
@@ -78,7 +83,7 @@ class _Binding:
         elif self.shared.stand_ins:
             self._note_stand_in(cases)
         check_scrutineer(self.record, self.rule, cases)
-        touched = sorted(self.record.touched)
+        touched = sorted(self.record.touched - {written.path.text for written in self.rule.envelope})
         permit = dispensation(self.record, self.rule.name)
         met = self.record.bank.flag(True) if permit is not None else met_by(self.record, cases)
         estimated = tuple(

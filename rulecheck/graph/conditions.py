@@ -4,11 +4,12 @@ from __future__ import annotations
 
 from dataclasses import dataclass, field
 from datetime import date
+from fractions import Fraction
 from typing import Literal
 
 from rulecheck.diagnostics import Span
 from rulecheck.formula.syntax import Syntax
-from rulecheck.graph.terms import Term
+from rulecheck.graph.terms import Axis, Term
 from rulecheck.model.ruleset import Decision
 from rulecheck.quantity.units import Unit
 
@@ -106,9 +107,21 @@ def every_part(condition: Condition) -> list[Part]:
 
 
 @dataclass(frozen=True, slots=True)
+class Envelope:
+    """The ranges of inputs throughout which a case must hold, with the unit in which each is spoken of; `label` names
+    them among the states of figures that rest on them."""
+
+    axes: tuple[Axis, ...]
+    units: tuple[Unit, ...]
+    label: str
+
+
+@dataclass(frozen=True, slots=True)
 class Case:
     """A rule for one element in one combination of states. `applies` and `exempt` are flags; `gates` the conditions
-    behind `applies`, with their margins; `uses` the names in its formulas."""
+    behind `applies`, with their margins; `uses` the names in its formulas. Where it has an `envelope` it must hold
+    throughout; `at` is the point of it at which the case stands, each axis with its value, and empty where it has none
+    yet."""
 
     element: str
     states: tuple[tuple[str, str], ...]
@@ -118,6 +131,8 @@ class Case:
     because: str = ""
     gates: tuple[Condition, ...] = ()
     uses: tuple[Use, ...] = ()
+    envelope: Envelope | None = None
+    at: tuple[tuple[Axis, Fraction], ...] = ()
 
 
 @dataclass(frozen=True, slots=True)

@@ -6,7 +6,8 @@ Kinds: `constant`; `input` (a number a design gives under a path, or lacks); `ap
 `branch` (condition, then, otherwise: reads its condition and the arm that it takes); `unknown`;
 `variable` (what an equation is solved for; occurs in equations only); `solve` (the least solution of an equation
 in a range: arguments are the ends of the range, then what the equation takes from outside);
-`external` (an output of a solver, with what the solver is handed).
+`external` (an output of a solver, with what the solver is handed);
+`throughout` (whether a flag holds at every point of some ranges: arguments are what it takes from outside them).
 """
 
 from __future__ import annotations
@@ -23,7 +24,7 @@ from rulecheck.operations.operation import Operation, Sort
 from rulecheck.operations.values import Monomial, Reason
 from rulecheck.quantity.dimension import PURE, Dimension
 
-Kind = Literal["constant", "input", "apply", "branch", "unknown", "variable", "solve", "external"]
+Kind = Literal["constant", "input", "apply", "branch", "unknown", "variable", "solve", "external", "throughout"]
 Constant = Monomial | bool | str
 
 
@@ -50,10 +51,30 @@ class External:
     needs: tuple[bool, ...]
 
 
+@dataclass(frozen=True, slots=True)
+class Axis:
+    """One axis of an envelope: `term` is an input that no design states, and runs from `low` to `high` (SI, times pi to
+    the `power`); `path` is the input for which it stands."""
+
+    path: str
+    term: Term
+    low: Fraction
+    high: Fraction
+    power: int = 0
+
+
+@dataclass(frozen=True, slots=True, eq=False)
+class Throughout:
+    """A flag that is to hold at every point of the axes."""
+
+    body: Term
+    axes: tuple[Axis, ...]
+
+
 @dataclass(frozen=True, slots=True, eq=False)
 class Term:
-    """One node of the graph. `value` is the constant, the reason it is unknown, the equation that is solved, or what a
-    solver is asked."""
+    """One node of the graph. `value` is the constant, the reason it is unknown, the equation that is solved, what a
+    solver is asked, or what is to hold throughout."""
 
     index: int
     kind: Kind
@@ -61,7 +82,7 @@ class Term:
     dimension: Dimension
     operation: Operation | None = None
     arguments: tuple[Term, ...] = ()
-    value: Constant | Reason | Equation | External | None = None
+    value: Constant | Reason | Equation | External | Throughout | None = None
     path: str = ""
 
 
@@ -164,6 +185,17 @@ class Bank:
         key = ("external", id(asked.question), asked.output, *(part.index for part in parts))
         return self._make(key, "external", sort, dimension, span, arguments=parts, value=asked)
 
+    def throughout(self, body: Term, axes: tuple[Axis, ...], span: Span | None = None) -> Term:
+        """Whether a flag holds at every point of the axes; the flag itself where it rests on none of them."""
+        moving = _resting_on_any(cone([body]), {axis.term.index for axis in axes})
+        if body.index not in moving:
+            return body
+        outside = {part.index: part for term in moving.values() for part in term.arguments if part.index not in moving}
+        arguments = tuple(outside[index] for index in sorted(outside))
+        key = ("throughout", body.index, axes)
+        value = Throughout(body, axes)
+        return self._make(key, "throughout", "flag", PURE, span, arguments=arguments, value=value)
+
     def _make(
         self,
         key: tuple[object, ...],
@@ -174,7 +206,7 @@ class Bank:
         *,
         operation: Operation | None = None,
         arguments: tuple[Term, ...] = (),
-        value: Constant | Reason | Equation | External | None = None,
+        value: Constant | Reason | Equation | External | Throughout | None = None,
         path: str = "",
     ) -> Term:
         known = self._known.get(key)
@@ -212,3 +244,11 @@ def resting_on(terms: Iterable[Term], root: Term) -> tuple[Term, ...]:
         if term is root or any(part.index in found for part in term.arguments):
             found[term.index] = term
     return tuple(found.values())
+
+
+def _resting_on_any(terms: Iterable[Term], roots: set[int]) -> dict[int, Term]:
+    found: dict[int, Term] = {}
+    for term in terms:
+        if term.index in roots or any(part.index in found for part in term.arguments):
+            found[term.index] = term
+    return found

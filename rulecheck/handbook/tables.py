@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Callable
 from fractions import Fraction
 
-from rulecheck.binding import aggregates, arithmetic, curves, placing, points, rules, scope, states
+from rulecheck.binding import aggregates, arithmetic, curves, envelopes, placing, points, rules, scope, states
 from rulecheck.binding.inputs import VALUE_KEYS
 from rulecheck.diagnostics import CODES
 from rulecheck.formula import lexer, token_reader
@@ -18,10 +18,10 @@ from rulecheck.model.core_table import CORE
 from rulecheck.model.value_ranges import MOST_CURVES, MOST_VALUES
 from rulecheck.model.vocabulary import Entry
 from rulecheck.quantity import numbers, unit_table, value_parts
-from rulecheck.readers import exact
+from rulecheck.readers import exact, least, throughout
 from rulecheck.reading import bounds
 from rulecheck.reading.ledger import COLUMNS, REQUIRED
-from rulecheck.studies import varying, worst_case
+from rulecheck.studies import varying
 
 
 def vocabulary() -> str:
@@ -140,7 +140,9 @@ def bound_rows() -> str:
         ("corners of a zone, squared, times those of an outline, where corners point inward", placing.MOST_CUTS),
         ("designs of a house file that are looked through for the name of a rule", house_rules.MOST_DESIGNS),
         ("inputs that stand in correlations", correlations.MOST_CORRELATED),
-        ("boxes into which a range of values is bisected", worst_case.MOST_BOXES),
+        ("boxes into which a range of values is bisected", least.MOST_BOXES),
+        ("boxes into which an envelope is bisected for one rule, element and state", throughout.MOST_BOXES),
+        ("axes of an envelope", envelopes.MOST_AXES),
         ("combinations of states of a rule", states.MOST_COMBINATIONS),
         ("cases of a rule: elements times states", rules.MOST_CASES),
         ("segments of a track", track_reader.MOST_SEGMENTS),

@@ -76,6 +76,7 @@ class RuleShape(BranchShape):
         None, description="What an empty collection means: open, complies, breach, not applicable"
     )
     states: Leaf | dict[str, Leaf | list[Leaf]] | None = Field(None, description="every, or states by axis")
+    envelope: Any = Field(None, description="Ranges of inputs throughout which it must hold: {path: [least, greatest]}")
     unless: Leaves | None = Field(None, description="Exemption: when and because")
     scale: Leaf | None = Field(None, description="What relative margins are measured by")
     valid: Leaves | None = Field(None, description="First and last day: from, until")

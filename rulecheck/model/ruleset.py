@@ -112,9 +112,19 @@ class Scrutineer:
 
 
 @dataclass(frozen=True, slots=True)
+class Range:
+    """One axis of an envelope as written: an input, and the values from which to which it runs."""
+
+    path: Located
+    low: Located
+    high: Located
+
+
+@dataclass(frozen=True, slots=True)
 class Rule:
     """One rule, as written. `own` are its own conditions, `branches` its alternatives; `states` is None for the design
-    as written, () for every state, else pairs of axis and names (() for every name)."""
+    as written, () for every state, else pairs of axis and names (() for every name); `envelope` are the ranges throughout
+    which it must hold."""
 
     name: str
     span: Span
@@ -139,6 +149,7 @@ class Rule:
     consequence: Consequence | None = None
     history: tuple[Origin, ...] = ()
     answers: tuple[Answer, ...] = ()
+    envelope: tuple[Range, ...] = ()
 
 
 @dataclass(frozen=True, slots=True)

@@ -12,6 +12,7 @@ from rulecheck.model.consequences import read_consequence
 from rulecheck.model.decisions import read_decision, read_scrutineer
 from rulecheck.model.declarations import declared_entries, needed_states, own_units
 from rulecheck.model.edge import BranchShape, EvidenceShape, FigureShape, RulesetShape, RuleShape, shaped
+from rulecheck.model.envelope_reader import read_envelope
 from rulecheck.model.examples import read_examples
 from rulecheck.model.frozen import read_frozen
 from rulecheck.model.groups import group_conditions
@@ -208,6 +209,7 @@ class _Reader:
             states=read_states(shape.states, key, self.faults),
             when=(*groups.get(name, ()), *((shape.when,) if shape.when else ())),
             unless=read_unless(shape.unless, inner, self.faults),
+            envelope=read_envelope(_inside(inner, "envelope"), self.faults),
             scale=shape.scale,
             valid=window(shape.valid, self.faults),
             measure=_inside(inner, "measure"),

@@ -182,11 +182,17 @@ _FROZEN: Schema = {
     "required": ["baseline", "paths"],
     "additionalProperties": False,
 }
+_ENVELOPE: Schema = {
+    "type": "object",
+    "minProperties": 1,
+    "additionalProperties": {"type": "array", "items": TEXT, "minItems": 2, "maxItems": 2},
+}
 _NARROWER: Mapping[tuple[str, str], Schema] = {
     ("RuleShape", "standing"): {"enum": list(STANDINGS)},
     ("RuleShape", "empty"): {"enum": list(EMPTY)},
     ("RuleShape", "valid"): _WINDOW,
     ("RuleShape", "unless"): _UNLESS,
+    ("RuleShape", "envelope"): _ENVELOPE,
     ("EvidenceShape", "expires"): {"enum": ["yes", "no", True, False]},
     ("TableShape", "steps"): _STEPS,
     ("TableShape", "linear"): _ROWS,

@@ -14,9 +14,11 @@ __all__ = [
     "Amount",
     "BindingPart",
     "ClosedFormResult",
+    "EnvelopeResult",
     "Finding",
     "PartResult",
     "Place",
+    "RangeResult",
     "Report",
     "RuledResult",
     "RulesetInfo",
@@ -80,16 +82,37 @@ class PartResult:
     place: Place | None
     branch: str = ""
     ruled: RuledResult | None = None
+    at: Mapping[str, Amount] = field(default_factory=dict)
+
+
+@dataclass(frozen=True, slots=True)
+class RangeResult:
+    """One axis of an envelope, or a part of it: an input, from one value to another."""
+
+    figure: str
+    low: Amount
+    high: Amount
+
+
+@dataclass(frozen=True, slots=True)
+class EnvelopeResult:
+    """The envelope throughout which a case was judged; `bound` is what the margin is certainly not below, None where
+    that is not certain; `undecided` is the part of the envelope on which nothing was proved."""
+
+    ranges: tuple[RangeResult, ...]
+    bound: Amount | None
+    undecided: tuple[RangeResult, ...]
 
 
 @dataclass(frozen=True, slots=True)
 class BindingPart:
-    """What decides a rule: the part, the element, the states."""
+    """What decides a rule: the part, the element, the states, the point of an envelope."""
 
     part: str
     element: str
     state: Mapping[str, str]
     branch: str = ""
+    at: Mapping[str, Amount] = field(default_factory=dict)
 
 
 @dataclass(frozen=True, slots=True)
@@ -123,6 +146,7 @@ class Finding:
     spread: SpreadResult | None = None
     ruled: RuledResult | None = None
     consequence: str = ""
+    envelope: EnvelopeResult | None = None
 
 
 @dataclass(frozen=True, slots=True)

@@ -3,15 +3,18 @@
 from __future__ import annotations
 
 import json
+from collections.abc import Mapping
 from dataclasses import fields, is_dataclass
 from typing import Protocol
 
 from rulecheck.outcome.results import (
     Amount,
     BindingPart,
+    EnvelopeResult,
     Finding,
     PartResult,
     Place,
+    RangeResult,
     Report,
     RuledResult,
     RulesetInfo,
@@ -134,6 +137,7 @@ def _finding(item: Finding) -> Json:
         "spread": spread_json(item.spread),
         "ruled": _ruled(item.ruled),
         "consequence": item.consequence,
+        "envelope": _envelope(item.envelope),
     }
 
 
@@ -144,8 +148,26 @@ def _binding(binding: BindingPart | None) -> Json | None:
         "part": binding.part,
         "element": binding.element,
         "branch": binding.branch,
-        "case": {"state": dict(binding.state)},
+        "case": _case(binding.state, binding.at),
     }
+
+
+def _case(state: Mapping[str, str], at: Mapping[str, Amount]) -> Json:
+    return {"state": dict(state), "at": {path: amount_json(value) for path, value in at.items()}}
+
+
+def _envelope(item: EnvelopeResult | None) -> Json | None:
+    if item is None:
+        return None
+    return {
+        "ranges": [_range(found) for found in item.ranges],
+        "least_margin": amount_json(item.bound),
+        "undecided": [_range(found) for found in item.undecided],
+    }
+
+
+def _range(item: RangeResult) -> Json:
+    return {"figure": item.figure, "from": amount_json(item.low), "to": amount_json(item.high)}
 
 
 def _part(item: PartResult) -> Json:
@@ -161,7 +183,7 @@ def _part(item: PartResult) -> Json:
         "sense": item.sense,
         "element": item.element,
         "branch": item.branch,
-        "case": {"state": dict(item.state)},
+        "case": _case(item.state, item.at),
         "place": _place(item.place),
         "ruled": _ruled(item.ruled),
     }

@@ -117,7 +117,12 @@ def shared_of() -> Schema:
                     "description": "The states in which it arises, by axis; empty for the design as written",
                     "type": "object",
                     "additionalProperties": {"type": "string"},
-                }
+                },
+                "at": {
+                    "description": "The point of an envelope at which it arises, by input; empty where there is none",
+                    "type": "object",
+                    "additionalProperties": {"$ref": "#/$defs/amount"},
+                },
             }
         ),
         "part": object_of(_part()),
@@ -223,6 +228,26 @@ def _rule() -> Schema:
         "history": list_of(text_of(), "What the rule replaces"),
         "consequence": text_of("What the rule book says follows a breach; it is no part of the verdict"),
         "spread": or_null_of(spread_of(), "What the spread of its inputs does to it; null where none has one"),
+        "envelope": or_null_of(
+            object_of(_envelope()), "The ranges throughout which it must hold; null where it has none"
+        ),
+    }
+
+
+def _envelope() -> Schema:
+    ranges = {
+        "figure": text_of("Path of the input"),
+        "from": {"$ref": "#/$defs/amount"},
+        "to": {"$ref": "#/$defs/amount"},
+    }
+    return {
+        "ranges": list_of(object_of(ranges), "Each input with its ends"),
+        "least_margin": or_null_of(
+            {"$ref": "#/$defs/amount"}, "What the margin is certainly not below; null where that is not certain"
+        ),
+        "undecided": list_of(
+            object_of(ranges), "The part of the ranges on which nothing was proved; empty where all is"
+        ),
     }
 
 

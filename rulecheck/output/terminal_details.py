@@ -9,7 +9,7 @@ from rich.text import Text
 
 from rulecheck.outcome.results import Amount, Finding, PartResult, Report, RuledResult, Verdict
 from rulecheck.output.screen import STYLES, line, words
-from rulecheck.output.wording import state_words
+from rulecheck.output.wording import at_words, state_words
 
 # In this order: what stops the car first.
 SHOWN: tuple[Verdict, ...] = ("breach", "open", "unproven", "not followed", "dispensed", "tight")
@@ -36,6 +36,7 @@ def _lines(item: Finding) -> Iterable[str]:
     if item.verdict == "tight":
         # Nothing is broken: the numbers and the place of the value say enough.
         yield from _numbers(item)
+        yield from _placed(item)
         yield f"value at {item.value_place}" if item.value_place else f"rule at {item.rule_place}"
         return
     if item.reason:
@@ -46,6 +47,7 @@ def _lines(item: Finding) -> Iterable[str]:
         yield from _named("branch", binding.branch)
         yield from _named("for", binding.element)
         yield from _named("in state", state_words(binding.state))
+    yield from _placed(item)
     yield from _numbers(item)
     yield from _others(item)
     yield from _named("consequence in the rule book:", item.consequence)
@@ -67,6 +69,14 @@ def ruled_words(item: RuledResult | None) -> str:
 def _named(label: str, text: str) -> Iterable[str]:
     if text:
         yield f"{label} {text}"
+
+
+def _placed(item: Finding) -> Iterable[str]:
+    """The point of its envelope that decides, and the envelope."""
+    if item.binding is None or item.envelope is None or not item.binding.at:
+        return
+    ranges = ", ".join(f"{found.figure} from {found.low} to {found.high}" for found in item.envelope.ranges)
+    yield f"{at_words(item.binding.at)}, of {ranges}"
 
 
 def _numbers(item: Finding) -> Iterable[str]:
@@ -100,7 +110,7 @@ def _others(item: Finding) -> Iterable[str]:
         return
     for part in failing[:_MOST_PARTS]:
         margin = f"margin {part.margin}" if part.margin else part.verdict
-        where = ", ".join(filter(None, (part.element, state_words(part.state), part.branch)))
+        where = ", ".join(filter(None, (part.element, state_words(part.state), at_words(part.at), part.branch)))
         yield f"also {where or part.text}: {margin}"
     if len(failing) > _MOST_PARTS:
         yield f"and {len(failing) - _MOST_PARTS} more"
@@ -108,9 +118,10 @@ def _others(item: Finding) -> Iterable[str]:
 
 def _is_binding(part: PartResult, item: Finding) -> bool:
     binding = item.binding
-    return binding is not None and (part.text, part.element, dict(part.state), part.branch) == (
+    return binding is not None and (part.text, part.element, dict(part.state), part.branch, part.at) == (
         binding.part,
         binding.element,
         dict(binding.state),
         binding.branch,
+        binding.at,
     )

@@ -11,7 +11,7 @@ from rich.text import Text
 from rulecheck.outcome.results import VERDICTS, BindingPart, ClosedFormResult, PartResult, Step, Working, Workings
 from rulecheck.output.screen import PAPER, STYLES, Screen, draw, line, words
 from rulecheck.output.terminal_details import compared, ruled_words
-from rulecheck.output.wording import state_words
+from rulecheck.output.wording import at_words, state_words
 
 _MOST_CONDITIONS = 12
 
@@ -53,6 +53,7 @@ def _case(binding: BindingPart | None) -> str:
     told = (
         f"for {binding.element}" if binding.element else "",
         f"in state {state}" if state else "",
+        at_words(binding.at),
         f"on branch {binding.branch}" if binding.branch else "",
     )
     return ", ".join(filter(None, told))
@@ -94,7 +95,7 @@ def _by_text(parts: Iterable[PartResult]) -> dict[str, list[PartResult]]:
 
 
 def _judged(part: PartResult) -> str:
-    where = ", ".join(filter(None, (part.element, state_words(part.state), part.branch)))
+    where = ", ".join(filter(None, (part.element, state_words(part.state), at_words(part.at), part.branch)))
     numbers = compared(part.value, part.sense, part.limit)
     margin = f"margin {part.margin}" if part.margin else ""
     told = "; ".join(filter(None, (part.verdict, numbers, margin, ruled_words(part.ruled), part.reason)))

@@ -62,6 +62,16 @@ def state_words(state: Mapping[str, str]) -> str:
     return ", ".join(f"{axis} {name}" for axis, name in state.items())
 
 
+def at_words(point: Mapping[str, Amount]) -> str:
+    """The point of an envelope at which a margin arises.
+
+    >>> at_words({"vehicle.speed": Amount("320", "km/h")})
+    'at vehicle.speed 320 km/h'
+    """
+    told = ", ".join(f"{path} {value}" for path, value in point.items())
+    return f"at {told}" if told else ""
+
+
 def counted(number: int, singular: str, plural: str = "") -> str:
     """A number with its noun.
 

@@ -14,6 +14,8 @@ from rulecheck.operations.values import Bounds, Reason, Unknown, merged
 from rulecheck.readers.algebraic import Algebraic
 from rulecheck.readers.external import solver_behind
 
+START_BITS = 64
+"""The precision with which readers begin."""
 # From this precision on a proof that roots cancel is tried before the precision is doubled again.
 PROOF_BITS = 256
 

@@ -28,15 +28,15 @@ from rulecheck.operations.exact import (
 )
 from rulecheck.operations.operation import UNDECIDED, Undecided
 from rulecheck.operations.values import Bounds, Monomial, Reason, Unknown
-from rulecheck.readers.applying import EXACT_KINDS, Applying, tie
+from rulecheck.readers.applying import EXACT_KINDS, START_BITS, Applying, tie
 from rulecheck.readers.decimals import in_digits, rounded
 from rulecheck.readers.enclosing import Enclosing
 from rulecheck.readers.external import answered
 from rulecheck.readers.solving import Solving
+from rulecheck.readers.throughout import holds_throughout
 
 # A graph with more terms is refused: a count, so that verdicts are reproducible.
 MAXIMUM_TERMS = 1_000_000
-START_BITS = 64
 MOST_BITS = 4096
 # A number for the screen needs no more relative accuracy than a double holds.
 _DOUBLE_BITS = 53
@@ -81,6 +81,11 @@ class ExactReader:
         self._levels: dict[int, dict[int, Any]] = {}
         self._applying = Applying(bank, self._exact, self._most)
         self._solving = Solving(bank)
+
+    def alike(self, inputs: Inputs, *, bits: int = 0, both_arms: bool = False) -> ExactReader:
+        """A reader of the same bank for other inputs, that knows nothing yet; with `bits`, of that one precision."""
+        start, most = (bits, bits) if bits else (self._start, self._most)
+        return ExactReader(self._bank, inputs, start_bits=start, most_bits=most, both_arms=both_arms or self._both_arms)
 
     def take(self, found: Iterable[tuple[int, Any]]) -> None:
         """Take over values that were found exactly by other means, by the index of their term."""
@@ -284,19 +289,24 @@ class ExactReader:
         if isinstance(condition, bool):
             return (term.arguments[1 if condition else 2],)
         is_open = self._both_arms and isinstance(condition, Undecided | Unknown)
-        return term.arguments[1:] if is_open and term.sort == "number" and _is_tie(condition) else ()
+        return term.arguments[1:] if is_open and term.sort in ("number", "flag") and _is_tie(condition) else ()
 
     def _leaf(self, term: Term, arms: tuple[Term, ...], rough: dict[int, Any]) -> Any:
         if len(arms) == 2:
             found = [self._look(arm, rough) for arm in arms]
             if all(isinstance(value, (Rational, PiNumber, Ball)) for value in found):
                 return to_ball(found[0]).union(to_ball(found[1]))
+            if isinstance(found[0], bool) and found[0] is found[1]:
+                return found[0]
+            arms = ()
         if term.kind == "branch":
-            return self._look(arms[0] if len(arms) == 1 else term.arguments[0], rough)
+            return self._look(arms[0] if arms else term.arguments[0], rough)
         if term.kind == "solve":
             return self._solving.value(term, [self._look(part, rough) for part in term.arguments])
         if term.kind == "external":
             return answered(term, [self._look(argument, rough) for argument in term.arguments])
+        if term.kind == "throughout":
+            return holds_throughout(self, self._bank, self._inputs, term)
         if term.kind == "unknown":
             return Unknown((term.value,)) if isinstance(term.value, Reason) else Unknown(())
         value = term.value if term.kind == "constant" else self._inputs.get(term.path)  # a variable has no value

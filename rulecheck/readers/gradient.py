@@ -15,7 +15,8 @@ from dataclasses import dataclass, field
 from rulecheck.graph.terms import Bank, Term, cone
 from rulecheck.model.solver import Argument
 from rulecheck.operations.exact import Ball, to_ball
-from rulecheck.readers.exact import START_BITS, ExactReader
+from rulecheck.readers.applying import START_BITS
+from rulecheck.readers.exact import ExactReader
 from rulecheck.readers.external import slopes
 from rulecheck.readers.implicit import implicit_partials, local_partials
 from rulecheck.readers.kinks import Kinks

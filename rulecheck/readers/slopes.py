@@ -10,13 +10,18 @@ from __future__ import annotations
 
 from collections.abc import Collection, Sequence
 from dataclasses import dataclass
+from typing import TYPE_CHECKING
 
 from rulecheck.graph.terms import Bank, Term, cone
 from rulecheck.operations.exact import Ball, precision
 from rulecheck.operations.operation import Operation
 from rulecheck.operations.values import Unknown
+from rulecheck.readers.applying import START_BITS
 from rulecheck.readers.certain import BOTH_WAYS, ONE, SPACE, UP_TO_ONE, ZERO, Certain, Unsure, lifted
-from rulecheck.readers.exact import START_BITS, ExactReader
+
+# The exact reader itself asks for slopes, where something is to hold throughout a range.
+if TYPE_CHECKING:
+    from rulecheck.readers.exact import ExactReader
 
 _LEAST = ("minimum", "least_where")
 _GREATEST = ("maximum", "greatest_where")
@@ -54,6 +59,7 @@ class SlopeReader:
     >>> from rulecheck.operations.arithmetic import multiply
     >>> from rulecheck.operations.values import Monomial
     >>> from rulecheck.quantity.dimension import PURE
+    >>> from rulecheck.readers.exact import ExactReader
     >>> bank = Bank()
     >>> x = bank.input("x", "number", PURE)
     >>> square = bank.apply(multiply, [x, x], PURE)

@@ -2,37 +2,30 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Mapping, Sequence
-from dataclasses import dataclass, field, replace
-from fractions import Fraction
+from collections.abc import Iterable, Sequence
+from dataclasses import replace
 
 from rulecheck.diagnostics import Span
 from rulecheck.graph.conditions import AnyOf, BoundRule, Case, Condition, Either, Part
 from rulecheck.graph.figures import Graph
 from rulecheck.graph.terms import Term
 from rulecheck.model.ruleset import SIMPLE, Decision, Rule
-from rulecheck.operations.comparison import below
 from rulecheck.operations.values import Unknown
 from rulecheck.outcome.results import Amount, BindingPart, Finding, PartResult, RuledResult, Verdict
 from rulecheck.outcome.spread import SpreadResult
-from rulecheck.quantity.dimension import PURE
-from rulecheck.quantity.quantity import Quantity
 from rulecheck.quantity.units import Unit
 from rulecheck.readers.exact import ExactReader
 from rulecheck.studies.amounts import amount, place, reason_text
 from rulecheck.studies.beside import NO_MEASURE, near_turning
 from rulecheck.studies.deciding import Decider
+from rulecheck.studies.envelopes import (
+    EnvelopeStudy,
+    place_of,
+)
 from rulecheck.studies.judging import Judge, Judged, all_of, verdict_of
+from rulecheck.studies.reserves import Keeping, Reserves
 from rulecheck.studies.spread import Asked as AskedSpread
 from rulecheck.studies.spread import AtRandom, SpreadStudy
-
-
-@dataclass(frozen=True, slots=True)
-class Reserves:
-    """Room that the house keeps: by rule in the margin's unit, and as a share for every rule."""
-
-    by_rule: Mapping[str, Quantity] = field(default_factory=dict)
-    share: Fraction | None = None
 
 
 class Checker:
@@ -57,9 +50,16 @@ class Checker:
         self._spread = SpreadStudy(graph, self.decider, at_random)
         self.reserves = reserves or Reserves()
         self._amounts: dict[tuple[int, Unit | None, bool], Amount | None] = {}
+        self._envelopes = EnvelopeStudy(graph, self.reader, self.decider)
+        self._keeping = Keeping(self.judge, self._envelopes, self.reserves)
+
+    def placed(self, bound: BoundRule) -> BoundRule:
+        """The rule with each case of an envelope at the point that decides it."""
+        return self._envelopes.placed_rule(bound)
 
     def finding(self, bound: BoundRule, rule: Rule, ruleset_name: str = "") -> Finding:
         """One rule with its verdict."""
+        bound = self.placed(bound)
         verdict, binding, reason = self._rule(self._cases(bound))
         verdict, reason, permit = self._settled(bound, rule, verdict, binding, reason)
         part = binding.part if binding else None
@@ -97,6 +97,7 @@ class Checker:
             spread=spread,
             ruled=self._ruled(shown),
             consequence=str(rule.consequence or ""),
+            envelope=self._envelopes.result(binding.case if binding else None),
         )
 
     def decision_of(self, bound: BoundRule) -> Decision:
@@ -110,7 +111,7 @@ class Checker:
 
     def binding(self, bound: BoundRule) -> Judged | None:
         """What decides a rule."""
-        return self._rule(self._cases(bound))[1]
+        return self._rule(self._cases(self.placed(bound)))[1]
 
     def _is_shown(self, part: Part, bound: BoundRule, verdict: Verdict) -> bool:
         """True where a margin is shown: it is known, and not left out of account for something that is missing."""
@@ -139,7 +140,10 @@ class Checker:
     def _cases(self, bound: BoundRule) -> list[tuple[Case, Verdict, Judged, str]]:
         decision = self.decision_of(bound)
         judge = self._judge_under(decision)
-        return [(case, *self._case(case, judge, decision)) for case in bound.cases]
+        return [
+            (case, *self._envelopes.throughout(case, self._case(case, judge, decision), decision))
+            for case in bound.cases
+        ]
 
     def _judge_under(self, decision: Decision) -> Judge:
         if decision.name == "simple":
@@ -193,43 +197,12 @@ class Checker:
             return "dispensed", f"dispensation {permit}", permit
         if verdict == "breach" and rule.standing == "should":
             return "not followed", reason, permit
-        tight = [case for case in bound.cases if not self._is_roomy(rule, case)] if verdict == "complies" else []
+        tight = (
+            [case for case in bound.cases if not self._keeping.is_roomy(rule, case)] if verdict == "complies" else []
+        )
         if tight:
             return "tight", _inside_reserve(tight, binding), permit
         return verdict, reason, permit
-
-    def _is_roomy(self, rule: Rule, case: Case) -> bool:
-        """True where a case that complies would still comply with the reserve taken off every margin."""
-        if self.reserves.share is None and rule.name not in self.reserves.by_rule:
-            return True
-        if self.reader.truth(case.applies) is False or self.reader.truth(case.exempt) is True:
-            return True
-        return self._keeps_reserve(rule, case.condition)
-
-    def _keeps_reserve(self, rule: Rule, condition: Condition) -> bool:
-        if isinstance(condition, Part):
-            return self.reader.truth(condition.holds) is True and not self._is_tight(rule, condition)
-        if isinstance(condition, Either):
-            arm = self.judge.taken(condition)
-            return arm is not None and self._keeps_reserve(rule, arm)
-        kept = (self._keeps_reserve(rule, part) for part in condition.parts)
-        return any(kept) if isinstance(condition, AnyOf) else all(kept)
-
-    def _is_tight(self, rule: Rule, part: Part) -> bool:
-        if part.margin is None:
-            return False
-        own = self.reserves.by_rule.get(rule.name)
-        if own is not None and own.unit.dimension == part.margin.dimension:
-            rational, power = own.unit.width_in_si(own.value)
-            if self._is_below(part.margin, self.bank.number(rational, part.margin.dimension, power)):
-                return True
-        relative = self.judge.relative(part) if self.reserves.share is not None else None
-        if relative is None or self.reserves.share is None:
-            return False
-        return self._is_below(relative, self.bank.number(self.reserves.share))
-
-    def _is_below(self, margin: Term, reserve: Term) -> bool:
-        return self.reader.truth(self.bank.apply(below, [margin, reserve], PURE)) is True
 
     # --- what is shown -----------------------------------------------------------------------------------------------
 
@@ -282,6 +255,7 @@ class Checker:
             place(part.span),
             branch,
             self._ruled(part if known else None),
+            place_of(case),
         )
 
     def _ruled(self, part: Part | None) -> RuledResult | None:
@@ -328,4 +302,10 @@ def _binding(judged: Judged | None) -> BindingPart | None:
     if judged is None or judged.part is None:
         return None
     case = judged.case
-    return BindingPart(judged.part.text, case.element if case else "", dict(case.states) if case else {}, judged.branch)
+    return BindingPart(
+        judged.part.text,
+        case.element if case else "",
+        dict(case.states) if case else {},
+        judged.branch,
+        place_of(case) if case else {},
+    )

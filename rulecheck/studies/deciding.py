@@ -22,9 +22,9 @@ from rulecheck.quantity.quantity import Uncertainty
 from rulecheck.readers.box import Box, BoxReader
 from rulecheck.readers.certain import Certain, Unsure
 from rulecheck.readers.exact import ExactReader
+from rulecheck.readers.least import Least, least, truth_over
 from rulecheck.studies.propagation import Propagation
 from rulecheck.studies.sources import Sources, box_of
-from rulecheck.studies.worst_case import Least, least, truth_over
 
 Truth = bool | Unknown
 
@@ -60,6 +60,12 @@ class Decider:
     def least(self, term: Term, paths: Sequence[str], box: Box) -> Least:
         """The least value of a number while these inputs run over a box."""
         return least(self._over(term, tuple(paths)), term, box)
+
+    def box(self, flag: Term, decision: Decision) -> Box:
+        """The inputs whose spread counts for a flag under a decision rule, each over what it may be; empty for none."""
+        if decision.name == "guarded":
+            return self._guard_box(self.sources.uncertain(flag), decision.coverage)
+        return box_of(self.sources, self._graph, self.sources.of(flag))
 
     def _decided(self, holds: Term, part: Part | None, decision: Decision) -> Truth:
         truth = self._reader.truth(holds)
@@ -134,7 +140,7 @@ class Decider:
         key = (root.index, paths)
         if key not in self._boxes:
             self._boxes[key] = BoxReader(
-                self._graph.bank, self._graph.inputs, self._reader, paths, root, self.sources.settled
+                self._graph.bank, self._graph.inputs, self._reader, paths, [root], self.sources.settled
             )
         return self._boxes[key]
 

@@ -15,8 +15,9 @@ from rulecheck.operations.exact import exact_number
 from rulecheck.operations.roots_and_exponentials import sqrt
 from rulecheck.operations.values import Monomial
 from rulecheck.quantity.quantity import Tolerance, Uncertainty
+from rulecheck.readers.applying import START_BITS
 from rulecheck.readers.certain import ZERO, Certain, Unsure, applied
-from rulecheck.readers.exact import START_BITS, ExactReader
+from rulecheck.readers.exact import ExactReader
 from rulecheck.readers.slopes import SlopeReader, Slopes
 from rulecheck.studies.sources import Sources
 

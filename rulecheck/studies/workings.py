@@ -10,17 +10,19 @@ from rulecheck import __version__
 from rulecheck.diagnostics import Faults
 from rulecheck.formula.printing import show, show_with
 from rulecheck.formula.syntax import Aggregate, Call, Name, Number, Syntax
-from rulecheck.graph.conditions import BoundRule, Part, Use
+from rulecheck.graph.conditions import BoundRule, Case, Part, Use
+from rulecheck.graph.envelopes import Placing
 from rulecheck.graph.figures import Figure
 from rulecheck.graph.terms import Term
 from rulecheck.model.design import Design
 from rulecheck.model.ruleset import Rule, Ruleset
 from rulecheck.operations.values import Unknown
 from rulecheck.outcome.results import Amount, ClosedFormResult, Step, Working, Workings
-from rulecheck.readers.exact import START_BITS
+from rulecheck.readers.applying import START_BITS
 from rulecheck.reading.nearest import nearest
 from rulecheck.studies.amounts import amount, place, reason_text
 from rulecheck.studies.check import Checker
+from rulecheck.studies.envelopes import place_of
 
 MOST_STEPS = 400
 Describe = Callable[[Term], ClosedFormResult]
@@ -76,7 +78,8 @@ def _rule(checker: Checker, bound: BoundRule, rule: Rule, describe: Describe | N
     walk = _Walk(checker)
     part = judged.part if judged else None
     if judged is not None and judged.case is not None:
-        walk.uses(judged.case.uses, judged.case.states)
+        walk.place(judged.case)
+        walk.uses(judged.case.uses, _states(judged.case))
         if part is not None:
             walk.condition(rule, part, judged.case.uses)
     margin = f"{finding.margin}" if finding.margin else ""
@@ -111,6 +114,11 @@ def _formula(figure: Figure) -> str:
     return f"the least {solved.path} from {solved.low} to {solved.high} with {show(figure.syntax)} = 0"
 
 
+def _states(case: Case) -> tuple[tuple[str, str], ...]:
+    """The states under which figures are kept that a case rests on."""
+    return (*case.states, *([("over", case.envelope.label)] if case.envelope is not None else []))
+
+
 _WHOLE = (Name, Call, Aggregate, Number)
 
 
@@ -126,6 +134,19 @@ class _Walk:
     def __init__(self, checker: Checker) -> None:
         self.checker = checker
         self.steps: dict[str, Step] = {}
+        self.placing: Placing | None = None
+
+    def place(self, case: Case) -> None:
+        """Read everything at the point of an envelope at which a case stands."""
+        if case.envelope is not None and case.at:
+            point = {axis.term.path: value for axis, value in case.at}
+            self.placing = Placing.at(self.checker.bank, case.envelope, point)
+            for path, value in place_of(case).items():
+                self.steps[path] = Step(path, "the point of the envelope", "", "", str(value), value.exact, "", None)
+
+    def at(self, term: Term) -> Term:
+        """A term where the case stands."""
+        return term if self.placing is None else self.placing.term(term)
 
     def uses(self, uses: Iterable[Use], states: tuple[tuple[str, str], ...]) -> None:
         """What a condition names, in its case."""
@@ -177,11 +198,11 @@ class _Walk:
             )
 
     def _amount(self, term: Term, use: Use | Figure) -> Amount | None:
-        return amount(self.checker.reader, self.checker.bank, term, use.unit)
+        return amount(self.checker.reader, self.checker.bank, self.at(term), use.unit)
 
     def _step(self, figure: Figure, depth: int) -> Step:
         shown = self._amount(figure.term, figure)
-        outside = figure.valid is not None and self.checker.reader.truth(figure.valid) is False
+        outside = figure.valid is not None and self.checker.reader.truth(self.at(figure.valid)) is False
         return Step(
             figure.name,
             figure.meaning,
@@ -201,7 +222,7 @@ class _Walk:
         numbers = "" if figure.method else self._with_numbers(figure.syntax, figure.uses, figure.arms)
         if figure.solved is None:
             return numbers
-        rest = self.checker.reader.ball(figure.solved.residual, START_BITS)
+        rest = self.checker.reader.ball(self.at(figure.solved.residual), START_BITS)
         if isinstance(rest, Unknown):
             return numbers
         if rest.is_zero():
@@ -227,7 +248,7 @@ class _Walk:
         return show_with(syntax, number)
 
     def _why(self, term: Term) -> str:
-        from_reader = self.checker.reader.value(term)
+        from_reader = self.checker.reader.value(self.at(term))
         reasons = getattr(from_reader, "reasons", ())
         texts = dict.fromkeys(reason.text for reason in reasons)
         return f"unknown: {', '.join(list(texts)[:4])}"

@@ -15,7 +15,7 @@ PIECES = (
     "x", ".x", ".y", ".*", "*", "t.", "tyres", "masses", "edges", "points.knee", "dimensions.wheelbase", "2027-03-01", "2027-02-30", "5 years",
     "sqrt(", "min(", "max(", "sum(", "count(for ", "distance(", "present(", "rule(it)", "margin(it)", "round(", "end_of_year(", "line(", "plane(",
     "- ", ": ", "? ", "&a ", "*a", "<<: ", "!!int ", "--- ", "...", "|\n", ">-\n", "%YAML 1.1\n",
-    "when: ", "each: ", "require: ", "states: every", "empty: ", "extends: cup.ruleset.yaml", "changes: car.design.yaml", "ledger: [parts.csv]",
+    "when: ", "each: ", "require: ", "states: every", "envelope: {vehicle.speed: [1 m/s, 2 m/s]}", "empty: ", "extends: cup.ruleset.yaml", "changes: car.design.yaml", "ledger: [parts.csv]",
     "set: ", "value: ", "complete: yes", "at: ", "datum: rear_axle", "kind: ", "unit: ", "meaning: ", "evidence: ", "judgement: ", "valid: ",
 )  # fmt: skip
 

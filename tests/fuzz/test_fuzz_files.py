@@ -47,6 +47,7 @@ derived: {room: {formula: dimensions.overall_width - 2 * tyres.rear.width, unit:
 groups: {g: {when: powertrain.kind == hybrid, rules: [width]}}
 rules:
   width: {clause: "1", require: 1 m <= dimensions.overall_width <= 1900 mm}
+  reach: {envelope: {dimensions.wheelbase: [2 m, 3 m]}, require: dimensions.wheelbase <= 3100 mm}
   weight: {states: every, require: "sum(m.mass for m in masses) >= least"}
   edge: {each: "e in edges where e.exposed == yes", empty: complies, require: e.radius >= 1.5 mm}
   lamp: {each: l in lamps, evidence: {kind: certificate, name: l.proof}}

@@ -70,6 +70,7 @@ rules:
   ground: {states: "{}", require: above_ground(points.foot) >= 20 mm}
   in_states: {states: {fuel: every}, require: "sum(m.mass for m in masses) <= 880 kg"}
   every_state: {states: every, each: t in tyres, require: "t.loaded_radius >= 300 mm and sum(m.mass for m in masses) >= 700 kg"}
+  throughout: {envelope: {vehicle.speed: [60 km/h, 320 km/h]}, require: "vehicle.speed * 1 s <= dimensions.wheelbase * 50"}
   steel: {require: members.hoop.material in steels}
   present: {require: present(aero_surfaces.wing)}
   banned: {require: not present(aero_surfaces.fan)}

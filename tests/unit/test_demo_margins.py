@@ -246,24 +246,52 @@ def test_area_of_a_ring_and_height_of_the_outlet(base: Report) -> None:
     assert near(base, "diffuser_outlet") == pytest.approx(215 - 58 - 640 * math.tan(math.radians(13)), rel=1e-9)
 
 
-def test_wing_load_in_moist_air(base: Report) -> None:
+def moist_air() -> float:
+    """Density in kg/m^3 at 240 m, 24 degC and 55 % humidity."""
     standard = 288.15 - 0.0065 * 240
     pressure = 101325 * (standard / 288.15) ** (9.80665 / (0.0065 * 287.05287))
     vapour = 0.55 * 610.94 * math.exp(17.625 * 24 / (24 + 243.04))
-    density = (pressure - vapour) / (287.05287 * 297.15) + vapour / (461.495 * 297.15)
-    load = 0.5 * density * (300 / 3.6) ** 2 * 0.62 / 1000
+    return (pressure - vapour) / (287.05287 * 297.15) + vapour / (461.495 * 297.15)
+
+
+def test_wing_load_in_moist_air(base: Report) -> None:
+    load = 0.5 * moist_air() * (300 / 3.6) ** 2 * 0.62 / 1000
     assert near(base, "wing_pylons") == pytest.approx(5.4 - 1.8 * load, rel=1e-6)
 
 
+DOWNFORCE = [
+    (0.92, -420), (0.035, -360), (0.035, -360), (0.11, 60), (1.06, 1240), (0.70, 2870 + 190), (-0.34, 1380),
+    (0.10, 2870 + 300), (0.62, 2870 + 590), (0.16, 2870 + 760),
+]  # fmt: skip
+
+
 def test_balance_of_downforce_and_mass(base: Report) -> None:
-    downforce = [
-        (0.92, -420), (0.035, -360), (0.035, -360), (0.11, 60), (1.06, 1240), (0.70, 2870 + 190), (-0.34, 1380),
-        (0.10, 2870 + 300), (0.62, 2870 + 590), (0.16, 2870 + 760),
-    ]  # fmt: skip
-    place = sum(area * x for area, x in downforce) / sum(area for area, _ in downforce)
+    place = sum(area * x for area, x in DOWNFORCE) / sum(area for area, _ in DOWNFORCE)
     shares = [float(1 - centre([*pieces(), fuel(f), driver(d)])[1] / WHEELBASE) for f in (0, 52) for d in (62, 90)]
     gap = max(abs(1 - place / 2870 - share) for share in shares)
     assert near(base, "balance_advice") == pytest.approx(5 - 100 * gap, rel=1e-9)
+
+
+def test_front_load_at_every_speed_against_many_speeds(base: Report) -> None:
+    area = sum(area for area, _ in DOWNFORCE)
+    front = 1 - sum(area * x for area, x in DOWNFORCE) / area / 2870
+    rooms = {}
+    for f in (0, 52):
+        for d in (62, 90):
+            mass, x, _, _ = centre([*pieces(), fuel(f), driver(d)])
+            weight = float(mass) * 9.80665
+            for speed in range(60, 321):
+                pressed = 0.5 * moist_air() * (speed / 3.6) ** 2 * area
+                share = (float(1 - x / WHEELBASE) * weight + front * pressed) / (weight + pressed)
+                rooms[f, d, speed] = 100 * min(share - 0.42, 0.50 - share)
+    worst = min(rooms, key=lambda key: rooms[key])
+    assert near(base, "balance_through_speed") == pytest.approx(rooms[worst], rel=1e-6)
+    binding = found(base, "balance_through_speed").binding
+    assert binding is not None
+    assert (binding.at["vehicle.speed"].exact, binding.state["driver"]) == (
+        str(worst[2]),
+        {62: "light", 90: "heavy"}[worst[1]],
+    )
 
 
 # --- verdicts --------------------------------------------------------------------------------------------------------

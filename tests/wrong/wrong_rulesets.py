@@ -288,4 +288,74 @@ WRONG_RULESETS: tuple[Wrong, ...] = (
             ),
         )
     ),
+    Wrong(
+        "an envelope: upside down",
+        (
+            "cup.ruleset.yaml:3:41: bad-value: the range of 'vehicle.speed' runs from 320 km/h to 60 km/h; expected [least, greatest], the least first",
+        ),
+        design="",
+        ruleset="rules: {it: {envelope: {vehicle.speed: [320 km/h, 60 km/h]}, require: dimensions.wheelbase <= 3 m}}\n",
+    ),
+    Wrong(
+        "an envelope: another dimension",
+        (
+            "cup.ruleset.yaml:3:44: wrong-dimension: 'km' is a unit of length [m], and speed [m/s] is due; expected speed [m/s]; write a unit such as 'km/h'",
+        ),
+        design="",
+        ruleset="rules: {it: {envelope: {vehicle.speed: [60 km, 320 km/h]}, require: dimensions.wheelbase <= 3 m}}\n",
+    ),
+    Wrong(
+        "an envelope: an unknown input",
+        (
+            "cup.ruleset.yaml:3:25: unknown-name: there is no input 'vehicle.sped'; expected the path of an input; did you mean 'vehicle.speed'?",
+        ),
+        design="",
+        ruleset="rules: {it: {envelope: {vehicle.sped: [60 km/h, 320 km/h]}, require: dimensions.wheelbase <= 3 m}}\n",
+    ),
+    Wrong(
+        "an envelope: a collection",
+        (
+            "cup.ruleset.yaml:3:25: kind-mismatch: 'masses' is a collection, and an envelope runs through inputs that are numbers; expected an input that is a number, such as vehicle.speed",
+        ),
+        design="",
+        ruleset="rules: {it: {envelope: {masses: [1 kg, 2 kg]}, require: dimensions.wheelbase <= 3 m}}\n",
+    ),
+    Wrong(
+        "an envelope: one end",
+        (
+            "cup.ruleset.yaml:3:40: bad-structure: the range of 'vehicle.speed' has two ends; expected {vehicle.speed: [60 km/h, 320 km/h]}",
+        ),
+        design="",
+        ruleset="rules: {it: {envelope: {vehicle.speed: [60 km/h]}, require: dimensions.wheelbase <= 3 m}}\n",
+    ),
+    Wrong(
+        "an envelope: nothing",
+        (
+            "cup.ruleset.yaml:3:24: bad-structure: an envelope has a range for each input; expected {vehicle.speed: [60 km/h, 320 km/h]}",
+        ),
+        design="",
+        ruleset="rules: {it: {envelope: {}, require: dimensions.wheelbase <= 3 m}}\n",
+    ),
+    Wrong(
+        "an envelope: not a mapping",
+        (
+            "cup.ruleset.yaml:3:24: bad-structure: an envelope has a range for each input; expected {vehicle.speed: [60 km/h, 320 km/h]}",
+        ),
+        design="",
+        ruleset="rules: {it: {envelope: vehicle.speed, require: dimensions.wheelbase <= 3 m}}\n",
+    ),
+    Wrong(
+        "an envelope: with a spread",
+        ("cup.ruleset.yaml:3:41: bad-value: an end of a range has no spread; expected a plain value",),
+        design="",
+        ruleset="rules: {it: {envelope: {vehicle.speed: [60 km/h ± 1 km/h, 320 km/h]}, require: dimensions.wheelbase <= 3 m}}\n",
+    ),
+    Wrong(
+        "an envelope through what a state sets",
+        (
+            "cup.ruleset.yaml:4:40: state-clash: a state sets 'vehicle.speed', through which the envelope of rule 'it' runs; leave that axis out of 'states', or out of 'envelope'",
+        ),
+        design="states: {pace: {slow: {vehicle.speed: 50 km/h}}}\n",
+        ruleset="states_needed: {pace: [slow]}\nrules: {it: {states: every, envelope: {vehicle.speed: [60 km/h, 320 km/h]}, require: vehicle.speed <= 100 m/s}}\n",
+    ),
 )

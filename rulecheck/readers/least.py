@@ -8,6 +8,7 @@ on the number of boxes; what is not proved then is said.
 from __future__ import annotations
 
 import heapq
+from collections.abc import Mapping
 from dataclasses import dataclass
 from fractions import Fraction
 from itertools import count
@@ -25,11 +26,13 @@ _CLOSE = 1e-6
 
 @dataclass(frozen=True, slots=True)
 class Least:
-    """The least value over a box: never below `low`, and as low as `found`; either is None where nothing is known."""
+    """The least value over a box: never below `low`, and as low as `found` (at the point `at`); each is None where
+    nothing is known."""
 
     low: Certain | None
     found: Certain | None
     proved: bool
+    at: Mapping[str, Fraction] | None = None
 
 
 def least(over: BoxReader, term: Term, box: Box) -> Least:
@@ -41,6 +44,36 @@ def least(over: BoxReader, term: Term, box: Box) -> Least:
     return search.bisected(start)
 
 
+def never_below(over: BoxReader, term: Term, box: Box) -> Certain | None:
+    """What no value of a number over a box is below, from one look at it: exact where a corner has the least value."""
+    search = _Search(over, term)
+    settled = search.settled(box)
+    if not _free(settled):
+        return search.corner(settled).low
+    bound = search.below(settled)
+    return None if bound is None else Certain(bound)
+
+
+def lowest_alone(over: BoxReader, term: Term, box: Box) -> Box | None:
+    """The corner or side of a box on which a number is zero, where it certainly is above zero everywhere else; else None."""
+    slopes = over.slopes(term, box)
+    side = dict(box)
+    for path in _free(box):
+        slope = slopes.by_path.get(path, ZERO)
+        try:
+            if slope is None or not slope:
+                side[path] = box[path]
+                continue
+            end = box[path][0] if slope > 0 else box[path][1]
+            side[path] = (end, end)
+        except Unsure:
+            return None
+    if side == dict(box) or any(slope is None for slope in slopes.by_path.values()):
+        return None
+    found = _Search(over, term).value_at({path: low for path, (low, _) in side.items()})
+    return side if found is not None and found.is_exact and not found else None
+
+
 def truth_over(over: BoxReader, flag: Term, box: Box) -> bool | None:
     """What a flag is all over a box, by bisection; None where it changes there or that is not proved."""
     waiting, found, boxes = [dict(box)], set(), 0
@@ -49,10 +82,10 @@ def truth_over(over: BoxReader, flag: Term, box: Box) -> bool | None:
         part = waiting.pop()
         truth = over.truth(flag, part)
         if truth is None:
-            widest = _widest(part, box)
-            if boxes > MOST_BOXES or widest is None:
+            path = widest(part, box)
+            if boxes > MOST_BOXES or path is None:
                 return None
-            waiting.extend(_halves(part, widest))
+            waiting.extend(halves(part, path))
             continue
         found.add(truth)
         if len(found) > 1:
@@ -80,8 +113,9 @@ class _Search:
         return current
 
     def corner(self, box: Box) -> Least:
-        found = self.value_at({path: low for path, (low, _) in box.items()})
-        return Least(found, found, found is not None)
+        point = {path: low for path, (low, _) in box.items()}
+        found = self.value_at(point)
+        return Least(found, found, found is not None, point)
 
     def value_at(self, point: dict[str, Fraction]) -> Certain | None:
         """The value at one point; None where it has none."""
@@ -97,8 +131,8 @@ class _Search:
         bounds = [plain.lower()] if plain is not None else []
         free = _free(box)
         slopes = [self.slopes.by_path.get(path, ZERO) for path in free]
-        middle = self.value_at(_middle(box))
-        if middle is not None and all(slope is not None for slope in slopes):
+        centre = self.value_at(middle(box))
+        if centre is not None and all(slope is not None for slope in slopes):
             fall = sum(
                 (
                     abs(slope.ball()) * _radius(*box[path])
@@ -107,13 +141,14 @@ class _Search:
                 ),
                 Ball(0),
             )
-            bounds.append((middle.ball() - fall).lower())
+            bounds.append((centre.ball() - fall).lower())
         finite = [bound for bound in bounds if bound.is_finite()]
         return max(finite) if finite else None
 
     def bisected(self, start: Box) -> Least:
         """Best box first; ends where what is left cannot lie much lower than what was met."""
         best: Certain | None = None
+        at: dict[str, Fraction] | None = None
         number = count()
         heap: list[tuple[float, int, Any, dict[str, tuple[Fraction, Fraction]]]] = []
         floor: Any = None  # the least bound of boxes that are dealt with
@@ -121,8 +156,10 @@ class _Search:
         for _ in range(MOST_BOXES):
             for box in waiting:
                 settled = self.settled(box)
-                met = self.value_at(_middle(settled))
-                best = met if met is not None and (best is None or float(met) < float(best)) else best
+                point = middle(settled)
+                met = self.value_at(point)
+                if met is not None and (best is None or float(met) < float(best)):
+                    best, at = met, point
                 if not _free(settled):
                     floor = _lower(floor, met.ball().lower()) if met is not None else self._lost(heap, settled, number)
                     continue
@@ -131,18 +168,18 @@ class _Search:
             if not heap or self._is_close(heap[0][0], best):
                 break
             _, _, _, box = heapq.heappop(heap)
-            widest = _widest(box, start)
-            assert widest is not None
-            waiting = _halves(box, widest)
+            path = widest(box, start)
+            assert path is not None
+            waiting = halves(box, path)
         else:
             left = [self.settled(box) for box in waiting]
             heap.extend((0.0, next(number), self.over.ball(self.term, box), box) for box in left)
         bounds = [None if bound is None else bound.lower() for _, _, bound, _ in heap]
         if any(bound is None for bound in bounds) or (not bounds and floor is None):
-            return Least(None, best, False)
+            return Least(None, best, False, at)
         for bound in bounds:
             floor = _lower(floor, bound)
-        return Least(Certain(floor), best, False)
+        return Least(Certain(floor), best, False, at)
 
     def _lost(self, heap: Any, box: Box, number: Any) -> Any:
         """A corner without a value: nothing bounds the least value there."""
@@ -178,7 +215,8 @@ def _end(slope: Certain | None, low: Fraction, high: Fraction) -> Fraction | Non
         return None
 
 
-def _middle(box: Box) -> dict[str, Fraction]:
+def middle(box: Box) -> dict[str, Fraction]:
+    """The point in the middle of a box."""
     return {path: (low + high) / 2 for path, (low, high) in box.items()}
 
 
@@ -186,7 +224,7 @@ def _radius(low: Fraction, high: Fraction) -> Ball:
     return to_ball(from_fraction((high - low) / 2))
 
 
-def _widest(box: Box, whole: Box) -> str | None:
+def widest(box: Box, whole: Box) -> str | None:
     """The input that is least divided yet, against the whole box."""
     free = _free(box)
     if not free:
@@ -194,7 +232,8 @@ def _widest(box: Box, whole: Box) -> str | None:
     return max(free, key=lambda path: (box[path][1] - box[path][0]) / (whole[path][1] - whole[path][0]))
 
 
-def _halves(box: Box, path: str) -> list[dict[str, tuple[Fraction, Fraction]]]:
+def halves(box: Box, path: str) -> list[dict[str, tuple[Fraction, Fraction]]]:
+    """A box cut in two along one input."""
     low, high = box[path]
-    middle = (low + high) / 2
-    return [{**box, path: (low, middle)}, {**box, path: (middle, high)}]
+    cut = (low + high) / 2
+    return [{**box, path: (low, cut)}, {**box, path: (cut, high)}]

@@ -16,7 +16,7 @@ from rulecheck.operations.values import Monomial
 from rulecheck.quantity.dimension import PURE
 from rulecheck.readers.box import BoxReader
 from rulecheck.readers.exact import ExactReader
-from rulecheck.studies.worst_case import Least, least
+from rulecheck.readers.least import Least, least
 
 NUMBERS = some.fractions(min_value=-3, max_value=3, max_denominator=12)
 WIDTHS = some.fractions(min_value=Fraction(1, 12), max_value=1, max_denominator=12)
@@ -26,7 +26,7 @@ def least_of(make: object, **ends: tuple[Fraction, Fraction]) -> tuple[Least, Ba
     bank = Bank()
     root = make(bank, *(bank.input(name, "number", PURE) for name in ends))  # type: ignore[operator]
     inputs = {name: Monomial((low + high) / 2) for name, (low, high) in ends.items()}
-    over = BoxReader(bank, inputs, ExactReader(bank, inputs), list(ends), root)
+    over = BoxReader(bank, inputs, ExactReader(bank, inputs), list(ends), [root])
     return least(over, root, ends), bank, root
 
 
