@@ -130,6 +130,7 @@ CODES: dict[str, str] = {
     "ledger-row": "A row of a ledger cannot be read.",
     "column-file": "A file of columns cannot be read.",
     "bad-curve": "The rows of a curve or map do not make one.",
+    "log-file": "A log of channels cannot be read, or its rows do not make a signal.",
     "ledger-header": "The header of a ledger lacks a column or names an unknown one.",
     # numbers and units
     "bad-number": "This is not a number as the language writes numbers.",

@@ -4,8 +4,9 @@ from __future__ import annotations
 
 from fractions import Fraction
 
-from rulecheck.binding.bound import BROKEN, Bound, Broken, Date, Number, Period, Place, kind_of
+from rulecheck.binding.bound import BROKEN, Bound, Broken, Date, Number, Period, Place, Signal, kind_of
 from rulecheck.binding.scope import Scope
+from rulecheck.binding.signal_arithmetic import calculated, turned
 from rulecheck.diagnostics import Span
 from rulecheck.formula.printing import show
 from rulecheck.formula.syntax import Binary, Negative, Syntax
@@ -61,6 +62,8 @@ def negative(scope: Scope, syntax: Negative) -> Bound:
     operand = scope.express(syntax.operand)
     if isinstance(operand, Broken):
         return BROKEN
+    if isinstance(operand, Signal):
+        return turned(scope, operand)
     if not isinstance(operand, Number):
         return scope.fault("kind-mismatch", f"'-' takes a number, and this is {kind_of(operand)}", syntax.operand.span)
     term = _folded_negative(scope, operand.term) or scope.apply(negate, [operand.term], syntax.span)
@@ -80,6 +83,8 @@ def binary(scope: Scope, syntax: Binary) -> Bound:
         return BROKEN
     if isinstance(left, Number) and isinstance(right, Number):
         return _numbers(scope, syntax, left, right)
+    if isinstance(left, Signal) or isinstance(right, Signal):
+        return calculated(scope, syntax, left, right)
     if isinstance(left, Date) and syntax.operator in "+-":
         return _dates(scope, syntax, left, right)
     if isinstance(left, Place) and isinstance(right, Place) and syntax.operator in "+-":

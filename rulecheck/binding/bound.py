@@ -6,6 +6,7 @@ from dataclasses import dataclass, field
 
 from rulecheck.diagnostics import Span
 from rulecheck.graph.terms import Term
+from rulecheck.operations.samples import Samples
 from rulecheck.quantity.dimension import Dimension
 from rulecheck.quantity.units import Unit
 from rulecheck.reading.nodes import Located
@@ -135,13 +136,27 @@ class Curve:
 
 
 @dataclass(frozen=True, slots=True)
+class Signal:
+    """Samples over time, in SI; none where the design states none, or too few or too coarse ones: `lacking` says what
+    is missing. `path` names it, `unit` is what it is spoken of in, `counted` marks whole states or counts."""
+
+    path: str
+    samples: Samples | None
+    dimension: Dimension
+    unit: Unit | None = None
+    lacking: str = ""
+    span: Span | None = None
+    counted: bool = False
+
+
+@dataclass(frozen=True, slots=True)
 class Broken:
     """What a fault leaves behind: whatever is made of it is broken too, without a second fault."""
 
 
 BROKEN = Broken()
 
-Bound = Number | Truth | Words | Date | Period | Place | Line | Plane | Item | Items | Choices | Curve | Broken
+Bound = Number | Truth | Words | Date | Period | Place | Line | Plane | Item | Items | Choices | Curve | Signal | Broken
 
 _KINDS: dict[type, str] = {
     Number: "a number",
@@ -156,6 +171,7 @@ _KINDS: dict[type, str] = {
     Items: "a collection",
     Choices: "a list",
     Curve: "a curve that is not called at a key",
+    Signal: "a signal",
     Broken: "nothing",
 }
 

@@ -5,8 +5,22 @@ from __future__ import annotations
 from dataclasses import dataclass, replace
 
 from rulecheck.binding.arithmetic import mismatch
-from rulecheck.binding.bound import BROKEN, Bound, Broken, Choices, Date, Item, Number, Period, Truth, Words, kind_of
+from rulecheck.binding.bound import (
+    BROKEN,
+    Bound,
+    Broken,
+    Choices,
+    Date,
+    Item,
+    Number,
+    Period,
+    Signal,
+    Truth,
+    Words,
+    kind_of,
+)
 from rulecheck.binding.scope import Scope
+from rulecheck.binding.signal_rates import resolved
 from rulecheck.diagnostics import Span
 from rulecheck.formula.printing import show
 from rulecheck.formula.syntax import Comparison, Listing, Name, Syntax
@@ -203,6 +217,11 @@ def _pair(scope: Scope, syntax: Comparison, left: Side, operator: str, right: Si
         text = f"not {text}"
     if operator == "in":
         return _membership(scope, left, right, text, negated)
+    if isinstance(a, Signal) or isinstance(b, Signal):
+        return scope.fault(
+            "kind-mismatch", f"'{text}' holds for some samples and not for others", syntax.span,
+            expected="peak(…), longest(…) or duration(…) of a signal, held against a limit",
+        )  # fmt: skip
     left, right = _as_numbers(scope, left, right)
     if isinstance(left.bound, Number) and isinstance(right.bound, Number):
         return _numbers(scope, syntax, left, operator, right, text, negated)
@@ -235,6 +254,7 @@ def _numbers(
     assert isinstance(a, Number) and isinstance(b, Number)
     if a.dimension != b.dimension:
         return mismatch(scope, "compare", left.syntax, a, right.syntax, b, syntax.span)
+    a, b = resolved(scope, a, b, syntax.span)
     if operator in ("==", "!="):
         return _equality(scope, syntax, left, operator, right, text, negated)
     if syntax.within is not None:

@@ -28,7 +28,7 @@ def check_declarations(scope: Scope, rulesets: tuple[Ruleset, ...]) -> None:
 def _declared(scope: Scope, known: Vocabulary, entry: Entry) -> None:
     unit = unit_of(entry, scope)
     completes = (entry.definition or entry.basis) and known.entry(entry.path) is not None
-    if entry.kind in ("number", "curve", "map") and not entry.unit and not completes:
+    if entry.kind in ("number", "curve", "map", "signal") and not entry.unit and not completes:
         scope.fault(
             "missing-key", f"the {entry.kind} '{entry.path}' has no unit", entry.span, expected='unit: mm, or "1"'
         )

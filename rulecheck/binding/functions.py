@@ -12,6 +12,7 @@ from rulecheck.binding.bound import (
     Broken,
     Date,
     Number,
+    Signal,
     kind_of,
 )
 from rulecheck.binding.curves import curve_call
@@ -19,6 +20,8 @@ from rulecheck.binding.geometry_calls import GEOMETRY, geometry
 from rulecheck.binding.presence import present
 from rulecheck.binding.references import margin_reference, rule_reference
 from rulecheck.binding.scope import Scope
+from rulecheck.binding.signal_arithmetic import without_sign
+from rulecheck.binding.signal_calls import SIGNALS, signal_call
 from rulecheck.binding.uncertainties import standard_uncertainty
 from rulecheck.formula.printing import show
 from rulecheck.formula.syntax import Call, Negative, Syntax
@@ -50,7 +53,7 @@ _AGGREGATES = ("sum", "mean", "deviation", "count", "share", "every", "some")
 
 NAMES = (
     "present", "rule", "margin", "end_of_year", "years_between", "atan2", "min", "max", "pairs", "standard_uncertainty", "front_area", *_ONE, *_ROUND,
-    *GEOMETRY, *_AGGREGATES,
+    *GEOMETRY, *SIGNALS, *_AGGREGATES,
 )  # fmt: skip
 """The names of all functions of the language."""
 
@@ -78,6 +81,8 @@ def call(scope: Scope, syntax: Call) -> Bound:
         return _round(scope, syntax)
     if name in GEOMETRY:
         return geometry(scope, syntax)
+    if name in SIGNALS:
+        return signal_call(scope, syntax)
     if name in _AGGREGATES:
         return scope.fault(
             "wrong-arguments",
@@ -88,7 +93,16 @@ def call(scope: Scope, syntax: Call) -> Bound:
     own = curve_call(scope, syntax) or figures.called_figure(scope, syntax)
     if own is not None:
         return own
-    known = (*special, *_ONE, *_ROUND, *GEOMETRY, *_AGGREGATES, *figures.callable_names(scope), *_curves(scope))
+    known = (
+        *special,
+        *_ONE,
+        *_ROUND,
+        *GEOMETRY,
+        *SIGNALS,
+        *_AGGREGATES,
+        *figures.callable_names(scope),
+        *_curves(scope),
+    )
     return scope.fault("unknown-function", f"there is no function '{name}'", syntax.span, advice=nearest(name, known))
 
 
@@ -112,21 +126,27 @@ def arguments(scope: Scope, syntax: Call, least: int, most: int) -> list[Bound] 
 def numbers(scope: Scope, syntax: Call, least: int, most: int) -> list[Number] | None:
     """The arguments as numbers, or None with the fault noted."""
     bound = arguments(scope, syntax, least, most)
-    if bound is None:
-        return None
+    return None if bound is None else _all_numbers(scope, syntax, bound)
+
+
+def _all_numbers(scope: Scope, syntax: Call, bound: list[Bound]) -> list[Number] | None:
     for item, argument in zip(bound, syntax.arguments, strict=True):
         if not isinstance(item, Number):
             scope.fault(
                 "kind-mismatch",
                 f"'{syntax.function}' takes numbers, and '{show(argument)}' is {kind_of(item)}",
                 argument.span,
+                advice="ask a figure of it first, such as peak(…)" if isinstance(item, Signal) else "",
             )
             return None
     return [item for item in bound if isinstance(item, Number)]
 
 
 def _one(scope: Scope, syntax: Call, operation: Operation) -> Bound:
-    given = numbers(scope, syntax, 1, 1)
+    bound = arguments(scope, syntax, 1, 1)
+    if bound is not None and isinstance(bound[0], Signal) and operation is absolute:
+        return without_sign(scope, bound[0])
+    given = None if bound is None else _all_numbers(scope, syntax, bound)
     if given is None:
         return BROKEN
     operand = given[0]

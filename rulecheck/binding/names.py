@@ -12,6 +12,7 @@ from rulecheck.binding.inputs import bind_input
 from rulecheck.binding.points import direction, place_of
 from rulecheck.binding.reconciling import reconciled, states_value
 from rulecheck.binding.scope import Scope
+from rulecheck.binding.signals import bind_signal
 from rulecheck.diagnostics import Span
 from rulecheck.formula.syntax import Member, Name
 from rulecheck.graph.conditions import Use
@@ -166,6 +167,8 @@ def _guarded(scope: Scope, path: str, entry: Entry, span: Span) -> Bound:
         return place_of(scope, path, entry, span)
     if entry.kind in ("curve", "map"):
         return bind_curve(scope, path, entry)
+    if entry.kind == "signal":
+        return bind_signal(scope, path, entry, span)
     holder, _, end = path.rpartition(".")
     above = scope.shared.vocabulary.entry(holder) if holder else None
     if above is not None and above.kind == "range":

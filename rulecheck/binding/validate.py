@@ -13,6 +13,7 @@ from rulecheck.binding.leaves import scalar
 from rulecheck.binding.points import from_datum, place_of, zero_place
 from rulecheck.binding.ranges import bind_range
 from rulecheck.binding.scope import Scope
+from rulecheck.binding.signals import check_statement
 from rulecheck.binding.states import combined_view
 from rulecheck.diagnostics import Span
 from rulecheck.model.design import NONE, LeafNode
@@ -95,6 +96,9 @@ def _value(scope: Scope, path: str, entry: Entry, node: LeafNode) -> None:
         return
     if entry.kind in ("curve", "map"):
         bind_curve(scope, path, entry)
+        return
+    if entry.kind == "signal":
+        check_statement(scope, path, node)
         return
     if entry.kind not in READ_BY_THEMSELVES and not _is_single(scope, path, node):
         return

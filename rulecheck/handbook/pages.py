@@ -21,6 +21,7 @@ FIRST = (
     "first-ten-minutes",
     "design-files",
     "curves-and-maps",
+    "signals",
     "rulesets",
     "from-paper",
     "proofreading",

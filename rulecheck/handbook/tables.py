@@ -19,7 +19,7 @@ from rulecheck.model.value_ranges import MOST_CURVES, MOST_VALUES
 from rulecheck.model.vocabulary import Entry
 from rulecheck.quantity import numbers, unit_table, value_parts
 from rulecheck.readers import exact, least, throughout
-from rulecheck.reading import bounds
+from rulecheck.reading import bounds, logs
 from rulecheck.reading.ledger import COLUMNS, REQUIRED
 from rulecheck.studies import varying
 
@@ -119,6 +119,8 @@ def bound_rows() -> str:
         ("characters of a text in a YAML file or of a ledger's cell", bounds.MAXIMUM_SCALAR),
         ("rows of a curve or map", curves.MOST_POINTS),
         ("rows of a ledger or of a file of columns", bounds.MAXIMUM_ROWS),
+        ("rows of a log of channels", logs.MAXIMUM_SAMPLES),
+        ("characters of a sample in a log", logs.MAXIMUM_DIGITS),
         ("cells of a ledger's row", bounds.MAXIMUM_CELLS),
         ("faults told of one file", bounds.MAXIMUM_FAULTS),
         ("digits of a number", numbers.MAXIMUM_DIGITS),

@@ -6,6 +6,7 @@ from dataclasses import dataclass
 
 from rulecheck.diagnostics import Faults, Refused
 from rulecheck.model.design import LeafNode, Overlay
+from rulecheck.model.signal_files import is_signal, logged
 from rulecheck.reading.columns import Columns, chosen, read_columns
 from rulecheck.reading.nodes import Entry, Located, Mapping, Node, Sequence
 from rulecheck.reading.workspace import Workspace
@@ -27,6 +28,8 @@ class CurveFiles:
         """The node with rows in place of a file's name; other nodes as they are."""
         if not isinstance(node, Mapping) or not isinstance(node.get("file"), Located):
             return node
+        if is_signal(path):
+            return logged(node, self.workspace, self.beside, self.faults)
         name = node.get("file")
         assert isinstance(name, Located)
         if node.get("rows") is not None:

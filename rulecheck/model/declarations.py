@@ -10,6 +10,7 @@ from rulecheck.model.edge import InputShape
 from rulecheck.model.names import RESERVED_KEYS, check_name, is_name
 from rulecheck.model.record_table import RECORDS
 from rulecheck.model.shape_table import extent_rows, outline_rows
+from rulecheck.model.signal_files import is_signal
 from rulecheck.model.vocabulary import Entry
 from rulecheck.quantity.dimension import Dimension
 from rulecheck.quantity.reading_records import BASES
@@ -18,7 +19,10 @@ from rulecheck.reading.nearest import nearest
 from rulecheck.reading.nodes import Located, Mapping, Node, Sequence
 
 WITH_BASIS = ("number", "flag", "choice", "text", "date")
-KINDS = ("number", "flag", "choice", "text", "date", "point", "item", "collection", "curve", "map", "outline", "extent")
+KINDS = (
+    "number", "flag", "choice", "text", "date", "point", "item", "collection", "curve", "map", "signal", "outline",
+    "extent",
+)  # fmt: skip
 
 
 def own_units(declared: dict[str, Located], faults: Faults) -> dict[str, Dimension]:
@@ -102,6 +106,9 @@ def _rows(
     word = path.rpartition("_")[2].rpartition(".")[2]
     rows = [replace(entry, definitions=rivals.get(word, ()))]
     _whole(rows[0], shape, span, faults)
+    if kind == "signal" and not (is_signal(path) and path.count(".") == 1):
+        advice = f"call it 'signals.{path.rpartition('.')[2]}'"
+        faults.add("bad-name", f"'{path}' cannot be the path of a signal", span, expected="signals.NAME", advice=advice)
     for name, inner in (shape.element or {}).items():
         rows.extend(_rows(f"{path}.*.{name}", inner, rivals, file, span, faults))
         if inner.kind is not None and inner.kind.text in ("point", "outline", "extent"):

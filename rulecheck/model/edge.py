@@ -116,9 +116,9 @@ class InputShape(Shape):
     """The declaration of an input, or of a field of a collection's elements."""
 
     kind: Leaf | None = Field(
-        None, description="number, flag, choice, text, date, point, item, collection, curve or map"
+        None, description="number, flag, choice, text, date, point, item, collection, curve, map or signal"
     )
-    unit: Leaf | None = Field(None, description="Unit of a number, or of the values of a curve or map")
+    unit: Leaf | None = Field(None, description="Unit of a number, or of the values of a curve, map or signal")
     over: Leaf | list[Leaf] | None = Field(None, description="Unit of the key of a curve; those of a map, in order")
     choices: list[Leaf] | None = Field(None, description="Words of a choice")
     meaning: Leaf | None = Field(None, description="One line on what it is")

@@ -6,6 +6,7 @@ from rulecheck.model.vocabulary import Entry
 from rulecheck.quantity.reading_records import BASES
 
 RECORDS = (
+    Entry("signals.*", "signal", "Logged channel, read where a rule asks for it"),
     Entry("evidence", "collection", "Certificates, drawings, measurement sheets and inspections"),
     Entry(
         "evidence.*.kind",

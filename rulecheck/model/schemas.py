@@ -48,6 +48,7 @@ _KINDS: Mapping[str, Entry] = {
     "item": Entry("", "item", ""),
     "curve": Entry("", "curve", ""),
     "map": Entry("", "map", ""),
+    "signal": Entry("", "signal", ""),
     "outline": Entry("", "outline", ""),
     "range": Entry("", "range", ""),
 }
@@ -197,7 +198,7 @@ def _inside(vocabulary: Vocabulary, path: str, entry: Entry | None, paths: Conta
 def _said(entry: Entry) -> str:
     """The meaning with unit, term of a standard, default and rival definitions."""
     parts = [entry.meaning]
-    if entry.kind in ("number", "curve", "map"):
+    if entry.kind in ("number", "curve", "map") or (entry.kind == "signal" and entry.unit):
         parts.append("pure number" if entry.unit == "1" else f"in {entry.unit} or another unit of its kind")
     if entry.term:
         parts.append(entry.term)
@@ -240,9 +241,35 @@ _CURVE: Schema = {
 }
 
 
+_SIGNAL: Schema = {
+    "type": "object",
+    "properties": {
+        "file": {"type": "string", "description": "A CSV log, beside this file; read when a rule asks for it"},
+        "time": {"type": "string", "description": "Column of the times; time where not stated"},
+        "column": {"type": "string", "description": "Column of the samples; the signal's own name where not stated"},
+        "time_unit": {**TEXT, "description": "Unit of the times, where the heading has none"},
+        "unit": {**TEXT, "description": "Unit of the samples, where the heading has none"},
+        "delimiter": {"description": "What parts cells", "enum": ["comma", "semicolon", "tab", ",", ";", "|"]},
+        "decimal": {"description": "What parts decimals", "enum": ["comma", ".", ","]},
+        "rows": {
+            "type": "array",
+            "items": {"type": "array", "items": TEXT, "minItems": 2, "maxItems": 2},
+            "description": "Time and value, in place of a file",
+        },
+        "basis": {"enum": list(BASES), "description": "Where the samples come from"},
+        "reference": {**TEXT, "description": "Sheet or document that they stand on"},
+        "note": {**TEXT, "description": "A remark"},
+    },
+    "oneOf": [{"required": ["rows"]}, {"required": ["file"]}],
+    "additionalProperties": False,
+}
+
+
 def _forms(entry: Entry) -> list[Schema]:
     if entry.kind in ("curve", "map"):
         return [_CURVE]
+    if entry.kind == "signal":
+        return [_SIGNAL]
     plain = _plain(entry)
     axes: list[Schema] = []
     if entry.kind == "point":

@@ -9,7 +9,7 @@ from typing import Literal
 from rulecheck.diagnostics import Span
 
 InputKind = Literal[
-    "number", "flag", "choice", "text", "date", "point", "datum", "item", "collection", "curve", "map", "outline", "range",
+    "number", "flag", "choice", "text", "date", "point", "datum", "item", "collection", "curve", "map", "signal", "outline", "range",
 ]  # fmt: skip
 
 

@@ -13,6 +13,7 @@ from wrong_inputs import Wrong
 from wrong_modules import WRONG_MODULES
 from wrong_records import WRONG_RECORDS
 from wrong_rulesets import WRONG_RULESETS
+from wrong_signals import WRONG_SIGNALS
 from wrong_spread import WRONG_SPREAD
 from wrong_zones import WRONG_ZONES
 
@@ -21,7 +22,16 @@ from rulecheck.diagnostics import CODES, Refused
 from rulecheck.physics.modules import read_module
 from rulecheck.reading.workspace import Workspace
 
-WRONG = (*WRONG_DESIGNS, *WRONG_CURVES, *WRONG_MODULES, *WRONG_RECORDS, *WRONG_RULESETS, *WRONG_SPREAD, *WRONG_ZONES)
+WRONG = (
+    *WRONG_DESIGNS,
+    *WRONG_CURVES,
+    *WRONG_MODULES,
+    *WRONG_RECORDS,
+    *WRONG_RULESETS,
+    *WRONG_SIGNALS,
+    *WRONG_SPREAD,
+    *WRONG_ZONES,
+)
 _CODE = re.compile(r"^(?:\S.*?:\d+:\d+: )?([a-z0-9-]+): ")
 OF_THE_COMMAND = frozenset(("usage", "cannot-write", "internal"))
 OF_PHYSICS = frozenset(("bad-physics",))

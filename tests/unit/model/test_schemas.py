@@ -78,7 +78,7 @@ def test_inputs_of_a_ruleset_are_not_in_the_core_schema() -> None:
     assert not _validator("design").is_valid(design)
 
 
-SAMPLES = {"flag": "yes", "date": "2027-03-01", "point": "1 2 3 mm", "datum": "rear_axle", "text": "sheet 4", "outline": "0 0, 9 0, 9 9 mm", "range": ["1 mm", "2 mm"]}  # fmt: skip
+SAMPLES = {"flag": "yes", "date": "2027-03-01", "point": "1 2 3 mm", "datum": "rear_axle", "text": "sheet 4", "outline": "0 0, 9 0, 9 9 mm", "range": ["1 mm", "2 mm"], "signal": {"file": "run.csv", "column": "a", "decimal": "comma"}}  # fmt: skip
 ROWS = {"rows": [["1 mm", "5 mm"], ["2 mm", "6 mm"]], "over": "vehicle.speed"}
 
 
@@ -127,6 +127,8 @@ def test_what_a_design_may_say(text: str) -> None:
 
 
 WRONG = [
+    ("a signal without rows", "{design: D, signals: {brake: {column: a}}}"),
+    ("a row of a signal with three cells", "{design: D, signals: {brake: {rows: [[0 s, 1 V, 2 V]]}}}"),
     ("neither name nor base", "{revision: C}"),
     ("set without a base", "{design: D, set: {}}"),
     ("unknown section", "{design: D, wheels: {}}"),
