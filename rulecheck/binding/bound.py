@@ -15,13 +15,15 @@ from rulecheck.reading.nodes import Located
 @dataclass(frozen=True, slots=True)
 class Number:
     """A number; `unit` is the unit in which it is spoken of. `counted` marks counts and whole literals,
-    `bare` a literal without unit, `offset` a literal of a scale with a zero of its own (degC)."""
+    `bare` a literal without unit, `offset` a literal of a scale with a zero of its own (degC);
+    `place` says, in words, where a curve or signal has this value."""
 
     term: Term
     unit: Unit | None = None
     counted: bool = False
     bare: bool = False
     offset: bool = False
+    place: str = ""
 
     @property
     def dimension(self) -> Dimension:
@@ -31,9 +33,10 @@ class Number:
 
 @dataclass(frozen=True, slots=True)
 class Truth:
-    """A flag."""
+    """A flag; `place` says where a curve does not keep what is asked of it."""
 
     term: Term
+    place: str = ""
 
 
 @dataclass(frozen=True, slots=True)
@@ -150,13 +153,37 @@ class Signal:
 
 
 @dataclass(frozen=True, slots=True)
+class Slopes:
+    """The slopes of a curve between two keys: all of them keep a limit where these two do."""
+
+    least: Number
+    greatest: Number
+
+
+@dataclass(frozen=True, slots=True)
 class Broken:
     """What a fault leaves behind: whatever is made of it is broken too, without a second fault."""
 
 
 BROKEN = Broken()
 
-Bound = Number | Truth | Words | Date | Period | Place | Line | Plane | Item | Items | Choices | Curve | Signal | Broken
+Bound = (
+    Number
+    | Truth
+    | Words
+    | Date
+    | Period
+    | Place
+    | Line
+    | Plane
+    | Item
+    | Items
+    | Choices
+    | Curve
+    | Slopes
+    | Signal
+    | Broken
+)
 
 _KINDS: dict[type, str] = {
     Number: "a number",
@@ -171,6 +198,7 @@ _KINDS: dict[type, str] = {
     Items: "a collection",
     Choices: "a list",
     Curve: "a curve that is not called at a key",
+    Slopes: "the slopes of a curve",
     Signal: "a signal",
     Broken: "nothing",
 }

@@ -18,9 +18,10 @@ from rulecheck.binding.bound import (
     Truth,
     Words,
     kind_of,
-)
+)  # fmt: skip
+from rulecheck.binding.curve_calls import steepest
 from rulecheck.binding.scope import Scope
-from rulecheck.binding.signal_rates import resolved
+from rulecheck.binding.signal_rates import not_sampled, resolved
 from rulecheck.diagnostics import Span
 from rulecheck.formula.printing import show
 from rulecheck.formula.syntax import Comparison, Listing, Name, Syntax
@@ -217,11 +218,9 @@ def _pair(scope: Scope, syntax: Comparison, left: Side, operator: str, right: Si
         text = f"not {text}"
     if operator == "in":
         return _membership(scope, left, right, text, negated)
+    left, right = replace(left, bound=steepest(a, operator, True)), replace(right, bound=steepest(b, operator, False))
     if isinstance(a, Signal) or isinstance(b, Signal):
-        return scope.fault(
-            "kind-mismatch", f"'{text}' holds for some samples and not for others", syntax.span,
-            expected="peak(…), longest(…) or duration(…) of a signal, held against a limit",
-        )  # fmt: skip
+        return not_sampled(scope, text, syntax.span)
     left, right = _as_numbers(scope, left, right)
     if isinstance(left.bound, Number) and isinstance(right.bound, Number):
         return _numbers(scope, syntax, left, operator, right, text, negated)

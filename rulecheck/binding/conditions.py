@@ -75,7 +75,7 @@ class Builder:
             )
         holds = opposite(self.scope, bound.term) if negated else bound.term
         text = show(Not(syntax, span=syntax.span)) if negated else show(syntax)
-        return Part("flag", text, holds, span=syntax.span, formula=syntax)
+        return Part("flag", text, holds, span=syntax.span, formula=syntax, where=bound.place)
 
     def _quantified(self, syntax: Aggregate, negated: bool) -> Condition | Broken:
         """`every` and `some` keep the margins of their elements, where it is certain which take part."""
@@ -118,7 +118,7 @@ class Builder:
         return Part(
             "comparison", pair.text, pair.holds, pair.margin, pair.strict, scale, self._unit(pair),
             pair.value.term, pair.limit.term, pair.sense, pair.span, formula=pair.formula,
-            counted=pair.value.counted and pair.limit.counted,
+            counted=pair.value.counted and pair.limit.counted, where=pair.value.place or pair.limit.place,
         )  # fmt: skip
 
     def _unit(self, pair: Compared) -> Unit:

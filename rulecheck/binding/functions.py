@@ -15,6 +15,7 @@ from rulecheck.binding.bound import (
     Signal,
     kind_of,
 )
+from rulecheck.binding.curve_calls import CURVES, curve_property
 from rulecheck.binding.curves import curve_call
 from rulecheck.binding.geometry_calls import GEOMETRY, geometry
 from rulecheck.binding.presence import present
@@ -53,7 +54,7 @@ _AGGREGATES = ("sum", "mean", "deviation", "count", "share", "every", "some")
 
 NAMES = (
     "present", "rule", "margin", "end_of_year", "years_between", "atan2", "min", "max", "pairs", "standard_uncertainty", "front_area", *_ONE, *_ROUND,
-    *GEOMETRY, *SIGNALS, *_AGGREGATES,
+    *GEOMETRY, *CURVES, *SIGNALS, *_AGGREGATES,
 )  # fmt: skip
 """The names of all functions of the language."""
 
@@ -81,6 +82,8 @@ def call(scope: Scope, syntax: Call) -> Bound:
         return _round(scope, syntax)
     if name in GEOMETRY:
         return geometry(scope, syntax)
+    if name in CURVES:
+        return curve_property(scope, syntax)
     if name in SIGNALS:
         return signal_call(scope, syntax)
     if name in _AGGREGATES:
@@ -98,6 +101,7 @@ def call(scope: Scope, syntax: Call) -> Bound:
         *_ONE,
         *_ROUND,
         *GEOMETRY,
+        *CURVES,
         *SIGNALS,
         *_AGGREGATES,
         *figures.callable_names(scope),

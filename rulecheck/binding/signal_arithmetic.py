@@ -43,7 +43,12 @@ def settled(term: Term) -> Any:
     return found if found is not None and hasattr(found, "sign" if not isinstance(found, Rational) else "p") else None
 
 
-def rational(scope: Scope, number: Number, syntax: Syntax, what: str) -> tuple[Fraction, int] | Broken:
+_IN_THE_LIMIT = "put what may change into the limit, as in longest(s > limit), or outside of the function"
+
+
+def rational(
+    scope: Scope, number: Number, syntax: Syntax, what: str, advice: str = _IN_THE_LIMIT
+) -> tuple[Fraction, int] | Broken:
     """A constant as `fraction * pi^power`; noted where it is none."""
     value = number.term.value
     if number.term.kind == "constant" and isinstance(value, Monomial):
@@ -52,7 +57,6 @@ def rational(scope: Scope, number: Number, syntax: Syntax, what: str) -> tuple[F
     if isinstance(found, Rational):
         return to_fraction(found), 0
     told = f"{what} is a constant, and '{show(syntax)}' is not"
-    advice = "put what may change into the limit, as in longest(s > limit), or outside of the function"
     return scope.fault("kind-mismatch", told, syntax.span, expected="a number with unit", advice=advice)
 
 

@@ -16,7 +16,7 @@ from rulecheck.formula.printing import show
 from rulecheck.formula.syntax import Binary, Call, Comparison, Joined, Not, Syntax
 from rulecheck.graph.conditions import Use
 from rulecheck.graph.terms import Term
-from rulecheck.operations.samples import Samples, greatest, integral, rolling_mean
+from rulecheck.operations.samples import Samples, greatest, integral, rolling_mean, time_of_peak
 from rulecheck.operations.signals import Against, Joint, Order, Sampled, base_of, held_time, leaves
 from rulecheck.operations.values import Monomial
 from rulecheck.quantity.dimension import TIME
@@ -52,7 +52,8 @@ def _peak(scope: Scope, syntax: Call) -> Bound:
     signal = _signal(scope, syntax)
     if isinstance(signal, Broken):
         return BROKEN
-    return Number(_figure(scope, "peak", signal, greatest), signal.unit, signal.counted)
+    place = f"closest at {told_time(time_of_peak(signal.samples))}" if signal.samples is not None else ""
+    return Number(_figure(scope, "peak", signal, greatest), signal.unit, signal.counted, place=place)
 
 
 def _integral(scope: Scope, syntax: Call) -> Bound:

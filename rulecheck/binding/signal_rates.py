@@ -5,7 +5,7 @@ from __future__ import annotations
 from dataclasses import replace
 from fractions import Fraction
 
-from rulecheck.binding.bound import Number
+from rulecheck.binding.bound import Broken, Number
 from rulecheck.binding.scope import Scope
 from rulecheck.binding.signal_arithmetic import settled
 from rulecheck.diagnostics import Span
@@ -47,6 +47,13 @@ def _resolved(
     assert enough is not None
     told = f"closer samples of {path}: the widest step is {told_time(step)}, and the limit is shorter"
     return replace(number, term=scope.bank.branch(enough, number.term, scope.missing(told, "number", TIME, span), span))
+
+
+def not_sampled(scope: Scope, text: str, span: Span | None) -> Broken:
+    """A comparison of samples where one of a figure is due."""
+    told = f"'{text}' holds for some samples and not for others"
+    expected = "peak(…), longest(…) or duration(…) of a signal, held against a limit"
+    return scope.fault("kind-mismatch", told, span, expected=expected)
 
 
 def too_coarse(path: str, window: Fraction, step: Fraction) -> str:

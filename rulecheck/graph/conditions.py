@@ -44,7 +44,7 @@ class Part:
 
     `scale` is what the relative margin is measured by (SI, positive), None where there is none. `unit` is the unit of
     the margin, `value` and `limit` the two sides of a comparison; `counted` marks a count, which may well stand
-    on its limit.
+    on its limit, `where` says in words at which key of a curve or at which time that is.
     """
 
     kind: PartKind
@@ -62,6 +62,7 @@ class Part:
     formula: Syntax | None = field(default=None, compare=False)
     counted: bool = False
     ruled: Ruled | None = None
+    where: str = ""
 
 
 @dataclass(frozen=True, slots=True)

@@ -143,6 +143,11 @@ def greatest(samples: Samples) -> Monomial:
     return Monomial(Fraction(max(samples.values), samples.over), samples.power)
 
 
+def time_of_peak(samples: Samples) -> Fraction:
+    """When the greatest sample stands for the first time, in seconds."""
+    return Fraction(samples.base.ticks[samples.values.index(max(samples.values))], samples.base.per)
+
+
 def integral(samples: Samples) -> Monomial:
     """Over the record, each sample held up to the next.
 

@@ -87,6 +87,7 @@ class Checker:
             estimates=bound.estimated,
             outside_validity=self._outside(bound),
             notes=(
+                *([part.where] if part is not None and part.where else []),
                 *near_turning(self.judge, bound.cases),
                 *([NO_MEASURE] if binding is not None and binding.mixed else []),
             ),

@@ -15,7 +15,7 @@ import pytest
 from markdown_blocks import ROOT, blocks
 
 from rulecheck import workings
-from rulecheck.binding import functions, geometry_calls, signal_calls
+from rulecheck.binding import curve_calls, functions, geometry_calls, signal_calls
 from rulecheck.diagnostics import CODES
 from rulecheck.formula.tokens import AGGREGATES
 from rulecheck.handbook import pages, tables
@@ -118,7 +118,15 @@ def _known_functions() -> set[str]:
         for key in node.keys
         if isinstance(key, ast.Constant)
     }
-    return {*special, *functions._ONE, *functions._ROUND, *geometry_calls.GEOMETRY, *signal_calls.SIGNALS, *AGGREGATES}
+    return {
+        *special,
+        *functions._ONE,
+        *functions._ROUND,
+        *geometry_calls.GEOMETRY,
+        *curve_calls.CURVES,
+        *signal_calls.SIGNALS,
+        *AGGREGATES,
+    }
 
 
 def test_every_function_is_explained() -> None:

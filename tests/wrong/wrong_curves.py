@@ -272,4 +272,72 @@ WRONG_CURVES: tuple[Wrong, ...] = (
         design="",
         ruleset="tables: {t: {over: [dimensions.wheelbase, dimensions.front_track], linear: [[1 m, 1 m, 1 kg], [2 m, 1 m, 1 kg], [1 m, 2 m, 1 kg], [2 m, 2 m, 1 kg]]}}\nrules: {it: {require: t(1 m) <= 3 kg}}\n",
     ),
+    *(
+        Wrong(name, (said,), design="", ruleset=RULE.replace("rig.torque(rig.speed) <= 500 N*m", f'"{condition}"'))
+        for name, condition, said in (
+            (
+                "a rise of a number",
+                "rising(rig.speed)",
+                "cup.ruleset.yaml:8:25: kind-mismatch: 'rising' takes a curve, and 'rig.speed' is a number; expected rising(curve)",
+            ),
+            (
+                "a rise of a map",
+                "rising(rig.lift)",
+                "cup.ruleset.yaml:8:25: kind-mismatch: 'rising' takes a curve, and 'rig.lift' is a map; expected rising(curve)",
+            ),
+            (
+                "a rise of two curves",
+                "rising(rig.torque, rig.torque)",
+                "cup.ruleset.yaml:8:18: wrong-arguments: 'rising' takes 1 argument, not 2; expected rising(curve)",
+            ),
+            (
+                "a slope that is calculated with",
+                "2 * slope(rig.torque, 1 rpm, 2 rpm) <= 1 N*m/rpm",
+                "cup.ruleset.yaml:8:18: kind-mismatch: cannot multiply a number and the slopes of a curve; expected numbers, or a date with a period",
+            ),
+            (
+                "a slope between keys of another kind",
+                "slope(rig.torque, 1 m, 2 m) <= 1 N",
+                "cup.ruleset.yaml:8:36: dimension-mismatch: the key of 'rig.torque' is frequency or angular speed [1/s], and '1 m' is length [m]; expected slope(curve, from, to)",
+            ),
+            (
+                "a curve over a flag",
+                "over(rig.torque, yes, 1 rpm, 2 rpm) >= 1 N*m",
+                "cup.ruleset.yaml:8:35: kind-mismatch: 'over' takes a curve or a number to lie over, and 'yes' is a flag; expected over(curve, other, from, to)",
+            ),
+            (
+                "a curve over what is of another kind",
+                "over(rig.torque, 5 m, 1 rpm, 2 rpm) >= 1 N*m",
+                "cup.ruleset.yaml:8:35: dimension-mismatch: 'rig.torque' is energy or torque [J], '5 m' is length [m]; the two must be of one dimension",
+            ),
+        )
+    ),
+    *(
+        Wrong(
+            name,
+            (said,),
+            design=torque("[[1 rpm, 2 N*m], [3 rpm, 4 N*m]]", more),
+            ruleset=RULE.replace("rig.torque(rig.speed) <= 500 N*m", f'"{condition}"'),
+        )
+        for name, condition, more, said in (
+            (
+                "a range that falls",
+                "slope(rig.torque, 2 rpm, 1 rpm) <= 1 N*m/rpm",
+                "",
+                "cup.ruleset.yaml:8:43: bad-value: the range from '2 rpm' to '1 rpm' does not rise; expected the lower end first",
+            ),
+            (
+                "a range that moves",
+                "slope(rig.torque, 1 rpm, rig.speed) <= 1 N*m/rpm",
+                "",
+                "cup.ruleset.yaml:8:43: kind-mismatch: an end of the range is a constant, and 'rig.speed' is not; expected a number with unit; write the key, as in 2000 rpm",
+            ),
+            (
+                "a slope of steps",
+                "slope(rig.torque, 1 rpm, 2 rpm) <= 1 N*m/rpm",
+                ", interpolation: steps",
+                "cup.ruleset.yaml:8:18: kind-mismatch: 'rig.torque' runs in steps, and has no slope; expected a curve with straight lines between its rows",
+            ),
+        )
+    ),
 )
