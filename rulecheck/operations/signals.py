@@ -14,6 +14,7 @@ from math import isfinite, nan
 from typing import Any, Literal
 
 from rulecheck.operations.exact import (
+    Ball,
     Rational,
     exact_number,
     from_fraction,
@@ -21,7 +22,7 @@ from rulecheck.operations.exact import (
     to_ball,
     whole_below,
 )
-from rulecheck.operations.operation import UNDECIDED, Operation, Sort, Undecided
+from rulecheck.operations.operation import UNDECIDED, Operation, Sort
 from rulecheck.operations.samples import MEASURES, Base, Samples, on_base, shared_base
 from rulecheck.operations.spaces import quiet
 from rulecheck.operations.values import Monomial
@@ -64,50 +65,66 @@ def base_of(condition: Sampled) -> Base:
     return shared_base([leaf.samples.base for leaf in leaves(condition)])
 
 
-def flags(condition: Sampled, base: Base, limits: Sequence[Any]) -> list[bool] | Undecided:
-    """Sample by sample, whether the condition holds; undecided where a ball holds a sample."""
+def flags(condition: Sampled, base: Base, limits: Sequence[Any], doubtful: bool | None = None) -> list[bool] | None:
+    """Sample by sample, whether the condition holds.
+
+    Where a limit is a ball that holds a sample, the sample's comparison is taken as `doubtful`; without it there is
+    no answer, and None is given.
+    """
     if isinstance(condition, Against):
-        return _against(condition, base, limits[condition.limit])
-    rows = [flags(part, base, limits) for part in condition.parts]
-    known = [row for row in rows if not isinstance(row, Undecided)]
+        return _against(condition, base, limits[condition.limit], doubtful)
+    rows = [flags(part, base, limits, doubtful) for part in condition.parts]
+    known = [row for row in rows if row is not None]
     if len(known) < len(rows):
-        return UNDECIDED
+        return None
     return [all(flag) if condition.every else any(flag) for flag in zip(*known, strict=True)]
 
 
-def _against(condition: Against, base: Base, limit: Any) -> list[bool] | Undecided:
+def _against(condition: Against, base: Base, limit: Any, doubtful: bool | None) -> list[bool] | None:
     order, values = condition.order, on_base(condition.samples, base)
-    level = _level(limit, condition.samples, values)
+    level = _level(limit, condition.samples)
     if level is None:
-        return UNDECIDED
-    below, whole = level
+        return None if doubtful is None else [doubtful] * len(values)
+    first, last, whole = level
+    if first <= last and not whole and any(first <= value <= last for value in values):
+        return None if doubtful is None else _doubted(values, order, first, last, doubtful)
     if order in ("==", "!="):
-        return [(whole and value == below) == (order == "==") for value in values]
-    if order in (">", "<=") or not whole:
-        above = order in (">", ">=")
-        return [(value > below) == above for value in values]
-    return [(value >= below) == (order == ">=") for value in values]
+        return [(whole and value == first) == (order == "==") for value in values]
+    if order in (">", "<="):
+        return [(value > last) == (order == ">") for value in values]
+    return [(value >= first) == (order == ">=") for value in values]
 
 
-def _level(limit: Any, samples: Samples, values: Sequence[int]) -> tuple[int, bool] | None:
-    """The limit on the samples' own scale: the whole number that is not above it, and whether it is that number.
+def _doubted(values: Sequence[int], order: Order, first: int, last: int, doubtful: bool) -> list[bool]:
+    above, below = order in (">", ">=", "!="), order in ("<", "<=", "!=")
+    return [above if value > last else below if value < first else doubtful for value in values]
 
-    None where it is a ball that holds a sample; else any whole number that no sample parts from the limit.
+
+def _level(limit: Any, samples: Samples) -> tuple[int, int, bool] | None:
+    """The limit on the samples' own scale: whole numbers from first to last may be the limit, those below are below it
+    and those above are above it; and whether it certainly is the first. None where it is a ball without end.
+
+    A limit between two whole numbers has none that may be it: the first is then above the last.
     """
     scale = exact_number(Monomial(Fraction(samples.over), -samples.power))
     if is_exact(limit):
         level = limit * scale
         below = int(whole_below(level))
-        return below, isinstance(level, Rational) and level == below
+        if isinstance(level, Rational) and level == below:
+            return below, below, True
+        return below + 1, below, False
     ball = to_ball(limit) * to_ball(scale)
     ends = (ball.lower().floor().unique_fmpz(), ball.upper().ceil().unique_fmpz()) if ball.is_finite() else (None, None)
     if ends[0] is None or ends[1] is None:
         return None
     low, high = int(ends[0]), int(ends[1])
-    first, last = low + 1 if ball > low else low, high - 1 if ball < high else high
-    return None if any(first <= value <= last for value in values) else (low, False)
+    if low == high:
+        return low, high, True
+    return low + 1 if ball > low else low, high - 1 if ball < high else high, False
 
 
+_WIDE_BITS = 24
+"""A ball of less relative accuracy is wide on purpose: a range of a limit, and no limit that is not yet known well."""
 MOST_KEPT = 256
 """So many limits with their times are remembered for one condition: each may cost a walk over all samples."""
 _MADE = count(1)
@@ -126,7 +143,14 @@ def held_time(measure: str, condition: Sampled, many: int) -> Operation:
 
     def rule(values: Sequence[Any]) -> Any:
         found = flags(condition, base, values)
-        return found if isinstance(found, Undecided) else from_fraction(measured(base, found))
+        if found is not None:
+            return from_fraction(measured(base, found))
+        if not any(isinstance(value, Ball) and value.rel_accuracy_bits() < _WIDE_BITS for value in values):
+            return UNDECIDED
+        # More samples for which a condition may hold make no time shorter.
+        ends = [flags(condition, base, values, doubtful) for doubtful in (False, True)]
+        least, most = (to_ball(from_fraction(measured(base, end))) for end in ends if end is not None)
+        return least.union(most)
 
     def exact(values: Sequence[Any]) -> Any:
         if not all(map(is_exact, values)):
@@ -142,7 +166,7 @@ def held_time(measure: str, condition: Sampled, many: int) -> Operation:
         if not all(map(isfinite, values)):
             return nan
         found = flags(condition, base, [from_fraction(Fraction(value)) for value in values])
-        return nan if isinstance(found, Undecided) else float(measured(base, found))
+        return nan if found is None else float(measured(base, found))
 
     def array(space: Any, values: Sequence[Any]) -> Any:
         return space.vectorize(on_floats, otypes=[float])(*values) if values else space.asarray(on_floats())
