@@ -11,6 +11,7 @@ import math
 from collections.abc import Iterator
 from datetime import date
 from fractions import Fraction
+from itertools import pairwise
 from pathlib import Path
 
 import pytest
@@ -348,3 +349,16 @@ def test_homologation_sheet() -> None:
     }
     assert {name: exact(sheet, name) for name in due} == due
     assert {found(sheet, name).verdict for name in due} == {"complies"}
+
+
+def test_the_pedal_sensors_of_the_addendum() -> None:
+    """The longest run of rows that are more than 12 % apart, each held up to the next."""
+    with (DESIGNS / "marram-p2-pedal.csv").open(encoding="utf-8") as file:
+        rows = [[Fraction(cell) for cell in row] for row in list(csv.reader(file))[2:]]
+    longest = run = Fraction(0)
+    for (time, left, right), (later, _, _) in pairwise(rows):
+        run = run + later - time if abs(left - right) > 12 else Fraction(0)
+        longest = max(longest, run)
+    report = check(DESIGNS / "marram-p2.design.yaml", rules=[ROOT / "rulesets_demo" / "saltmere.ruleset.yaml"], on=DAY)
+    assert longest > 0
+    assert exact(report, "pedal_sensors") == (160 - longest * 1000, "ms")
