@@ -278,8 +278,10 @@ def kept_variant(design: File, columns: Sequence[Change], target: File, session:
 
 
 def _modules(loaded: Loaded) -> tuple[str, ...]:
-    """Modules whose figures are compared: all that are known, and the lap where the design names a track."""
-    return (*_library(loaded).names, *(name for name in OWN if TRACK in loaded.design.leaves))
+    """Modules whose figures are compared: all that are known, the lap where the design names a track, the stop where it
+    says how slow one ends."""
+    asked = {"lap": TRACK, "stop": "vehicle.end_speed"}
+    return (*_library(loaded).names, *(name for name in OWN if asked[name] in loaded.design.leaves))
 
 
 def _column(loaded: Loaded, base: Loaded, change: Change, day: date) -> Column:

@@ -16,7 +16,7 @@ from rulecheck.model.solver import Solver
 from rulecheck.reading.nodes import Located
 
 GROUP = "rulecheck.solvers"
-OWN: dict[str, str] = {"lap": "rulecheck.physics.lap.solver:LAP"}
+OWN: dict[str, str] = {"lap": "rulecheck.physics.lap.solver:LAP", "stop": "rulecheck.physics.stop.solver:STOP"}
 """Our own solvers: where each is, as an entry point says it."""
 
 

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import math
 from collections.abc import Callable
+from itertools import pairwise
 
 import numpy as np
 from scipy.integrate import quad, solve_ivp
@@ -286,43 +287,76 @@ def what_binds(bench: Bench):
     return least(own[0]), least(own[1]), word
 
 
+def stop_forces(bench: Bench) -> list[float]:
+    """What grip and torque of each axle allow in a stop without air, at the DC bus over speed."""
+    loads = bench.loads(0.0, bench["vehicle.deceleration"])
+    forces = []
+    for index, end in enumerate(ENDS):
+        turned = bench["recovery.torque"] * bench["recovery.ratio"] / bench.at(end, "loaded_radius")
+        grip = along(bench, bench["vehicle.grip"] * loads[index], "wheel", "bus")
+        forces.append(min(grip, along(bench, turned, "shaft", "bus")) if end in axles(bench) else 0.0)
+    return forces
+
+
 def stop_limits(bench: Bench) -> tuple[float, float]:
     """In a stop without air at constant deceleration: the force that force limits allow, and the power that power
-    limits allow, at the DC bus. Axles with a machine are counted together, which can only give more."""
-    braked = bench["vehicle.deceleration"]
-    loads = dict(zip(ENDS, bench.loads(0.0, braked), strict=True))
-    grip = sum(bench["vehicle.grip"] * loads[end] for end in axles(bench))
-    torque = sum(
-        bench["recovery.torque"] * bench["recovery.ratio"] / bench.at(end, "loaded_radius") for end in axles(bench)
-    )
-    force = min(
-        along(bench, bench.car.total * braked, "wheel", "bus"), along(bench, grip, "wheel", "bus"),
-        along(bench, torque, "shaft", "bus"),
-    )  # fmt: skip
+    limits allow, at the DC bus."""
+    demand = along(bench, bench.car.total * bench["vehicle.deceleration"], "wheel", "bus")
     shared = shared_limits(bench)
     machines = len(axles(bench)) * along(bench, bench["recovery.power"], "shaft", "bus")
-    return force, min(machines, shared["rule"], shared["store"])
+    power = min(machines, shared["rule"], shared["store"]) if axles(bench) else 0.0
+    return min(demand, sum(stop_forces(bench))), power
 
 
-def stop_energy(bench: Bench) -> float | None:
-    """Power over time, v from the one speed to the other at constant deceleration."""
+def in_a_stop(bench: Bench) -> Callable[[float], float]:
+    """Power at a speed: each machine by its own limits, all together by those that they share."""
+    machine = along(bench, bench["recovery.power"], "shaft", "bus")
+    shared, forces = shared_limits(bench), stop_forces(bench)
+    held = min(shared["rule"], shared["store"])
+    demand = along(bench, bench.car.total * bench["vehicle.deceleration"], "wheel", "bus")
+    return lambda speed: min(sum(min(force * speed, machine) for force in forces), demand * speed, held)
+
+
+def stop_energy(bench: Bench) -> float:
+    """Power over time, v from the one speed to the other at constant deceleration; in pieces, since it has kinks."""
+    power, cuts = in_a_stop(bench), np.linspace(bench["vehicle.end_speed"], bench["vehicle.speed"], 21)
+    parts = [quad(power, low, high, epsabs=1e-4, epsrel=1e-10, limit=200)[0] for low, high in pairwise(cuts)]
+    return sum(parts) / bench["vehicle.deceleration"]
+
+
+@second(
+    *(f"recovery.{end}_stop_force" for end in ENDS), "recovery.stop_single_force", "recovery.stop_force", closely=1e-8
+)
+def forces_of_a_stop(bench: Bench):
+    forces = stop_forces(bench)
+    return *forces, min(forces), stop_limits(bench)[0]
+
+
+def stop_speeds(bench: Bench) -> tuple[float, float]:
+    """The speeds at which power leaves the line of all forces, and at which it meets its greatest."""
     force, power = stop_limits(bench)
     if not axles(bench):
-        return None
-    low, high = bench["vehicle.end_speed"], bench["vehicle.speed"]
-    change = min(max(power / force, low), high)
-    energy, _ = quad(lambda v: min(force * v, power), low, high, points=[change], epsabs=0, epsrel=1e-12)
-    return energy / bench["vehicle.deceleration"]
+        return 0.0, 0.0
+    at = in_a_stop(bench)
+    leaves = brentq(lambda v: force * v * (1 - 1e-12) - at(v), 1e-3, 1e4, xtol=1e-12)
+    meets = brentq(lambda v: power * (1 - 1e-12) - at(v), 1e-3, 1e5, xtol=1e-12)
+    return leaves, meets
 
 
-@second(*(f"recovery.stop_{name}" for name in ("force", "power", "change_speed", "energy")), closely=1e-8)
+@second("recovery.stop_power", "recovery.stop_energy", closely=1e-8)
 def of_a_stop(bench: Bench):
-    force, power = stop_limits(bench)
-    if not axles(bench):
-        return 0.0, 0.0, None, None
-    ends = (bench["vehicle.end_speed"], bench["vehicle.speed"])
-    unheld = brentq(lambda v: force * v - power, 0.0, 1e4, xtol=1e-12)
-    return force, power, float(np.clip(unheld, *ends)), stop_energy(bench)
+    return stop_limits(bench)[1], stop_energy(bench)
+
+
+CHANGES = ("first_change", "second_change")
+
+
+@second(
+    "recovery.stop_single_speed", "recovery.stop_full_speed", *(f"recovery.stop_{n}" for n in CHANGES), closely=1e-6
+)
+def speeds_of_a_stop(bench: Bench):
+    speeds = stop_speeds(bench)
+    return *speeds, *np.clip(speeds, bench["vehicle.end_speed"], bench["vehicle.speed"])
 
 
 @second("recovery.stored_energy", "recovery.released_energy", closely=1e-8)
@@ -330,8 +364,6 @@ def stored(bench: Bench):
     energy = stop_energy(bench)
     speeds = (bench["vehicle.end_speed"], bench["vehicle.speed"])
     released = sum(quad(lambda v, m=p.mass: m * v, *speeds)[0] for p in bench.car.masses)
-    if energy is None:
-        return None, released
     allowed = along(bench, bench["recovery.allowance"], bench.choice("recovery.measuring_point"), "store")
     return min(along(bench, energy, "bus", "store"), bench["recovery.store_room"], allowed), released
 

@@ -46,9 +46,8 @@ def test_half_as_much_again_at_the_grip_of_a_front_machine(tmp_path):
 
 
 @pytest.mark.parametrize("seed", [2, 6, 10])
-def test_two_machines_give_no_more_than_the_figure_says(tmp_path, seed):
-    """Derived: for machines on both axles the energy of a stop is a bound from above. Each axle by its own limits at
-    every speed, integrated, gives no more; and no less than nine tenths of it on these cars."""
+def test_two_machines_in_a_stop(tmp_path, seed):
+    """Derived: each axle by its own limits at every speed, what they share on top, integrated over the stop."""
     car = whole_car(seed)
     assert axles(Bench(car)) == ("front", "rear")
     still = replace(car, surfaces=tuple(replace(s, downforce_area=0.0, drag_area=0.0) for s in car.surfaces))
@@ -61,4 +60,4 @@ def test_two_machines_give_no_more_than_the_figure_says(tmp_path, seed):
     run = (car["vehicle.end_speed"], car["vehicle.speed"])
     energy = quad(power, *run, epsrel=1e-7, limit=200)[0] / car["vehicle.deceleration"]
     said = figures_known(tmp_path, car, ["recovery.stop_energy"])["recovery.stop_energy"]
-    assert 0.9 * float(said) <= energy <= float(said) * (1 + 1e-6)  # type: ignore[arg-type]
+    assert said == pytest.approx(energy, rel=1e-6)

@@ -348,7 +348,8 @@ def test_power_and_energy_are_accounted_for(seed, states):
     assert power == pytest.approx(figures["recovery.front_bus_power"] + figures["recovery.rear_bus_power"], rel=1e-12)  # type: ignore[operator]
     stored = figures["recovery.stored_energy"]
     if stored is not None:
-        assert 0 < stored <= figures["recovery.stop_energy"] <= figures["recovery.released_energy"]  # type: ignore[operator]
+        assert 0 <= stored <= figures["recovery.stop_energy"] <= figures["recovery.released_energy"]  # type: ignore[operator]
+        assert (stored > 0) == (whole_car(seed).choices["recovery.axle"] != "none")  # type: ignore[operator]
 
 
 def test_the_units_tried_are_other_spellings():

@@ -17,6 +17,7 @@ from rulecheck.geometry.bodies import Body
 from rulecheck.geometry.hulls import in_hull, in_hull_of_view
 from rulecheck.geometry.outlines import area
 from rulecheck.geometry.sightlines import clear_in_view
+from rulecheck.geometry.union_area import union_area
 from rulecheck.geometry.zones import Every, Range, Some, clear, inside
 
 Ends = tuple[Fraction, Fraction]
@@ -120,3 +121,10 @@ def test_areas_of_outlines(corners: list[tuple[int, int]], expected: Fraction) -
     exact = [(Fraction(x), Fraction(y)) for x, y in corners]
     assert area(exact) == expected
     assert area(exact[::-1]) == -expected
+
+
+def test_area_of_two_squares_that_overlap() -> None:
+    """Derived: the area of A or B is the area of A and that of B less what both cover, 1 + 1 - 1/4."""
+    one = [(Fraction(x), Fraction(y)) for x, y in ((0, 0), (1, 0), (1, 1), (0, 1))]
+    other = [(x + Fraction(1, 2), y + Fraction(1, 2)) for x, y in one]
+    assert union_area([one, other]) == union_area([other[::-1], one]) == Fraction(7, 4)
