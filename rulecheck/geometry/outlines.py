@@ -50,7 +50,7 @@ def fault_of(corners: Sequence[Corner]) -> tuple[str, int] | None:
     """What is wrong with a closed outline, and at which corner (counted from 0); None where it is sound.
 
     >>> fault_of([(Fraction(x), Fraction(y)) for x, y in ((0, 0), (1, 1), (1, 0), (0, 1))])
-    ("the outline crosses itself: the edge from corner 1 meets the edge from corner 3", 2)
+    ('the outline crosses itself: the edge from corner 1 meets the edge from corner 3', 2)
     """
     if len(corners) > MOST_CORNERS:
         return f"the outline has {len(corners)} corners, and {MOST_CORNERS} is the bound", MOST_CORNERS

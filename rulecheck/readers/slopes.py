@@ -72,6 +72,7 @@ class SlopeReader:
         self._bank, self._reader = bank, reader
         self._paths, self._settled = paths, settled
         self._bits = START_BITS
+        self._orders: dict[int, tuple[list[Term], set[int]]] = {}
 
     def slopes(self, root: Term, bits: int = START_BITS) -> Slopes:
         """The slopes of one number, with balls of at least so many bits."""
@@ -93,8 +94,7 @@ class SlopeReader:
         return Certain(lifted(found))
 
     def _swept(self, root: Term) -> Slopes:
-        terms = cone([root])
-        moving = resting_on(terms, self._paths, self._settled)
+        terms, moving = self._order(root)
         slopes: dict[int, Certain | None] = {root.index: ONE} if root.index in moving else {}
         found: dict[str, Certain | None] = {}
         bent = False
@@ -112,6 +112,14 @@ class SlopeReader:
                 if moves and not (part is not None and part.is_exact and not part):
                     _add(slopes, argument.index, None if slope is None or part is None else slope * part)
         return Slopes(dict(sorted(found.items())), bent)
+
+    def _order(self, root: Term) -> tuple[list[Term], set[int]]:
+        """The terms behind a number from its end, and those of them that move; a search over boxes asks many times."""
+        if root.index not in self._orders:
+            terms = cone([root])
+            moving = resting_on(terms, self._paths, self._settled)
+            self._orders[root.index] = ([term for term in terms if term.index in moving], moving)
+        return self._orders[root.index]
 
     def _parts(self, term: Term, active: Sequence[bool]) -> Sequence[Certain | None]:
         """The partial of each argument; those of arguments that do not move are zero."""

@@ -65,18 +65,18 @@ _LISTED: tuple[tuple[str, str, str, Changes], ...] = (
         ),
     ),
     (
-        "studies/check.py",
-        "Checker._is_roomy",
+        "studies/reserves.py",
+        "Keeping.is_roomy",
         "without a reserve for the rule no part of it is tight, so this only saves work",
-        ("never: if self.reserves.share is None and rule.name not in self.reserves.by_rule",),
+        ("never: if self._reserves.share is None and rule.name not in self._reserves.by_rule",),
     ),
     (
-        "studies/check.py",
-        "Checker._is_tight",
+        "studies/reserves.py",
+        "Keeping._is_tight",
         "the share is asked for twice: where it is None there is no relative margin, and the other way round",
         (
-            "self.judge.relative(part) if self.reserves.share is not None else None -> self.judge.relative(part)",
-            "relative is None or self.reserves.share is None -> relative is None",
+            "self._judge.relative(part) if self._reserves.share is not None else None -> self._judge.relative(part)",
+            "relative is None or self._reserves.share is None -> relative is None",
         ),
     ),
     (
@@ -144,13 +144,13 @@ _LISTED: tuple[tuple[str, str, str, Changes], ...] = (
     ),
     (
         "binding/comparing.py",
-        "_same",
+        "same",
         "two constant texts or flags are settled when they are read, to the same truth",
         ("never: if b.term.kind == 'constant'",),
     ),
     (
         "binding/comparing.py",
-        "_same",
+        "same",
         "the ordinal of a date can always be had",
         ("all taken: for day in days if day is not None",),
     ),
@@ -349,7 +349,7 @@ _LISTED: tuple[tuple[str, str, str, Changes], ...] = (
     ),
     (
         "binding/documents.py",
-        "_words",
+        "stated_words",
         "a text that is not stated is an input without a value, so its value is None",
         (
             "always: if isinstance(bound, Words) and isinstance(bound.term.value, str) and (bound.term.kind == 'constant')",
@@ -379,13 +379,13 @@ _LISTED: tuple[tuple[str, str, str, Changes], ...] = (
     ),
     (
         "binding/documents.py",
-        "_date",
+        "stated_day",
         "the field is declared as a date, so nothing but a date comes back",
         ("isinstance(bound, Date) and bound.term.kind == 'constant' -> bound.term.kind == 'constant'",),
     ),
     (
         "binding/documents.py",
-        "_after",
+        "is_later",
         "a constant date always has its ordinal day as its value",
         (
             "isinstance(day.value, Monomial) and day.value.rational > scope.shared.day.toordinal() -> day.value.rational > scope.shared.day.toordinal()",
@@ -395,7 +395,7 @@ _LISTED: tuple[tuple[str, str, str, Changes], ...] = (
         "binding/documents.py",
         "judgement",
         "a missing day has been answered above",
-        ("day is not None and _after(scope, day) -> _after(scope, day)",),
+        ("day is not None and is_later(scope, day) -> is_later(scope, day)",),
     ),
     (
         "binding/states.py",

@@ -19,6 +19,7 @@ from writing import DAY, as_float, write, write_ruleset
 from rulecheck import check
 from rulecheck.outcome.results import Finding
 from rulecheck.physics.modules import BUILT_IN, built_in
+from rulecheck.physics.solvers import solver_module
 
 MORE_UNITS = {f"dimensions.{end}_overhang": "m" for end in ("front", "rear")}
 SIDES = ("left", "right")
@@ -216,8 +217,8 @@ def figure_names(*, argument: str = "") -> tuple[str, ...]:
 def is_text(figure: str) -> bool:
     """Whether a figure says a word."""
     name, _, last = figure.partition(".")
-    module = built_in(name)
-    assert module is not None
+    module = built_in(name) or solver_module(name)
+    assert module is not None, name
     return module.figures[last].unit is None
 
 

@@ -65,8 +65,8 @@ def test_every_field_of_an_outcome_is_in_the_json() -> None:
     rule = made["rules"][0]
     # A margin carries whether it is strict; the two places stand together.
     assert {field.name for field in fields(Finding)} - {"strict", "rule_place", "value_place"} <= set(rule)
-    # The states stand under the case.
-    assert {field.name for field in fields(PartResult)} - {"strict", "state"} <= set(rule["parts"][0])
+    # The states and the point of an envelope stand under the case.
+    assert {field.name for field in fields(PartResult)} - {"strict", "state", "at"} <= set(rule["parts"][0])
     working = json.loads(workings_json(Workings("D", "f", "2027-03-01", (WORKING,), "0")))["items"][0]
     assert {field.name for field in fields(Working)} == set(working)
     assert {field.name for field in fields(Step)} == set(working["steps"][0])
