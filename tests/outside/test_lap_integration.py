@@ -176,6 +176,7 @@ def test_corner_straight_corner(changes: dict[str, float], slope: float) -> None
     assert estimate(lap, "least_speed").value == pytest.approx(min(corner, end), rel=1e-7)
 
 
+@pytest.mark.long
 def test_air_by_altitude() -> None:
     """Top speed of a long bend at power in thin air: P = rho C v³/2 with the density of ISO 2533 at that altitude."""
     standard = {0: 1.225, 1000: 1.112, 2000: 1.007, 3000: 0.9093}  # ISO 2533:1975, table of densities
