@@ -12,7 +12,7 @@ in a range: arguments are the ends of the range, then what the equation takes fr
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Iterator, Mapping
+from collections.abc import Collection, Iterable, Iterator, Mapping
 from dataclasses import dataclass, field
 from datetime import date
 from fractions import Fraction
@@ -141,12 +141,10 @@ class Bank:
         >>> bank.solve(x, x, (bank.number(0), bank.number(1))).arguments == (bank.number(0), bank.number(1))
         True
         """
-        moving = resting_on(cone([body]), variable)
-        inside = {term.index for term in moving}
-        outside = {part.index: part for term in moving for part in term.arguments if part.index not in inside}
-        arguments = (*ends, *(outside[index] for index in sorted(outside)))
+        moving = _resting_on(cone([body]), {variable.index})
+        arguments = (*ends, *_from_outside(moving))
         key = ("solve", body.index, variable.index, ends[0].index, ends[1].index)
-        equation = Equation(body, variable, moving, **said)
+        equation = Equation(body, variable, tuple(moving.values()), **said)
         return self._make(key, "solve", "number", variable.dimension, span, arguments=arguments, value=equation)
 
     @staticmethod
@@ -187,11 +185,10 @@ class Bank:
 
     def throughout(self, body: Term, axes: tuple[Axis, ...], span: Span | None = None) -> Term:
         """Whether a flag holds at every point of the axes; the flag itself where it rests on none of them."""
-        moving = _resting_on_any(cone([body]), {axis.term.index for axis in axes})
+        moving = _resting_on(cone([body]), {axis.term.index for axis in axes})
         if body.index not in moving:
             return body
-        outside = {part.index: part for term in moving.values() for part in term.arguments if part.index not in moving}
-        arguments = tuple(outside[index] for index in sorted(outside))
+        arguments = _from_outside(moving)
         key = ("throughout", body.index, axes)
         value = Throughout(body, axes)
         return self._make(key, "throughout", "flag", PURE, span, arguments=arguments, value=value)
@@ -237,18 +234,16 @@ def cone(roots: Iterable[Term]) -> list[Term]:
     return [seen[index] for index in sorted(seen)]
 
 
-def resting_on(terms: Iterable[Term], root: Term) -> tuple[Term, ...]:
-    """Those of the terms, given arguments first, that rest on one of them; it is among them where it is given."""
-    found: dict[int, Term] = {}
-    for term in terms:
-        if term is root or any(part.index in found for part in term.arguments):
-            found[term.index] = term
-    return tuple(found.values())
-
-
-def _resting_on_any(terms: Iterable[Term], roots: set[int]) -> dict[int, Term]:
+def _resting_on(terms: Iterable[Term], roots: Collection[int]) -> dict[int, Term]:
+    """Those of the terms, given arguments first, that rest on a root, by index; a root is among them where it is given."""
     found: dict[int, Term] = {}
     for term in terms:
         if term.index in roots or any(part.index in found for part in term.arguments):
             found[term.index] = term
     return found
+
+
+def _from_outside(moving: Mapping[int, Term]) -> tuple[Term, ...]:
+    """What terms that move take from those that do not."""
+    outside = {part.index: part for term in moving.values() for part in term.arguments if part.index not in moving}
+    return tuple(outside[index] for index in sorted(outside))

@@ -20,6 +20,8 @@ from rulecheck.readers.certain import Certain
 from rulecheck.readers.exact import ExactReader
 from rulecheck.readers.external import solver_behind
 
+PI = Fraction("3.14159265358979323846264338328")
+"""Pi with more digits than a screen shows or a double holds."""
 DIGITS = 6
 _SHOWN_BITS = 20
 """A number that is known more closely than this is shown with its six digits alone."""

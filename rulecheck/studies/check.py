@@ -57,15 +57,15 @@ class Checker:
         """The rule with each case of an envelope at the point that decides it."""
         return self._envelopes.placed_rule(bound)
 
-    def finding(self, bound: BoundRule, rule: Rule, ruleset_name: str = "") -> Finding:
-        """One rule with its verdict."""
+    def finding(self, bound: BoundRule, rule: Rule, ruleset_name: str = "", *, with_spread: bool = True) -> Finding:
+        """One rule with its verdict. The spread of its margin costs a search: studies that do not show it leave it out."""
         bound = self.placed(bound)
         verdict, binding, reason = self._rule(self._cases(bound))
         verdict, reason, permit = self._settled(bound, rule, verdict, binding, reason)
         part = binding.part if binding else None
         shown = part if part is not None and self._is_shown(part, bound, verdict) else None
         relative = self.judge.relative(shown) if shown else None
-        spread = self._spread_of(bound, rule, binding) if shown else None
+        spread = self._spread_of(bound, rule, binding) if shown and with_spread else None
         return Finding(
             name=rule.name,
             ruleset=rule.ruleset,

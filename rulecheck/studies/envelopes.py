@@ -24,7 +24,7 @@ from rulecheck.readers.certain import Certain
 from rulecheck.readers.exact import ExactReader
 from rulecheck.readers.least import least
 from rulecheck.readers.throughout import MOST_BOXES, Proof, Prover, corners
-from rulecheck.studies.amounts import certain_amount
+from rulecheck.studies.amounts import PI, certain_amount
 from rulecheck.studies.deciding import Decider
 from rulecheck.studies.judging import Judge, Judged
 
@@ -32,7 +32,6 @@ _POINTS = {1: 17, 2: 5}
 _FEW_POINTS = 3
 """A grid of so many points an axis is looked at for where the margin is least."""
 _MOST_THRESHOLDS = 12
-_PI = Fraction("3.14159265358979323846264338328")
 Point = Mapping[str, Fraction]
 Found = tuple[Verdict, Judged, str]
 """A verdict, what decides it, and the reason."""
@@ -276,5 +275,5 @@ def _range(axis: Axis, unit: Unit, low: Fraction, high: Fraction) -> RangeResult
 
 def _amount(axis: Axis, unit: Unit, value: Fraction) -> Amount:
     rational, rest = unit.of_si(value, axis.power)
-    shown = rational * _PI**rest
+    shown = rational * PI**rest
     return Amount(show_number(shown), unit.symbol, float(shown), "" if rest else show_exact(rational))

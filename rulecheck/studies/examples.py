@@ -61,7 +61,7 @@ def _judged(
     graph = bind(_design(example), [ruleset], day=day, physics=physics, only=(rule.name,))
     checker = Checker(graph)
     bound = graph.rules[0]
-    finding = checker.finding(bound, replace(rule, states=None))
+    finding = checker.finding(bound, replace(rule, states=None), with_spread=False)
     judged = checker.binding(bound)
     part = judged.part if judged is not None else None
     agrees = not example.verdict or finding.verdict == example.verdict

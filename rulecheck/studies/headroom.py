@@ -29,6 +29,7 @@ from rulecheck.quantity.units import Unit
 from rulecheck.readers.segment import SegmentReader
 from rulecheck.readers.stretches import Movement
 from rulecheck.reading.nearest import nearest
+from rulecheck.studies.amounts import PI
 from rulecheck.studies.certain_stretches import CELLS, Ask, Sure, certain_stretches
 from rulecheck.studies.check import Checker
 from rulecheck.studies.marks import marks
@@ -37,7 +38,6 @@ from rulecheck.studies.reporting import CAUTION
 REACH = 100
 FINENESS = Fraction(1, 10**9)
 MOST_STEPS = 2000
-_PI = Fraction("3.14159265358979323846264338328")
 
 
 def headroom(checker: Checker, design: Design, names: Sequence[str], day: date) -> HeadroomReport:
@@ -284,7 +284,7 @@ class _Input:
             return Amount(show_number(value), "", float(value), show_exact(value))
         power = self.checker.graph.inputs[self.path].power  # type: ignore[union-attr]
         rational, rest = unit.width_of_si(value, power) if width else unit.of_si(value, power)
-        shown = rational * _PI**rest
+        shown = rational * PI**rest
         exact = show_exact(rational) if is_exact and not rest else ""
         return Amount(show_number(shown), unit.symbol, float(shown), exact)
 

@@ -25,14 +25,13 @@ from rulecheck.quantity.units import Unit
 from rulecheck.readers.gradient import GradientReader
 from rulecheck.reading.nodes import Located
 from rulecheck.reading.nodes import Mapping as Mapped
-from rulecheck.studies.amounts import amount
+from rulecheck.studies.amounts import PI, amount
 from rulecheck.studies.check import Checker
 from rulecheck.studies.marks import marks
 from rulecheck.studies.reporting import CAUTION
 from rulecheck.studies.totals import total
 
 _AXES = ("x", "y", "z")
-_PI = Fraction("3.14159265358979323846264338328")
 
 
 @dataclass(frozen=True, slots=True)
@@ -82,7 +81,9 @@ class _Comparing:
 
     def _all(self, checker: Checker) -> Findings:
         return {
-            (rule.ruleset, rule.name): checker.finding(rule, self.books[rule.ruleset].rules[rule.name])
+            (rule.ruleset, rule.name): checker.finding(
+                rule, self.books[rule.ruleset].rules[rule.name], with_spread=False
+            )
             for rule in checker.graph.rules
         }
 
@@ -167,7 +168,7 @@ class _Comparing:
         change = self.gradients.along(term, {path: float(step) for path, step in steps.items()})
         if change is None or math.isinf(change):
             return None
-        scale = float(unit.factor * _PI**unit.power) if unit is not None else 1.0
+        scale = float(unit.factor * PI**unit.power) if unit is not None else 1.0
         shown = change / scale
         return Amount(
             show_number(Fraction(repr(shown)), 4) if shown == shown else "?", unit.symbol if unit else "", shown
@@ -200,7 +201,7 @@ def _steps(before: Inputs, after: Inputs) -> Mapping[str, Fraction]:
     for path, value in before.items():
         other = after.get(path)
         if isinstance(value, Monomial) and isinstance(other, Monomial) and value != other:
-            steps[path] = other.rational * _PI**other.power - value.rational * _PI**value.power
+            steps[path] = other.rational * PI**other.power - value.rational * PI**value.power
     return steps
 
 

@@ -73,7 +73,7 @@ def _named(checker: Checker, rulesets: Sequence[Ruleset], name: str, describe: D
 
 def _rule(checker: Checker, bound: BoundRule, rule: Rule, describe: Describe | None) -> Working:
     """The steps behind the case that decides, and the condition itself as the last of them."""
-    finding = checker.finding(bound, rule)
+    finding = checker.finding(bound, rule, with_spread=False)
     judged = checker.binding(bound)
     walk = _Walk(checker)
     part = judged.part if judged else None

@@ -6,6 +6,7 @@ from collections.abc import Mapping
 from dataclasses import dataclass
 
 from rulecheck.model.solver import Argument
+from rulecheck.physics.handed import number
 
 GRAVITY = 9.80665
 
@@ -78,11 +79,3 @@ def car_of(values: Mapping[str, Argument]) -> Car:
         front_brakes=number(values, "distribution"),
         ideal_brakes=values["distribution_law"] == "ideal",
     )
-
-
-def number(values: Mapping[str, Argument], name: str) -> float:
-    """A number among the arguments. Raises `ValueError` where it is none."""
-    value = values[name]
-    if not isinstance(value, float):
-        raise ValueError(f"{name} is not known")
-    return value

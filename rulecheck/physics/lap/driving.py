@@ -8,7 +8,8 @@ from dataclasses import dataclass
 
 from rulecheck.model.solver import Answer, Argument, Estimate, NoAnswer
 from rulecheck.model.track import Track
-from rulecheck.physics.lap.car import Car, car_of, number
+from rulecheck.physics.handed import number
+from rulecheck.physics.lap.car import Car, car_of
 from rulecheck.physics.lap.passes import run
 from rulecheck.physics.lap.road import pieces_of
 from rulecheck.physics.lap.tally import Recovery, Tally, tally_of

@@ -3,11 +3,11 @@
 from __future__ import annotations
 
 from rulecheck.model.solver import Solver, SolverFormula, SolverInput, SolverOutput
+from rulecheck.physics.handed import LAW, tyre_formulas
 from rulecheck.physics.lap.driving import drive
 
 _RECOVERED = ("energy_recovered", "energy_recovered_front", "energy_recovered_rear", "energy_stored")
 _STORED = ("energy_stored",)
-_LAW = "vehicle.grip_law == constant"
 _WITH_MACHINE = "recovery.axle == {axle} or recovery.axle == both"
 
 
@@ -16,20 +16,9 @@ def _axle_formulas(axle: str, share: str) -> tuple[SolverFormula, ...]:
     roll = f"suspension.{axle}.roll_stiffness * mass.sprung * load_transfer.roll_arm / {stiffness}"
     height = f"mass.sprung * ({share}) * suspension.{axle}.roll_centre_height + load_transfer.unsprung_{axle}_moment"
     return (
+        *tyre_formulas(axle),
         SolverFormula(
-            f"{axle}_grip", f"vehicle.grip if {_LAW} else tyres.{axle}.grip", "1",
-            f"Coefficient of friction of the {axle} tyres at the load of their data", "grip",
-        ),
-        SolverFormula(
-            f"{axle}_fade", f"0 if {_LAW} else tyres.{axle}.grip_fade", "1",
-            f"Share of the grip of the {axle} tyres that is lost while the load doubles", "grip",
-        ),
-        SolverFormula(
-            f"{axle}_load", f"1 N if {_LAW} else tyres.{axle}.grip_load", "N",
-            f"Load of the data of the {axle} tyres; of no account at constant grip", "grip",
-        ),
-        SolverFormula(
-            f"{axle}_transfer", f"0 kg if {_LAW} else ({roll} + {height}) / dimensions.{axle}_track", "kg",
+            f"{axle}_transfer", f"0 kg if {LAW} else ({roll} + {height}) / dimensions.{axle}_track", "kg",
             f"Load that moves from the inner to the outer {axle} wheel, over the lateral acceleration", "milliken",
         ),
         SolverFormula(

@@ -13,6 +13,7 @@ from functools import partial
 
 from rulecheck.model.solver import Answer, Argument, Estimate, NoAnswer
 from rulecheck.model.track import Track
+from rulecheck.physics.handed import number
 
 GRAVITY = 9.80665
 """m/s², standard gravity by definition."""
@@ -184,11 +185,3 @@ def car_of(values: Mapping[str, Argument]) -> Car:
         axle("rear", rear, -moved, 1 - share),
         values["distribution_law"] == "ideal",
     )
-
-
-def number(values: Mapping[str, Argument], name: str) -> float:
-    """A number among the arguments. Raises `ValueError` where it is none."""
-    value = values[name]
-    if not isinstance(value, float):
-        raise ValueError(f"{name} is not known")
-    return value

@@ -3,27 +3,8 @@
 from __future__ import annotations
 
 from rulecheck.model.solver import Solver, SolverFormula, SolverInput, SolverOutput
+from rulecheck.physics.handed import tyre_formulas
 from rulecheck.physics.stop.braking import stop
-
-_LAW = "vehicle.grip_law == constant"
-
-
-def _tyre(axle: str) -> tuple[SolverFormula, ...]:
-    return (
-        SolverFormula(
-            f"{axle}_grip", f"vehicle.grip if {_LAW} else tyres.{axle}.grip", "1",
-            f"Coefficient of friction of the {axle} tyres at the load of their data", "grip",
-        ),
-        SolverFormula(
-            f"{axle}_fade", f"0 if {_LAW} else tyres.{axle}.grip_fade", "1",
-            f"Share of the grip of the {axle} tyres that is lost while the load doubles", "grip",
-        ),
-        SolverFormula(
-            f"{axle}_load", f"1 N if {_LAW} else tyres.{axle}.grip_load", "N",
-            f"Load of the data of the {axle} tyres; of no account at constant grip", "grip",
-        ),
-    )  # fmt: skip
-
 
 STOP = Solver(
     name="stop",
@@ -42,8 +23,8 @@ STOP = Solver(
         "integral": "distance is the integral of v dv / d, time that of dv / d; any textbook of mechanics",
     },
     formulas=(
-        *_tyre("front"),
-        *_tyre("rear"),
+        *tyre_formulas("front"),
+        *tyre_formulas("rear"),
         SolverFormula(
             "brake_share",
             "50 % if brakes.distribution_law == ideal else brakes.distribution",
